@@ -1,0 +1,59 @@
+"""The one place where a value is held against a printed number."""
+
+from __future__ import annotations
+
+from decimal import ROUND_HALF_UP, Decimal
+
+from envcheck.model.judged import Comparison
+from envcheck.model.ruleset import Limit, RuleSet, Term
+from envcheck.units import convert
+
+SIGNIFICANT = 12
+"""Digits kept before decimal arithmetic, so that binary noise never turns a tie."""
+
+
+def compare(value: float, term: Term, limit: Limit, ruleset: RuleSet) -> Comparison:
+    """Hold a value (SI) against one printed number, by the rule set's rounding.
+
+    The value is converted to the printed unit, kept to 12 significant digits, and rounded half-up
+    to the decimals of the printed limit unless the rule set compares unrounded (or to two
+    decimals). A value equal to the limit is within it.
+    """
+    printed = convert(value, limit.unit) if limit.unit else value
+    compared = rounded(printed, decimals_of(term, ruleset))
+    bound = Decimal(term.text)
+    exact = exact_decimal(printed)
+    within = compared <= bound if limit.sense == "max" else compared >= bound
+    within_exactly = exact <= bound if limit.sense == "max" else exact >= bound
+    margin = bound - exact if limit.sense == "max" else exact - bound
+    return Comparison(
+        value=printed,
+        compared=float(compared),
+        limit=term.number,
+        decimals=term.decimals,
+        unit=limit.unit,
+        sense=limit.sense,
+        within=within,
+        by_rounding=within and not within_exactly,
+        margin=float(margin),
+    )
+
+
+def decimals_of(term: Term, ruleset: RuleSet) -> int | None:
+    """Decimals to which a computed value is rounded before comparison; None = not rounded."""
+    if ruleset.compare == "unrounded":
+        return None
+    return 2 if ruleset.compare == "rounded_2dp" else term.decimals
+
+
+def exact_decimal(value: float) -> Decimal:
+    """A float as a decimal of 12 significant digits."""
+    return Decimal(f"{value:.{SIGNIFICANT - 1}e}")
+
+
+def rounded(value: float, decimals: int | None) -> Decimal:
+    """Round half-up to decimals, or not at all."""
+    exact = exact_decimal(value)
+    if decimals is None:
+        return exact
+    return exact.quantize(Decimal(1).scaleb(-decimals), ROUND_HALF_UP)

@@ -1,0 +1,61 @@
+"""Cross-checks: the mistakes that submittals make, each found by one function.
+
+A file in this folder with a tuple ``CHECKS`` is found; there is no list to keep. A check says what
+was seen, what it suggests, and what would settle it; it never changes a verdict.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable, Mapping
+from dataclasses import dataclass, replace
+from functools import cache
+from importlib import import_module
+from pkgutil import iter_modules
+
+from envcheck.model.judged import Closing, Finding, Line, Mean, Ratio
+from envcheck.model.project import Project
+from envcheck.model.ruleset import RuleSet
+from envcheck.model.solved import Properties, Solved
+
+
+@dataclass(frozen=True, slots=True)
+class Facts:
+    """What a check may look at."""
+
+    project: Project
+    rulesets: Mapping[str, RuleSet]
+    lines: tuple[Line, ...]
+    properties: Mapping[str, Properties]
+    """By assembly id."""
+    solved: Mapping[str, Solved]
+    """By assembly id: the first solution of the deciding rule set; assemblies without an
+    element are solved with the category of their own kind where that is possible."""
+    closings: tuple[Closing, ...]
+    ratios: tuple[Ratio, ...]
+    means: tuple[Mean, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class Check:
+    """One cross-check."""
+
+    id: str
+    title: str
+    run: Callable[[Facts], Iterable[Finding]]
+
+
+@cache
+def checks() -> tuple[Check, ...]:
+    """All cross-checks, in the order of their files."""
+    names = sorted(info.name for info in iter_modules(__path__))
+    return tuple(check for name in names for check in import_module(f"{__name__}.{name}").CHECKS)
+
+
+def findings(facts: Facts) -> tuple[Finding, ...]:
+    """Run every check; findings that the project answers carry the answer."""
+    answers = dict(facts.project.accepted)
+    found = [finding for check in checks() for finding in check.run(facts)]
+    return tuple(
+        replace(finding, answered=answers.get(f"{finding.check} {finding.subject}", ""))
+        for finding in found
+    )

@@ -1,0 +1,102 @@
+"""The R-value path: labelled insulation at installed thickness, no metal through it."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from envcheck.judge.compare import compare
+from envcheck.model.judged import PathResult
+from envcheck.model.project import Assembly, Element
+from envcheck.model.ruleset import Limit, RuleSet, Term
+from envcheck.model.solved import Properties
+from envcheck.units import convert
+
+EXTENT_TOLERANCE = 0.005
+"""m by which a printed extent (24 in) may be missed by a metric dimension."""
+
+
+@dataclass(frozen=True, slots=True)
+class Insulation:
+    """What an element brings to the R-value path, m2 K/W and m."""
+
+    cavity: float | None
+    continuous: float | None
+    extent: float | None = None
+    why_not: str = ""
+    """Why the continuous part does not count, or empty."""
+
+
+def insulation_of(assembly: Assembly, element: Element, properties: Properties) -> Insulation:
+    """Gather the labelled insulation of an element."""
+    if assembly.slab is not None:
+        slab = assembly.slab
+        covered = slab.top_edge_covered is not False
+        return Insulation(None, slab.resistance if covered else 0.0, slab.extent)
+    why_not = ""
+    if properties.crossed:
+        why_not = f"metal crosses the insulation: {properties.crossed[0]}"
+    elif properties.bracketed:
+        why_not = f"brackets are not fasteners: {properties.bracketed[0]}"
+    extent = element.insulated_depth
+    return Insulation(
+        properties.cavity_resistance, properties.continuous_resistance, extent, why_not
+    )
+
+
+def insulation_path(limit: Limit, brought: Insulation, ruleset: RuleSet) -> PathResult:
+    """Hold the labels against a compound cell such as ``13+9ci or 0+15ci``.
+
+    Any one alternative is enough; all of its terms must hold, none is traded against another.
+    """
+    if brought.why_not and any(term.role == "ci" for alt in limit.alternatives for term in alt):
+        return PathResult("insulation", "not_available", "", limit.cell, brought.why_not)
+    value = describe(brought, limit)
+    shortest = ""
+    for alternative in limit.alternatives:
+        short = [
+            why
+            for term in alternative
+            if (why := _short_of(term, limit, brought, ruleset)) is not None
+        ]
+        if not short:
+            words = " + ".join(term.text + term.role.replace("cavity", "") for term in alternative)
+            return PathResult("insulation", "pass", value, limit.cell, f"meets {words}")
+        shortest = shortest or short[0]
+    return PathResult("insulation", "fail", value, limit.cell, shortest)
+
+
+def _short_of(term: Term, limit: Limit, brought: Insulation, ruleset: RuleSet) -> str | None:
+    """Why one term does not hold, or None where it does."""
+    has = _part(term, brought)
+    comparison = compare(has, term, limit, ruleset)
+    if not comparison.within:
+        what = {"ci": "continuous", "cavity": "cavity"}.get(term.role, "labelled")
+        return f"{what} R-{_short(comparison.value)} is below R-{term.text}"
+    if term.extent is not None:
+        reaches = brought.extent or 0.0
+        if reaches + EXTENT_TOLERANCE < term.extent:
+            return f"insulation reaches {reaches:.3g} m of {term.extent:.3g} m"
+    return None
+
+
+def _part(term: Term, brought: Insulation) -> float:
+    """The insulation that a term speaks of, m2 K/W."""
+    if term.role == "ci":
+        return brought.continuous or 0.0
+    if term.role == "cavity" or brought.cavity is not None:
+        return brought.cavity or 0.0
+    return brought.continuous or 0.0
+
+
+def describe(brought: Insulation, limit: Limit) -> str:
+    """The labels as a reviewer writes them: ``13 + 7.5ci``."""
+    parts = []
+    if brought.cavity is not None:
+        parts.append(_short(convert(brought.cavity, limit.unit)))
+    if brought.continuous:
+        parts.append(_short(convert(brought.continuous, limit.unit)) + "ci")
+    return "R-" + " + ".join(parts) if parts else "none"
+
+
+def _short(value: float) -> str:
+    return f"{value:.2f}".rstrip("0").rstrip(".")

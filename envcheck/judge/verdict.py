@@ -1,0 +1,312 @@
+"""One element held against one limit: the verdict and its reasons."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, replace
+
+from envcheck.judge.classes import Class
+from envcheck.judge.compare import compare
+from envcheck.judge.paths import insulation_of, insulation_path
+from envcheck.judge.select import Selection
+from envcheck.model.judged import Choice, Comparison, Line, PathResult, Ratio
+from envcheck.model.patterns import matches
+from envcheck.model.project import Assembly, Element, ExceptionClaim, Project
+from envcheck.model.ruleset import Limit, RuleSet
+from envcheck.model.solved import Properties, Solved
+
+
+@dataclass(frozen=True, slots=True)
+class Case:
+    """Everything that one line is judged from."""
+
+    project: Project
+    ruleset: RuleSet
+    decides: bool
+    element: Element
+    assembly: Assembly
+    properties: Properties
+    found_class: Class
+    selection: Selection
+    closed: Mapping[str, Ratio]
+    """Category patterns whose rows an area cap closes."""
+
+
+def judge(case: Case, metric: str, limit: Limit | None, solved: Solved | None) -> Line:
+    """Judge one element in one metric.
+
+    The questions are asked in a fixed order and the first that stands in the way gives the
+    verdict: the class, the limit, the share renewed, a claimed exception, an area cap, the
+    evidence, the value, the comparison.
+    """
+    line = Line(
+        ruleset=case.ruleset.id,
+        decides=case.decides,
+        element=case.element.tag,
+        category=case.found_class.category,
+        metric=metric,
+        verdict="",
+        reasons=(),
+        limit=limit,
+        solved=solved,
+        comparison=None,
+        trail=_trail(case),
+    )
+    for question in (_class, _limit, _renewed):
+        answer = question(case, limit)
+        if answer is not None:
+            return replace(line, verdict=answer[0], reasons=(answer[1],))
+    assert limit is not None
+    closing = _area_cap(case)
+    if closing is not None:
+        return replace(line, verdict="path_closed", reasons=(closing,))
+    compared = _compare(case, line, limit, solved)
+    claim = _claim(case)
+    if claim is not None:
+        return _claimed(compared, claim)
+    return compared
+
+
+# ------------------------------------------------------------------- what stands in the way
+
+
+def _class(case: Case, limit: Limit | None) -> tuple[str, str] | None:
+    if case.found_class.official:
+        return "official_decides", case.found_class.official
+    if case.found_class.missing:
+        return "not_decided", f"missing: {case.found_class.missing}"
+    return None
+
+
+def _limit(case: Case, limit: Limit | None) -> tuple[str, str] | None:
+    if limit is None:
+        return case.selection.verdict, case.selection.reason
+    if limit.kind == "not_covered":
+        return "not_in_table", f"the table prints {limit.cell!r} here: the code has no such case"
+    if limit.kind == "no_requirement":
+        return "no_requirement", f"the table prints {limit.cell}"
+    by_official = [note for note in limit.notes if note.by_official]
+    if by_official:
+        return "official_decides", f"footnote {by_official[0].mark}: {by_official[0].text}"
+    return None
+
+
+def _renewed(case: Case, limit: Limit | None) -> tuple[str, str] | None:
+    trigger = case.ruleset.trigger
+    if trigger is None or case.project.scope != "alteration":
+        return None
+    share = case.element.renewed
+    if share is None:
+        return "not_decided", (
+            f"missing: the share of {case.element.tag} that is renewed ({trigger.clause}), "
+            f"on {case.element.sheet or 'its drawing'}"
+        )
+    if share <= trigger.share:
+        return "no_requirement", (
+            f"{share * 100:.3g} % renewed, not more than {trigger.share * 100:.3g} % "
+            f"({trigger.clause}): reported only"
+        )
+    return None
+
+
+def _area_cap(case: Case) -> str | None:
+    for pattern, ratio in case.closed.items():
+        if matches(pattern, case.found_class.category):
+            most = (ratio.most or 0.0) * 100
+            return (
+                f"{ratio.clause}: {ratio.value * 100:.3g} % is above {most:.3g} %; "
+                "this row does not apply until the area is brought down"
+            )
+    return None
+
+
+def _evidence(case: Case) -> str | None:
+    """Why the evidence of a rated product is not accepted, or None."""
+    rated = case.assembly.rated
+    if rated is None:
+        return None
+    accepted = next(
+        (
+            kinds
+            for pattern, kinds in case.ruleset.conventions.accepted_evidence.items()
+            if matches(pattern, case.found_class.category)
+        ),
+        (),
+    )
+    kinds = [kind for kind in accepted if not kind.startswith("standard:")]
+    standards = [kind.partition(":")[2] for kind in accepted if kind.startswith("standard:")]
+    if kinds and rated.evidence not in kinds:
+        return (
+            f"missing: evidence that the rule set accepts ({', '.join(kinds)}); "
+            f"{case.assembly.id} has {rated.evidence or 'none'}"
+        )
+    if standards and rated.standard not in standards:
+        return f"missing: a rating to {' or '.join(standards)} for {case.assembly.id}"
+    return None
+
+
+def _claim(case: Case) -> ExceptionClaim | None:
+    return next((c for c in case.project.exceptions if c.element == case.element.tag), None)
+
+
+def _claimed(line: Line, claim: ExceptionClaim) -> Line:
+    """Turn a compared line into a claim: the official decides, both outcomes are said."""
+    evidence = (
+        f"evidence {claim.evidence}"
+        if claim.evidence_found
+        else f"evidence file {claim.evidence} not found"
+        if claim.evidence
+        else "no evidence file"
+    )
+    reason = f"exception {claim.clause} claimed by {claim.claimed_by or 'nobody named'}: {evidence}"
+    without = line.verdict.replace("_", " ")
+    words = f"with it: waived if the official agrees; without it: {without}"
+    return replace(
+        line,
+        verdict="official_decides",
+        reasons=(reason, claim.reason, *line.reasons) if claim.reason else (reason, *line.reasons),
+        with_exception=words,
+    )
+
+
+# ------------------------------------------------------------------------------ comparing
+
+
+def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Line:
+    missing = _evidence(case) or _depth(case, limit)
+    if missing is None and solved is not None and solved.missing:
+        missing = f"missing: {solved.missing[0]}"
+    if missing is None and solved is not None and solved.decided_by_bracket:
+        return _by_bracket(case, line, limit, solved)
+    value = _value(case, limit, solved)
+    if missing is None and value is None:
+        missing = f"missing: {limit.metric} of {case.assembly.id}"
+    other = case.selection.limit("R_insulation", "insulation")
+    labels = _labels(case, other) if limit.path == "assembly" else None
+    if missing is not None or value is None:
+        return _without_value(line, missing or "", limit, labels)
+    comparison = compare(value, limit.alternatives[0][0], limit, case.ruleset)
+    own = PathResult(
+        "assembly",
+        "pass" if comparison.within else "fail",
+        f"{comparison.compared:.{comparison.decimals}f}",
+        limit.cell,
+        "",
+    )
+    passed = comparison.within or (labels is not None and labels.state == "pass")
+    line = replace(
+        line,
+        verdict="pass" if passed else "fail",
+        comparison=comparison,
+        paths=(own, labels) if labels is not None else (),
+        reasons=_reasons(comparison, labels),
+    )
+    return _with_bracket(case, line, limit, solved)
+
+
+def _value(case: Case, limit: Limit, solved: Solved | None) -> float | None:
+    """The number that the limit speaks of, SI."""
+    rated = case.assembly.rated
+    if limit.metric == "SHGC":
+        return rated.shgc if rated is not None else case.assembly.shgc
+    if limit.metric == "VT":
+        return rated.visible_transmittance if rated is not None else None
+    if solved is None or solved.value is None:
+        return None
+    return 1.0 / solved.value if limit.metric == "R_total" else solved.value
+
+
+def _depth(case: Case, limit: Limit) -> str | None:
+    """A below-grade wall needs the depth to which its insulation reaches."""
+    element = case.element
+    if limit.metric != "C_factor" or not case.properties.continuous_resistance:
+        return None
+    if element.insulated_depth is None:
+        return f"missing: the insulated depth of {element.tag}, on {element.sheet or 'its section'}"
+    if (
+        element.depth_below_grade is not None
+        and element.insulated_depth + 1e-3 < element.depth_below_grade
+    ):
+        return (
+            f"missing: a value for the part of {element.tag} below its insulation "
+            f"({element.insulated_depth:.3g} m of {element.depth_below_grade:.3g} m insulated): "
+            "enter two elements, split at that depth"
+        )
+    return None
+
+
+def _labels(case: Case, limit: Limit | None) -> PathResult | None:
+    if limit is None or limit.kind != "number" or not case.ruleset.paths_clause:
+        return None
+    brought = insulation_of(case.assembly, case.element, case.properties)
+    return insulation_path(limit, brought, case.ruleset)
+
+
+def _without_value(line: Line, missing: str, limit: Limit, labels: PathResult | None) -> Line:
+    """No U-factor: the R-value path may still carry the line."""
+    if labels is None or labels.state != "pass":
+        paths = (PathResult("assembly", "not_decided", "", limit.cell, missing),)
+        return replace(
+            line,
+            verdict="not_decided",
+            reasons=(missing,),
+            paths=(*paths, labels) if labels is not None else (),
+        )
+    own = PathResult("assembly", "not_decided", "", limit.cell, missing)
+    return replace(
+        line,
+        verdict="pass",
+        reasons=(f"by the R-value path: {labels.value} {labels.why}",),
+        paths=(own, labels),
+    )
+
+
+def _reasons(comparison: Comparison, labels: PathResult | None) -> tuple[str, ...]:
+    found = []
+    if comparison.by_rounding:
+        found.append("within its limit after rounding only")
+    if labels is not None and not comparison.within:
+        if labels.state == "pass":
+            found.append(f"by the R-value path: {labels.value}, {labels.why}")
+        else:
+            found.append(f"R-value path {labels.state.replace('_', ' ')}: {labels.why}")
+    return tuple(found)
+
+
+def _by_bracket(case: Case, line: Line, limit: Limit, solved: Solved) -> Line:
+    """The method is the two-dimensional solution: the bracket decides."""
+    assert solved.low is not None and solved.high is not None
+    term = limit.alternatives[0][0]
+    low = compare(solved.low, term, limit, case.ruleset)
+    high = compare(solved.high, term, limit, case.ruleset)
+    if high.within:
+        verdict, why = "pass", "the whole bracket lies within the limit"
+    elif not low.within:
+        verdict, why = "fail", "the whole bracket lies over the limit"
+    else:
+        verdict, why = "too_close", "the limit lies inside the bracket, which decides here"
+    return replace(line, verdict=verdict, reasons=(why,), comparison=high, low=low, high=high)
+
+
+def _with_bracket(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Line:
+    """Flag where the choice of method would turn the verdict, and where only rounding does."""
+    flags = []
+    comparison = line.comparison
+    assert comparison is not None
+    if comparison.by_rounding:
+        flags.append("rounding")
+    if comparison.compared == comparison.limit:
+        flags.append("at_limit")
+    if solved is None or solved.low is None or solved.high is None or limit.metric == "SHGC":
+        return replace(line, flags=tuple(flags))
+    term = limit.alternatives[0][0]
+    low = compare(solved.low, term, limit, case.ruleset)
+    high = compare(solved.high, term, limit, case.ruleset)
+    if {low.within, high.within, comparison.within} == {True, False}:
+        flags.append("method")
+    return replace(line, low=low, high=high, flags=tuple(flags))
+
+
+def _trail(case: Case) -> tuple[Choice, ...]:
+    choice = case.found_class.choice
+    return case.selection.trail if choice is None else (choice, *case.selection.trail)

@@ -1,0 +1,15 @@
+"""The names that later stages know, handed to ``read`` so that it can check and suggest them."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+
+@dataclass(frozen=True, slots=True)
+class Names:
+    """Known names by registry."""
+
+    methods: tuple[str, ...]
+    categories: tuple[str, ...]
+    film_sets: tuple[str, ...]
+    findings: tuple[str, ...]

@@ -1,0 +1,332 @@
+"""A rule set as read and folded: one edition with its amendments, in long form.
+
+Limits keep the printed text and unit of their cell: the comparison is made in the printed unit,
+so ``Term.number`` is the printed number, the one exception to SI inside.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+from datetime import date
+
+
+@dataclass(frozen=True, slots=True)
+class Term:
+    """One number of a cell: ``13``, ``9ci``, ``R-15 for 24 in``."""
+
+    number: float
+    text: str
+    """Digits as printed, which fix the decimals of the comparison."""
+    role: str = ""
+    """What it speaks of: ``cavity``, ``ci``, a declared suffix, or empty."""
+    extent: float | None = None
+    """Depth or width, m."""
+    metric: str = ""
+    """Where a prefix names another metric than the row's (``ER 34``)."""
+
+    @property
+    def decimals(self) -> int:
+        """Printed decimals."""
+        return len(self.text.partition(".")[2])
+
+
+@dataclass(frozen=True, slots=True)
+class Condition:
+    """A condition on one dimension: words, or an interval with open or closed ends."""
+
+    dimension: str
+    words: tuple[str, ...] = ()
+    low: float | None = None
+    high: float | None = None
+    low_closed: bool = False
+    high_closed: bool = False
+    text: str = ""
+    """As printed."""
+
+    def holds(self, value: str | float) -> bool:
+        """Whether the value of the fact meets the condition."""
+        if self.words:
+            return str(value).casefold() in {word.casefold() for word in self.words}
+        number = float(value)
+        above = self.low is None or (number >= self.low if self.low_closed else number > self.low)
+        below = self.high is None or (
+            number <= self.high if self.high_closed else number < self.high
+        )
+        return above and below
+
+
+@dataclass(frozen=True, slots=True)
+class Dimension:
+    """What a condition may ask for."""
+
+    name: str
+    values: tuple[str, ...] = ()
+    """Allowed words; empty for numbers."""
+    unit: str = ""
+    meaning: str = ""
+    default: str = ""
+    """Value where the project says nothing, and the rule set says so; empty = must be stated."""
+    sheet: str = ""
+    """Drawing where the fact belongs ("mechanical schedule"), for the missing-fact message."""
+
+
+@dataclass(frozen=True, slots=True)
+class Note:
+    """A footnote of a table."""
+
+    mark: str
+    effect: str
+    text: str
+    by_official: bool
+    """The program cannot decide it: the verdict becomes ``official_decides``."""
+
+
+@dataclass(frozen=True, slots=True)
+class Limit:
+    """One cell in long form."""
+
+    id: str
+    """``ruleset/table/zone/row/metric`` and the conditions that tell it apart."""
+    ruleset: str
+    """The rule set whose sheet prints the cell (an amendment's id where it replaced it)."""
+    table: str
+    clause: str
+    zone: str
+    """Printed zone head, or ``*``."""
+    row: str
+    label: str
+    categories: tuple[str, ...]
+    """envcheck categories that the row covers; patterns such as ``wall.*`` allowed."""
+    metric: str
+    """U_assembly, U_product, C_factor, F_factor, R_insulation, R_total, SHGC, VT ..."""
+    sense: str
+    """``max`` or ``min``"""
+    unit: str
+    """Printed unit, a spelling of ``units``; empty where dimensionless."""
+    cell: str
+    """As printed."""
+    kind: str
+    """``number``, ``no_requirement`` or ``not_covered``."""
+    alternatives: tuple[tuple[Term, ...], ...]
+    """Any one of these, each a sum whose terms must all hold."""
+    when: tuple[Condition, ...]
+    path: str
+    """``assembly``, ``insulation`` or empty where the code knows one path."""
+    applies_to: str
+    notes: tuple[Note, ...]
+    src: str
+    file: str
+    line: int
+    replaced: str = ""
+    """What an amendment replaced: the base cell's text and rule set."""
+
+
+# -------------------------------------------------------------------------------- conventions
+
+
+@dataclass(frozen=True, slots=True)
+class FilmRow:
+    """A surface resistance for a side, what lies beyond it and the direction of heat flow."""
+
+    side: str
+    """``inside`` or ``outside``"""
+    adjoins: str
+    """What lies beyond (``outdoors``, ``vented_attic`` ...), ``ventilated_cladding``, or ``*``."""
+    direction: str
+    """``up``, ``horizontal``, ``down`` or ``*``"""
+    resistance: float
+    """m2 K/W"""
+    text: str
+    """As printed, with its unit."""
+    source: str
+
+
+@dataclass(frozen=True, slots=True)
+class MethodRule:
+    """The method that the rule set prescribes for a class of construction."""
+
+    category: str
+    """Category or pattern."""
+    method: str
+    clause: str
+    refused: tuple[str, ...] = ()
+    """Methods that the clause does not accept."""
+    weight: float | None = None
+    """Of the upper limit, for the weighted rule."""
+
+
+@dataclass(frozen=True, slots=True)
+class ClassTest:
+    """The test that puts a wall in a class, by heat capacity per area or by weight."""
+
+    category: str
+    """The class claimed."""
+    measure: str
+    """``heat_capacity`` or ``weight``"""
+    at_least: float
+    """J/(m2 K) or kg/m2"""
+    text: str
+    """As printed: ``6 Btu/(ft2*degF)``."""
+    counted: str
+    """``whole`` or ``indoor_of_continuous_insulation``."""
+    clause: str
+    arguable: bool = False
+    """The code leaves room: where ways of counting differ, the official decides."""
+
+
+@dataclass(frozen=True, slots=True)
+class TableRow:
+    """One row of a coefficient table: cavity factors, effective layers, F-factors, air spaces.
+
+    Keys and values by column; SI numbers, words as text.
+    """
+
+    table: str
+    keys: dict[str, str | float]
+    value: float
+    text: str
+    source: str
+
+
+@dataclass(frozen=True, slots=True)
+class Conventions:
+    """How this code counts. ``where`` says for each key whether it is stated or our default."""
+
+    films: tuple[FilmRow, ...] = ()
+    film_set: str = "iso6946"
+    methods: tuple[MethodRule, ...] = ()
+    air_spaces: str = "iso6946"
+    """``iso6946`` (formula) or ``table`` (rows of ``tables['air_spaces']``)."""
+    cladding: str = "iso6946"
+    """``iso6946``: outer layers dropped, inner film outside; ``film_stays``: space and what lies
+    outside count 0, outer film stays."""
+    fasteners: str = "ignored"
+    """``ignored`` in continuous insulation, ``iso6946`` or ``chi``."""
+    tapered: str = "integral"
+    """``integral``, ``mean`` or ``minimum``; with ``tapered_mean_within`` the mean may be used."""
+    tapered_mean_within: float | None = None
+    """m of variation up to which the mean thickness may be used."""
+    crossed_insulation: str = "zero"
+    """Insulation crossed by continuous metal: ``zero``, ``counted`` or ``two_dimensional``."""
+    framing_shares: tuple[tuple[str, float, str], ...] = ()
+    """(category pattern, share, clause)"""
+    tables: dict[str, tuple[TableRow, ...]] = field(default_factory=dict)
+    class_tests: tuple[ClassTest, ...] = ()
+    accepted_evidence: dict[str, tuple[str, ...]] = field(default_factory=dict)
+    """Category pattern -> kinds of evidence (and ``standard:NAME``) that it accepts."""
+    dimensions_measured: str = ""
+    """``outside`` or ``inside`` where the code says."""
+    where: dict[str, str] = field(default_factory=dict)
+    """Key -> "Table 5 of the rule set" or "default of envcheck"."""
+
+
+@dataclass(frozen=True, slots=True)
+class AreaLimit:
+    """An area cap and the rows that it closes."""
+
+    of: str
+    """``window_wall_ratio`` or ``skylight_roof_ratio``."""
+    most: float
+    clause: str
+    closes: tuple[str, ...]
+    """Category patterns whose rows do not apply above the cap."""
+
+
+@dataclass(frozen=True, slots=True)
+class Averaging:
+    """A mean that the code permits."""
+
+    clause: str
+    scope: tuple[str, ...]
+    """Category patterns within which a mean may be taken (one row at a time)."""
+    metric: str
+    individual_cap: float | None = None
+    """No member above this multiple of the limit ..."""
+    cap_exempt: str = ""
+    """... except this category up to ``cap_exempt_area``."""
+    cap_exempt_area: float | None = None
+    """m2"""
+
+
+@dataclass(frozen=True, slots=True)
+class Trigger:
+    """Alterations: the target applies where more than ``share`` of an element is renewed."""
+
+    share: float
+    clause: str
+    text: str
+
+
+@dataclass(frozen=True, slots=True)
+class ExceptionClause:
+    """A clause that lets an official waive a row."""
+
+    clause: str
+    text: str
+
+
+@dataclass(frozen=True, slots=True)
+class Zones:
+    """How the site's zone is found."""
+
+    order: tuple[str, ...]
+    members: dict[str, tuple[str, ...]]
+    """Printed zone -> zones that belong to it."""
+    bounds: dict[str, dict[str, Condition]]
+    """Measure (``hdd65``) -> printed zone -> interval."""
+    chosen_by: str
+    suffixes: tuple[str, ...] = ()
+    """Letters that fall back to the plain zone."""
+
+
+@dataclass(frozen=True, slots=True)
+class Edition:
+    """One document in the chain of a folded rule set."""
+
+    id: str
+    title: str
+    edition: str
+    clause: str
+    effective_from: date | None
+    effective_until: date | None
+    in_force: bool
+    """On the date tested."""
+    sha256: str
+
+
+@dataclass(frozen=True, slots=True)
+class RuleSet:
+    """A base edition with the amendments in force folded over it."""
+
+    id: str
+    title: str
+    jurisdiction: str
+    status: str
+    """``official``, ``transcribed`` or ``example``"""
+    invented: bool
+    checked_by: str
+    chain: tuple[Edition, ...]
+    """Base first."""
+    units: str
+    """``SI`` or ``IP``, from the printed units."""
+    zones: Zones
+    dimensions: dict[str, Dimension]
+    limits: tuple[Limit, ...]
+    paths_clause: str
+    """Clause that lets either path be used; empty where there is one path."""
+    compare: str
+    """``rounded_to_printed_decimals``, ``unrounded`` or ``rounded_2dp``"""
+    rounding_clause: str
+    rounding_stated: bool
+    conventions: Conventions
+    area_limits: tuple[AreaLimit, ...]
+    averaging: tuple[Averaging, ...]
+    tradeoff: str
+    """What is said of a trade-off that the code offers and that is not computed; or empty."""
+    trigger: Trigger | None
+    exceptions: tuple[ExceptionClause, ...]
+    not_judged: tuple[str, ...]
+    """What the rule set says it does not cover."""
+    folder: str
+    remarks: tuple[str, ...] = ()
+    """What the rule set holds and is not judged here, in sentences for the report."""

@@ -1,0 +1,204 @@
+"""What an assembly's network gives: value, bracket, tree and worksheet, all numbers SI."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import NamedTuple
+
+
+class Operand(NamedTuple):
+    """A number that enters a step."""
+
+    name: str
+    value: float
+    quantity: str
+    """A quantity of ``units``: ``length``, ``conductivity``, ``resistance``, ``number`` ..."""
+
+
+class Step(NamedTuple):
+    """One line of the worksheet.
+
+    ``symbol`` names the result (``R3``, ``R3_web``, ``U``) and is unique within a worksheet; an
+    operand of that name is that result. ``expression`` names the operands in braces and uses only ``+ - * / **``, parentheses and the
+    functions ``ln exp sqrt min max``: ``{L} / {k}``. An empty expression is a value taken from a
+    source. With ``si_only`` the formula holds constants that are true in SI alone.
+    """
+
+    symbol: str
+    title: str
+    expression: str
+    operands: tuple[Operand, ...]
+    value: float
+    quantity: str
+    source: str = ""
+    si_only: bool = False
+
+
+class Resistor(NamedTuple):
+    """A resistance with its worksheet symbol and the steps that lead to it."""
+
+    symbol: str
+    title: str
+    value: float
+    """m2 K/W"""
+    steps: tuple[Step, ...] = ()
+
+
+class Series(NamedTuple):
+    """Parts one behind another."""
+
+    title: str
+    parts: tuple[Node, ...]
+    value: float
+
+
+class Parallel(NamedTuple):
+    """Branches side by side, each with its share of the area."""
+
+    title: str
+    shares: tuple[float, ...]
+    branches: tuple[Node, ...]
+    value: float
+
+
+Node = Resistor | Series | Parallel
+
+
+class Block(NamedTuple):
+    """A layer drawn as rectangles on a grid: rows across the wall, columns along it.
+
+    ``cells[row][column]`` is the resistance of that rectangle in the direction of heat flow. A
+    homogeneous layer has one row and one column. Cells with the same symbol are the same piece.
+    """
+
+    symbol: str
+    title: str
+    widths: tuple[float, ...]
+    """Column widths, m; their sum is the repeat width (or 1 where only shares are known)."""
+    depths: tuple[float, ...]
+    """Row depths from outside to inside, m."""
+    cells: tuple[tuple[Resistor, ...], ...]
+    pattern: str = ""
+    """Blocks of one pattern stand in line with each other; different patterns cross. A
+    homogeneous block has none."""
+    repeat: bool = False
+    """``widths`` are real dimensions, not shares."""
+
+
+class Beside(NamedTuple):
+    """A value by another route, printed beside the one that decides."""
+
+    name: str
+    """``parallel_path``, ``isothermal_planes``, ``sum_of_labels``, ``mean_thickness`` ..."""
+    value: float
+    """In the same metric as the solved value, SI."""
+    note: str
+
+
+class LayerRow(NamedTuple):
+    """One layer as the report lists it."""
+
+    title: str
+    thickness: float
+    """m; 0 where it does not matter"""
+    conductivity: float | None
+    resistance: float | None
+    """None where the layer is bridged or not counted: ``note`` says which."""
+    source: str
+    note: str
+
+
+class Caution(NamedTuple):
+    """A caution that the assembly triggers: topic of ``needs`` and the reason."""
+
+    topic: str
+    """``moisture``, ``solid_masonry``, ``fire``, ``structure``, ``ground`` ..."""
+    reason: str
+
+
+@dataclass(frozen=True, slots=True)
+class Setting:
+    """Everything that fixes the value of an assembly beside its own description.
+
+    Hashable: an assembly is solved once per distinct setting. Resolved from the element and the
+    rule set's conventions.
+    """
+
+    metric: str
+    """U, C, F, or SHGC-less product U: ``U_assembly``, ``U_product``, ``C_factor``, ``F_factor``"""
+    method: str
+    method_from: str
+    """Clause, or "assumed: the rule set names no method"."""
+    refused: tuple[str, ...]
+    weight: float | None
+    direction: str
+    """``up``, ``horizontal`` or ``down``"""
+    outside_film: float
+    """m2 K/W"""
+    outside_film_from: str
+    inside_film: float
+    inside_film_from: str
+    cladding_film: float
+    """Film outside a well-ventilated cavity, where the convention drops the layers beyond it."""
+    conventions: str
+    """Key of the rule set whose Conventions apply."""
+
+
+@dataclass(frozen=True, slots=True)
+class Solved:
+    """The answer for one assembly under one setting."""
+
+    assembly: str
+    setting: Setting
+    value: float | None
+    """By the prescribed method, corrections included; None where something is missing."""
+    clear: float | None
+    """Before fasteners, points and lines."""
+    missing: tuple[str, ...]
+    """What is missing, in plain words; the verdict becomes ``not_decided``."""
+    low: float | None
+    """Bracket of the drawn model, corrections included; None where it is not drawn."""
+    high: float | None
+    bracket_note: str
+    """What the bracket is of, or why there is none."""
+    decided_by_bracket: bool
+    ratio: float | None
+    """Isothermal planes over parallel path, of U."""
+    beside: tuple[Beside, ...]
+    tree: Node | None
+    steps: tuple[Step, ...]
+    """The whole worksheet from layers to value."""
+    layers: tuple[LayerRow, ...]
+    assumptions: tuple[str, ...]
+    cautions: tuple[Caution, ...]
+    hand_check: tuple[Step, ...] = ()
+    """The shortest sum that a reviewer can repeat; usually one step."""
+
+
+@dataclass(frozen=True, slots=True)
+class Properties:
+    """What an assembly is before any method: class tests, insulation path, what it is made of."""
+
+    heat_capacity: float | None
+    """J/(m2 K), all layers; None where a density or specific heat is missing."""
+    heat_capacity_indoor: float | None
+    """From the indoor face to the first continuous insulation."""
+    weight: float | None
+    """kg/m2"""
+    weight_indoor: float | None
+    missing: tuple[str, ...]
+    """Materials without density or specific heat."""
+    framing: str
+    """``steel``, ``wood``, ``none``"""
+    cavity_resistance: float | None
+    """Labelled insulation between members, at installed thickness, m2 K/W; None without."""
+    continuous_resistance: float
+    """Insulation that no metal crosses, m2 K/W; of a tapered layer at its least thickness."""
+    crossed: tuple[str, ...]
+    """Layers of insulation that members interrupt, with what crosses them."""
+    bracketed: tuple[str, ...]
+    """Point bridges through the continuous insulation (not mere fasteners)."""
+    label_sum: float | None
+    """Sum of all labels as if nothing bridged them, films excluded, m2 K/W."""
+    combustible: tuple[str, ...]
+    """Titles of combustible layers."""

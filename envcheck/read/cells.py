@@ -1,0 +1,322 @@
+"""The grammar of a printed table's cells and of the conditions beside them.
+
+::
+
+    cell  = special | alt { " or " alt }, with footnote marks in square brackets
+    alt   = part { "/" part }      where the row says what its slash means
+    part  = term { "+" term }      where the row says what its plus means, or each term says it
+    term  = [prefix] [<=|>=] number [suffix] [extent]
+
+A cell is read for one metric at a time: :class:`Grammar` says what row and column allow.
+"""
+
+from __future__ import annotations
+
+import re
+from dataclasses import replace
+from functools import lru_cache
+from typing import NamedTuple
+
+from envcheck import units
+from envcheck.model.ruleset import Condition, Term
+
+NO_REQUIREMENT = ("nr", "no requirement", "keine anforderung", "sans exigence", "uninsulated")
+NOT_COVERED = ("-", "\u2013", "\u2014", "n/a")
+REFERENCES = {"<": "left", "^": "above", ".": "unchanged"}
+PREFIXES = {
+    "U": ("U_assembly", "U_product"),
+    "Uw": ("U_product",),
+    "Ud": ("U_product",),
+    "Uc": ("U_product",),
+    "C": ("C_factor",),
+    "F": ("F_factor",),
+    "R": ("R_insulation", "R_total"),
+    "RSI": ("R_insulation", "R_total"),
+    "SHGC": ("SHGC",),
+    "VT": ("VT",),
+}
+"""Prefix -> the metrics that it may stand for."""
+SUFFIXES = ("ci",)
+"""Suffixes that need no declaration: continuous insulation."""
+EXTENT_WORDS = ("perimeter", "under", "full")
+_MARKS = re.compile(r"\[([^\[\]]*)\]")
+_OR = re.compile(r"\s+or\s+")
+_TERM = re.compile(
+    r"(?:(?P<prefix>[A-Za-z]+(?:/[A-Za-z]+)?)\s*[-=]?\s*)?(?P<relation><=|>=|\u2264|\u2265)?\s*"
+    r"(?P<number>\d*[.,]?\d+)(?P<rest>.*)"
+)
+_REST = re.compile(r"(?P<suffix>[A-Za-z.]*)\s*(?:(?:for|,)\s*(?P<extent>\S.*))?")
+_BAND = re.compile(r"([A-Za-z]+) [A-Z][+]*")
+_INTERVAL = re.compile(r"([\[(])\s*([\d.,]*)\s*[,;]\s*([\d.,]*)\s*([\])])")
+_BOUND = re.compile(r"(<=|>=|<|>|=|\u2264|\u2265)?\s*(\d*[.,]?\d+)")
+
+
+class CellError(ValueError):
+    """A cell or condition that cannot be read; ``kind`` is an id of ``error_kinds``."""
+
+    def __init__(self, kind: str, expected: str = "", fix: str = "") -> None:
+        super().__init__(kind)
+        self.kind = kind
+        self.expected = expected
+        self.fix = fix
+
+
+class Grammar(NamedTuple):
+    """What row and column of a table allow in a cell."""
+
+    metric: str = "U_assembly"
+    sense: str = "max"
+    si: bool = False
+    """The printed unit is an SI unit."""
+    decimal: str = "."
+    plus: tuple[str, ...] = ()
+    """Roles of the terms of a sum, in their order."""
+    slash: str = ""
+    """``when``, ``or``, ``and`` or empty: no slash."""
+    slash_roles: tuple[str, ...] = ()
+    """Roles of the sides of a slash (empty words with ``when``)."""
+    extent: str = ""
+    """What an extent measures (``depth``, ``perimeter``); empty: none allowed."""
+    suffixes: tuple[str, ...] = ()
+    no_requirement: tuple[str, ...] = ()
+    """Further words for no requirement."""
+    metrics: tuple[str, ...] = ()
+    """Other metrics that a prefix may name."""
+
+
+class Branch(NamedTuple):
+    """One reading of a cell."""
+
+    kind: str
+    """``number``, ``no_requirement``, ``not_covered`` or ``refers``."""
+    alternatives: tuple[tuple[Term, ...], ...] = ()
+
+
+class Cell(NamedTuple):
+    """A cell as read."""
+
+    text: str
+    """As printed, without footnote marks."""
+    branches: tuple[Branch, ...]
+    """One; where a slash states conditions, one for each of them."""
+    marks: tuple[str, ...]
+    refers: str = ""
+    """``left``, ``above``, ``unchanged`` or ``see ROW``."""
+
+
+def split_marks(text: str) -> tuple[str, tuple[str, ...]]:
+    """Take the footnote marks off a text: ``30[g]`` -> ``30``, ``(g,)``.
+
+    Errors: CellError for a bracket without its partner.
+    """
+    if "[" not in text and "]" not in text:
+        return text.strip(), ()
+    marks = tuple(mark for group in _MARKS.findall(text) for mark in group.split())
+    plain = _MARKS.sub("", text)
+    if "[" in plain or "]" in plain or not marks:
+        raise CellError("lost-bracket")
+    return plain.strip(), tuple(dict.fromkeys(marks))
+
+
+@lru_cache(maxsize=4096)
+def read_cell(text: str, grammar: Grammar) -> Cell:
+    """Read a cell. Errors: CellError."""
+    plain, marks = split_marks(text)
+    plain = re.sub(r"\s+", " ", plain)
+    if not plain:
+        raise CellError("blank-cell")
+    if plain in REFERENCES:
+        return Cell(plain, (Branch("refers"),), marks, REFERENCES[plain])
+    if plain.startswith("see "):
+        return Cell(plain, (Branch("refers"),), marks, plain)
+    if grammar.slash == "when" and "/" in plain and not _special(plain, grammar):
+        sides = len(grammar.slash_roles)
+        return Cell(plain, tuple(_branch(plain, grammar, i) for i in range(sides)), marks)
+    return Cell(plain, (_branch(plain, grammar, None),), marks)
+
+
+def _special(text: str, grammar: Grammar) -> str:
+    word = text.casefold()
+    if word in NO_REQUIREMENT or word in (w.casefold() for w in grammar.no_requirement):
+        return "no_requirement"
+    return "not_covered" if word in NOT_COVERED else ""
+
+
+def _branch(text: str, grammar: Grammar, side: int | None) -> Branch:
+    """Read the whole cell, or its ``side``-th reading where a slash states conditions."""
+    kind = _special(text, grammar)
+    if kind:
+        return Branch(kind)
+    alternatives: list[tuple[Term, ...]] = []
+    for alt in _OR.split(text):
+        sides = _sides(alt, grammar)
+        if side is None and grammar.slash == "and":
+            alternatives.append(tuple(t for s, r in sides for t in _part(s, grammar, r)))
+            continue
+        chosen = sides if side is None or len(sides) == 1 else sides[side : side + 1]
+        for part, role in chosen:
+            kind = _special(part, grammar)
+            if kind and len(alternatives) == 0 and " or " not in text:
+                return Branch(kind)
+            alternatives.append(_part(part, grammar, role))
+    return Branch("number", tuple(alternatives))
+
+
+def _sides(alt: str, grammar: Grammar) -> list[tuple[str, str]]:
+    """Split at the slash, each side with its role; a prefix may hold a slash of its own."""
+    match = _TERM.match(alt)
+    head = match["prefix"] if match and match["prefix"] and "/" in match["prefix"] else ""
+    parts = alt[len(head) :].split("/")
+    parts[0] = head + parts[0]
+    if len(parts) == 1:
+        return [(alt, "")]
+    if not grammar.slash:
+        raise CellError("slash-without-rule")
+    if len(parts) != len(grammar.slash_roles):
+        expected = f"{len(grammar.slash_roles)} figures, as the row's slash has"
+        raise CellError("unreadable-cell", expected, "give one figure for each meaning")
+    return list(zip((p.strip() for p in parts), grammar.slash_roles, strict=True))
+
+
+def _part(text: str, grammar: Grammar, role: str) -> tuple[Term, ...]:
+    """Read a sum: each term says its role, or the row does by position."""
+    terms = [_term(t.strip(), grammar) for t in text.split("+")]
+    if len(terms) > 1 and not grammar.plus and not all(t.role for t in terms):
+        raise CellError("plus-without-rule")
+    if grammar.plus and len(terms) > len(grammar.plus):
+        raise CellError("unreadable-cell", f"at most {len(grammar.plus)} figures in a sum")
+    roles = grammar.plus or (role,) * len(terms)
+    return tuple(
+        t if t.role else replace(t, role=role or r) for t, r in zip(terms, roles, strict=False)
+    )
+
+
+def _term(text: str, grammar: Grammar) -> Term:
+    """Read one number with its prefix, suffix and extent."""
+    match = _TERM.fullmatch(text)
+    if match is None:
+        band = _BAND.fullmatch(text)
+        if band is not None and band[1] in grammar.metrics:
+            raise CellError("cell-not-executed", "a figure (rating bands are not yet read)")
+        raise CellError("unreadable-cell", _example(grammar))
+    digits = _digits(match["number"], grammar)
+    _check_relation(match["relation"], grammar)
+    role, extent = _rest(match["rest"], grammar)
+    return Term(float(digits), digits, role, extent, _metric(match["prefix"] or "", grammar))
+
+
+def _digits(number: str, grammar: Grammar) -> str:
+    """Digits with a point, as printed otherwise; the other decimal mark is refused."""
+    other = "," if grammar.decimal == "." else "."
+    if other in number:
+        right = number.replace(other, grammar.decimal)
+        expected = f"the decimal mark {grammar.decimal!r}"
+        raise CellError("cell-decimal-mark", expected, f"is it {right}?")
+    return number.replace(",", ".")
+
+
+def _check_relation(relation: str | None, grammar: Grammar) -> None:
+    if relation and (relation in ("<=", "\u2264")) != (grammar.sense == "max"):
+        raise CellError("sense-against-metric", f"a {grammar.sense}imum, as its row or column says")
+
+
+def _rest(rest: str, grammar: Grammar) -> tuple[str, float | None]:
+    """Read what follows the number: suffix and extent."""
+    plain = rest.strip()
+    if not plain:
+        return "", None
+    allowed = {s.casefold(): s for s in (*SUFFIXES, *grammar.suffixes)}
+    match = _REST.fullmatch(plain)
+    if match is None or plain.split()[0] in EXTENT_WORDS:
+        if plain.split()[0].strip(",") in EXTENT_WORDS:
+            raise CellError("cell-not-executed", "a length such as 'for 24 in'")
+        raise CellError("unreadable-cell", _example(grammar))
+    suffix = match["suffix"].replace(".", "").casefold()
+    if suffix and suffix not in allowed:
+        if len(suffix) == 1 and rest[0] != " ":
+            raise CellError("trailing-letter", fix=f"write [{suffix}] where it is a footnote mark")
+        raise CellError("unknown-suffix", "one of " + ", ".join(sorted(allowed.values())))
+    return allowed.get(suffix, ""), _extent(match["extent"], grammar)
+
+
+def _extent(text: str | None, grammar: Grammar) -> float | None:
+    if not text:
+        return None
+    if not grammar.extent:
+        raise CellError("extent-without-rule")
+    try:
+        return units.parse(text.removesuffix("."), "length")
+    except units.UnitError as error:
+        raise CellError("unreadable-cell", error.expected, error.fix) from None
+
+
+def _metric(prefix: str, grammar: Grammar) -> str:
+    """Give the metric that a prefix names where it is not the row's own."""
+    if not prefix:
+        return ""
+    names = [n for part in prefix.split("/") for n in PREFIXES.get(part, ())]
+    if grammar.metric in names:
+        if prefix == "RSI" and not grammar.si:
+            raise CellError("prefix-against-metric", "an R-value in the printed unit, not RSI")
+        return ""
+    if prefix in grammar.metrics:
+        return prefix
+    if names:
+        raise CellError("prefix-against-metric", f"a figure for {grammar.metric}")
+    raise CellError("unreadable-cell", _example(grammar))
+
+
+def _example(grammar: Grammar) -> str:
+    number = f"0{grammar.decimal}060" if grammar.sense == "max" else "13"
+    more = ", 13+9ci" if grammar.plus else ""
+    return f"a figure such as {number}{more}, or NR or -"
+
+
+# --------------------------------------------------------------------------------- conditions
+
+
+def read_condition(
+    text: str, dimension: str, words: tuple[str, ...], unit: str = "", decimal: str = "."
+) -> Condition:
+    """Read a condition: words (``N|E|W``), or an interval whose ends become SI.
+
+    ``words`` are those that the dimension allows; without any it is a number. Errors: CellError.
+    """
+    plain = text.strip()
+    if words:
+        return _words(plain, dimension, words)
+    interval = _INTERVAL.fullmatch(plain)
+    if interval is not None:
+        low = _bound(interval[2], unit, decimal)
+        high = _bound(interval[3], unit, decimal)
+        if low is not None and high is not None and low > high:
+            raise CellError("unreadable-condition", "the lower end first")
+        closed = interval[1] == "[", interval[4] == "]"
+        return Condition(dimension, (), low, high, *closed, plain)
+    bound = _BOUND.fullmatch(plain)
+    if bound is None:
+        raise CellError("unreadable-condition", "an interval such as <=0.30 or (0.30,0.50]")
+    value = _bound(bound[2], unit, decimal)
+    sign = (bound[1] or "=").replace("\u2264", "<=").replace("\u2265", ">=")
+    low = value if sign[0] in ">=" else None
+    high = value if sign[0] in "<=" else None
+    closed = sign in (">=", "="), sign in ("<=", "=")
+    return Condition(dimension, (), low, high, *closed, plain)
+
+
+def _words(text: str, dimension: str, words: tuple[str, ...]) -> Condition:
+    known = {w.casefold(): w for w in words}
+    found = [w.strip() for w in text.split("|")]
+    wrong = [w for w in found if w.casefold() not in known]
+    if wrong:
+        raise CellError("unknown-word", "one of " + ", ".join(words))
+    return Condition(dimension, tuple(known[w.casefold()] for w in found), text=text)
+
+
+def _bound(text: str, unit: str, decimal: str) -> float | None:
+    if not text:
+        return None
+    if ("," if decimal == "." else ".") in text:
+        raise CellError("cell-decimal-mark", f"the decimal mark {decimal!r}")
+    number = float(text.replace(",", "."))
+    return units.to_si(number, unit) if unit else number

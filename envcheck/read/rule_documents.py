@@ -1,0 +1,171 @@
+"""Rule sets as documents: found by id, read as text with lines, chained from amendment to base."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
+from datetime import date
+from hashlib import sha256
+from pathlib import Path
+from typing import Any
+
+from envcheck.errors import Problem, did_you_mean, one_of, problem
+from envcheck.read.schema import check_schema
+from envcheck.read.yaml_reader import Entry, line_of, read_yaml
+
+MEANING = "ruleset.yaml"
+LONGEST_CHAIN = 12
+_ID = re.compile(r"[a-z0-9][a-z0-9-]*")
+_NOTHING = ("", "null", "~")
+
+
+@dataclass(frozen=True, slots=True)
+class Document:
+    """One ``ruleset.yaml`` with the lines of its keys."""
+
+    id: str
+    folder: Path
+    name: str
+    """File as shown in messages."""
+    data: Entry
+    sha256: str
+    """Of ``ruleset.yaml`` and the sheets in its folder."""
+
+    def line(self, *path: str | int) -> int:
+        """Line of a key, or of its nearest parent."""
+        return line_of(self.data, path)
+
+    def get(self, *path: str) -> Any:
+        """Value at a path of keys; None where a key is missing or empty."""
+        value: Any = self.data
+        for key in path:
+            value = value.get(key) if isinstance(value, Mapping) else None
+        return None if isinstance(value, str) and value in _NOTHING else value
+
+    def date(self, *path: str) -> date | None:
+        """Date at a path; the schema has seen to its form."""
+        text = self.get(*path)
+        return date.fromisoformat(text) if isinstance(text, str) else None
+
+    def shown(self, file: str) -> str:
+        """Name of a file of the folder, as shown in messages."""
+        return (Path(self.name).parent / file).as_posix()
+
+
+def default_folders(project_file: str, given: Sequence[str] = ()) -> tuple[Path, ...]:
+    """Folders to look in: those given, else the nearest ``rules`` at or above the project file.
+
+    ``-`` as project file stands for standard input and is looked up from the current folder.
+    """
+    if given:
+        return tuple(Path(folder) for folder in given)
+    start = Path.cwd() if project_file == "-" else Path(project_file).resolve().parent
+    for folder in (start, *start.parents):
+        if (folder / "rules").is_dir():
+            return (_shortened(folder / "rules"),)
+    return ()
+
+
+def _shortened(folder: Path) -> Path:
+    """Give the folder relative to the current one where it lies below it."""
+    here = Path.cwd()
+    return folder.relative_to(here) if folder.is_relative_to(here) else folder
+
+
+def known_ids(folders: Sequence[Path]) -> tuple[str, ...]:
+    """Ids of all rule sets in the folders."""
+    found = (path.parent.name for f in folders if f.is_dir() for path in f.glob(f"*/{MEANING}"))
+    return tuple(sorted(name for name in set(found) if _ID.fullmatch(name)))
+
+
+def find(
+    ruleset: str, folders: Sequence[Path], asked: tuple[str, int | None] = ("", None)
+) -> tuple[Path | None, Problem | None]:
+    """Give the folder of a rule set, or the problem; ``asked`` is the file and line that ask."""
+    file, line = asked[0] or "rule sets", asked[1]
+    if not _ID.fullmatch(ruleset):
+        return None, problem("rule-set-not-id", file, line, found=ruleset)
+    for folder in folders:
+        if (folder / ruleset / MEANING).is_file():
+            return folder / ruleset, None
+    known = known_ids(folders)
+    where = ", ".join(f.as_posix() for f in folders) or "no folder named rules"
+    expected = f"{one_of(known)} in {where}" if known else f"a rule set in {where}"
+    fix = did_you_mean(ruleset, known)
+    return None, problem("unknown-rule-set", file, line, found=ruleset, expected=expected, fix=fix)
+
+
+def read_document(folder: Path, problems: list[Problem]) -> Document | None:
+    """Read and check one ``ruleset.yaml``; None where it cannot be used."""
+    path = folder / MEANING
+    shown = path.as_posix()
+    try:
+        raw = path.read_bytes()
+    except OSError as error:
+        problems.append(problem("file-unreadable", shown, None, found=error.strerror or "?"))
+        return None
+    data, found = read_yaml(raw, shown, text_only=True)
+    problems += found
+    if data is None:
+        return None
+    wrong = check_schema(data, shown, "rules")
+    problems += wrong
+    if wrong:
+        return None
+    digest = sha256(raw)
+    for sheet in sorted(folder.glob("*.csv")):
+        digest.update(sheet.read_bytes())
+    document = Document(folder.name, folder, shown, data, digest.hexdigest())
+    stated = document.get("ruleset")
+    if stated != folder.name:
+        line = document.line("ruleset")
+        fill = {"found": stated, "expected": folder.name}
+        problems.append(problem("rule-set-id-differs", shown, line, **fill))
+    _check_dates(document, problems)
+    return document
+
+
+def _check_dates(document: Document, problems: list[Problem]) -> None:
+    """Dates exist in the calendar, and the last day comes after the first."""
+    found: dict[str, date] = {}
+    for key in ("from", "until"):
+        try:
+            value = document.date("effective", key)
+        except ValueError:
+            line = document.line("effective", key)
+            text = document.get("effective", key)
+            problems.append(problem("bad-date", document.name, line, found=text, key=key))
+            continue
+        if value is not None:
+            found[key] = value
+    if len(found) == 2 and found["until"] <= found["from"]:
+        line = document.line("effective", "until")
+        fill = {"found": found["until"], "expected": f"a day after {found['from']}"}
+        problems.append(problem("dates-reversed", document.name, line, **fill))
+
+
+def read_chain(
+    ruleset: str,
+    folders: Sequence[Path],
+    asked: tuple[str, int | None],
+    problems: list[Problem],
+) -> tuple[Document, ...]:
+    """Read a rule set and what it amends, base first; empty where a link is missing."""
+    chain: list[Document] = []
+    wanted: str | None = ruleset
+    while wanted is not None:
+        if wanted in (document.id for document in chain):
+            names = " over ".join(d.id for d in chain) + f" over {wanted}"
+            problems.append(problem("circular-base", asked[0], asked[1], found=names))
+            return ()
+        folder, missing = find(wanted, folders, asked)
+        if missing is not None:
+            problems.append(missing)
+        document = read_document(folder, problems) if folder is not None else None
+        if document is None:
+            return ()
+        chain.append(document)
+        wanted = document.get("overlay", "base")
+        asked = (document.name, document.line("overlay", "base"))
+    return tuple(reversed(chain))

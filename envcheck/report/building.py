@@ -1,0 +1,132 @@
+"""The building as a whole: area ratios, means, and whether areas close."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from envcheck import units
+from envcheck.model.judged import Closing, Judged, Mean, Ratio
+from envcheck.report import numbers, wording
+from envcheck.report.inert import clean
+
+
+@dataclass(frozen=True, slots=True)
+class RatioView:
+    """An area ratio with its parts."""
+
+    name: str
+    sum: str
+    """``2704 / 10720 ft2 = 25.2 %``"""
+    cap: str
+    state: str
+    missing: tuple[str, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class MeanView:
+    """An area-weighted mean."""
+
+    rule_set: str
+    group: str
+    clause: str
+    sum: str
+    worst: str
+    cap: str
+
+
+@dataclass(frozen=True, slots=True)
+class ClosingView:
+    """Gross = net + openings of one surface."""
+
+    surface: str
+    sheet: str
+    sum: str
+    state: str
+
+
+@dataclass(frozen=True, slots=True)
+class Building:
+    """Everything about the building as a whole."""
+
+    ratios: tuple[RatioView, ...]
+    means: tuple[MeanView, ...]
+    closings: tuple[ClosingView, ...]
+
+
+CLOSES_WITHIN = 5e-3
+"""Share of the gross area that roundings on drawings may leave over."""
+MOST_PARTS = 40
+
+
+def build(judged: Judged, system: str) -> Building:
+    """Write the sums of the building."""
+    return Building(
+        tuple(_ratio(ratio, system) for ratio in judged.ratios),
+        tuple(_mean(mean, system) for mean in judged.means),
+        tuple(_closing(closing, system) for closing in judged.closings),
+    )
+
+
+def _ratio(ratio: Ratio, system: str) -> RatioView:
+    unit = units.label("area", system)
+    top, bottom = (numbers.area(a, system) for a in (ratio.numerator, ratio.denominator))
+    cap = f"at most {numbers.percent(ratio.most)}" if ratio.most is not None else "no cap"
+    if ratio.missing:
+        state = "not decided"
+    elif ratio.most is None:
+        state = "for information"
+    else:
+        state = "cap passed" if ratio.passed else "within the cap"
+    return RatioView(
+        name=clean(wording.RATIOS.get(ratio.name, wording.plain(ratio.name))),
+        sum=f"{top} / {bottom} {unit} = {numbers.percent(ratio.value, 2)}",
+        cap=clean(f"{cap}, {ratio.clause}" if ratio.clause else cap),
+        state=state,
+        missing=tuple(map(clean, ratio.missing)),
+    )
+
+
+def _mean(mean: Mean, system: str) -> MeanView:
+    """Sum the printed parts, so that a calculator gives the printed mean."""
+    places = numbers.DECIMALS["u_factor", system]
+    parts = []
+    total = 0.0
+    for tag, area, u_factor in mean.members:
+        shown = numbers.in_system(u_factor, "u_factor", system)
+        parts.append(f"{numbers.area(area, system)} * {numbers.fixed(shown, places)} [{clean(tag)}]")
+        total += float(numbers.area(area, system))
+    value = numbers.fixed(numbers.in_system(mean.value, "u_factor", system), places)
+    unit = units.label("u_factor", system)
+    worst = next((u for tag, _, u in mean.members if tag == mean.worst), None)
+    worst_text = clean(mean.worst)
+    if worst is not None:
+        shown = numbers.fixed(numbers.in_system(worst, "u_factor", system), places)
+        worst_text += f" with U {shown}"
+    return MeanView(
+        rule_set=clean(mean.ruleset),
+        group=clean(mean.group),
+        clause=clean(mean.clause),
+        sum=f"({' + '.join(parts)}) / {numbers.trimmed(total, 2)} = {value} {unit}",
+        worst=worst_text,
+        cap=clean(mean.cap),
+    )
+
+
+def _closing(closing: Closing, system: str) -> ClosingView:
+    unit = units.label("area", system)
+    parts = [f"{numbers.area(area, system)} {clean(name)}" for name, area in closing.parts]
+    if len(parts) > MOST_PARTS:
+        parts = [*parts[:MOST_PARTS], f"... ({len(closing.parts)} parts in all)"]
+    share = closing.missing / closing.gross if closing.gross else 0.0
+    if abs(share) <= CLOSES_WITHIN:
+        state = "closes"
+    else:
+        word = "not accounted for" if closing.missing > 0 else "too much"
+        area = numbers.area(abs(closing.missing), system)
+        state = f"{area} {unit} ({numbers.percent(abs(share))}) {word}"
+    return ClosingView(
+        surface=clean(closing.surface),
+        sheet=clean(closing.sheet),
+        sum=f"gross {numbers.area(closing.gross, system)} {unit}; parts {' + '.join(parts) or '0'}",
+        state=state,
+    )

@@ -1,0 +1,166 @@
+"""Assemblies in drawing order: layers with their sources, method, bounds, values beside."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+
+from envcheck import units
+from envcheck.model.judged import Line
+from envcheck.model.project import Assembly, Project
+from envcheck.model.solved import Beside, LayerRow, Solved
+from envcheck.report import numbers, wording
+from envcheck.report.inert import clean
+
+
+@dataclass(frozen=True, slots=True)
+class LayerView:
+    """One layer as listed."""
+
+    title: str
+    thickness: str
+    conductivity: str
+    resistance: str
+    source: str
+    note: str
+
+
+@dataclass(frozen=True, slots=True)
+class BesideView:
+    """A value by another route."""
+
+    name: str
+    value: str
+    distance: str
+    """From the value that decides, in per cent with sign."""
+    note: str
+
+
+@dataclass(frozen=True, slots=True)
+class AssemblyView:
+    """One assembly solved under one setting."""
+
+    assembly: str
+    title: str
+    sheet: str
+    elements: tuple[str, ...]
+    declared: str
+    metric: str
+    symbol: str
+    method: str
+    method_from: str
+    value: str
+    unit: str
+    missing: tuple[str, ...]
+    bracket: str
+    beside: tuple[BesideView, ...]
+    films: tuple[str, ...]
+    layers: tuple[LayerView, ...]
+    conductivity_unit: str
+    resistance_unit: str
+    assumptions: tuple[str, ...]
+
+
+def build(project: Project, lines: Iterable[Line], system: str) -> tuple[AssemblyView, ...]:
+    """Every assembly that was solved, in drawing order, once per setting."""
+    found: dict[str, dict[int, tuple[Solved, list[str]]]] = {}
+    for line in lines:
+        if line.solved is not None:
+            by_setting = found.setdefault(line.solved.assembly, {})
+            _, tags = by_setting.setdefault(id(line.solved), (line.solved, []))
+            if line.element not in tags:
+                tags.append(line.element)
+    return tuple(
+        assembly_view(assembly, solved, tags, system)
+        for assembly in project.assemblies.values()
+        for solved, tags in found.get(assembly.id, {}).values()
+    )
+
+
+def assembly_view(
+    assembly: Assembly, solved: Solved, tags: Iterable[str], system: str
+) -> AssemblyView:
+    """Write one solved assembly."""
+    setting = solved.setting
+    metric = setting.metric
+    method = wording.METHODS.get(setting.method, wording.plain(setting.method))
+    return AssemblyView(
+        assembly=clean(assembly.id),
+        title=clean(assembly.title),
+        sheet=clean(assembly.sheet),
+        elements=tuple(map(clean, tags)),
+        declared=_declared(assembly),
+        metric=wording.METRICS.get(metric, metric),
+        symbol=numbers.symbol(metric),
+        method=method,
+        method_from=clean(setting.method_from),
+        value="" if solved.value is None else shown(solved.value, metric, system),
+        unit=numbers.unit(metric, system),
+        missing=tuple(map(clean, solved.missing)),
+        bracket=bracket(solved, system),
+        beside=tuple(_beside(beside, solved, system) for beside in solved.beside),
+        films=_films(solved, system) if solved.layers else (),
+        layers=tuple(_layer(layer, system) for layer in solved.layers),
+        conductivity_unit=units.label("conductivity", system),
+        resistance_unit=units.label("resistance", system),
+        assumptions=tuple(map(clean, solved.assumptions)),
+    )
+
+
+def shown(value: float, metric: str, system: str) -> str:
+    """A value of a metric, unrounded, without its unit."""
+    converted = numbers.in_system(value, numbers.quantity(metric), system)
+    return numbers.fixed(converted, numbers.decimals(metric, system))
+
+
+def bracket(solved: Solved, system: str) -> str:
+    """The proven bounds of the drawn model, or why there are none."""
+    note = clean(solved.bracket_note)
+    if solved.low is None or solved.high is None:
+        return note
+    metric = solved.setting.metric
+    low, high = (shown(value, metric, system) for value in (solved.low, solved.high))
+    width = f", {numbers.percent(solved.high / solved.low - 1.0)} apart" if solved.low else ""
+    return f"{low} to {high}{width}" + (f"; {note}" if note else "")
+
+
+def _declared(assembly: Assembly) -> str:
+    declared = assembly.declared
+    if declared is None:
+        return ""
+    return clean(f"{declared.text} on {declared.sheet}" if declared.sheet else declared.text)
+
+
+def _beside(beside: Beside, solved: Solved, system: str) -> BesideView:
+    metric = solved.setting.metric
+    value = shown(beside.value, metric, system)
+    distance = ""
+    if solved.value:
+        distance = f"{numbers.signed(100.0 * (beside.value / solved.value - 1.0), 1)} %"
+    name = wording.METHODS.get(beside.name, wording.plain(beside.name))
+    return BesideView(clean(name), value, distance, clean(beside.note))
+
+
+def _films(solved: Solved, system: str) -> tuple[str, ...]:
+    setting, unit = solved.setting, units.label("resistance", system)
+    if setting.metric not in ("U_assembly", "R_total"):
+        return ()
+    pairs = (
+        ("outside", setting.outside_film, setting.outside_film_from),
+        ("inside", setting.inside_film, setting.inside_film_from),
+    )
+    return tuple(
+        clean(f"{side} film {numbers.resistance(value, system)} {unit} ({where})")
+        for side, value, where in pairs
+    )
+
+
+def _layer(layer: LayerRow, system: str) -> LayerView:
+    return LayerView(
+        title=clean(layer.title),
+        thickness=numbers.length(layer.thickness, system),
+        conductivity=numbers.conductivity(layer.conductivity, system),
+        resistance=numbers.resistance(layer.resistance, system),
+        source=clean(layer.source) or "no source",
+        note=clean(layer.note),
+    )

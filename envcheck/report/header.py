@@ -1,0 +1,216 @@
+"""Head of the report: the project, and each rule set with its status, zone and conventions."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass
+
+from envcheck.model.judged import Line
+from envcheck.model.project import Project
+from envcheck.model.ruleset import Conventions, RuleSet
+from envcheck.report import numbers, wording
+from envcheck.report.inert import clean
+from envcheck.report.parts import Pair
+
+
+@dataclass(frozen=True, slots=True)
+class Convention:
+    """How this code counts one thing, and where that is said."""
+
+    topic: str
+    counted: str
+    where: str
+
+
+@dataclass(frozen=True, slots=True)
+class RuleSetView:
+    """A rule set as the head names it."""
+
+    id: str
+    title: str
+    decides: bool
+    facts: tuple[Pair, ...]
+    conventions: tuple[Convention, ...]
+    units_note: str
+    """Which unit stands behind each letter of the table."""
+    printed_apart: bool
+    """The report's units are not those in which the table is printed and compared."""
+
+
+def title(project: Project) -> str:
+    """Title and reference."""
+    reference = f" ({project.reference})" if project.reference else ""
+    return clean(project.title + reference)
+
+
+def facts(project: Project, date: str) -> tuple[Pair, ...]:
+    """Title block of the project; the report date is the project's or the one asked for."""
+    report_date = date or (project.report_date.isoformat() if project.report_date else "")
+    permit = project.permit_application_date
+    pairs = (
+        ("place", project.site.place),
+        ("scope", wording.SCOPES.get(project.scope, wording.plain(project.scope))),
+        ("permit application", permit.isoformat() if permit else ""),
+        ("report date", report_date or "not stated"),
+        ("prepared by", project.prepared_by or "not stated"),
+        ("note", project.invented),
+    )
+    return tuple(Pair(label, clean(text)) for label, text in pairs if text)
+
+
+def rule_set(
+    ruleset: RuleSet, lines: Iterable[Line], project: Project, system: str
+) -> RuleSetView:
+    """Head of one rule set; the zone comes from the trail of its lines."""
+    own = [line for line in lines if line.ruleset == ruleset.id]
+    decides = all(choice.decides for choice in project.rule_sets if choice.id == ruleset.id)
+    printed = {numbers.system_of(line.limit.unit) for line in own if line.limit} - {""}
+    pairs = (
+        ("jurisdiction", ruleset.jurisdiction),
+        ("status", status(ruleset)),
+        ("documents", "; ".join(_documents(ruleset))),
+        ("zone", _zone(ruleset, own, project)),
+        ("weight", "" if decides else "information only, decides nothing"),
+    )
+    return RuleSetView(
+        id=clean(ruleset.id),
+        title=clean(ruleset.title),
+        decides=decides,
+        facts=tuple(Pair(label, clean(text)) for label, text in pairs if text),
+        conventions=tuple(_conventions(ruleset, system)),
+        units_note=_units_note(own, system),
+        printed_apart=bool(printed - {system}),
+    )
+
+
+def status(ruleset: RuleSet) -> str:
+    """Say what the limit tables are, and who checked them."""
+    word = wording.STATUS.get(ruleset.status, ruleset.status)
+    kind = f"invented {word}, no law anywhere" if ruleset.invented else word
+    return f"{kind}; checked by: {ruleset.checked_by or 'nobody named'}"
+
+
+def _documents(ruleset: RuleSet) -> Iterable[str]:
+    for edition in ruleset.chain:
+        words = " ".join(filter(None, (edition.title, edition.edition, edition.clause)))
+        start, end = edition.effective_from, edition.effective_until
+        dates = f"from {start.isoformat()}" if start else ""
+        dates += f" until {end.isoformat()}" if end else ""
+        force = "" if edition.in_force else "not in force on the date tested"
+        notes = ", ".join(filter(None, (dates.strip(), force)))
+        yield f"{words} ({notes})" if notes else words
+
+
+def _zone(ruleset: RuleSet, lines: Iterable[Line], project: Project) -> str:
+    for line in lines:
+        for step, chosen, why in line.trail:
+            if step == "zone":
+                return f"{chosen} ({why})" if why else chosen
+    for stated in project.site.zones:
+        if stated.ruleset in ("", ruleset.id):
+            return f"{stated.zone} ({stated.source or 'stated by the project'})"
+    return ""
+
+
+def _units_note(lines: Iterable[Line], system: str) -> str:
+    found: dict[str, list[str]] = {}
+    for metric in dict.fromkeys(line.metric for line in lines):
+        letters = found.setdefault(numbers.unit(metric, system), [])
+        if numbers.symbol(metric) not in letters:
+            letters.append(numbers.symbol(metric))
+    return "; ".join(
+        f"{' and '.join(letters)} in {unit}" for unit, letters in found.items() if unit
+    )
+
+
+def _conventions(ruleset: RuleSet, system: str) -> Iterable[Convention]:
+    conv = ruleset.conventions
+    yield _said(conv, "surface films", _films(conv), "films")
+    for methods, clause in _methods(conv):
+        yield Convention("method", clean(methods), clean(clause))
+    spaces = wording.AIR_SPACES.get(conv.air_spaces, conv.air_spaces)
+    yield _said(conv, "air spaces", spaces, "air_spaces")
+    cladding = wording.CLADDING.get(conv.cladding, conv.cladding)
+    yield _said(conv, "ventilated cladding", cladding, "cladding")
+    yield _said(conv, "fasteners", wording.FASTENERS.get(conv.fasteners, conv.fasteners), "fasteners")
+    yield _said(conv, "tapered layers", _tapered(conv, system), "tapered")
+    crossed = wording.CROSSED.get(conv.crossed_insulation, conv.crossed_insulation)
+    yield _said(conv, "crossed insulation", crossed, "crossed_insulation")
+    for category, share, clause in conv.framing_shares:
+        yield Convention("framing share", f"{category}: {numbers.percent(share)}", clean(clause))
+    if not conv.framing_shares:
+        yield Convention("framing share", "none is built in: each as the project states", "project")
+    for test in conv.class_tests:
+        counted = f"{test.category}: {wording.plain(test.measure)} at least {test.text}"
+        counted += f", counted {wording.plain(test.counted)}"
+        yield Convention("class test", clean(counted), clean(test.clause))
+    for category, kinds in conv.accepted_evidence.items():
+        counted = f"{category}: {', '.join(kinds)}"
+        yield _said(conv, "accepted evidence", counted, "accepted_evidence", "evidence")
+    if conv.dimensions_measured:
+        counted = f"{conv.dimensions_measured} dimensions"
+        yield _said(conv, "areas", counted, "dimensions_measured", "measured")
+    rule = wording.COMPARE.get(ruleset.compare, wording.plain(ruleset.compare))
+    where = ruleset.rounding_clause or "rule set"
+    yield Convention("rounding", rule, clean(where if ruleset.rounding_stated else wording.OUR_DEFAULT))
+
+
+def _said(conv: Conventions, topic: str, counted: str, *keys: str) -> Convention:
+    where = next((conv.where[key] for key in keys if key in conv.where), wording.OUR_DEFAULT)
+    return Convention(topic, clean(counted), clean(where))
+
+
+def _films(conv: Conventions) -> str:
+    if conv.film_set in wording.FILM_SETS:
+        return wording.FILM_SETS[conv.film_set]
+    return f"{conv.film_set or 'table of the rule set'}"
+
+
+def _methods(conv: Conventions) -> Iterable[tuple[str, str]]:
+    """Methods with their categories, those of one clause and method together."""
+    found: dict[tuple[str, float | None, tuple[str, ...], str], list[str]] = {}
+    for rule in conv.methods:
+        key = (rule.method, rule.weight, rule.refused, rule.clause)
+        found.setdefault(key, []).append(rule.category)
+    for (method, weight, refused, clause), categories in found.items():
+        text = wording.METHODS.get(method, wording.plain(method))
+        text += f" (weight {weight:g})" if weight is not None else ""
+        if refused:
+            names = ", ".join(wording.METHODS.get(name, wording.plain(name)) for name in refused)
+            text += f"; not accepted: {names}"
+        yield f"{', '.join(categories)}: {text}", clause
+    if not conv.methods:
+        yield "none named: each line says what was assumed", wording.OUR_DEFAULT
+
+
+def _tapered(conv: Conventions, system: str) -> str:
+    text = wording.TAPERED.get(conv.tapered, conv.tapered)
+    if conv.tapered_mean_within is None:
+        return text
+    return f"{text}; the mean where it varies by no more than " + numbers.length(
+        conv.tapered_mean_within, system
+    )
+
+
+def not_judged(rulesets: Mapping[str, RuleSet]) -> tuple[str, ...]:
+    """What the rule sets say they do not cover, and trade-offs that are not computed."""
+    found: dict[str, None] = {}
+    for ruleset in rulesets.values():
+        for text in ruleset.not_judged:
+            found[clean(text)] = None
+        if ruleset.tradeoff:
+            found[clean(f"not computed: {ruleset.tradeoff}")] = None
+    return tuple(found)
+
+
+def hashes(project: Project, rulesets: Mapping[str, RuleSet]) -> tuple[Pair, ...]:
+    """SHA-256 of the project file and of every document of each rule set."""
+    found = [Pair(clean(project.file), project.sha256)] if project.sha256 else []
+    for ruleset in rulesets.values():
+        for edition in ruleset.chain:
+            pair = Pair(f"rule set {clean(edition.id)}", edition.sha256)
+            if edition.sha256 and pair not in found:
+                found.append(pair)
+    return tuple(found)
+
+

@@ -1,0 +1,133 @@
+"""Lists of the report: summary, open items, claims, findings, assumptions."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+
+from envcheck.model.judged import Finding, Judged, Line
+from envcheck.model.project import Project
+from envcheck.report import wording
+from envcheck.report.inert import clean
+from envcheck.report.rows import Row
+
+
+@dataclass(frozen=True, slots=True)
+class Item:
+    """Something that waits for somebody, with where it belongs."""
+
+    subject: str
+    sheet: str
+    what: str
+    lines: tuple[str, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class FindingView:
+    """What a cross-check saw, in words."""
+
+    check: str
+    severity: str
+    severity_text: str
+    subject: str
+    sheet: str
+    seen: str
+    suggests: str
+    settles: str
+    answered: str
+
+
+def summary(judged: Judged) -> str:
+    """Count the lines that decide and say what the report does not do."""
+    lines = [line for line in judged.lines if line.decides]
+    over = sum(line.verdict == "fail" for line in lines)
+    waiting = sum(line.open for line in lines)
+    stop = sum(unsettled(finding) for finding in judged.findings)
+    counts = f"{wording.plural(len(lines), 'line')}: {over} over their limit, {waiting} open"
+    if stop:
+        counts += f"; {wording.plural(stop, 'finding')} to be settled"
+    return f"{counts}. {wording.APPROVES_NOTHING}"
+
+
+def unsettled(finding: Finding) -> bool:
+    """Whether a finding counts as open."""
+    return finding.severity == "E" and not finding.answered
+
+
+def open_items(rows: Iterable[Row], judged: Judged) -> tuple[Item, ...]:
+    """Open lines with their reasons, then findings that must be settled."""
+    found = [
+        Item(row.tag, row.sheet, row.verdict_text, (*row.reasons, *row.notes))
+        for row in rows
+        if row.open
+    ]
+    for finding in judged.findings:
+        if unsettled(finding):
+            lines = tuple(filter(None, (clean(finding.seen), clean(finding.settles))))
+            what = f"finding {clean(finding.check)}"
+            found.append(Item(clean(finding.subject), clean(finding.sheet), what, lines))
+    return tuple(found)
+
+
+def claims(project: Project) -> tuple[Item, ...]:
+    """Exceptions that somebody claims: a claim is not a pass."""
+    found = []
+    for claim in project.exceptions:
+        element = project.elements.get(claim.element)
+        if not claim.evidence:
+            evidence = "no evidence named"
+        elif claim.evidence_found:
+            evidence = f"evidence: {claim.evidence}"
+        else:
+            evidence = f"evidence named but not found: {claim.evidence}"
+        lines = [
+            f"claimed by {claim.claimed_by}" if claim.claimed_by else "nobody is named as claiming",
+            claim.reason,
+            evidence,
+        ]
+        found.append(
+            Item(
+                clean(claim.element),
+                clean(element.sheet) if element else "",
+                clean(f"exception of clause {claim.clause} claimed"),
+                tuple(clean(line) for line in lines if line),
+            )
+        )
+    return tuple(found)
+
+
+def findings(found: Iterable[Finding]) -> tuple[FindingView, ...]:
+    """Findings, the graver first, in order of finding within."""
+    rank = {severity: number for number, severity in enumerate(wording.SEVERITIES)}
+    return tuple(
+        FindingView(
+            check=clean(finding.check),
+            severity=finding.severity,
+            severity_text=wording.SEVERITIES.get(finding.severity, finding.severity),
+            subject=clean(finding.subject),
+            sheet=clean(finding.sheet),
+            seen=clean(finding.seen),
+            suggests=clean(finding.suggests),
+            settles=clean(finding.settles),
+            answered=clean(finding.answered),
+        )
+        for finding in sorted(found, key=lambda f: rank.get(f.severity, len(rank)))
+    )
+
+
+def assumptions(lines: Iterable[Line]) -> tuple[str, ...]:
+    """What the figures take for granted, each once, with the assemblies that it concerns."""
+    found: dict[str, dict[str, None]] = {}
+    seen: set[int] = set()
+    for line in lines:
+        if line.solved is None or id(line.solved) in seen:
+            continue
+        seen.add(id(line.solved))
+        for text in line.solved.assumptions:
+            found.setdefault(clean(text), {})[clean(line.solved.assembly)] = None
+    return tuple(f"{wording.listed(list(who))}: {text}" for text, who in found.items())
+
+
+def remarks(texts: Iterable[str]) -> tuple[str, ...]:
+    """Remarks of the judge, each once."""
+    return tuple(dict.fromkeys(map(clean, texts)))

@@ -1,0 +1,147 @@
+"""Display rounding and units: the only place where the report makes text of a number."""
+
+from __future__ import annotations
+
+import re
+from decimal import ROUND_HALF_UP, Decimal
+from functools import lru_cache
+
+from envcheck import units
+
+QUANTITIES = {
+    "U_assembly": "u_factor",
+    "U_product": "u_factor",
+    "C_factor": "u_factor",
+    "F_factor": "linear_transmittance",
+    "R_insulation": "resistance",
+    "R_total": "resistance",
+}
+"""Metric -> quantity of ``units``; every other metric is a plain number."""
+SYMBOLS = {
+    "U_assembly": "U",
+    "U_product": "U",
+    "C_factor": "C",
+    "F_factor": "F",
+    "R_insulation": "R",
+    "R_total": "R",
+}
+DECIMALS = {
+    ("u_factor", "IP"): 4,
+    ("u_factor", "SI"): 3,
+    ("linear_transmittance", "IP"): 4,
+    ("linear_transmittance", "SI"): 3,
+    ("resistance", "IP"): 2,
+    ("resistance", "SI"): 3,
+}
+"""Of an unrounded value; plain numbers (SHGC, VT) have 3."""
+SIGNIFICANT = 12
+"""Digits of a binary number that mean anything; noise beyond them never decides a half."""
+
+
+def fixed(value: float, decimals: int) -> str:
+    """Round half-up to ``decimals`` places, after cutting binary noise."""
+    number = Decimal(f"{value:.{SIGNIFICANT}g}")
+    rounded = number.quantize(Decimal(1).scaleb(-decimals), ROUND_HALF_UP)
+    return f"{abs(rounded) if rounded.is_zero() else rounded:f}"
+
+
+def trimmed(value: float, decimals: int) -> str:
+    """Round like :func:`fixed` and cut trailing zeros behind the point."""
+    text = fixed(value, decimals)
+    return text.rstrip("0").rstrip(".") if "." in text else text
+
+
+def significant(value: float, digits: int) -> str:
+    """Round to ``digits`` significant digits, trailing zeros cut, never with an exponent."""
+    text = f"{value:.{digits}g}"
+    if "e" in text:
+        text = f"{Decimal(text):f}"
+    return text.rstrip("0").rstrip(".") if "." in text else text
+
+
+def quantity(metric: str) -> str:
+    """Name the quantity that a metric is measured in."""
+    return QUANTITIES.get(metric, "number")
+
+
+def symbol(metric: str) -> str:
+    """Give the letter that stands before a value: U, C, F, R, SHGC, VT."""
+    return SYMBOLS.get(metric, metric)
+
+
+def unit(metric: str, system: str) -> str:
+    """Give the unit of a metric as printed in ``system``."""
+    return units.label(quantity(metric), system)
+
+
+def decimals(metric: str, system: str, printed: int = 0) -> int:
+    """Decimals of an unrounded value: one more than the printed limit has, at the least."""
+    return max(DECIMALS.get((quantity(metric), system), 3), printed + 1)
+
+
+@lru_cache(maxsize=256)
+def factor(quantity: str, system: str) -> float:
+    """SI value of one printed unit of a quantity; no use for absolute temperatures."""
+    spelling = units.label(quantity, system)
+    return units.to_si(1.0, spelling, quantity) if spelling else 1.0
+
+
+def in_system(value: float, quantity: str, system: str) -> float:
+    """Express an SI number in the printed unit of ``system``."""
+    if quantity == "temperature":
+        return units.in_system(value, quantity, system)
+    return value / factor(quantity, system)
+
+
+def in_unit(value: float, spelling: str) -> float:
+    """Express an SI number in a printed unit; an empty spelling is a plain number."""
+    return units.convert(value, spelling) if spelling else value
+
+
+def system_of(spelling: str) -> str:
+    """Tell which system a printed unit belongs to: ``SI``, ``IP`` or empty for plain numbers."""
+    if not spelling:
+        return ""
+    return "IP" if re.search(r"Btu|ft|\bin\b|F\b", spelling) else "SI"
+
+
+def length(value: float, system: str) -> str:
+    """Write a thickness with its unit: ``3.625 in`` or ``92.1 mm``; empty for none."""
+    if not value:
+        return ""
+    shown = in_system(value, "thickness", system)
+    return f"{trimmed(shown, 4 if system == 'IP' else 1)} {units.label('thickness', system)}"
+
+
+def conductivity(value: float | None, system: str) -> str:
+    """Write a conductivity without its unit, to four significant digits."""
+    return "" if value is None else significant(in_system(value, "conductivity", system), 4)
+
+
+def resistance(value: float | None, system: str) -> str:
+    """Write an R-value without its unit, trailing zeros cut."""
+    if value is None:
+        return ""
+    return trimmed(in_system(value, "resistance", system), 3)
+
+
+def area(value: float, system: str) -> str:
+    """Write an area without its unit, trailing zeros cut."""
+    return trimmed(in_system(value, "area", system), 1 if system == "IP" else 2)
+
+
+def percent(share: float, decimals: int = 1) -> str:
+    """Write a share as per cent, trailing zeros cut."""
+    return f"{trimmed(100.0 * share, decimals)} %"
+
+
+def signed(value: float, decimals: int) -> str:
+    """Write a difference with its sign; nothing rounds to a signed zero."""
+    text = fixed(value, decimals)
+    return text if text.startswith("-") or not text.strip("0.") else f"+{text}"
+
+
+def temperature(value: float, system: str) -> str:
+    """Write an air or interface temperature given in degrees C, with its unit."""
+    shown = units.in_system(value, "temperature", system)
+    return f"{fixed(shown, 1)} {units.label('temperature', system)}"

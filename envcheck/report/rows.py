@@ -1,0 +1,308 @@
+"""One row per line: value, limit as printed, room left, verdict, and the sum to repeat by hand."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass
+
+from envcheck import units
+from envcheck.model.judged import Comparison, Line
+from envcheck.model.project import Element, Project
+from envcheck.model.ruleset import Limit, RuleSet
+from envcheck.model.solved import Solved
+from envcheck.report import numbers, wording, worksheet
+from envcheck.report.inert import clean
+from envcheck.report.parts import Pair
+
+
+@dataclass(frozen=True, slots=True)
+class Figure:
+    """A number as printed."""
+
+    text: str
+    unit: str
+
+    @property
+    def number(self) -> float | None:
+        """The printed number; None where nothing is printed."""
+        return float(self.text) if self.text else None
+
+
+NO_FIGURE = Figure("", "")
+
+
+@dataclass(frozen=True, slots=True)
+class PathRow:
+    """One of several paths of a line."""
+
+    path: str
+    state: str
+    value: str
+    limit: str
+    why: str
+
+
+@dataclass(frozen=True, slots=True)
+class Row:
+    """One line of the check."""
+
+    rule_set: str
+    decides: bool
+    tag: str
+    sheet: str
+    surface: str
+    assembly: str
+    built_as: str
+    category: str
+    metric: str
+    symbol: str
+    amount: Figure
+    """Area, perimeter or count."""
+    value: Figure
+    """Unrounded, in the units of the report."""
+    compared: Figure
+    """After the code's rounding, in the printed unit."""
+    low: Figure
+    high: Figure
+    """Bounds of the drawn model, in the units of the report."""
+    limit: str
+    """As printed, with its sense."""
+    limit_number: Figure
+    limit_source: str
+    room: Figure
+    """Left to the limit, in the printed unit; negative = over."""
+    room_share: str
+    """The same in per cent of the limit."""
+    verdict: str
+    verdict_text: str
+    open: bool
+    reasons: tuple[str, ...]
+    notes: tuple[str, ...]
+    paths: tuple[PathRow, ...]
+    hand_check: str
+    trail: tuple[Pair, ...]
+
+
+def build(
+    lines: Iterable[Line], project: Project, rulesets: Mapping[str, RuleSet], system: str
+) -> tuple[Row, ...]:
+    """Make the rows in the order of ``lines``; sums of one solved assembly are written once."""
+    sums: dict[tuple[int, str], str] = {}
+    return tuple(_row(line, project, rulesets, system, sums) for line in lines)
+
+
+def _row(
+    line: Line,
+    project: Project,
+    rulesets: Mapping[str, RuleSet],
+    system: str,
+    sums: dict[tuple[int, str], str],
+) -> Row:
+    element = project.elements.get(line.element)
+    assembly = project.assemblies.get(element.assembly) if element else None
+    own = line.own or line.comparison
+    value = value_of(line, system)
+    return Row(
+        rule_set=line.ruleset,
+        decides=line.decides,
+        tag=clean(line.element),
+        sheet=clean(_sheet(line, project)),
+        surface=clean(element.surface) if element else "",
+        assembly=clean(assembly.id) if assembly else "",
+        built_as=clean(assembly.title) if assembly else "",
+        category=line.category,
+        metric=line.metric,
+        symbol=numbers.symbol(line.metric),
+        amount=amount(element, system),
+        value=value,
+        compared=_compared(line.comparison),
+        low=_bound(line, system, high=False),
+        high=_bound(line, system, high=True),
+        limit=limit_text(line),
+        limit_number=_limit_number(line.comparison),
+        limit_source=limit_source(line.limit, line.ruleset),
+        room=_room(own, line.metric),
+        room_share=_room_share(own),
+        verdict=line.verdict,
+        verdict_text=verdict_text(line),
+        open=line.open,
+        reasons=tuple(map(clean, line.reasons)),
+        notes=notes(line, system),
+        paths=tuple(map(_path, line.paths)),
+        hand_check=_hand_check(line, system, value, sums),
+        trail=tuple(_choice(step, chosen, why) for step, chosen, why in line.trail),
+    )
+
+
+def _sheet(line: Line, project: Project) -> str:
+    element = project.elements.get(line.element)
+    if element:
+        return element.sheet
+    surface = project.surfaces.get(line.element)
+    return surface.sheet if surface else ""
+
+
+def amount(element: Element | None, system: str) -> Figure:
+    """Area, perimeter or count of an element."""
+    if element is None:
+        return NO_FIGURE
+    area = element.net_area if element.net_area is not None else element.gross_area
+    if area is not None:
+        return Figure(numbers.area(area, system), units.label("area", system))
+    if element.perimeter is not None:
+        shown = numbers.in_system(element.perimeter, "run", system)
+        return Figure(numbers.trimmed(shown, 2), units.label("run", system))
+    if element.count is not None:
+        return Figure(numbers.trimmed(element.count, 2), "count")
+    return NO_FIGURE
+
+
+def value_of(line: Line, system: str) -> Figure:
+    """The element's own value, unrounded, in the units of the report."""
+    own = line.own or line.comparison
+    places = numbers.decimals(line.metric, system, own.decimals if own else 0)
+    unit = numbers.unit(line.metric, system)
+    if own is not None:
+        if numbers.system_of(own.unit) in ("", system):
+            return Figure(numbers.fixed(own.value, places), unit)
+        si = units.to_si(own.value, own.unit)
+        shown = numbers.in_system(si, numbers.quantity(line.metric), system)
+        return Figure(numbers.fixed(shown, numbers.decimals(line.metric, system)), unit)
+    solved = line.solved
+    if solved is None or solved.value is None or solved.setting.metric != line.metric:
+        return NO_FIGURE
+    shown = numbers.in_system(solved.value, numbers.quantity(line.metric), system)
+    return Figure(numbers.fixed(shown, places), unit)
+
+
+def _bound(line: Line, system: str, high: bool) -> Figure:
+    solved = line.solved
+    if solved is None or solved.setting.metric != line.metric:
+        return NO_FIGURE
+    value = solved.high if high else solved.low
+    if value is None:
+        return NO_FIGURE
+    shown = numbers.in_system(value, numbers.quantity(line.metric), system)
+    places = numbers.decimals(line.metric, system)
+    return Figure(numbers.fixed(shown, places), numbers.unit(line.metric, system))
+
+
+def _compared(comparison: Comparison | None) -> Figure:
+    if comparison is None:
+        return NO_FIGURE
+    if comparison.compared == comparison.value:
+        return Figure(numbers.significant(comparison.compared, 6), clean(comparison.unit))
+    return Figure(numbers.fixed(comparison.compared, comparison.decimals), clean(comparison.unit))
+
+
+def _limit_number(comparison: Comparison | None) -> Figure:
+    if comparison is None:
+        return NO_FIGURE
+    return Figure(f"{comparison.limit:.{comparison.decimals}f}", clean(comparison.unit))
+
+
+def _room(comparison: Comparison | None, metric: str) -> Figure:
+    if comparison is None:
+        return NO_FIGURE
+    system = numbers.system_of(comparison.unit) or "SI"
+    places = numbers.decimals(metric, system, comparison.decimals)
+    return Figure(numbers.signed(comparison.margin, places), clean(comparison.unit))
+
+
+def _room_share(comparison: Comparison | None) -> str:
+    if comparison is None or not comparison.limit:
+        return ""
+    return f"{numbers.signed(100.0 * comparison.margin / comparison.limit, 1)} %"
+
+
+def limit_text(line: Line) -> str:
+    """The limit as printed in the table, with its sense in front of a number."""
+    if line.limit is None:
+        return f"{_sense(line.comparison.sense)}{_limit_number(line.comparison).text}" if (
+            line.comparison
+        ) else ""
+    cell = clean(line.limit.cell)
+    if line.limit.kind != "number" or cell.startswith(("<", ">")):
+        return cell
+    return f"{_sense(line.limit.sense)}{cell}"
+
+
+def _sense(sense: str) -> str:
+    return ">= " if sense == "min" else "<= "
+
+
+def limit_source(limit: Limit | None, ruleset: str) -> str:
+    """Table, row, zone and clause where the limit stands in print."""
+    if limit is None:
+        return ""
+    parts = [limit.table, f'"{limit.label or limit.row}"']
+    if limit.zone and limit.zone != "*":
+        parts.append(limit.zone)
+    parts += [condition.text or condition.dimension for condition in limit.when]
+    if limit.clause and limit.clause != limit.table:
+        parts.append(limit.clause)
+    if limit.ruleset != ruleset:
+        parts.append(f"printed in {limit.ruleset}")
+    if limit.replaced:
+        parts.append(f"in place of {limit.replaced}")
+    if limit.src:
+        parts.append(f"source {limit.src}")
+    return clean(", ".join(filter(None, parts)))
+
+
+def verdict_text(line: Line) -> str:
+    """The verdict in words."""
+    text = wording.VERDICTS[line.verdict]
+    comparison = line.comparison
+    if comparison is not None:
+        if line.verdict == "fail" and comparison.sense == "min":
+            text = wording.SHORT_OF
+        if line.verdict == "pass" and comparison.by_rounding:
+            text = wording.AFTER_ROUNDING
+    return f"{text} (mean {clean(line.group)})" if line.group else text
+
+
+def notes(line: Line, system: str) -> tuple[str, ...]:
+    """What stands beside a verdict: flags, a group member's own comparison, a claim."""
+    found = [
+        wording.FLAGS.get(flag, wording.plain(flag))
+        for flag in line.flags
+        if not (flag == "rounding" and line.verdict != "pass")
+    ]
+    own = line.own
+    if own is not None:
+        word = "within" if own.within else "over"
+        text = numbers.fixed(own.compared, own.decimals)
+        found.append(f"alone it would be {word}: {text} against {own.limit:.{own.decimals}f}")
+    if line.with_exception:
+        found.append(f"with the claimed exception: {line.with_exception}")
+    return tuple(map(clean, found))
+
+
+def _path(result: tuple[str, str, str, str, str]) -> PathRow:
+    path, state, value, limit, why = result
+    words = wording.PATHS.get(path, wording.plain(path)), wording.STATES.get(state, state)
+    return PathRow(*words, clean(value), clean(limit), clean(why))
+
+
+def _choice(step: str, chosen: str, why: str) -> Pair:
+    label = wording.TRAIL.get(step, wording.plain(step))
+    return Pair(clean(label), clean(f"{chosen}: {why}" if why else chosen))
+
+
+def _hand_check(
+    line: Line, system: str, value: Figure, sums: dict[tuple[int, str], str]
+) -> str:
+    solved = line.solved
+    if solved is None or not value.text or solved.setting.metric != line.metric:
+        return ""
+    key = (id(solved), value.text)
+    if key not in sums:
+        sums[key] = hand_check(solved, system, value.text)
+    return sums[key]
+
+
+def hand_check(solved: Solved, system: str, shown: str) -> str:
+    """The shortest sum whose result is the row's value; empty where it takes a worksheet."""
+    places = len(shown.partition(".")[2])
+    return worksheet.shortest(solved.hand_check, system, places, shown)

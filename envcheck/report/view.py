@@ -1,0 +1,124 @@
+"""The view: every word and every figure of a report, with nothing said of its layout.
+
+All formats print this view, so that they cannot differ in a figure. ``build`` makes it; the same
+input gives the same view, since nothing here asks for the clock or the environment.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+
+from envcheck import __version__
+from envcheck.model.judged import Judged, Line
+from envcheck.model.project import Project
+from envcheck.model.ruleset import RuleSet
+from envcheck.report import building, cautions, details, header, items, rows, wording
+from envcheck.report.building import Building
+from envcheck.report.cautions import CautionText
+from envcheck.report.details import AssemblyView
+from envcheck.report.header import RuleSetView
+from envcheck.report.items import FindingView, Item
+from envcheck.report.parts import Pair
+from envcheck.report.rows import Row
+
+
+@dataclass(frozen=True, slots=True)
+class ViewOptions:
+    """What the reader asks for."""
+
+    units: str = ""
+    """``SI``, ``IP`` or empty: the project's, else the rule set's."""
+    date: str = ""
+    """Date to print in place of the project's."""
+    colour: bool = False
+    width: int = 100
+    """Characters a line of the text format may take."""
+    details: bool = False
+    """Assemblies with their layers."""
+
+
+@dataclass(frozen=True, slots=True)
+class View:
+    """A whole report."""
+
+    title: str
+    facts: tuple[Pair, ...]
+    units: str
+    rule_sets: tuple[RuleSetView, ...]
+    summary: str
+    rows: tuple[Row, ...]
+    """Over the limit first, then open, then the rest; file order within; by rule set."""
+    open_items: tuple[Item, ...]
+    claims: tuple[Item, ...]
+    findings: tuple[FindingView, ...]
+    building: Building
+    assumptions: tuple[str, ...]
+    remarks: tuple[str, ...]
+    assemblies: tuple[AssemblyView, ...]
+    """Empty unless details are asked for."""
+    cautions: tuple[CautionText, ...]
+    not_judged: tuple[str, ...]
+    deferral: str
+    tool: str
+    hashes: tuple[Pair, ...]
+    hash_note: str
+    colour: bool
+    width: int
+
+
+def build(
+    project: Project,
+    rulesets: Mapping[str, RuleSet],
+    judged: Judged,
+    options: ViewOptions | None = None,
+) -> View:
+    """Make the view of a check.
+
+    ``rulesets`` by id, in the order in which they are judged. Errors: none for judged input.
+    """
+    options = options or ViewOptions()
+    system = system_for(project, rulesets, options)
+    ordered = in_order(judged.lines, rulesets)
+    made = rows.build(ordered, project, rulesets, system)
+    findings = items.findings(judged.findings)
+    return View(
+        title=header.title(project),
+        facts=header.facts(project, options.date),
+        units=system,
+        rule_sets=tuple(header.rule_set(r, judged.lines, project, system) for r in rulesets.values()),
+        summary=items.summary(judged),
+        rows=made,
+        open_items=items.open_items(made, judged),
+        claims=items.claims(project),
+        findings=findings,
+        building=building.build(judged, system),
+        assumptions=items.assumptions(judged.lines),
+        remarks=items.remarks(judged.remarks),
+        assemblies=details.build(project, judged.lines, system) if options.details else (),
+        cautions=cautions.gather(project, rulesets, judged),
+        not_judged=header.not_judged(rulesets),
+        deferral=wording.DEFERRAL,
+        tool=f"envcheck {__version__}",
+        hashes=header.hashes(project, rulesets),
+        hash_note=wording.HASH_NOTE,
+        colour=options.colour,
+        width=options.width,
+    )
+
+
+def system_for(project: Project, rulesets: Mapping[str, RuleSet], options: ViewOptions) -> str:
+    """The unit system asked for: the option's, the project's, the first rule set's."""
+    of_rules = next((ruleset.units for ruleset in rulesets.values()), "")
+    return options.units or project.units or of_rules or "SI"
+
+
+def in_order(lines: tuple[Line, ...], rulesets: Mapping[str, RuleSet]) -> list[Line]:
+    """Lines by rule set; over the limit first, then open, then the rest; file order within."""
+    place = {name: number for number, name in enumerate(rulesets)}
+
+    def key(line: Line) -> tuple[int, int]:
+        rank = 0 if line.verdict == "fail" else 1 if line.open else 2
+        return place.get(line.ruleset, len(place)), rank
+
+    return sorted(lines, key=key)

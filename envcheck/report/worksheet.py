@@ -1,0 +1,194 @@
+"""Worksheet steps written out so that a pocket calculator repeats every printed number.
+
+Every operand is printed with at most nine significant digits; an operand that an earlier step
+gave is printed as that step printed it. Each result is computed from the *printed* operands and
+shown to six significant digits. A formula whose constants hold in SI alone stays in SI, and
+lines that convert stand before and behind it.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass, field
+
+from envcheck import units
+from envcheck.model.solved import Operand, Step
+from envcheck.report import arithmetic, numbers
+from envcheck.report.inert import clean
+
+OPERAND_DIGITS = 9
+RESULT_DIGITS = 6
+COHERENT = 1e-7
+"""Most by which a formula that holds in both systems may differ between them: noise."""
+
+
+@dataclass(frozen=True, slots=True)
+class Line:
+    """One printed step."""
+
+    symbol: str
+    title: str
+    formula: str
+    """With names: ``L / k``; empty for a value taken from a source."""
+    operands: tuple[str, ...]
+    """``L = 3.625 in`` for each operand that no earlier step gave."""
+    sum: str
+    """With numbers: ``3.625 / 6.24``."""
+    result: str
+    unit: str
+    source: str
+
+    @property
+    def text(self) -> str:
+        """The step as one line of arithmetic."""
+        middle = f"{self.sum} = " if self.sum else ""
+        return f"{self.symbol} = {middle}{self.result} {self.unit}".rstrip()
+
+
+@dataclass(slots=True)
+class _Sheet:
+    """What has been printed so far."""
+
+    system: str
+    digits: int
+    lines: list[Line] = field(default_factory=list)
+    given: dict[str, float] = field(default_factory=dict)
+    """Symbol -> exact SI value."""
+    printed: dict[tuple[str, str], str] = field(default_factory=dict)
+    """(symbol, system) -> printed result."""
+
+
+def write(
+    steps: Iterable[Step], system: str, digits: int = OPERAND_DIGITS
+) -> tuple[Line, ...]:
+    """Print the steps in ``system`` ``SI`` or ``IP``."""
+    sheet = _Sheet(system, digits)
+    for step in steps:
+        if not step.expression:
+            _value(sheet, step)
+        elif system == "SI" or not (step.si_only or _fails_in_ip(step)):
+            _formula(sheet, step, system)
+        else:
+            _in_si(sheet, step)
+        sheet.given[step.symbol] = step.value
+    return tuple(sheet.lines)
+
+
+def shortest(steps: Sequence[Step], system: str, decimals: int, shown: str) -> str:
+    """Give the steps as one line whose result, at ``decimals`` places, is ``shown``.
+
+    Operands get as few digits as that takes. Empty without steps.
+    """
+    lines: tuple[Line, ...] = ()
+    for digits in (4, 6, OPERAND_DIGITS):
+        lines = write(steps, system, digits)
+        if not lines or numbers.fixed(float(lines[-1].result), decimals) == shown:
+            break
+    if not lines:
+        return ""
+    last = lines[-1]
+    middle = f"{last.sum} = " if last.sum else ""
+    source = f" ({last.source})" if not last.sum and last.source else ""
+    parts = [f"{line.symbol} = {line.sum} = {line.result}" for line in lines[:-1] if line.sum]
+    return "; ".join([*parts, f"{last.symbol} = {middle}{shown}{source}"])
+
+
+def _value(sheet: _Sheet, step: Step) -> None:
+    """A value from a source: nothing to compute."""
+    text = _text(step.value, step.quantity, sheet.system, sheet.digits)
+    _print(sheet, step, sheet.system, "", (), text)
+
+
+def _formula(sheet: _Sheet, step: Step, system: str) -> None:
+    values = {o.name: _operand(sheet, o, system) for o in step.operands}
+    try:
+        result = arithmetic.evaluate(step.expression, {k: float(v) for k, v in values.items()})
+    except (ArithmeticError, ValueError):
+        result = numbers.in_system(step.value, step.quantity, system)
+    stated = tuple(
+        f"{o.name} = {values[o.name]} {units.label(o.quantity, system)}".rstrip()
+        for o in step.operands
+        if not _is_earlier(sheet, o)
+    )
+    written = arithmetic.fill(step.expression, values)
+    text = numbers.significant(result, RESULT_DIGITS)
+    _print(sheet, step, system, written, stated, text)
+
+
+def _in_si(sheet: _Sheet, step: Step) -> None:
+    """Convert what the formula needs, compute in SI, convert the result back."""
+    for operand in step.operands:
+        earlier = _is_earlier(sheet, operand)
+        if earlier and (operand.name, "SI") not in sheet.printed:
+            _convert(sheet, operand.name, operand.quantity, "IP", "SI")
+    _formula(sheet, step, "SI")
+    if (step.symbol, "IP") not in sheet.printed:
+        _convert(sheet, step.symbol, step.quantity, "SI", "IP")
+
+
+_HOLDS_IN_IP: dict[tuple[str, str, tuple[str, ...]], bool] = {}
+
+
+def _fails_in_ip(step: Step) -> bool:
+    """Whether a formula that is true in SI misses its value with operands in IP units.
+
+    That is a matter of the formula and its quantities, so each pair is tried once.
+    """
+    key = (step.expression, step.quantity, tuple(o.quantity for o in step.operands))
+    if key not in _HOLDS_IN_IP:
+        _HOLDS_IN_IP[key] = _holds_in_ip(step)
+    return not _HOLDS_IN_IP[key]
+
+
+def _holds_in_ip(step: Step) -> bool:
+    converted = {o.name: numbers.in_system(o.value, o.quantity, "IP") for o in step.operands}
+    try:
+        truth = arithmetic.evaluate(step.expression, {o.name: o.value for o in step.operands})
+        result = arithmetic.evaluate(step.expression, converted)
+    except (ArithmeticError, ValueError):
+        return False
+    expected = numbers.in_system(truth, step.quantity, "IP")
+    return abs(result - expected) <= COHERENT * abs(expected)
+
+
+def _operand(sheet: _Sheet, operand: Operand, system: str) -> str:
+    if _is_earlier(sheet, operand):
+        return sheet.printed[operand.name, system]
+    return _text(operand.value, operand.quantity, system, sheet.digits)
+
+
+def _is_earlier(sheet: _Sheet, operand: Operand) -> bool:
+    given = sheet.given.get(operand.name)
+    return given is not None and abs(given - operand.value) <= 1e-9 * abs(given)
+
+
+def _text(value: float, quantity: str, system: str, digits: int) -> str:
+    return numbers.significant(numbers.in_system(value, quantity, system), digits)
+
+
+def _print(
+    sheet: _Sheet, step: Step, system: str, written: str, stated: tuple[str, ...], result: str
+) -> None:
+    unit = units.label(step.quantity, system)
+    formula = arithmetic.named(step.expression)
+    title, source = clean(step.title), clean(step.source)
+    sheet.lines.append(Line(step.symbol, title, formula, stated, written, result, unit, source))
+    sheet.printed[step.symbol, system] = result
+    if not unit:
+        sheet.printed[step.symbol, "SI"] = sheet.printed[step.symbol, "IP"] = result
+
+
+def _convert(sheet: _Sheet, symbol: str, quantity: str, start: str, end: str) -> None:
+    """Print a line that takes a result to the other system."""
+    text = sheet.printed[symbol, start]
+    unit, target = units.label(quantity, start), units.label(quantity, end)
+    if quantity == "temperature":
+        written = f"{text} * 1.8 + 32" if end == "IP" else f"({text} - 32) / 1.8"
+    else:
+        factor = numbers.factor(quantity, "IP") / numbers.factor(quantity, "SI")
+        sign = "/" if end == "IP" else "*"
+        written = f"{text} {sign} {numbers.significant(factor, OPERAND_DIGITS)}"
+    result = numbers.significant(arithmetic.evaluate(written, {}), RESULT_DIGITS)
+    title = f"{symbol} from {unit} to {target}"
+    sheet.lines.append(Line(symbol, title, "", (), written, result, target, ""))
+    sheet.printed[symbol, end] = result

@@ -1,0 +1,271 @@
+"""From an assembly and its setting to the value, the bracket and the worksheet."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import replace
+from typing import NamedTuple
+
+from envcheck.model.project import Assembly, Bridge, Layer, TaperedLayer
+from envcheck.model.ruleset import Conventions
+from envcheck.model.solved import Beside, LayerRow, Operand, Setting, Solved, Step
+from envcheck.solve import rows
+from envcheck.solve.cautions import cautions
+from envcheck.solve.cells import stated_cell
+from envcheck.solve.conventions import ventilated_at
+from envcheck.solve.methods.bridges import correct_for_bridges
+from envcheck.solve.methods.crossed import count_crossed
+from envcheck.solve.methods.fasteners import correct_for_fasteners
+from envcheck.solve.methods.tapered import taper
+from envcheck.solve.methods.weighted import weighted
+from envcheck.solve.registry import Context, Decision, NotDecided, Wall, drawers, methods
+from envcheck.solve.wiring import bounds
+
+NOT_DRAWN = "no bracket: the value comes from a table, a rating or a formula of the whole"
+TAPERED = "no bracket: a tapered layer is not drawn as rectangles"
+
+
+def solve(
+    assembly: Assembly,
+    setting: Setting,
+    conventions: Conventions,
+    bridges: Sequence[Bridge] = (),
+    area: float | None = None,
+) -> Solved:
+    """Solve one assembly by the method of its setting.
+
+    bridges, area: linear and point bridges of one element and its area (m2), added to those of
+    the assembly. What is missing is said in ``Solved.missing``; nothing is raised for it.
+    """
+    if assembly.kind == "layers":
+        return _solve_layers(assembly, setting, conventions, (*assembly.bridges, *bridges), area)
+    return _solve_whole(assembly, setting, conventions, (*assembly.bridges, *bridges), area)
+
+
+class _Corrections(NamedTuple):
+    """What is added to the clear field, W/(m2 K)."""
+
+    value: float
+    steps: tuple[Step, ...]
+    missing: tuple[str, ...]
+    assumptions: tuple[str, ...]
+
+
+def _solve_layers(
+    assembly: Assembly,
+    setting: Setting,
+    conventions: Conventions,
+    bridges: tuple[Bridge, ...],
+    area: float | None,
+) -> Solved:
+    try:
+        wall, notes = draw(assembly, setting, conventions)
+    except NotDecided as missing:
+        return _missing(assembly, setting, str(missing))
+    decision = _decide(wall, assembly, conventions)
+    corrections = _correct(wall, decision, bridges, area)
+    value = None if decision.value is None else decision.value + corrections.value
+    low, high, note, beside = _bracket(wall, decision, corrections)
+    steps = _closed(decision, corrections, value)
+    missing = (*decision.missing, *corrections.missing)
+    return Solved(
+        assembly=assembly.id,
+        setting=setting,
+        value=None if missing else value,
+        clear=decision.value,
+        missing=missing,
+        low=low,
+        high=high,
+        bracket_note=note,
+        decided_by_bracket=decision.by_bracket,
+        ratio=high / low if low and high else None,
+        beside=(*beside, *decision.beside),
+        tree=decision.tree,
+        steps=steps,
+        layers=rows.layer_rows(wall, {**notes.layers, **decision.replaced}, notes.outer),
+        assumptions=(*notes.assumptions, *decision.assumptions, *corrections.assumptions),
+        cautions=(*cautions(assembly), *decision.cautions),
+        hand_check=steps[decision.layer_steps :],
+    )
+
+
+def _solve_whole(
+    assembly: Assembly,
+    setting: Setting,
+    conventions: Conventions,
+    bridges: tuple[Bridge, ...],
+    area: float | None,
+) -> Solved:
+    """Solve an assembly that one method takes as a whole: product, window, slab, ground wall."""
+    method = methods().get(setting.method)
+    solver = dict(method.solves).get(assembly.kind) if method else None
+    if solver is None:
+        return _missing(assembly, setting, setting.method_from or f"method {setting.method!r}")
+    try:
+        decision = solver(assembly, setting, conventions)
+    except NotDecided as missing:
+        return _missing(assembly, setting, str(missing))
+    added, steps, missing = correct_for_bridges(bridges, area)
+    corrections = _Corrections(added, steps, missing, ())
+    value = None if decision.value is None else decision.value + added
+    closed = _closed(decision, corrections, value)
+    gone = (*decision.missing, *missing)
+    return Solved(
+        assembly=assembly.id,
+        setting=setting,
+        value=None if gone else value,
+        clear=decision.value,
+        missing=gone,
+        low=None,
+        high=None,
+        bracket_note=NOT_DRAWN,
+        decided_by_bracket=False,
+        ratio=None,
+        beside=decision.beside,
+        tree=decision.tree,
+        steps=closed,
+        layers=tuple(rows.plain_row(layer) for layer in assembly.layers),
+        assumptions=decision.assumptions,
+        cautions=(*cautions(assembly), *decision.cautions),
+        hand_check=closed[decision.layer_steps :],
+    )
+
+
+class Notes(NamedTuple):
+    """What was done to the layers before they were wired."""
+
+    layers: dict[int, str]
+    """Index of a layer of the wall -> what is counted."""
+    outer: tuple[LayerRow, ...]
+    """Rows of layers that are not part of the wall."""
+    assumptions: tuple[str, ...]
+
+
+def draw(assembly: Assembly, setting: Setting, conventions: Conventions) -> tuple[Wall, Notes]:
+    """Draw the layers between their films.
+
+    Layers outside a well-ventilated air space are left out, with the outer film that the rule
+    set's convention puts there. Errors: NotDecided where a layer cannot be drawn.
+    """
+    first, film, film_from = _outer_side(assembly.layers, setting, conventions)
+    outer = tuple(
+        rows.plain_row(layer, "outside a well-ventilated cavity: counts 0")
+        for layer in assembly.layers[:first]
+    )
+    layers = assembly.layers[first:]
+    blocks = tuple(
+        drawers()[layer.kind](layer, Context(f"R{number}", setting, conventions))
+        for number, layer in enumerate(layers, first + 1)
+    )
+    wall = Wall(
+        assembly,
+        setting,
+        conventions,
+        stated_cell("Ro", "outside film", film, film_from),
+        stated_cell("Ri", "inside film", setting.inside_film, setting.inside_film_from),
+        blocks,
+        layers,
+    )
+    return wall, Notes({}, outer, rows.drawing_assumptions(wall))
+
+
+def _outer_side(
+    layers: tuple[Layer, ...], setting: Setting, conventions: Conventions
+) -> tuple[int, float, str]:
+    """First layer that counts, and the film outside of it."""
+    at = ventilated_at(layers)
+    if at is None:
+        return 0, setting.outside_film, setting.outside_film_from
+    if conventions.cladding == "iso6946":
+        said = "still-air film outside a well-ventilated cavity (ISO 6946:2017, 6.9.4)"
+        return at + 1, setting.cladding_film, said
+    return at + 1, setting.outside_film, setting.outside_film_from
+
+
+def _decide(wall: Wall, assembly: Assembly, conventions: Conventions) -> Decision:
+    setting = wall.setting
+    method = methods().get(setting.method)
+    if method is None or method.decides is None:
+        return Decision(None, missing=(setting.method_from or f"method {setting.method!r}",))
+    if setting.method in setting.refused:
+        words = f"another method: {setting.method_from} does not accept {method.title.lower()}"
+        return Decision(None, missing=(words,))
+    try:
+        counted, changed = (
+            (wall, {}) if setting.method == "two_dimensional" else count_crossed(wall)
+        )
+        decision = method.decides(counted)
+        for layer in assembly.layers:
+            if isinstance(layer, TaperedLayer):
+                decision = taper(decision, layer, conventions)
+    except NotDecided as missing:
+        return Decision(None, missing=(str(missing),))
+    return replace(decision, replaced={**changed, **decision.replaced})
+
+
+def _correct(
+    wall: Wall, decision: Decision, bridges: tuple[Bridge, ...], area: float | None
+) -> _Corrections:
+    """Fasteners, points and lines on top of the clear field."""
+    if decision.value is None:
+        return _Corrections(0.0, (), (), ())
+    fasteners, fastener_steps, assumptions = correct_for_fasteners(wall, decision)
+    added, bridge_steps, missing = correct_for_bridges(bridges, area)
+    return _Corrections(
+        fasteners + added, (*fastener_steps, *bridge_steps), missing, tuple(assumptions)
+    )
+
+
+def _closed(decision: Decision, corrections: _Corrections, value: float | None) -> tuple[Step, ...]:
+    """The worksheet with its corrections, and the sum of both."""
+    if not corrections.steps or value is None or decision.value is None:
+        return decision.steps
+    parts = [("U", decision.value)]
+    parts += [
+        (step.symbol, step.value) for step in corrections.steps if step.symbol.startswith("dU")
+    ]
+    expression = " + ".join(f"{{{symbol}}}" for symbol, _ in parts)
+    operands = tuple(Operand(symbol, number, "u_factor") for symbol, number in parts)
+    closing = Step("U_total", "U-factor with corrections", expression, operands, value, "u_factor")
+    return (*decision.steps, *corrections.steps, closing)
+
+
+def _bracket(
+    wall: Wall, decision: Decision, corrections: _Corrections
+) -> tuple[float | None, float | None, str, tuple[Beside, ...]]:
+    """Both wirings of the drawn pieces, corrections included, and the values beside them."""
+    if any(isinstance(layer, TaperedLayer) for layer in wall.layers):
+        return None, None, TAPERED, ()
+    low, high = bounds(wall)
+    added = corrections.value
+    if not any(block.pattern for block in wall.blocks):
+        return low + added, low + added, "layers in series: both ends are one", ()
+    combined = 1.0 / weighted(0.5, 1.0 / low, 1.0 / high)
+    beside = (
+        Beside("parallel_path", low + added, "parallel paths of the drawn pieces"),
+        Beside("isothermal_planes", high + added, "isothermal planes of the drawn pieces"),
+        Beside("combined", combined + added, "mean of both resistances (ISO 6946)"),
+    )
+    note = "parallel paths to isothermal planes of the same drawn pieces"
+    return low + added, high + added, note, beside
+
+
+def _missing(assembly: Assembly, setting: Setting, words: str) -> Solved:
+    return Solved(
+        assembly=assembly.id,
+        setting=setting,
+        value=None,
+        clear=None,
+        missing=(words,),
+        low=None,
+        high=None,
+        bracket_note=NOT_DRAWN,
+        decided_by_bracket=False,
+        ratio=None,
+        beside=(),
+        tree=None,
+        steps=(),
+        layers=tuple(rows.plain_row(layer) for layer in assembly.layers),
+        assumptions=(),
+        cautions=cautions(assembly),
+    )

@@ -1,0 +1,43 @@
+"""Single resistors with their worksheet step: what every drawn layer is made of."""
+
+from __future__ import annotations
+
+from envcheck.model.project import Material
+from envcheck.model.solved import Block, Operand, Resistor, Step
+from envcheck.solve.network import plane_wall
+
+
+def material_cell(symbol: str, title: str, depth: float, material: Material) -> Resistor:
+    """A depth (m) of a material: R = L/k."""
+    value = plane_wall(depth, material.conductivity)
+    operands = (
+        Operand("L", depth, "length"),
+        Operand("k", material.conductivity, "conductivity"),
+    )
+    step = Step(symbol, title, "{L} / {k}", operands, value, "resistance", material.source)
+    return Resistor(symbol, title, value, (step,))
+
+
+def stated_cell(symbol: str, title: str, value: float, source: str) -> Resistor:
+    """A resistance (m2 K/W) that a source states."""
+    return Resistor(
+        symbol, title, value, (Step(symbol, title, "", (), value, "resistance", source),)
+    )
+
+
+def part_of(cell: Resistor, depth: float, whole: float, symbol: str) -> Resistor:
+    """The part of a cell that lies in ``depth`` of its ``whole`` depth, m."""
+    operands = (
+        Operand(cell.symbol, cell.value, "resistance"),
+        Operand("d", depth, "length"),
+        Operand("D", whole, "length"),
+    )
+    value = cell.value * depth / whole
+    expression = f"{{{cell.symbol}}} * {{d}} / {{D}}"
+    step = Step(symbol, f"{cell.title}, this row", expression, operands, value, "resistance")
+    return Resistor(symbol, cell.title, value, (*cell.steps, step))
+
+
+def homogeneous(cell: Resistor, depth: float) -> Block:
+    """A block of one cell."""
+    return Block(cell.symbol, cell.title, (1.0,), (depth,), ((cell,),))

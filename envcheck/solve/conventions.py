@@ -1,0 +1,139 @@
+"""From an element and a rule set's conventions to the setting that fixes its value."""
+
+from __future__ import annotations
+
+from envcheck.model.project import (
+    AirSpaceLayer,
+    Assembly,
+    Element,
+    FramedLayer,
+    Layer,
+    MasonryLayer,
+)
+from envcheck.model.patterns import matches
+from envcheck.model.ruleset import Conventions, FilmRow, MethodRule
+from envcheck.model.solved import Setting
+from envcheck.solve.methods.framed import is_metal
+from envcheck.solve.registry import methods
+
+STEEP = 60.0
+"""Degrees from horizontal from which a surface counts as a wall (ISO 6946:2017, 6.8: heat flow
+is horizontal within 30 degrees of the horizontal plane)."""
+
+
+def resolve(
+    element: Element,
+    assembly: Assembly,
+    category: str,
+    metric: str,
+    conventions: Conventions,
+    key: str,
+) -> Setting:
+    """Resolve films and method for one element.
+
+    category: the class it is judged in. metric: what the limit speaks of (``U_assembly`` ...).
+    key: name of the conventions, so that settings of two rule sets never mix.
+    """
+    rule = method_rule(conventions, category, assembly.kind, metric)
+    if rule is not None:
+        method, method_from = rule.method, rule.clause
+        refused, weight = rule.refused, rule.weight
+    else:
+        method, method_from = assumed_method(assembly, metric)
+        refused, weight = (), None
+    direction = direction_of_flow(element.tilt)
+    films = conventions.films
+    inside = _film(films, "inside", element.adjoins, direction)
+    outside = _film(films, "outside", element.adjoins, direction)
+    cladding = _film(films, "outside", "ventilated_cladding", direction)
+    stated = "stated in the project"
+    outside_stated, inside_stated = assembly.outside_film, assembly.inside_film
+    return Setting(
+        metric=metric,
+        method=method,
+        method_from=method_from,
+        refused=refused,
+        weight=weight,
+        direction=direction,
+        outside_film=outside.resistance if outside_stated is None else outside_stated,
+        outside_film_from=outside.source if outside_stated is None else stated,
+        inside_film=inside.resistance if inside_stated is None else inside_stated,
+        inside_film_from=inside.source if inside_stated is None else stated,
+        cladding_film=cladding.resistance,
+        conventions=key,
+    )
+
+
+def direction_of_flow(tilt: float) -> str:
+    """Direction of heat flow out of a heated room through a surface of this tilt, degrees."""
+    if tilt < STEEP:
+        return "up"
+    return "horizontal" if tilt <= 180.0 - STEEP else "down"
+
+
+def method_rule(
+    conventions: Conventions, category: str, kind: str, metric: str
+) -> MethodRule | None:
+    """The method prescribed for a category; the most specific pattern wins.
+
+    A rule holds only where its method serves this kind of assembly and metric (a method for
+    walls says nothing about a rated product in the same class).
+    """
+    rules = [
+        rule
+        for rule in conventions.methods
+        if matches(rule.category, category) and _serves(rule.method, kind, metric)
+    ]
+    return max(rules, key=lambda rule: len(rule.category.rstrip("*")), default=None)
+
+
+def _serves(name: str, kind: str, metric: str) -> bool:
+    method = methods()[name]
+    if method.decides is not None:
+        return kind == "layers"
+    return any(k == kind for k, _ in method.solves) and _kin(method.metric, metric)
+
+
+def _kin(one: str, other: str) -> bool:
+    """Assembly and product U-factors are one quantity under two rows of a table."""
+    return one == other or {one, other} <= {"U_assembly", "U_product"}
+
+
+def assumed_method(assembly: Assembly, metric: str) -> tuple[str, str]:
+    """The method where the rule set names none, and the words that say so."""
+    if assembly.kind != "layers":
+        for name, method in methods().items():
+            served = any(kind == assembly.kind for kind, _ in method.solves)
+            if served and _kin(method.metric, metric):
+                return name, "the only method for this kind"
+        return "", f"no method gives {metric} for an assembly of kind {assembly.kind!r}"
+    framed = [layer for layer in assembly.layers if isinstance(layer, FramedLayer)]
+    if any(is_metal(layer) for layer in framed):
+        return "", "the rule set names no method for steel framing, and none is assumed"
+    if any(isinstance(layer, MasonryLayer) for layer in assembly.layers):
+        return "isothermal_planes", "assumed: the rule set names no method (masonry)"
+    if framed:
+        return "parallel_path", "assumed: the rule set names no method (wood framing)"
+    return "series", "assumed: the rule set names no method (layers in series)"
+
+
+def ventilated_at(layers: tuple[Layer, ...]) -> int | None:
+    """Index of the innermost well-ventilated air space, or None."""
+    found = [
+        index
+        for index, layer in enumerate(layers)
+        if isinstance(layer, AirSpaceLayer) and layer.ventilation == "well"
+    ]
+    return found[-1] if found else None
+
+
+def _film(films: tuple[FilmRow, ...], side: str, adjoins: str, direction: str) -> FilmRow:
+    """The most specific film row: what lies beyond counts before the direction.
+
+    The reader makes sure that each side has a row for every direction.
+    """
+    fitting = [row for row in films if row.side == side and row.direction in (direction, "*")]
+    named = [row for row in fitting if row.adjoins == adjoins]
+    general = [row for row in fitting if row.adjoins in ("*", "outdoors")]
+    rows = named or general or fitting
+    return max(rows, key=lambda row: row.direction == direction)

@@ -1,0 +1,87 @@
+"""Linear and point thermal bridges added to the clear field."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from envcheck.model.project import Bridge
+from envcheck.model.solved import Operand, Step
+from envcheck.solve.methods.fasteners import Correction
+from envcheck.solve.registry import Method
+
+UNCONFIRMED = ("", "assumed")
+"""Kinds of evidence that decide nothing."""
+
+
+def added_by_bridge(transmittance: float, amount: float, area: float = 1.0) -> float:
+    """Addition to U of a bridge: dU = psi l / A, or chi n / A.
+
+    transmittance: psi, W/(m K), or chi, W/K. amount: length, m, or count. area: m2 that they
+    belong to; 1 where the amount is per m2. Any shape. Returns W/(m2 K).
+    Source: ISO 14683:2017 and ISO 13789:2017: H = sum U A + sum psi l + sum chi.
+    """
+    return transmittance * amount / area
+
+
+def correct_for_bridges(
+    bridges: Sequence[Bridge], area: float | None, prefix: str = "dU_b"
+) -> Correction:
+    """Add all bridges to a U-factor.
+
+    bridges: of an assembly or of an element. area: of the element, m2, for amounts that are not
+    per m2. prefix: of the addends' symbols. A bridge without a confirmed source, or without the
+    area it needs, is named as missing and not counted.
+    """
+    steps, missing = [], []
+    for number, bridge in enumerate(bridges, 1):
+        name = "psi" if bridge.kind == "line" else "chi"
+        if bridge.evidence in UNCONFIRMED:
+            missing.append(f"a confirmed source of {name} for {bridge.title!r}")
+        elif not bridge.per_area and not area:
+            missing.append(f"the area that the bridge {bridge.title!r} belongs to")
+        else:
+            steps.append(_step(f"{prefix}{number}", bridge, area))
+    return Correction(sum(step.value for step in steps), tuple(steps), tuple(missing))
+
+
+def total_step(symbol: str, clear: Operand, additions: Sequence[Step]) -> Step:
+    """The step that adds corrections to the clear field.
+
+    symbol: of the total. clear: symbol and value of the clear-field U. additions: the steps whose
+    values are added.
+    """
+    operands = (clear, *(Operand(step.symbol, step.value, "u_factor") for step in additions))
+    expression = " + ".join(f"{{{operand.name}}}" for operand in operands)
+    value = sum(operand.value for operand in operands)
+    return Step(symbol, "U-factor with corrections", expression, operands, value, "u_factor")
+
+
+def _step(symbol: str, bridge: Bridge, area: float | None) -> Step:
+    line = bridge.kind == "line"
+    name, count = ("psi", "l") if line else ("chi", "n")
+    quantity = "linear_transmittance" if line else "point_transmittance"
+    if bridge.per_area:
+        amount = Operand(count, bridge.amount, "per_length" if line else "per_area")
+        operands = (Operand(name, bridge.value, quantity), amount)
+        expression, value = (
+            f"{{{name}}} * {{{count}}}",
+            added_by_bridge(bridge.value, bridge.amount),
+        )
+    else:
+        whole = area or 0.0
+        amount = Operand(count, bridge.amount, "run" if line else "number")
+        operands = (Operand(name, bridge.value, quantity), amount, Operand("A", whole, "area"))
+        expression = f"{{{name}}} * {{{count}}} / {{A}}"
+        value = added_by_bridge(bridge.value, bridge.amount, whole)
+    return Step(symbol, bridge.title, expression, operands, value, "u_factor", bridge.source)
+
+
+METHODS = (
+    Method(
+        name="bridges",
+        title="Linear and point bridges",
+        formula="dU = sum of psi l / A + sum of chi n / A",
+        source="ISO 14683:2017; ISO 13789:2017",
+        valid="psi and chi with a confirmed source and the dimensions that they were made for",
+    ),
+)

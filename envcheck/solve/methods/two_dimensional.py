@@ -1,0 +1,26 @@
+"""Two-dimensional conduction of the drawn section: the bracket decides."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+
+from envcheck.solve.methods.wirings import decide_isothermal_planes
+from envcheck.solve.registry import Decision, Method, Wall
+
+
+def decide_two_dimensional(wall: Wall) -> Decision:
+    """Bracket the drawn section; its high end stands for the value in sums and means."""
+    return replace(decide_isothermal_planes(wall), by_bracket=True)
+
+
+METHODS = (
+    Method(
+        name="two_dimensional",
+        title="Two-dimensional conduction of the drawn section, bounded from both sides",
+        formula="U(parallel paths) <= U <= U(isothermal planes)",
+        source="ISO 10211:2017 defines the model; the bounds follow from Rayleigh's monotonicity "
+        "law for resistor networks",
+        valid="rectilinear sections; layers that cross each other are bounded as drawn",
+        decides=decide_two_dimensional,
+    ),
+)

@@ -1,0 +1,157 @@
+"""What an assembly is before any method: what it stores, what frames it, what insulates it."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from envcheck.model.project import (
+    AirSpaceLayer,
+    Assembly,
+    FramedLayer,
+    Layer,
+    MasonryLayer,
+    Material,
+    MaterialLayer,
+    ResistanceLayer,
+    TaperedLayer,
+)
+from envcheck.model.ruleset import TableRow
+from envcheck.model.solved import Properties
+from envcheck.solve.mass import mass_of, together
+from envcheck.solve.methods.compressed import fill_in_place
+from envcheck.solve.methods.framed import is_metal
+
+
+def properties(assembly: Assembly, compressed: Sequence[TableRow] = ()) -> Properties:
+    """Collect the properties of a layered assembly.
+
+    compressed: rows of the table of compressed batts. A well-ventilated air space and what lies
+    outside of it count in the heat capacity of the whole, and in nothing else.
+    """
+    inner = inside_of_vent(assembly.layers)
+    masses = [mass_of(layer) for layer in assembly.layers]
+    whole = together(masses)
+    indoor = together(masses[len(masses) - indoor_count(inner) :])
+    continuous = sum(insulation_resistance(layer) or 0.0 for layer in inner)
+    return Properties(
+        heat_capacity=whole.heat_capacity,
+        heat_capacity_indoor=indoor.heat_capacity,
+        weight=whole.weight,
+        weight_indoor=indoor.weight,
+        missing=whole.missing,
+        framing=framing(inner),
+        cavity_resistance=_cavity_resistance(inner, compressed),
+        continuous_resistance=continuous,
+        crossed=_crossed(inner),
+        bracketed=_bracketed(assembly) if continuous > 0 else (),
+        label_sum=_label_sum(inner),
+        combustible=tuple(layer.title for layer in assembly.layers if is_combustible(layer)),
+    )
+
+
+def inside_of_vent(layers: Sequence[Layer]) -> Sequence[Layer]:
+    """The layers indoors of the innermost well-ventilated air space; all where there is none."""
+    for index in range(len(layers) - 1, -1, -1):
+        layer = layers[index]
+        if isinstance(layer, AirSpaceLayer) and layer.ventilation == "well":
+            return layers[index + 1 :]
+    return layers
+
+
+def indoor_count(layers: Sequence[Layer]) -> int:
+    """How many layers lie indoors of the first continuous insulation, from the indoor face."""
+    for count, layer in enumerate(reversed(layers)):
+        if insulation_resistance(layer) is not None:
+            return count
+    return len(layers)
+
+
+def insulation_resistance(layer: Layer) -> float | None:
+    """Resistance of a layer of continuous insulation, m2 K/W; None for any other layer.
+
+    A tapered layer counts at its least thickness; insulation between members is not continuous.
+    """
+    if isinstance(layer, MaterialLayer) and is_insulation(layer.material):
+        return layer.thickness / layer.material.conductivity
+    if isinstance(layer, ResistanceLayer) and is_insulation(layer.material):
+        return layer.resistance
+    if isinstance(layer, TaperedLayer) and is_insulation(layer.material):
+        return layer.least / layer.material.conductivity
+    return None
+
+
+def is_insulation(material: Material | None) -> bool:
+    """Whether a material is of the class of insulation."""
+    return material is not None and material.material_class.startswith("insulation")
+
+
+def framing(layers: Sequence[Layer]) -> str:
+    """What the main framing is: ``steel`` before ``wood`` before ``none``."""
+    frames = [x for x in layers if isinstance(x, FramedLayer) and not x.crosses_insulation]
+    if any(is_metal(layer) for layer in frames):
+        return "steel"
+    return "wood" if frames else "none"
+
+
+def is_combustible(layer: Layer) -> bool:
+    """Whether any material that the layer names is combustible."""
+    return any(material.combustible for material in _materials(layer))
+
+
+def _materials(layer: Layer) -> list[Material]:
+    found: list[Material | None] = []
+    if isinstance(layer, MaterialLayer | ResistanceLayer | TaperedLayer):
+        found = [layer.material]
+    elif isinstance(layer, FramedLayer):
+        extras = [extra.material for extra in layer.extras]
+        found = [layer.member.material, layer.fill.material, *extras]
+    elif isinstance(layer, MasonryLayer):
+        found = [layer.material, layer.fill.material, layer.mortar, layer.grout]
+    return [material for material in found if material is not None]
+
+
+def _cavity_resistance(layers: Sequence[Layer], compressed: Sequence[TableRow]) -> float | None:
+    """Insulation between the members of the main framing, in place."""
+    values = [
+        value
+        for layer in layers
+        if isinstance(layer, FramedLayer) and not layer.crosses_insulation
+        for value in [_fill_resistance(layer, compressed)]
+        if value is not None
+    ]
+    return sum(values) if values else None
+
+
+def _fill_resistance(layer: FramedLayer, compressed: Sequence[TableRow]) -> float | None:
+    placed = fill_in_place(layer.fill, layer.thickness, compressed)
+    if placed is not None:
+        return placed.resistance
+    if layer.fill.material is not None and is_insulation(layer.fill.material):
+        return layer.thickness / layer.fill.material.conductivity
+    return None
+
+
+def _crossed(layers: Sequence[Layer]) -> tuple[str, ...]:
+    return tuple(
+        f"{layer.title}: crossed by {layer.member.material.title}"
+        for layer in layers
+        if isinstance(layer, FramedLayer) and layer.crosses_insulation
+    )
+
+
+def _bracketed(assembly: Assembly) -> tuple[str, ...]:
+    return tuple(bridge.title for bridge in assembly.bridges if bridge.kind == "point")
+
+
+def _label_sum(layers: Sequence[Layer]) -> float | None:
+    """All insulation as labelled, between members or not."""
+    labels = []
+    for layer in layers:
+        value = insulation_resistance(layer)
+        if isinstance(layer, FramedLayer):
+            value = (
+                layer.fill.label if layer.fill.label is not None else _fill_resistance(layer, ())
+            )
+        if value is not None:
+            labels.append(value)
+    return sum(labels) if labels else None

@@ -1,0 +1,84 @@
+"""From pieces to a block: rectangles of a cross-section put on one grid."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from itertools import pairwise
+from typing import NamedTuple
+
+from envcheck.model.project import Profile
+
+
+class Piece(NamedTuple):
+    """A rectangle of the section, m: x along the wall, y from the outer face of its layer."""
+
+    left: float
+    right: float
+    outer: float
+    inner: float
+
+
+def profile_pieces(profile: Profile, depth: float, repeat: float) -> list[Piece]:
+    """Rectangles of a steel profile that stands in a layer of ``depth`` at ``repeat`` spacing.
+
+    The flange against the inner face is centred in the repeat width. Dimensions of the profile are
+    overall; the web reaches over the whole depth of the profile, which stands against the inner
+    face of the layer. C: both flanges to one side, with lips. Z: flanges to opposite sides. hat:
+    a crown of ``flange`` outside, two webs, and two brims of ``lip`` inside.
+    """
+    sheet, flange, lip = profile.thickness, profile.flange, profile.lip
+    top, bottom = max(depth - profile.web, 0.0), depth
+    left = (repeat - flange) / 2
+    right = left + flange
+    web = Piece(left, left + sheet, top, bottom)
+    inner = Piece(left, right, bottom - sheet, bottom)
+    outer = Piece(left, right, top, top + sheet)
+    if profile.shape == "Z":
+        return [web, inner, Piece(left + sheet - flange, left + sheet, top, top + sheet)]
+    if profile.shape == "hat":
+        return [
+            outer,
+            web,
+            Piece(right - sheet, right, top, bottom),
+            Piece(left + sheet - lip, left + sheet, bottom - sheet, bottom),
+            Piece(right - sheet, right - sheet + lip, bottom - sheet, bottom),
+        ]
+    pieces = [web, inner, outer]
+    if lip > sheet:
+        pieces.append(Piece(right - sheet, right, top, top + lip))
+        pieces.append(Piece(right - sheet, right, bottom - lip, bottom))
+    return pieces
+
+
+def grid(
+    pieces: Sequence[Piece], repeat: float, depth: float
+) -> tuple[list[float], list[float], list[list[bool]]]:
+    """Cut a rectangle of ``repeat`` x ``depth`` at every edge of the pieces.
+
+    Returns the column widths, the row depths (m) and, for each row and column, whether a piece
+    covers that cell.
+    """
+    columns = _cuts([edge for piece in pieces for edge in (piece.left, piece.right)], repeat)
+    rows = _cuts([edge for piece in pieces for edge in (piece.outer, piece.inner)], depth)
+    covered = [
+        [
+            any(
+                piece.left < (left + right) / 2 < piece.right
+                and piece.outer < (outer + inner) / 2 < piece.inner
+                for piece in pieces
+            )
+            for left, right in pairwise(columns)
+        ]
+        for outer, inner in pairwise(rows)
+    ]
+    return _sizes(columns), _sizes(rows), covered
+
+
+def _cuts(edges: Sequence[float], length: float) -> list[float]:
+    """Sorted positions from 0 to ``length``, closer ones than a nanometre merged."""
+    inside = {round(edge, 9) for edge in edges if 1e-9 < edge < length - 1e-9}
+    return [0.0, *sorted(inside), length]
+
+
+def _sizes(cuts: Sequence[float]) -> list[float]:
+    return [end - start for start, end in pairwise(cuts)]

@@ -1,0 +1,241 @@
+"""From a printed case to envcheck's own functions: one small function for each ``method``.
+
+Each takes the case's inputs and its units by figure, and returns the figures in those units.
+Inputs in inch-pound units are converted by ``envcheck.units`` on the way in and out.
+"""
+
+from __future__ import annotations
+
+import csv
+from collections.abc import Callable
+from functools import cache
+from itertools import product
+from math import prod, sqrt
+from pathlib import Path
+from typing import Any
+
+import envcheck
+from envcheck.solve import shells
+from envcheck.solve.methods import air_space as air
+from envcheck.solve.methods.fasteners import fastener_correction, penetration_factor
+from envcheck.solve.methods.iso10077_window import window_geometry, window_u
+from envcheck.solve.methods.iso13370_slab import (
+    characteristic_dimension,
+    equivalent_thickness,
+    slab_u,
+)
+from envcheck.solve.methods.tapered import (
+    tapered_rectangle,
+    tapered_triangle_thickest_apex,
+    tapered_triangle_thinnest_apex,
+)
+from envcheck.solve.methods.weighted import weighted
+from envcheck.solve.network import parallel, plane_wall, series
+from envcheck.units import convert, to_si
+
+Inputs = dict[str, Any]
+Figures = dict[str, float]
+Units = dict[str, str]
+DATA = Path(envcheck.__file__).parent / "data"
+
+
+# ---------------------------------------------------------------------- layers and framed walls
+
+
+def _printed(resistance: float, units: Units) -> Figures:
+    """R and U of a resistance in SI, in the case's units."""
+    return {"R": convert(resistance, units["R"]), "U": convert(1.0 / resistance, units["U"])}
+
+
+def series_sum(inputs: Inputs, units: Units) -> Figures:
+    parts = [*inputs["in_series"], inputs.get("added", 0.0)]
+    return _printed(series(*(to_si(part, units["R"]) for part in parts)), units)
+
+
+def parallel_path(inputs: Inputs, units: Units) -> Figures:
+    plain = [to_si(part, units["R"]) for part in inputs["in_series"]]
+    paths = [series(*plain, to_si(path["resistance"], units["R"])) for path in inputs["paths"]]
+    return _printed(parallel([path["share"] for path in inputs["paths"]], paths), units)
+
+
+def combined(inputs: Inputs, units: Units) -> Figures:
+    layers = [
+        [(part["share"], part["resistance"]) for part in layer["sections"]]
+        if "sections" in layer
+        else [(1.0, layer["resistance"])]
+        for layer in inputs["layers"]
+    ]
+    films = (inputs["inside"], inputs["outside"])
+    paths = list(product(*layers))
+    shares = [prod(share for share, _ in path) for path in paths]
+    upper = parallel(shares, [series(*films, *(r for _, r in path)) for path in paths])
+    planes = [parallel([f for f, _ in layer], [r for _, r in layer]) for layer in layers]
+    lower = series(*films, *planes)
+    total = weighted(0.5, upper, lower)
+    error = 100.0 * (upper - lower) / (2.0 * total)
+    figures = {"R_upper": upper, "R_lower": lower, "R_total": total, "error_percent": error}
+    return figures | {"U": 1.0 / total}
+
+
+# ------------------------------------------------------------------------------------- ISO 6946
+
+
+def air_space(inputs: Inputs, units: Units) -> Figures:
+    emittances = (inputs["emittance_1"], inputs["emittance_2"])
+    return {
+        "R": air.air_space_iso6946(inputs["thickness_mm"] / 1000, inputs["direction"], *emittances)
+    }
+
+
+def radiative_coefficient(inputs: Inputs, units: Units) -> Figures:
+    return {"h_r0": air.radiative_coefficient(inputs["temperature_c"])}
+
+
+def fasteners(inputs: Inputs, units: Units) -> Figures:
+    alpha = penetration_factor(inputs["penetration"], inputs["layer_thickness"])
+    names = ("conductivity", "area", "density", "layer_thickness", "r1", "r_total")
+    return {"dU": fastener_correction(alpha, *(inputs[name] for name in names))}
+
+
+TAPERS: dict[str, Callable[[float, float], float]] = {
+    "rectangle": tapered_rectangle,
+    "tri_thickest_apex": tapered_triangle_thickest_apex,
+    "tri_thinnest_apex": tapered_triangle_thinnest_apex,
+}
+
+
+def tapered(inputs: Inputs, units: Units) -> Figures:
+    return {"U": TAPERS[inputs["shape"]](inputs["r0"], inputs["r1"])}
+
+
+# --------------------------------------------------------------------------- ground and windows
+
+
+def slab(inputs: Inputs, units: Units) -> Figures:
+    dimension = characteristic_dimension(1.0, inputs["perimeter_per_area"])
+    soil = inputs["soil_conductivity"]
+    dt = equivalent_thickness(
+        inputs["wall"], soil, inputs["inside"], inputs["floor_resistance"], inputs["outside"]
+    )
+    return {"U": slab_u(soil, dimension, dt)}
+
+
+def perimeter_ratio(inputs: Inputs, units: Units) -> Figures:
+    return {"ratio": 2.0 / characteristic_dimension(inputs["area"], inputs["perimeter"])}
+
+
+def window(inputs: Inputs, units: Units) -> Figures:
+    """A rectangle whose frame has one width and takes ``frame_fraction`` of the area."""
+    width, height = inputs["width"], inputs["height"]
+    half, glass = (width + height) / 2.0, (1.0 - inputs["frame_fraction"]) * width * height
+    frame = (half - sqrt((width - height) ** 2 / 4.0 + glass)) / 2.0
+    area_glass, area_frame, edge = window_geometry(width, height, frame)
+    u_glass, u_frame = inputs["u_glass"], inputs["u_frame"]
+    return {"U": window_u(area_glass, u_glass, area_frame, u_frame, edge, inputs["psi"])}
+
+
+# ------------------------------------------------------------------------- data tables and units
+
+
+@cache
+def rows(name: str) -> tuple[dict[str, str], ...]:
+    with (DATA / name).open(encoding="utf-8", newline="") as file:
+        return tuple(csv.DictReader(file))
+
+
+def films(inputs: Inputs, units: Units) -> Figures:
+    asked = {key: inputs[key] for key in ("set", "side", "adjoins", "direction")}
+    (row,) = (row for row in rows("films.csv") if asked.items() <= row.items())
+    return {"R": convert(to_si(float(row["resistance"]), row["unit"]), units["R"])}
+
+
+def materials(inputs: Inputs, units: Units) -> Figures:
+    (row,) = (row for row in rows("materials.csv") if row["id"] == inputs["material"])
+    return {"conductivity": float(row["conductivity"])}
+
+
+def unit_factor(inputs: Inputs, units: Units) -> Figures:
+    return {"value": convert(to_si(inputs["value"], inputs["unit"]), inputs["si_unit"])}
+
+
+# ------------------------------------------------------------------- shells, contacts, networks
+
+
+def _element(element: Inputs, inputs: Inputs) -> float:
+    """Resistance of one element of a network, K/W."""
+    area: float = inputs.get("area", 0.0)
+    length: float = inputs.get("length", 1.0)
+    match element["type"]:
+        case "plane":
+            return plane_wall(element["thickness"], element["conductivity"]) / area
+        case "conv":
+            return shells.convection_resistance(element["h"], area)
+        case "cyl":
+            return shells.cylinder_resistance(
+                element["r1"], element["r2"], element["conductivity"], length
+            )
+        case "conv_cyl":
+            mantle = shells.cylinder_area(element["r"], length)
+            return shells.convection_resistance(element["h"], mantle)
+        case "parallel":
+            areas = [branch["area"] for branch in element["branches"]]
+            walls = [plane_wall(b["thickness"], b["conductivity"]) for b in element["branches"]]
+            whole: float = sum(areas)
+            return parallel([part / whole for part in areas], walls) / whole
+    raise KeyError(element["type"])
+
+
+def network(inputs: Inputs, units: Units) -> Figures:
+    """Heat flow from t1 to t2; ``T_n`` before and ``dT_n`` over element n, counted from 0."""
+    resistances = [_element(element, inputs) for element in inputs["elements"]]
+    total = series(*resistances)
+    flow = (inputs["t1"] - inputs["t2"]) / total
+    figures = {"R": total, "Q": flow, "Q_total": flow * inputs.get("scale", 1.0)}
+    passed = 0.0
+    for number, resistance in enumerate(resistances):
+        figures[f"T_{number}"] = inputs["t1"] - flow * passed
+        figures[f"dT_{number}"] = flow * resistance
+        passed += resistance
+    return figures
+
+
+def contact_as_thickness(inputs: Inputs, units: Units) -> Figures:
+    contact = 1.0 / inputs["conductance"]
+    return {"L_equiv_cm": 100 * shells.equivalent_thickness(contact, inputs["conductivity"])}
+
+
+def chip(inputs: Inputs, units: Units) -> Figures:
+    """A chip cooled by air on one side, through joint and substrate on the other; 1 m2."""
+    film = shells.convection_resistance(inputs["h"], 1.0)
+    joint = shells.contact_resistance(inputs["contact"], 1.0)
+    below = series(joint, plane_wall(inputs["thickness"], inputs["conductivity"]), film)
+    both = 1.0 / (1.0 / film + 1.0 / below)
+    return {"Tc": inputs["t_air"] + inputs["q"] * both}
+
+
+def critical_radius(inputs: Inputs, units: Units) -> Figures:
+    if "radius" in inputs:
+        mantle = shells.cylinder_area(inputs["radius"])
+        return {"R": shells.convection_resistance(inputs["h"], mantle)}
+    return {"r_mm": 1000 * shells.critical_radius(inputs["conductivity"], inputs["h"])}
+
+
+ADAPTERS: dict[str, Callable[[Inputs, Units], Figures]] = {
+    "series": series_sum,
+    "parallel_path": parallel_path,
+    "combined": combined,
+    "air_space_iso6946": air_space,
+    "radiative_coefficient": radiative_coefficient,
+    "fastener_correction": fasteners,
+    "tapered": tapered,
+    "slab": slab,
+    "perimeter_ratio": perimeter_ratio,
+    "window": window,
+    "films": films,
+    "materials": materials,
+    "units": unit_factor,
+    "network": network,
+    "contact_as_thickness": contact_as_thickness,
+    "chip": chip,
+    "critical_radius": critical_radius,
+}
