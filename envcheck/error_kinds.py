@@ -329,7 +329,7 @@ _ALL = (
         "shares-over-one",
         "the shares leave no room: together {total}",
         "check the shares",
-        "Shares of framing and headers, or of webs, joints and grout, that take up all of the area.",
+        "Shares of framing and headers, or of webs and joints, that take up all of the area.",
     ),
     Kind(
         "too-thick",

@@ -2,21 +2,25 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, replace
+from functools import cache
 from pathlib import Path
 
+from envcheck.errors import InputError, Problem
 from envcheck.judge import crosschecks
 from envcheck.judge.building import closed_rows, closings, ratios, take_means
 from envcheck.judge.classes import classify
 from envcheck.judge.select import select
-from envcheck.judge.verdict import Case, judge
-from envcheck.model.judged import Judged, Line, Mean, Ratio
+from envcheck.judge.verdict import Case, judge, metrics
+from envcheck.model.judged import Finding, Judged, Line, Mean, Ratio
 from envcheck.model.names import Names
-from envcheck.model.project import Element, Project
+from envcheck.model.project import Assembly, Bridge, Element, Project, RuleSetChoice
 from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Properties, Setting, Solved
+from envcheck.read.materials import categories
 from envcheck.read.project import read_project
-from envcheck.read.rulesets import read_ruleset, rule_folders
+from envcheck.read.rulesets import read_ruleset
 from envcheck.solve.assembly import solve
 from envcheck.solve.conventions import resolve
 from envcheck.solve.properties import properties
@@ -24,3 +28,188 @@ from envcheck.solve.registry import prescribable
 
 COMPLIES, OVER, OPEN = 0, 1, 3
 """Exit status of a run: none over and none open; at least one over; none over, some open."""
+
+SOLVED_METRICS = ("U_assembly", "U_product", "C_factor", "F_factor", "R_total")
+
+
+@dataclass(frozen=True, slots=True)
+class Run:
+    """One project judged by its rule sets."""
+
+    project: Project
+    rulesets: dict[str, RuleSet]
+    judged: Judged
+    properties: dict[str, Properties]
+    """By assembly id."""
+    solved: dict[str, Solved]
+    """By assembly id: one solution of each, for what the report lists."""
+    exit_status: int
+
+
+@cache
+def names() -> Names:
+    """The names that the registries know, for ``read`` to check and suggest."""
+    return Names(
+        methods=prescribable(),
+        categories=tuple(categories()),
+        film_sets=("iso6946", "handbook"),
+        findings=tuple(check.id for check in crosschecks.checks()) + ("class-claimed",),
+    )
+
+
+def run(path: str, folders: Sequence[str] = ()) -> Run:
+    """Check one project file.
+
+    path: of the project, ``-`` for standard input. folders: where rule sets are looked up; else
+    the nearest folder ``rules`` at or above the project file.
+    Errors: InputError with every problem of the project and of its rule sets.
+    """
+    project = read_project(path, names())
+    rulesets = _read_rulesets(project, folders or nearest_rules(path), path)
+    made_of = {name: properties(assembly) for name, assembly in project.assemblies.items()}
+    solver = _Solver(project)
+    lines: list[Line] = []
+    all_ratios: list[Ratio] = []
+    means: list[Mean] = []
+    found: list[Finding] = []
+    for choice in project.rule_sets:
+        ruleset = rulesets[choice.id]
+        measured = ratios(project, ruleset)
+        own = _judge_all(project, ruleset, choice, made_of, measured, solver, found)
+        own, taken = take_means(own, project, ruleset)
+        lines += own
+        all_ratios += measured
+        means += taken
+    closed = closings(project)
+    solver.drawn_only(rulesets[project.rule_sets[0].id])
+    facts = crosschecks.Facts(
+        project,
+        rulesets,
+        tuple(lines),
+        made_of,
+        solver.first,
+        closed,
+        tuple(all_ratios),
+        tuple(means),
+    )
+    findings = (*found, *crosschecks.findings(facts))
+    judged = Judged(
+        lines=tuple(lines),
+        findings=findings,
+        ratios=tuple(all_ratios),
+        means=tuple(means),
+        closings=closed,
+        remarks=_remarks(project, rulesets),
+    )
+    return Run(project, rulesets, judged, made_of, solver.first, exit_status(judged))
+
+
+def exit_status(judged: Judged) -> int:
+    """1 where a deciding line is over its limit, 3 where something is open, else 0."""
+    deciding = [line for line in judged.lines if line.decides]
+    if any(line.verdict == "fail" for line in deciding):
+        return OVER
+    unsettled = any(f.severity == "E" and not f.answered for f in judged.findings)
+    return OPEN if unsettled or any(line.open for line in deciding) else COMPLIES
+
+
+def nearest_rules(path: str) -> tuple[str, ...]:
+    """The nearest folder ``rules`` at or above the project file (or the current folder)."""
+    start = Path.cwd() if path == "-" else Path(path).resolve().parent
+    for folder in (start, *start.parents):
+        if (folder / "rules").is_dir():
+            return (str(folder / "rules"),)
+    return ()
+
+
+def _read_rulesets(project: Project, folders: Sequence[str], path: str) -> dict[str, RuleSet]:
+    """Read every rule set that the project names; all their problems at once."""
+    found: dict[str, RuleSet] = {}
+    problems: list[Problem] = []
+    for choice in project.rule_sets:
+        try:
+            found[choice.id] = read_ruleset(
+                choice.id, folders, project.permit_application_date, names()
+            )
+        except InputError as error:
+            problems += error.problems
+    if problems:
+        raise InputError(problems)
+    return found
+
+
+def _judge_all(
+    project: Project,
+    ruleset: RuleSet,
+    choice: RuleSetChoice,
+    made_of: Mapping[str, Properties],
+    measured: Sequence[Ratio],
+    solver: _Solver,
+    found: list[Finding],
+) -> list[Line]:
+    """Judge every element by one rule set; findings of the class tests go to ``found``."""
+    closed = closed_rows(ruleset, measured)
+    derived = {ratio.name: ratio.value for ratio in measured if not ratio.missing}
+    lines = []
+    for element in project.elements.values():
+        assembly = project.assemblies[element.assembly]
+        own = made_of[assembly.id]
+        found_class = classify(element, own, ruleset)
+        if found_class.finding is not None and choice.decides:
+            found.append(found_class.finding)
+        selection = select(element, found_class.category, ruleset, project, derived)
+        case = Case(
+            project, ruleset, choice.decides, element, assembly, own, found_class, selection, closed
+        )
+        for metric in metrics(selection, categories()[found_class.category].metric):
+            solved = (
+                solver.solve(element, assembly, found_class.category, metric, ruleset)
+                if metric in SOLVED_METRICS
+                else None
+            )
+            lines.append(judge(case, metric, solved))
+    return lines
+
+
+class _Solver:
+    """Solves each assembly once per distinct setting, and once per element with own bridges."""
+
+    def __init__(self, project: Project) -> None:
+        self._project = project
+        self._found: dict[tuple[str, Setting, tuple[Bridge, ...], float | None], Solved] = {}
+        self.first: dict[str, Solved] = {}
+        """By assembly id: its first solution, for what the report lists."""
+
+    def solve(
+        self, element: Element, assembly: Assembly, category: str, metric: str, ruleset: RuleSet
+    ) -> Solved:
+        setting = resolve(element, assembly, category, metric, ruleset.conventions, ruleset.id)
+        area = element.net_area if element.bridges else None
+        key = (assembly.id, setting, element.bridges, area)
+        if key not in self._found:
+            self._found[key] = solve(assembly, setting, ruleset.conventions, element.bridges, area)
+        self.first.setdefault(assembly.id, self._found[key])
+        return self._found[key]
+
+    def drawn_only(self, ruleset: RuleSet) -> None:
+        """Solve what a surface shows with its host but no element was entered for."""
+        for surface in self._project.surfaces.values():
+            for mark in surface.shows:
+                host = self._project.elements.get(mark.host)
+                assembly = self._project.assemblies.get(mark.tag)
+                if host is None or assembly is None or assembly.id in self.first:
+                    continue
+                metric = categories()[host.category].metric
+                element = replace(host, tag=mark.tag, assembly=mark.tag)
+                self.solve(element, assembly, host.category, metric, ruleset)
+
+
+def _remarks(project: Project, rulesets: Mapping[str, RuleSet]) -> tuple[str, ...]:
+    found = []
+    for choice in project.rule_sets:
+        ruleset = rulesets[choice.id]
+        if ruleset.tradeoff:
+            found.append(f"{ruleset.title}: {ruleset.tradeoff}")
+        if not choice.decides:
+            found.append(f"{ruleset.title} is for information: it sets no exit status")
+    return tuple(found)

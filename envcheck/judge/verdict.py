@@ -8,7 +8,7 @@ from dataclasses import dataclass, replace
 from envcheck.judge.classes import Class
 from envcheck.judge.compare import compare
 from envcheck.judge.paths import insulation_of, insulation_path
-from envcheck.judge.select import Selection
+from envcheck.judge.select import Outcome, Selection
 from envcheck.model.judged import Choice, Comparison, Line, PathResult, Ratio
 from envcheck.model.patterns import matches
 from envcheck.model.project import Assembly, Element, ExceptionClaim, Project
@@ -32,13 +32,31 @@ class Case:
     """Category patterns whose rows an area cap closes."""
 
 
-def judge(case: Case, metric: str, limit: Limit | None, solved: Solved | None) -> Line:
+STOPPED = {"not_in_table": "not_in_table"}
+"""Verdict of a selection without a limit, by its state; every other state is ``not_decided``."""
+INSULATION = ("R_insulation", "insulation")
+
+
+def metrics(selection: Selection, default: str) -> tuple[str, ...]:
+    """Metrics that an element is judged in: a line each.
+
+    The R-value path is no line of its own where the table also limits the assembly.
+    """
+    if not selection.metrics:
+        return (default,)
+    own = tuple(metric for metric in selection.metrics if metric != INSULATION[0])
+    return own or selection.metrics
+
+
+def judge(case: Case, metric: str, solved: Solved | None) -> Line:
     """Judge one element in one metric.
 
     The questions are asked in a fixed order and the first that stands in the way gives the
     verdict: the class, the limit, the share renewed, a claimed exception, an area cap, the
     evidence, the value, the comparison.
     """
+    outcome = _outcome(case.selection, metric)
+    limit = outcome.limit if outcome is not None else None
     line = Line(
         ruleset=case.ruleset.id,
         decides=case.decides,
@@ -52,8 +70,7 @@ def judge(case: Case, metric: str, limit: Limit | None, solved: Solved | None) -
         comparison=None,
         trail=_trail(case),
     )
-    for question in (_class, _limit, _renewed):
-        answer = question(case, limit)
+    for answer in (_class(case), _limit(case, outcome), _renewed(case)):
         if answer is not None:
             return replace(line, verdict=answer[0], reasons=(answer[1],))
     assert limit is not None
@@ -70,7 +87,14 @@ def judge(case: Case, metric: str, limit: Limit | None, solved: Solved | None) -
 # ------------------------------------------------------------------- what stands in the way
 
 
-def _class(case: Case, limit: Limit | None) -> tuple[str, str] | None:
+def _outcome(selection: Selection, metric: str) -> Outcome | None:
+    for path in ("assembly", "", "insulation"):
+        if (metric, path) in selection.by:
+            return selection.by[metric, path]
+    return None
+
+
+def _class(case: Case) -> tuple[str, str] | None:
     if case.found_class.official:
         return "official_decides", case.found_class.official
     if case.found_class.missing:
@@ -78,9 +102,13 @@ def _class(case: Case, limit: Limit | None) -> tuple[str, str] | None:
     return None
 
 
-def _limit(case: Case, limit: Limit | None) -> tuple[str, str] | None:
+def _limit(case: Case, outcome: Outcome | None) -> tuple[str, str] | None:
+    if outcome is None:
+        return STOPPED.get(case.selection.state, "not_decided"), case.selection.why
+    limit = outcome.limit
     if limit is None:
-        return case.selection.verdict, case.selection.reason
+        missing = "missing: " if outcome.state == "missing_fact" else ""
+        return STOPPED.get(outcome.state, "not_decided"), f"{missing}{outcome.why}"
     if limit.kind == "not_covered":
         return "not_in_table", f"the table prints {limit.cell!r} here: the code has no such case"
     if limit.kind == "no_requirement":
@@ -91,7 +119,7 @@ def _limit(case: Case, limit: Limit | None) -> tuple[str, str] | None:
     return None
 
 
-def _renewed(case: Case, limit: Limit | None) -> tuple[str, str] | None:
+def _renewed(case: Case) -> tuple[str, str] | None:
     trigger = case.ruleset.trigger
     if trigger is None or case.project.scope != "alteration":
         return None
@@ -181,8 +209,9 @@ def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Lin
     value = _value(case, limit, solved)
     if missing is None and value is None:
         missing = f"missing: {limit.metric} of {case.assembly.id}"
-    other = case.selection.limit("R_insulation", "insulation")
-    labels = _labels(case, other) if limit.path == "assembly" else None
+    labels = _labels(case, limit)
+    if limit.metric == INSULATION[0]:
+        return _by_labels(line, labels)
     if missing is not None or value is None:
         return _without_value(line, missing or "", limit, labels)
     comparison = compare(value, limit.alternatives[0][0], limit, case.ruleset)
@@ -235,11 +264,22 @@ def _depth(case: Case, limit: Limit) -> str | None:
     return None
 
 
-def _labels(case: Case, limit: Limit | None) -> PathResult | None:
-    if limit is None or limit.kind != "number" or not case.ruleset.paths_clause:
+def _labels(case: Case, limit: Limit) -> PathResult | None:
+    """The R-value path, where the table prints one for this element."""
+    outcome = case.selection.by.get(INSULATION)
+    other = outcome.limit if outcome is not None else None
+    if other is None or other.kind != "number" or limit.path not in ("assembly", "insulation"):
         return None
     brought = insulation_of(case.assembly, case.element, case.properties)
-    return insulation_path(limit, brought, case.ruleset)
+    return insulation_path(other, brought, case.ruleset)
+
+
+def _by_labels(line: Line, labels: PathResult | None) -> Line:
+    """A table that limits labelled insulation only."""
+    if labels is None or labels.state == "not_available":
+        why = labels.why if labels is not None else "labelled insulation"
+        return replace(line, verdict="not_decided", reasons=(f"missing: {why}",))
+    return replace(line, verdict=labels.state, reasons=(labels.why,), paths=(labels,))
 
 
 def _without_value(line: Line, missing: str, limit: Limit, labels: PathResult | None) -> Line:

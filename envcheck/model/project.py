@@ -185,6 +185,8 @@ class MasonryLayer(Layer):
     grout: Material | None
     cell_resistance: float | None
     """Stated resistance of the cell (air or fill) over its depth, m2 K/W."""
+    weight: float | None = None
+    """Stated weight per area, kg/m2, for class tests; None = from the densities."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -337,6 +339,8 @@ class Opening:
     count: float
     area: float | None = None
     """m2 in all, where the drawing shows it."""
+    host: str = ""
+    """Tag of the element that it is cut from, where that is stated."""
 
 
 @dataclass(frozen=True, slots=True)

@@ -107,14 +107,16 @@ class Plans:
         self._by_id: dict[int, Plan] = {}
         self.root = self.of(schema)
 
-    def of(self, schema: dict[str, Any]) -> Plan:
+    def of(self, schema: Any) -> Plan:
         """Give the plan of a subschema."""
         known = self._by_id.get(id(schema))
         if known is None:
             known = self._by_id[id(schema)] = self._make(schema)
         return known
 
-    def _make(self, schema: dict[str, Any]) -> Plan:
+    def _make(self, schema: Any) -> Plan:
+        if not isinstance(schema, dict):
+            return Plan(never=True)
         plan = Plan(never=bool(schema.keys() - _KNOWN - _NOTES))
         names = schema.get("type", "object" if "properties" in schema else ())
         for name in (names,) if isinstance(names, str) else names:
@@ -159,7 +161,14 @@ class Plans:
     def _kinds(self, plan: Plan, schema: dict[str, Any]) -> None:
         """Kinds told apart by ``if: {properties: {KEY: {const: WORD}}}, then: ...``."""
         for branch in schema.get("allOf", ()):
-            ((key, test),) = branch["if"]["properties"].items()
+            tests = branch.get("if", {}).get("properties", {})
+            if len(tests) != 1 or "then" not in branch or "else" in branch:
+                plan.never = True
+                return
+            ((key, test),) = tests.items()
+            if not isinstance(test.get("const"), str) or plan.kind_key not in ("", key):
+                plan.never = True
+                return
             plan.kind_key = key
             plan.kinds[test["const"]] = self.of(branch["then"])
             if "required" not in branch["if"]:

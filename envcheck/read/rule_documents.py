@@ -11,7 +11,7 @@ from pathlib import Path
 from typing import Any
 
 from envcheck.errors import Problem, did_you_mean, one_of, problem
-from envcheck.read.schema import check_schema
+from envcheck.read.schema import check
 from envcheck.read.yaml_reader import Entry, line_of, read_yaml
 
 MEANING = "ruleset.yaml"
@@ -109,7 +109,7 @@ def read_document(folder: Path, problems: list[Problem]) -> Document | None:
     problems += found
     if data is None:
         return None
-    wrong = check_schema(data, shown, "rules")
+    wrong = check(data, "rules", shown)
     problems += wrong
     if wrong:
         return None

@@ -16,6 +16,7 @@ from typing import Any
 import yaml
 
 from envcheck.errors import Problem, problem
+from envcheck.read.yaml_text import CONTROLS, check_bytes, control_characters, syntax_problem
 
 _Loader: Any = getattr(yaml, "CSafeLoader", yaml.SafeLoader)
 DEEPEST = 50
@@ -76,14 +77,15 @@ def read_yaml(
     None as it is without.
     """
     builder = _Builder(file, text_only)
-    if not builder.decodes(raw):
-        return None, builder.problems
+    wrong = check_bytes(raw, file)
+    if wrong:
+        return None, wrong
     try:
         builder.run(raw)
     except yaml.MarkedYAMLError as error:
-        builder.syntax(error)
-    except yaml.reader.ReaderError as error:
-        _unreadable_character(builder, raw, error)
+        builder.problems.append(syntax_problem(error, file))
+    except yaml.reader.ReaderError:
+        builder.problems += control_characters(raw.decode("utf-8", "replace"), file)
     except _StopReading:
         pass
     else:
@@ -104,10 +106,6 @@ _NUMBER = re.compile(r"[+-]?(?:[0-9]+(\.[0-9]*)?|(\.[0-9]+))([eE][+-]?[0-9]+)?")
 _LEADING_ZERO = re.compile(r"[+-]?0[0-9]+(\.[0-9]*)?")
 _NOT_FINITE = re.compile(r"[+-]?\.(?:inf|Inf|INF)|\.(?:nan|NaN|NAN)")
 _WORDS = {"true": True, "false": False, "null": None, "~": None}
-_CONTROLS = re.compile(
-    r"[\x00-\x08\x0b\x0c\x0e-\x1f\x7f-\x9f\u202a-\u202e\u2066-\u2069\ufffe\uffff]"
-)
-_BIDI = re.compile(rb"\xe2(?:\x80[\xaa-\xae]|\x81[\xa6-\xa9])")
 
 
 @lru_cache(maxsize=16384)
@@ -146,52 +144,6 @@ class _Builder:
     def stop(self, kind: str, line: int | None, **fill: Any) -> None:
         self.add(kind, line, **fill)
         raise _StopReading
-
-    # -------------------------------------------------------------------------- bytes
-
-    def decodes(self, raw: bytes) -> bool:
-        """Whether the bytes are UTF-8 without characters that a text file never holds."""
-        if raw.startswith((b"\xff\xfe", b"\xfe\xff")) or b"\0" in raw[:4]:
-            found = "UTF-16 or UTF-32"
-            self.problems.append(problem("wrong-encoding", self.file, 1, found=found))
-            return False
-        try:
-            text = raw.decode("utf-8")
-        except UnicodeDecodeError as error:
-            line = raw.count(b"\n", 0, error.start) + 1
-            found = f"byte 0x{raw[error.start]:02x}"
-            self.problems.append(problem("wrong-encoding", self.file, line, found=found))
-            return False
-        if _BIDI.search(raw):
-            self.control_characters(text)
-            return False
-        return True
-
-    def control_characters(self, text: str) -> None:
-        """List the first control characters."""
-        for number, line in enumerate(text.split("\n"), 1):
-            match = _CONTROLS.search(line)
-            if match and len(self.problems) < MOST_PROBLEMS:
-                found = f"U+{ord(match[0]):04X}"
-                self.problems.append(problem("control-character", self.file, number, found=found))
-
-    def syntax(self, error: yaml.MarkedYAMLError) -> None:
-        """Say what the scanner stumbled on, and where what it was in had begun."""
-        mark: Any = error.problem_mark or error.context_mark
-        start: Any = error.context_mark
-        what = str(error.problem or error.context or "no YAML")
-        flow = "," in what and "expected" in what
-        opened = f" (opened in line {start.line + 1})" if flow and start is not None else ""
-        fix = next((fix for words, fix in _SYNTAX_FIXES if words in what), _SYNTAX_FIX)
-        self.problems.append(
-            problem(
-                "yaml-syntax",
-                self.file,
-                mark.line + 1 if mark is not None else None,
-                fix=fix,
-                what=what + opened,
-            )
-        )
 
     def check_root(self) -> None:
         """Say what stands where a mapping should."""
@@ -309,7 +261,7 @@ class _Builder:
             self.add("yaml-tag", line, found=event.tag)
 
     def _escaped(self, text: str, line: int) -> None:
-        match = _CONTROLS.search(text)
+        match = CONTROLS.search(text)
         if match:
             self.add("control-character", line, found=f"U+{ord(match[0]):04X}")
 
@@ -317,27 +269,5 @@ class _Builder:
         if event.__class__ is yaml.DocumentStartEvent:
             self.documents += 1
             if self.documents > 1:
-                self.stop("second-document", event.start_mark.line + 1)
-
-
-_SYNTAX_FIXES = (
-    ("\\t", "indent with spaces, not tabs"),
-    ("cannot start any token", "indent with spaces, not tabs; quote text that starts with @ or `"),
-    (
-        "mapping values are not allowed",
-        "quote text that holds a colon and a space, or mend the indentation",
-    ),
-    ("',' or", "close the bracket and put a comma between its items"),
-    ("end of stream", "close the quote or bracket that was opened"),
-    ("could not find expected ':'", "write 'key: value'; indent all keys of one block alike"),
-)
-_SYNTAX_FIX = "check the indentation, the quotes and the brackets of this line and the one above"
-
-
-def _unreadable_character(builder: _Builder, raw: bytes, error: yaml.reader.ReaderError) -> None:
-    before = len(builder.problems)
-    builder.control_characters(raw.decode("utf-8", "replace"))
-    if len(builder.problems) == before:
-        builder.problems.append(
-            problem("control-character", builder.file, None, found=f"U+{int(error.character):04X}")
-        )
+                mark: Any = event.start_mark
+                self.stop("second-document", mark.line + 1)

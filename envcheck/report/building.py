@@ -68,8 +68,6 @@ def build(judged: Judged, system: str) -> Building:
 
 
 def _ratio(ratio: Ratio, system: str) -> RatioView:
-    unit = units.label("area", system)
-    top, bottom = (numbers.area(a, system) for a in (ratio.numerator, ratio.denominator))
     cap = f"at most {numbers.percent(ratio.most)}" if ratio.most is not None else "no cap"
     if ratio.missing:
         state = "not decided"
@@ -79,37 +77,61 @@ def _ratio(ratio: Ratio, system: str) -> RatioView:
         state = "cap passed" if ratio.passed else "within the cap"
     return RatioView(
         name=clean(wording.RATIOS.get(ratio.name, wording.plain(ratio.name))),
-        sum=f"{top} / {bottom} {unit} = {numbers.percent(ratio.value, 2)}",
+        sum=_division(ratio, system),
         cap=clean(f"{cap}, {ratio.clause}" if ratio.clause else cap),
         state=state,
         missing=tuple(map(clean, ratio.missing)),
     )
 
 
+def _division(ratio: Ratio, system: str) -> str:
+    """Write the division with as many digits as its result takes."""
+    parts = ratio.numerator, ratio.denominator
+    result = numbers.percent(ratio.value, 2)
+    top, bottom = (numbers.area(area, system) for area in parts)
+    if not float(bottom) or numbers.percent(float(top) / float(bottom), 2) != result:
+        shown = (numbers.in_system(area, "area", system) for area in parts)
+        top, bottom = (numbers.significant(area, 9) for area in shown)
+    return f"{top} / {bottom} {units.label('area', system)} = {result}"
+
+
 def _mean(mean: Mean, system: str) -> MeanView:
-    """Sum the printed parts, so that a calculator gives the printed mean."""
     places = numbers.DECIMALS["u_factor", system]
-    parts = []
-    total = 0.0
-    for tag, area, u_factor in mean.members:
-        shown = numbers.in_system(u_factor, "u_factor", system)
-        parts.append(f"{numbers.area(area, system)} * {numbers.fixed(shown, places)} [{clean(tag)}]")
-        total += float(numbers.area(area, system))
     value = numbers.fixed(numbers.in_system(mean.value, "u_factor", system), places)
-    unit = units.label("u_factor", system)
-    worst = next((u for tag, _, u in mean.members if tag == mean.worst), None)
     worst_text = clean(mean.worst)
+    worst = next((u for tag, _, u in mean.members if tag == mean.worst), None)
     if worst is not None:
-        shown = numbers.fixed(numbers.in_system(worst, "u_factor", system), places)
-        worst_text += f" with U {shown}"
+        shown = numbers.in_system(worst, "u_factor", system)
+        worst_text += f" with U {numbers.fixed(shown, places)}"
     return MeanView(
         rule_set=clean(mean.ruleset),
         group=clean(mean.group),
         clause=clean(mean.clause),
-        sum=f"({' + '.join(parts)}) / {numbers.trimmed(total, 2)} = {value} {unit}",
+        sum=f"{_weighted(mean, system, value, places)} = {value} {units.label('u_factor', system)}",
         worst=worst_text,
         cap=clean(mean.cap),
     )
+
+
+def _weighted(mean: Mean, system: str, value: str, places: int) -> str:
+    """Write sum(A U) / sum(A) with as few digits as give the printed mean."""
+    text = ""
+    for digits in (4, 6, 9):
+        pairs = [
+            (
+                tag,
+                numbers.significant(numbers.in_system(area, "area", system), max(digits, 6)),
+                numbers.significant(numbers.in_system(u, "u_factor", system), digits),
+            )
+            for tag, area, u in mean.members
+        ]
+        total = sum(float(area) for _, area, _ in pairs)
+        terms = " + ".join(f"{area} * {u} [{clean(tag)}]" for tag, area, u in pairs)
+        text = f"({terms}) / {numbers.significant(total, 9)}"
+        weighted = sum(float(area) * float(u) for _, area, u in pairs)
+        if total and numbers.fixed(weighted / total, places) == value:
+            break
+    return text
 
 
 def _closing(closing: Closing, system: str) -> ClosingView:

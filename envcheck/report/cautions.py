@@ -52,8 +52,7 @@ TOPICS = {
     ),
     "workmanship": (
         "Workmanship",
-        "Results assume that insulation fills its space without gaps or compression unless "
-        "stated.",
+        "Results assume that insulation fills its space without gaps or compression unless stated.",
     ),
     "steady_state": (
         "Steady state",
@@ -113,7 +112,8 @@ def _triggered(
         if line.solved is not None and id(line.solved) not in seen:
             seen.add(id(line.solved))
             for caution in line.solved.cautions:
-                yield caution.topic, caution.reason, line.solved.assembly
+                name = line.solved.assembly
+                yield caution.topic, caution.reason.removeprefix(f"{name}: "), name
     if project.scope in ("alteration", "change_of_use"):
         yield "hazardous", "the work is on an existing building", ""
         for element in project.elements.values():

@@ -58,9 +58,7 @@ def facts(project: Project, date: str) -> tuple[Pair, ...]:
     return tuple(Pair(label, clean(text)) for label, text in pairs if text)
 
 
-def rule_set(
-    ruleset: RuleSet, lines: Iterable[Line], project: Project, system: str
-) -> RuleSetView:
+def rule_set(ruleset: RuleSet, lines: Iterable[Line], project: Project, system: str) -> RuleSetView:
     """Head of one rule set; the zone comes from the trail of its lines."""
     own = [line for line in lines if line.ruleset == ruleset.id]
     decides = all(choice.decides for choice in project.rule_sets if choice.id == ruleset.id)
@@ -132,7 +130,8 @@ def _conventions(ruleset: RuleSet, system: str) -> Iterable[Convention]:
     yield _said(conv, "air spaces", spaces, "air_spaces")
     cladding = wording.CLADDING.get(conv.cladding, conv.cladding)
     yield _said(conv, "ventilated cladding", cladding, "cladding")
-    yield _said(conv, "fasteners", wording.FASTENERS.get(conv.fasteners, conv.fasteners), "fasteners")
+    fasteners = wording.FASTENERS.get(conv.fasteners, conv.fasteners)
+    yield _said(conv, "fasteners", fasteners, "fasteners")
     yield _said(conv, "tapered layers", _tapered(conv, system), "tapered")
     crossed = wording.CROSSED.get(conv.crossed_insulation, conv.crossed_insulation)
     yield _said(conv, "crossed insulation", crossed, "crossed_insulation")
@@ -151,8 +150,9 @@ def _conventions(ruleset: RuleSet, system: str) -> Iterable[Convention]:
         counted = f"{conv.dimensions_measured} dimensions"
         yield _said(conv, "areas", counted, "dimensions_measured", "measured")
     rule = wording.COMPARE.get(ruleset.compare, wording.plain(ruleset.compare))
-    where = ruleset.rounding_clause or "rule set"
-    yield Convention("rounding", rule, clean(where if ruleset.rounding_stated else wording.OUR_DEFAULT))
+    stated = ruleset.rounding_clause or "rule set"
+    where = stated if ruleset.rounding_stated else wording.OUR_DEFAULT
+    yield Convention("rounding", rule, clean(where))
 
 
 def _said(conv: Conventions, topic: str, counted: str, *keys: str) -> Convention:
@@ -212,5 +212,3 @@ def hashes(project: Project, rulesets: Mapping[str, RuleSet]) -> tuple[Pair, ...
             if edition.sha256 and pair not in found:
                 found.append(pair)
     return tuple(found)
-
-

@@ -8,9 +8,9 @@ from dataclasses import dataclass
 from envcheck import units
 from envcheck.model.judged import Comparison, Line
 from envcheck.model.project import Element, Project
-from envcheck.model.ruleset import Limit, RuleSet
+from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Solved
-from envcheck.report import numbers, wording, worksheet
+from envcheck.report import numbers, said, wording, worksheet
 from envcheck.report.inert import clean
 from envcheck.report.parts import Pair
 
@@ -118,16 +118,16 @@ def _row(
         compared=_compared(line.comparison),
         low=_bound(line, system, high=False),
         high=_bound(line, system, high=True),
-        limit=limit_text(line),
+        limit=said.limit_text(line),
         limit_number=_limit_number(line.comparison),
-        limit_source=limit_source(line.limit, line.ruleset),
+        limit_source=said.limit_source(line.limit, line.ruleset),
         room=_room(own, line.metric),
         room_share=_room_share(own),
         verdict=line.verdict,
-        verdict_text=verdict_text(line),
+        verdict_text=said.verdict_text(line),
         open=line.open,
         reasons=tuple(map(clean, line.reasons)),
-        notes=notes(line, system),
+        notes=said.notes(line),
         paths=tuple(map(_path, line.paths)),
         hand_check=_hand_check(line, system, value, sums),
         trail=tuple(_choice(step, chosen, why) for step, chosen, why in line.trail),
@@ -190,15 +190,13 @@ def _bound(line: Line, system: str, high: bool) -> Figure:
 def _compared(comparison: Comparison | None) -> Figure:
     if comparison is None:
         return NO_FIGURE
-    if comparison.compared == comparison.value:
-        return Figure(numbers.significant(comparison.compared, 6), clean(comparison.unit))
-    return Figure(numbers.fixed(comparison.compared, comparison.decimals), clean(comparison.unit))
+    return Figure(said.compared(comparison), clean(comparison.unit))
 
 
 def _limit_number(comparison: Comparison | None) -> Figure:
     if comparison is None:
         return NO_FIGURE
-    return Figure(f"{comparison.limit:.{comparison.decimals}f}", clean(comparison.unit))
+    return Figure(said.limit_number(comparison), clean(comparison.unit))
 
 
 def _room(comparison: Comparison | None, metric: str) -> Figure:
@@ -215,70 +213,6 @@ def _room_share(comparison: Comparison | None) -> str:
     return f"{numbers.signed(100.0 * comparison.margin / comparison.limit, 1)} %"
 
 
-def limit_text(line: Line) -> str:
-    """The limit as printed in the table, with its sense in front of a number."""
-    if line.limit is None:
-        return f"{_sense(line.comparison.sense)}{_limit_number(line.comparison).text}" if (
-            line.comparison
-        ) else ""
-    cell = clean(line.limit.cell)
-    if line.limit.kind != "number" or cell.startswith(("<", ">")):
-        return cell
-    return f"{_sense(line.limit.sense)}{cell}"
-
-
-def _sense(sense: str) -> str:
-    return ">= " if sense == "min" else "<= "
-
-
-def limit_source(limit: Limit | None, ruleset: str) -> str:
-    """Table, row, zone and clause where the limit stands in print."""
-    if limit is None:
-        return ""
-    parts = [limit.table, f'"{limit.label or limit.row}"']
-    if limit.zone and limit.zone != "*":
-        parts.append(limit.zone)
-    parts += [condition.text or condition.dimension for condition in limit.when]
-    if limit.clause and limit.clause != limit.table:
-        parts.append(limit.clause)
-    if limit.ruleset != ruleset:
-        parts.append(f"printed in {limit.ruleset}")
-    if limit.replaced:
-        parts.append(f"in place of {limit.replaced}")
-    if limit.src:
-        parts.append(f"source {limit.src}")
-    return clean(", ".join(filter(None, parts)))
-
-
-def verdict_text(line: Line) -> str:
-    """The verdict in words."""
-    text = wording.VERDICTS[line.verdict]
-    comparison = line.comparison
-    if comparison is not None:
-        if line.verdict == "fail" and comparison.sense == "min":
-            text = wording.SHORT_OF
-        if line.verdict == "pass" and comparison.by_rounding:
-            text = wording.AFTER_ROUNDING
-    return f"{text} (mean {clean(line.group)})" if line.group else text
-
-
-def notes(line: Line, system: str) -> tuple[str, ...]:
-    """What stands beside a verdict: flags, a group member's own comparison, a claim."""
-    found = [
-        wording.FLAGS.get(flag, wording.plain(flag))
-        for flag in line.flags
-        if not (flag == "rounding" and line.verdict != "pass")
-    ]
-    own = line.own
-    if own is not None:
-        word = "within" if own.within else "over"
-        text = numbers.fixed(own.compared, own.decimals)
-        found.append(f"alone it would be {word}: {text} against {own.limit:.{own.decimals}f}")
-    if line.with_exception:
-        found.append(f"with the claimed exception: {line.with_exception}")
-    return tuple(map(clean, found))
-
-
 def _path(result: tuple[str, str, str, str, str]) -> PathRow:
     path, state, value, limit, why = result
     words = wording.PATHS.get(path, wording.plain(path)), wording.STATES.get(state, state)
@@ -290,9 +224,7 @@ def _choice(step: str, chosen: str, why: str) -> Pair:
     return Pair(clean(label), clean(f"{chosen}: {why}" if why else chosen))
 
 
-def _hand_check(
-    line: Line, system: str, value: Figure, sums: dict[tuple[int, str], str]
-) -> str:
+def _hand_check(line: Line, system: str, value: Figure, sums: dict[tuple[int, str], str]) -> str:
     solved = line.solved
     if solved is None or not value.text or solved.setting.metric != line.metric:
         return ""

@@ -86,7 +86,9 @@ def build(
         title=header.title(project),
         facts=header.facts(project, options.date),
         units=system,
-        rule_sets=tuple(header.rule_set(r, judged.lines, project, system) for r in rulesets.values()),
+        rule_sets=tuple(
+            header.rule_set(each, judged.lines, project, system) for each in rulesets.values()
+        ),
         summary=items.summary(judged),
         rows=made,
         open_items=items.open_items(made, judged),

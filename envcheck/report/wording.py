@@ -112,9 +112,7 @@ CROSSED = {
     "two_dimensional": "insulation crossed by continuous metal by two-dimensional bounds",
 }
 OUR_DEFAULT = "default of envcheck"
-APPROVES_NOTHING = (
-    "This report compares figures; it approves nothing. The code official decides."
-)
+APPROVES_NOTHING = "This report compares figures; it approves nothing. The code official decides."
 DEFERRAL = (
     "This report compares computed heat-transfer values with limits that a user typed in. It is "
     "not an approval, a permit or a certificate. The code official having jurisdiction decides; "

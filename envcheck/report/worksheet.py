@@ -58,9 +58,7 @@ class _Sheet:
     """(symbol, system) -> printed result."""
 
 
-def write(
-    steps: Iterable[Step], system: str, digits: int = OPERAND_DIGITS
-) -> tuple[Line, ...]:
+def write(steps: Iterable[Step], system: str, digits: int = OPERAND_DIGITS) -> tuple[Line, ...]:
     """Print the steps in ``system`` ``SI`` or ``IP``."""
     sheet = _Sheet(system, digits)
     for step in steps:

@@ -13,12 +13,19 @@ from envcheck.solve import rows
 from envcheck.solve.cautions import cautions
 from envcheck.solve.cells import stated_cell
 from envcheck.solve.conventions import ventilated_at
-from envcheck.solve.methods.bridges import correct_for_bridges
+from envcheck.solve.methods.bridges import correct_for_bridges, total_step
 from envcheck.solve.methods.crossed import count_crossed
-from envcheck.solve.methods.fasteners import correct_for_fasteners
+from envcheck.solve.methods.fasteners import Correction, correct_for_fasteners
 from envcheck.solve.methods.tapered import taper
 from envcheck.solve.methods.weighted import weighted
-from envcheck.solve.registry import Context, Decision, NotDecided, Wall, drawers, methods
+from envcheck.solve.registry import (
+    Context,
+    Decision,
+    NotDecided,
+    Wall,
+    drawers,
+    methods,
+)
 from envcheck.solve.wiring import bounds
 
 NOT_DRAWN = "no bracket: the value comes from a table, a rating or a formula of the whole"
@@ -42,15 +49,6 @@ def solve(
     return _solve_whole(assembly, setting, conventions, (*assembly.bridges, *bridges), area)
 
 
-class _Corrections(NamedTuple):
-    """What is added to the clear field, W/(m2 K)."""
-
-    value: float
-    steps: tuple[Step, ...]
-    missing: tuple[str, ...]
-    assumptions: tuple[str, ...]
-
-
 def _solve_layers(
     assembly: Assembly,
     setting: Setting,
@@ -60,14 +58,16 @@ def _solve_layers(
 ) -> Solved:
     try:
         wall, notes = draw(assembly, setting, conventions)
-    except NotDecided as missing:
-        return _missing(assembly, setting, str(missing))
-    decision = _decide(wall, assembly, conventions)
-    corrections = _correct(wall, decision, bridges, area)
-    value = None if decision.value is None else decision.value + corrections.value
-    low, high, note, beside = _bracket(wall, decision, corrections)
-    steps = _closed(decision, corrections, value)
-    missing = (*decision.missing, *corrections.missing)
+    except NotDecided as need:
+        return _missing(assembly, setting, str(need))
+    decision, corrections = _decide(wall)
+    corrections = (*corrections, correct_for_bridges(bridges, area))
+    added = sum(correction.value for correction in corrections)
+    value = None if decision.value is None else decision.value + added
+    low, high, note, beside = _bracket(wall, added)
+    steps = _closed(decision, corrections)
+    missing = (*decision.missing, *(m for c in corrections for m in c.missing))
+    assumptions = (a for c in corrections for a in c.assumptions)
     return Solved(
         assembly=assembly.id,
         setting=setting,
@@ -83,7 +83,7 @@ def _solve_layers(
         tree=decision.tree,
         steps=steps,
         layers=rows.layer_rows(wall, {**notes.layers, **decision.replaced}, notes.outer),
-        assumptions=(*notes.assumptions, *decision.assumptions, *corrections.assumptions),
+        assumptions=(*notes.assumptions, *decision.assumptions, *assumptions),
         cautions=(*cautions(assembly), *decision.cautions),
         hand_check=steps[decision.layer_steps :],
     )
@@ -105,11 +105,10 @@ def _solve_whole(
         decision = solver(assembly, setting, conventions)
     except NotDecided as missing:
         return _missing(assembly, setting, str(missing))
-    added, steps, missing = correct_for_bridges(bridges, area)
-    corrections = _Corrections(added, steps, missing, ())
-    value = None if decision.value is None else decision.value + added
-    closed = _closed(decision, corrections, value)
-    gone = (*decision.missing, *missing)
+    correction = correct_for_bridges(bridges, area)
+    value = None if decision.value is None else decision.value + correction.value
+    closed = _closed(decision, (correction,))
+    gone = (*decision.missing, *correction.missing)
     return Solved(
         assembly=assembly.id,
         setting=setting,
@@ -182,62 +181,49 @@ def _outer_side(
     return at + 1, setting.outside_film, setting.outside_film_from
 
 
-def _decide(wall: Wall, assembly: Assembly, conventions: Conventions) -> Decision:
-    setting = wall.setting
+def _decide(wall: Wall) -> tuple[Decision, tuple[Correction, ...]]:
+    """The clear field by the prescribed method, and what fasteners add to it."""
+    setting, conventions = wall.setting, wall.conventions
     method = methods().get(setting.method)
     if method is None or method.decides is None:
-        return Decision(None, missing=(setting.method_from or f"method {setting.method!r}",))
+        return Decision(None, missing=(setting.method_from or f"method {setting.method!r}",)), ()
     if setting.method in setting.refused:
         words = f"another method: {setting.method_from} does not accept {method.title.lower()}"
-        return Decision(None, missing=(words,))
+        return Decision(None, missing=(words,)), ()
+    two_dimensional = setting.method == "two_dimensional"
     try:
-        counted, changed = (
-            (wall, {}) if setting.method == "two_dimensional" else count_crossed(wall)
-        )
+        counted, changed = (wall, {}) if two_dimensional else count_crossed(wall)
         decision = method.decides(counted)
-        for layer in assembly.layers:
+        fasteners = (
+            correct_for_fasteners(wall.assembly, 1.0 / decision.value, conventions)
+            if decision.value is not None
+            else Correction(0.0)
+        )
+        for layer in wall.layers:
             if isinstance(layer, TaperedLayer):
                 decision = taper(decision, layer, conventions)
     except NotDecided as missing:
-        return Decision(None, missing=(str(missing),))
-    return replace(decision, replaced={**changed, **decision.replaced})
+        return Decision(None, missing=(str(missing),)), ()
+    return replace(decision, replaced={**changed, **decision.replaced}), (fasteners,)
 
 
-def _correct(
-    wall: Wall, decision: Decision, bridges: tuple[Bridge, ...], area: float | None
-) -> _Corrections:
-    """Fasteners, points and lines on top of the clear field."""
-    if decision.value is None:
-        return _Corrections(0.0, (), (), ())
-    fasteners, fastener_steps, assumptions = correct_for_fasteners(wall, decision)
-    added, bridge_steps, missing = correct_for_bridges(bridges, area)
-    return _Corrections(
-        fasteners + added, (*fastener_steps, *bridge_steps), missing, tuple(assumptions)
-    )
-
-
-def _closed(decision: Decision, corrections: _Corrections, value: float | None) -> tuple[Step, ...]:
+def _closed(decision: Decision, corrections: Sequence[Correction]) -> tuple[Step, ...]:
     """The worksheet with its corrections, and the sum of both."""
-    if not corrections.steps or value is None or decision.value is None:
-        return decision.steps
-    parts = [("U", decision.value)]
-    parts += [
-        (step.symbol, step.value) for step in corrections.steps if step.symbol.startswith("dU")
-    ]
-    expression = " + ".join(f"{{{symbol}}}" for symbol, _ in parts)
-    operands = tuple(Operand(symbol, number, "u_factor") for symbol, number in parts)
-    closing = Step("U_total", "U-factor with corrections", expression, operands, value, "u_factor")
-    return (*decision.steps, *corrections.steps, closing)
+    steps = tuple(step for correction in corrections for step in correction.steps)
+    additions = [step for correction in corrections for step in correction.addends]
+    if not additions or decision.value is None:
+        return (*decision.steps, *steps)
+    clear = Operand("U", decision.value, "u_factor")
+    return (*decision.steps, *steps, total_step("U_total", clear, additions))
 
 
 def _bracket(
-    wall: Wall, decision: Decision, corrections: _Corrections
+    wall: Wall, added: float
 ) -> tuple[float | None, float | None, str, tuple[Beside, ...]]:
     """Both wirings of the drawn pieces, corrections included, and the values beside them."""
     if any(isinstance(layer, TaperedLayer) for layer in wall.layers):
         return None, None, TAPERED, ()
     low, high = bounds(wall)
-    added = corrections.value
     if not any(block.pattern for block in wall.blocks):
         return low + added, low + added, "layers in series: both ends are one", ()
     combined = 1.0 / weighted(0.5, 1.0 / low, 1.0 / high)

@@ -5,7 +5,6 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 from envcheck.model.project import (
-    AirSpaceLayer,
     Assembly,
     FramedLayer,
     Layer,
@@ -17,6 +16,8 @@ from envcheck.model.project import (
 )
 from envcheck.model.ruleset import TableRow
 from envcheck.model.solved import Properties
+from envcheck.solve.cautions import is_insulation
+from envcheck.solve.conventions import ventilated_at
 from envcheck.solve.mass import mass_of, together
 from envcheck.solve.methods.compressed import fill_in_place
 from envcheck.solve.methods.framed import is_metal
@@ -49,13 +50,10 @@ def properties(assembly: Assembly, compressed: Sequence[TableRow] = ()) -> Prope
     )
 
 
-def inside_of_vent(layers: Sequence[Layer]) -> Sequence[Layer]:
+def inside_of_vent(layers: tuple[Layer, ...]) -> tuple[Layer, ...]:
     """The layers indoors of the innermost well-ventilated air space; all where there is none."""
-    for index in range(len(layers) - 1, -1, -1):
-        layer = layers[index]
-        if isinstance(layer, AirSpaceLayer) and layer.ventilation == "well":
-            return layers[index + 1 :]
-    return layers
+    at = ventilated_at(layers)
+    return layers if at is None else layers[at + 1 :]
 
 
 def indoor_count(layers: Sequence[Layer]) -> int:
@@ -78,11 +76,6 @@ def insulation_resistance(layer: Layer) -> float | None:
     if isinstance(layer, TaperedLayer) and is_insulation(layer.material):
         return layer.least / layer.material.conductivity
     return None
-
-
-def is_insulation(material: Material | None) -> bool:
-    """Whether a material is of the class of insulation."""
-    return material is not None and material.material_class.startswith("insulation")
 
 
 def framing(layers: Sequence[Layer]) -> str:

@@ -137,6 +137,7 @@ def isothermal_planes(wall: Wall, symbol: str = "R") -> Wired:
             named = [(resistor.symbol, share, resistor.value) for share, resistor in columns]
             steps.append(_beside_step(name, f"{block.title}: {titles}", named, plane.value))
             parts.append(Resistor(name, block.title, plane.value))
+    parts.append(wall.inside)
     tree = in_series("isothermal planes", parts)
     return Wired(tree, (*steps, _sum_step(symbol, FILM_TO_FILM, tree)))
 

@@ -59,21 +59,18 @@ def total_step(symbol: str, clear: Operand, additions: Sequence[Step]) -> Step:
 def _step(symbol: str, bridge: Bridge, area: float | None) -> Step:
     line = bridge.kind == "line"
     name, count = ("psi", "l") if line else ("chi", "n")
-    quantity = "linear_transmittance" if line else "point_transmittance"
+    flow = Operand(name, bridge.value, "linear_transmittance" if line else "point_transmittance")
     if bridge.per_area:
         amount = Operand(count, bridge.amount, "per_length" if line else "per_area")
-        operands = (Operand(name, bridge.value, quantity), amount)
-        expression, value = (
-            f"{{{name}}} * {{{count}}}",
-            added_by_bridge(bridge.value, bridge.amount),
-        )
+        expression, operands = f"{{{name}}} * {{{count}}}", [flow, amount]
+        value = added_by_bridge(bridge.value, bridge.amount)
     else:
-        whole = area or 0.0
+        whole = Operand("A", area or 0.0, "area")
         amount = Operand(count, bridge.amount, "run" if line else "number")
-        operands = (Operand(name, bridge.value, quantity), amount, Operand("A", whole, "area"))
-        expression = f"{{{name}}} * {{{count}}} / {{A}}"
-        value = added_by_bridge(bridge.value, bridge.amount, whole)
-    return Step(symbol, bridge.title, expression, operands, value, "u_factor", bridge.source)
+        expression, operands = f"{{{name}}} * {{{count}}} / {{A}}", [flow, amount, whole]
+        value = added_by_bridge(bridge.value, bridge.amount, whole.value)
+    title, source = bridge.title, bridge.source
+    return Step(symbol, title, expression, tuple(operands), value, "u_factor", source)
 
 
 METHODS = (

@@ -32,7 +32,7 @@ class Correction(NamedTuple):
     value: float
     """W/(m2 K); of what could be counted, where something is missing."""
     steps: tuple[Step, ...] = ()
-    """What leads to each addend, then the addend; addends have symbols that start with ``dU``."""
+    """What leads to each addend, then the addend, whose symbol starts with ``dU``."""
     missing: tuple[str, ...] = ()
     assumptions: tuple[str, ...] = ()
 
@@ -90,12 +90,13 @@ def correct_for_fasteners(
     """Correct for all fasteners of an assembly by the rule set's convention.
 
     r_total: of the wall as drawn, films included and tapered layers at their least thickness,
-    m2 K/W; a tapered layer is counted here at its mean thickness.
+    m2 K/W. A tapered layer is counted here at its mean thickness, in R1 and RT.
     """
-    if not assembly.fasteners:
+    fasteners = assembly.fasteners
+    if not fasteners:
         return Correction(0.0)
     if conventions.fasteners == "ignored":
-        titles = ", ".join(dict.fromkeys(f.layer for f in assembly.fasteners))
+        titles = ", ".join(dict.fromkeys(one.layer for one in fasteners))
         said = f"fasteners through {titles} are not counted, as the rule set says"
         return Correction(0.0, assumptions=(said,))
     if conventions.fasteners == "chi":
@@ -104,22 +105,20 @@ def correct_for_fasteners(
     at_mean = r_total + sum(
         (mean_thickness(layer) - layer.least) / layer.material.conductivity for layer in tapered
     )
-    layers = {layer.title: layer for layer in assembly.layers}
-    values, steps, missing, assumptions = [], [], [], [AT_MEAN] if tapered else []
-    for number, fasteners in enumerate(assembly.fasteners, 1):
-        if fasteners.material.conductivity < LEAST_CONDUCTIVITY:
-            assumptions.append(
-                f"fasteners through {fasteners.layer} conduct less than 1 W/(m K): no correction"
-            )
-            continue
-        found = _insulation(layers.get(fasteners.layer))
-        if found is None:
-            missing.append(f"thickness and resistance of the layer {fasteners.layer!r}")
-            continue
-        added = _steps(str(number), fasteners, found, at_mean)
-        values.append(added[-1].value)
-        steps += added
-    return Correction(sum(values), tuple(steps), tuple(missing), tuple(assumptions))
+    steps: list[Step] = []
+    missing: list[str] = []
+    assumptions = [AT_MEAN] if tapered else []
+    for number, one in enumerate(fasteners, 1):
+        insulation = _insulation(assembly.layers, one.layer)
+        if one.material.conductivity < LEAST_CONDUCTIVITY:
+            words = f"fasteners through {one.layer} conduct less than 1 W/(m K): no correction"
+            assumptions.append(words)
+        elif insulation is None:
+            missing.append(f"thickness and resistance of {one.layer!r} that fasteners cross")
+        else:
+            steps += _steps(str(number), one, insulation, at_mean)
+    counted = Correction(0.0, tuple(steps), tuple(missing), tuple(assumptions))
+    return counted._replace(value=sum(step.value for step in counted.addends))
 
 
 def _by_chi(assembly: Assembly) -> Correction:
@@ -130,7 +129,8 @@ def _by_chi(assembly: Assembly) -> Correction:
     return Correction(0.0, missing=(need,), assumptions=(said,))
 
 
-def _insulation(layer: Layer | None) -> Insulation | None:
+def _insulation(layers: tuple[Layer, ...], title: str) -> Insulation | None:
+    layer = next((layer for layer in layers if layer.title == title), None)
     if isinstance(layer, MaterialLayer):
         return Insulation(layer.thickness, layer.thickness / layer.material.conductivity)
     if isinstance(layer, ResistanceLayer) and layer.thickness > 0:

@@ -66,7 +66,7 @@ def solve_f_factor(assembly: Assembly, setting: Setting, conventions: Convention
     if position == "vertical" and slab.top_edge_covered is None:
         missing.append(TOP_EDGE)
     if missing:
-        raise NotDecided(*missing)
+        raise NotDecided("; ".join(missing))
     rows = conventions.tables.get(TABLE, ())
     row = f_factor(rows, position, slab.extent, slab.resistance, bool(slab.heated))
     title = f"F-factor as printed ({row.text})" if row.text else "F-factor as printed"
@@ -91,11 +91,12 @@ def solve_c_factor(assembly: Assembly, setting: Setting, conventions: Convention
     value = 1.0 / wired.resistance
     operand = Operand("R", wired.resistance, "resistance")
     closing = Step("C", "C-factor", "1 / {R}", (operand,), value, "u_factor")
-    steps = (*(s for s in layer_steps(wall) if s.symbol != "R_no_film"), *wired.steps, closing)
+    layers = layer_steps(wall)
+    steps = (*layers, *wired.steps, closing)
     bridges = any(block.pattern for block in wall.blocks)
     way = "isothermal planes" if planes else "parallel paths"
     wiring = (f"bridged layers of the wall wired by {way}",) if bridges else ()
-    return Decision(value, wired.tree, steps, assumptions=(NO_SOIL, *wiring))
+    return Decision(value, wired.tree, steps, len(layers), assumptions=(NO_SOIL, *wiring))
 
 
 def _position(slab: Slab) -> tuple[str, tuple[str, ...]]:
@@ -121,7 +122,7 @@ METHODS = (
         name="f_factor",
         title="F-factor of a slab edge, looked up",
         formula="F as printed for position, extent, resistance and heating",
-        source="the rule set's table; ANSI/ASHRAE/IES 90.1 Normative Appendix A, A6 is of this form",
+        source="the rule set's table (of the form of ANSI/ASHRAE/IES 90.1 Appendix A, A6)",
         valid="the printed rows only; per length of exposed perimeter",
         solves=(("slab-on-grade", solve_f_factor),),
         metric="F_factor",

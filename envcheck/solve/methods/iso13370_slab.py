@@ -80,8 +80,9 @@ def solve_slab(assembly: Assembly, setting: Setting, conventions: Conventions) -
     thickness = equivalent_thickness(wall_thickness, soil, setting.inside_film, floor)
     value = slab_u(soil, dimension, thickness)
     operands = (Operand("A", area, "area"), Operand("P", perimeter, "run"))
+    layers = tuple(step for cell in cells for step in cell.steps)
     steps = (
-        *(step for cell in cells for step in cell.steps),
+        *layers,
         _floor_step(cells, floor),
         Step(
             "B", "characteristic dimension of the floor", "{A} / (0.5 * {P})", operands,
@@ -90,7 +91,7 @@ def solve_slab(assembly: Assembly, setting: Setting, conventions: Conventions) -
         _thickness_step(wall_thickness, soil, setting.inside_film, floor, thickness),
         _closing_step(soil, dimension, thickness, value),
     )  # fmt: skip
-    return Decision(value, steps=steps, assumptions=_assumptions(slab))
+    return Decision(value, steps=steps, layer_steps=len(layers), assumptions=_assumptions(slab))
 
 
 def _floor_step(cells: list[Resistor], floor: float) -> Step:
@@ -120,7 +121,7 @@ def _numbers(slab: Slab) -> tuple[float, float, float, float]:
     }
     missing = [name for name, value in needed.items() if value is None]
     if missing:
-        raise NotDecided(*missing)
+        raise NotDecided("; ".join(missing))
     perimeter, area, wall_thickness, soil = (value or 0.0 for value in needed.values())
     return perimeter, area, wall_thickness, soil
 

@@ -1,0 +1,208 @@
+"""Materials and assemblies of a project: layers, slabs, windows, rated products."""
+
+from __future__ import annotations
+
+from envcheck.model.project import (
+    Assembly,
+    Bridge,
+    Declared,
+    Fasteners,
+    Layer,
+    Material,
+    Rated,
+    Slab,
+    Window,
+)
+from envcheck.read.context import MATCHES, NAN, Context
+from envcheck.read.layers import read_layers
+from envcheck.read.yaml_reader import Entry
+
+_DECLARED = {
+    "u_factor": "u_factor",
+    "resistance": "resistance",
+    "c_factor": "u_factor",
+    "f_factor": "linear_transmittance",
+}
+
+
+def read_material(context: Context, name: str, entry: Entry) -> Material:
+    """Read a material of the project: a conductivity, or a resistance for a thickness."""
+    where = f"material {name!r}"
+    kind = context.exactly_one(entry, ("conductivity", "resistance"), where)
+    conductivity = NAN
+    if kind == "conductivity":
+        conductivity = context.positive(entry, "conductivity", "conductivity")
+    elif kind == "resistance":
+        resistance = context.positive(entry, "resistance", "resistance")
+        if "thickness" in entry:
+            conductivity = context.positive(entry, "thickness", "length") / resistance
+        else:
+            hint = ", the thickness that the resistance is stated for"
+            context.add("missing-key", entry.line, key="thickness", where=where, hint=hint)
+    return Material(
+        id=name,
+        title=entry.get("title", name),
+        conductivity=conductivity,
+        density=context.optional(entry, "density", "density"),
+        specific_heat=context.optional(entry, "specific_heat", "specific_heat"),
+        material_class=entry.get("class", ""),
+        source=entry.get("source", "assumed"),
+        evidence=context.evidence(entry),
+        combustible=entry.get("combustible", False),
+    )
+
+
+def read_assembly(context: Context, name: str, entry: Entry) -> Assembly:
+    """Read one construction of any kind."""
+    kind = entry.get("kind", "layers")
+    layers = read_layers(context, entry["layers"]) if "layers" in entry else ()
+    return Assembly(
+        id=name,
+        kind=kind,
+        title=entry["title"],
+        sheet=entry.get("sheet", ""),
+        line=entry.line,
+        declared=_declared(context, entry["declared"]) if "declared" in entry else None,
+        layers=layers,
+        fasteners=tuple(_fasteners(context, f, layers) for f in entry.get("fasteners", ())),
+        bridges=tuple(_bridge(context, bridge) for bridge in entry.get("bridges", ())),
+        window=_window(context, entry) if kind == "window" else None,
+        rated=_rated(context, entry) if kind == "rated" else None,
+        slab=_slab(context, entry) if kind == "slab-on-grade" else None,
+        outside_film=_film(context, entry, "outside_film"),
+        inside_film=_film(context, entry, "inside_film"),
+        shgc=_plain(entry, "shgc") if kind == "window" else None,
+    )
+
+
+def _film(context: Context, entry: Entry, key: str) -> float | None:
+    return context.not_negative(entry, key, "resistance") if key in entry else None
+
+
+def _plain(entry: Entry, key: str) -> float | None:
+    return float(entry[key]) if key in entry else None
+
+
+def _declared(context: Context, entry: Entry) -> Declared | None:
+    key = context.exactly_one(entry, tuple(_DECLARED), "the declared value")
+    if not key:
+        return None
+    quantity = _DECLARED[key]
+    value = context.positive(entry, key, quantity)
+    return Declared(value, quantity, entry[key], entry.get("sheet", ""))
+
+
+def _fasteners(context: Context, entry: Entry, layers: tuple[Layer, ...]) -> Fasteners:
+    titles = [layer.title for layer in layers]
+    title = entry["layer"]
+    penetration = context.optional(entry, "penetration", "length")
+    if title not in titles:
+        context.unknown("unknown-layer", entry.lines["layer"], title, titles)
+    elif penetration is not None:
+        layer = layers[titles.index(title)]
+        thickness = getattr(layer, "greatest", getattr(layer, "thickness", NAN))
+        if penetration > thickness + MATCHES:
+            context.add(
+                "too-thick",
+                entry.lines["penetration"],
+                found=entry["penetration"],
+                expected=f"at most {thickness * 1000:.4g} mm",
+                key="penetration",
+                limit=f"the layer {title!r}",
+            )
+    return Fasteners(
+        layer=title,
+        material=context.material(entry),
+        diameter=context.positive(entry, "diameter", "length"),
+        density=context.positive(entry, "density", "per_area"),
+        penetration=penetration,
+        line=entry.line,
+    )
+
+
+def _bridge(context: Context, entry: Entry) -> Bridge:
+    """Read a bridge spread over the area of the assembly."""
+    if entry["kind"] == "point":
+        value = context.positive(entry, "chi", "point_transmittance")
+        amount = context.positive(entry, "density", "per_area")
+    else:
+        value = context.number(entry, "psi", "linear_transmittance")
+        amount = context.positive(entry, "length_per_area", "per_length")
+    return bridge(context, entry, value, amount, per_area=True)
+
+
+def bridge(
+    context: Context, entry: Entry, value: float, amount: float, *, per_area: bool
+) -> Bridge:
+    """Put together a bridge whose value, W/(m K) or W/K, and amount are read."""
+    return Bridge(
+        kind=entry["kind"],
+        title=entry.get("title", f"{entry['kind']} bridge"),
+        value=value,
+        amount=amount,
+        per_area=per_area,
+        source=entry.get("source", ""),
+        evidence=context.evidence(entry),
+        line=entry.line,
+    )
+
+
+def _window(context: Context, entry: Entry) -> Window:
+    width = context.positive(entry, "width", "length")
+    height = context.positive(entry, "height", "length")
+    frame = context.positive(entry, "frame_width", "length")
+    if 2 * frame >= min(width, height):
+        found = entry["frame_width"]
+        limit = "half the window, so that no glass is left"
+        line = entry.lines["frame_width"]
+        context.add("too-thick", line, found=found, key="frame_width", limit=limit)
+    return Window(
+        width=width,
+        height=height,
+        frame_width=frame,
+        u_glass=context.positive(entry, "u_glass", "u_factor"),
+        u_frame=context.positive(entry, "u_frame", "u_factor"),
+        psi=context.number(entry, "psi", "linear_transmittance"),
+        sources=tuple(entry.get("sources", ())),
+    )
+
+
+def _rated(context: Context, entry: Entry) -> Rated:
+    stated = entry.get("evidence", "assumed")
+    evidence = {"kind": stated} if isinstance(stated, str) else stated
+    if isinstance(evidence, Entry) and "document" in evidence:
+        context.inside_folder(evidence, "document")
+    return Rated(
+        u_factor=context.optional(entry, "u_factor", "u_factor"),
+        shgc=_plain(entry, "shgc"),
+        visible_transmittance=_plain(entry, "visible_transmittance"),
+        basis=entry.get("basis", "whole_product"),
+        evidence=evidence["kind"],
+        standard=evidence.get("standard", ""),
+        document=evidence.get("document", ""),
+    )
+
+
+def _slab(context: Context, entry: Entry) -> Slab:
+    edge = entry.get("edge_insulation")
+    position, resistance, extent, covered = "none", 0.0, 0.0, None
+    if edge is not None:
+        position, covered = edge["position"], edge.get("top_edge_covered")
+        size = {"vertical": "depth", "horizontal": "width"}.get(position)
+        for key in () if position == "none" else filter(None, ("resistance", size)):
+            if key not in edge:
+                where = f"{position} edge insulation"
+                context.add("missing-key", edge.line, key=key, where=where, hint="")
+        resistance = context.optional(edge, "resistance", "resistance") or 0.0
+        extent = context.optional(edge, size, "length") or 0.0 if size else 0.0
+    return Slab(
+        insulation=position,
+        resistance=resistance,
+        extent=extent,
+        heated=entry.get("heated"),
+        top_edge_covered=covered,
+        wall_thickness=context.optional(entry, "wall_thickness", "length"),
+        soil_conductivity=context.optional(entry, "soil_conductivity", "conductivity"),
+        perimeter=context.optional(entry, "perimeter", "length"),
+        area=context.optional(entry, "area", "area"),
+    )

@@ -1,0 +1,43 @@
+"""Bytes of an input file, or of standard input, with a size limit and errors in words."""
+
+from __future__ import annotations
+
+import sys
+from pathlib import Path
+
+from envcheck.errors import InputError, problem
+
+LARGEST = 64 * 1024 * 1024
+"""Bytes; a project of ten thousand assemblies takes about 15 MB."""
+STDIN = "<stdin>"
+
+
+def read_bytes(path: str) -> tuple[bytes, str, Path]:
+    """Give the bytes, the name for messages, and the folder that the file lies in.
+
+    ``-`` reads standard input, whose folder is the current one. Errors: InputError.
+    """
+    if path == "-":
+        raw = sys.stdin.buffer.read(LARGEST + 1)
+        shown, folder = STDIN, Path()
+    else:
+        shown, folder = path, Path(path).parent
+        raw = _from_file(path)
+    if len(raw) > LARGEST:
+        expected = f"at most {LARGEST // 1024**2} MB"
+        raise InputError([problem("file-too-large", shown, None, expected=expected)])
+    return raw, shown, folder
+
+
+def _from_file(path: str) -> bytes:
+    kind, found = "file-unreadable", ""
+    try:
+        with Path(path).open("rb") as file:
+            return file.read(LARGEST + 1)
+    except FileNotFoundError:
+        kind = "file-missing"
+    except IsADirectoryError:
+        kind = "file-is-folder"
+    except (OSError, ValueError) as error:
+        found = getattr(error, "strerror", None) or str(error)
+    raise InputError([problem(kind, path, None, found=found)])

@@ -1,0 +1,137 @@
+"""Layers of an assembly: one function per kind, found by the kind's name."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from typing import Any
+
+from envcheck.model.project import (
+    ContactLayer,
+    Fill,
+    FramedLayer,
+    Layer,
+    MasonryLayer,
+    Material,
+    MaterialLayer,
+    ResistanceLayer,
+    TaperedLayer,
+)
+from envcheck.read.context import Context
+from envcheck.read.fills import read_air_space, read_cell
+from envcheck.read.framing import read_framed, with_crossed_insulation
+from envcheck.read.yaml_reader import Entry
+
+
+def read_layers(context: Context, entries: list[Any]) -> tuple[Layer, ...]:
+    """Read layers from outside to inside."""
+    layers = [_KINDS[entry["kind"]](context, entry) for entry in entries]
+    if any(isinstance(layer, FramedLayer) for layer in layers):
+        return with_crossed_insulation(layers)
+    return tuple(layers)
+
+
+def _material(context: Context, entry: Entry) -> Layer:
+    material = context.material(entry)
+    thickness = context.positive(entry, "thickness", "length")
+    title = entry.get("title") or material.title
+    return MaterialLayer("material", title, entry.line, material, thickness)
+
+
+def _resistance(context: Context, entry: Entry) -> Layer:
+    material = context.material(entry) if "material" in entry else None
+    return ResistanceLayer(
+        "resistance",
+        entry.get("title") or (material.title if material else "stated resistance"),
+        entry.line,
+        context.not_negative(entry, "resistance", "resistance"),
+        context.optional(entry, "thickness", "length") or 0.0,
+        material,
+        entry.get("source", ""),
+        context.evidence(entry),
+    )
+
+
+def _contact(context: Context, entry: Entry) -> Layer:
+    return ContactLayer(
+        "contact",
+        entry.get("title", "contact"),
+        entry.line,
+        context.positive(entry, "resistance", "resistance"),
+        entry.get("source", ""),
+    )
+
+
+def _tapered(context: Context, entry: Entry) -> Layer:
+    material = context.material(entry)
+    least = context.not_negative(entry, "least", "length")
+    greatest = context.positive(entry, "greatest", "length")
+    if least >= greatest:
+        limit = "the greatest thickness"
+        found = f"{entry['least']} against {entry['greatest']}"
+        context.add("too-thick", entry.lines["least"], found=found, key="least", limit=limit)
+    return TaperedLayer(
+        "tapered",
+        entry.get("title") or material.title,
+        entry.line,
+        material,
+        least,
+        greatest,
+        entry.get("shape", "rectangle"),
+    )
+
+
+# ------------------------------------------------------------------------------------- masonry
+
+
+def _masonry(context: Context, entry: Entry) -> Layer:
+    material = context.material(entry)
+    thickness = context.positive(entry, "thickness", "length")
+    hollow = "cell" in entry
+    for key in ("shell", "web_share", "cell"):
+        if (key in entry) != hollow:
+            hint = ", or leave out shell, web_share and cell for solid units"
+            context.add("missing-key" , entry.line, key=key if key not in entry else "cell",
+                        where="the masonry layer", hint=hint)  # fmt: skip
+            break
+    shell = context.positive(entry, "shell", "length") if "shell" in entry else thickness / 2
+    if hollow and 2 * shell >= thickness:
+        found = f"twice {entry.get('shell')} against {entry['thickness']}"
+        limit = "half the thickness of the unit"
+        context.add("too-thick", entry.lines["shell"], found=found, key="shell", limit=limit)
+    fill, cell = read_cell(context, entry["cell"]) if hollow else (Fill(material=material), None)
+    mortar, joints = _part(context, entry, "mortar")
+    grout, grouted = _part(context, entry, "grouted")
+    return MasonryLayer(
+        "masonry",
+        entry.get("title") or material.title,
+        entry.line,
+        thickness,
+        material,
+        shell,
+        context.share(entry, "web_share") if "web_share" in entry else 1.0,
+        fill,
+        mortar,
+        joints,
+        grouted,
+        grout,
+        cell,
+        context.optional(entry, "weight", "area_weight"),
+    )
+
+
+def _part(context: Context, entry: Entry, key: str) -> tuple[Material | None, float]:
+    if key not in entry:
+        return None, 0.0
+    part = entry[key]
+    return context.material(part), context.share(part, "share", whole=key == "grouted")
+
+
+_KINDS: dict[str, Callable[[Context, Entry], Layer]] = {
+    "material": _material,
+    "resistance": _resistance,
+    "contact": _contact,
+    "air-space": read_air_space,
+    "framed": read_framed,
+    "masonry": _masonry,
+    "tapered": _tapered,
+}

@@ -1,0 +1,149 @@
+"""A project file to :class:`envcheck.model.project.Project`, or all of its problems at once."""
+
+from __future__ import annotations
+
+import gc
+from collections.abc import Callable, Iterator
+from contextlib import contextmanager
+from hashlib import sha256
+from pathlib import Path
+from typing import Any, TypeVar
+
+from envcheck.errors import InputError
+from envcheck.model.names import Names
+from envcheck.model.project import Project, RuleSetChoice
+from envcheck.read.assemblies import read_assembly, read_material
+from envcheck.read.context import Context
+from envcheck.read.elements import (
+    read_element,
+    read_exception,
+    read_facts,
+    read_surface,
+    with_openings,
+)
+from envcheck.read.files import read_bytes
+from envcheck.read.schema import check_paths
+from envcheck.read.site import read_answers, read_options, read_site
+from envcheck.read.yaml_reader import Entry, read_yaml
+
+_Thing = TypeVar("_Thing")
+
+
+def read_project(path: str, names: Names) -> Project:
+    """Read a project file; ``-`` is standard input.
+
+    Errors: InputError with every problem found, in order of line.
+    """
+    raw, shown, folder = read_bytes(path)
+    with _no_cycles_to_collect():
+        return project_from_bytes(raw, shown, folder, names)
+
+
+@contextmanager
+def _no_cycles_to_collect() -> Iterator[None]:
+    """Pause the cycle collector: reading makes 10^5 objects and not one cycle."""
+    enabled = gc.isenabled()
+    gc.disable()
+    try:
+        yield
+    finally:
+        if enabled:
+            gc.enable()
+
+
+def project_from_bytes(raw: bytes, shown: str, folder: Path, names: Names) -> Project:
+    """Read a project from the bytes of its file; ``folder`` is where its evidence lies."""
+    data, problems = read_yaml(raw, shown)
+    if data is None:
+        raise InputError(problems)
+    context = Context(shown, folder, names)
+    context.problems += problems
+    wrong = check_paths(data, "project", shown)
+    context.problems += [made for _, made in wrong]
+    sections = _Sections(data, {path[:2] for path, _ in wrong} | {path[:1] for path, _ in wrong})
+    project = _build(context, sections, sha256(raw).hexdigest())
+    if context.problems:
+        raise InputError(context.problems)
+    return project
+
+
+class _Sections:
+    """Top-level sections without the entries that the schema refused."""
+
+    def __init__(self, data: Entry, wrong: set[tuple[str | int, ...]]) -> None:
+        self.data = data
+        self.wrong = wrong
+
+    def mapping(self, name: str) -> dict[str, Any]:
+        """All entries of a section, sound or not, for what refers to them by name."""
+        section = self.data.get(name)
+        return section if isinstance(section, Entry) else {}
+
+    def each(self, name: str, make: Callable[[str, Entry], _Thing]) -> dict[str, _Thing]:
+        """Make something of every sound entry of a section."""
+        entries = self.mapping(name)
+        return {key: make(key, e) for key, e in entries.items() if (name, key) not in self.wrong}
+
+    def whole(self, name: str) -> Entry:
+        """A section that is read as one; empty where it is missing or refused."""
+        section = self.data.get(name)
+        sound = isinstance(section, Entry) and (name,) not in self.wrong
+        return section if sound and isinstance(section, Entry) else Entry(self.data.line)
+
+    def items(self, name: str) -> list[tuple[int, Any]]:
+        """The sound items of a list, with their lines."""
+        section = self.data.get(name)
+        if not isinstance(section, list):
+            return []
+        lines: list[int] = getattr(section, "lines", [])
+        return [
+            (line, item)
+            for place, (line, item) in enumerate(zip(lines, section, strict=True))
+            if (name, place) not in self.wrong
+        ]
+
+
+def _build(context: Context, sections: _Sections, digest: str) -> Project:
+    entries, surfaces = sections.mapping("elements"), sections.mapping("surfaces")
+    assemblies = sections.mapping("assemblies")
+    context.own_ids = frozenset(sections.mapping("materials"))
+    context.own = sections.each("materials", lambda n, e: read_material(context, n, e))
+    built = sections.each("assemblies", lambda n, e: read_assembly(context, n, e))
+    elements = sections.each(
+        "elements", lambda n, e: read_element(context, n, e, assemblies, surfaces)
+    )
+    head = sections.whole("project")
+    return Project(
+        file=context.file,
+        title=head.get("title", ""),
+        reference=head.get("reference", ""),
+        prepared_by=head.get("prepared_by", ""),
+        permit_application_date=context.date(head, "permit_application_date"),
+        report_date=context.date(head, "report_date"),
+        scope=head.get("scope", "new"),
+        invented=head.get("invented", ""),
+        units=head.get("units", ""),
+        site=read_site(context, sections.whole("site")),
+        facts=read_facts(sections.whole("facts")),
+        rule_sets=_rule_sets(sections),
+        materials={**context.own, **context.used},
+        assemblies=built,
+        surfaces=sections.each("surfaces", lambda n, e: read_surface(context, n, e)),
+        elements=with_openings(context, elements, entries),
+        exceptions=tuple(
+            read_exception(context, entry, entries) for _, entry in sections.items("exceptions")
+        ),
+        options=read_options(context, sections.whole("options")),
+        accepted=read_answers(context, [entry for _, entry in sections.items("answers")]),
+        sha256=digest,
+        lines=dict(sections.data.lines),
+    )
+
+
+def _rule_sets(sections: _Sections) -> tuple[RuleSetChoice, ...]:
+    return tuple(
+        RuleSetChoice(item, True, line)
+        if isinstance(item, str)
+        else RuleSetChoice(item["id"], item.get("decides", True), line)
+        for line, item in sections.items("rule_sets")
+    )

@@ -1,0 +1,79 @@
+"""Site, options and answers: the smaller sections of a project file."""
+
+from __future__ import annotations
+
+from envcheck.model.project import Options, Site, ZoneStated
+from envcheck.read.context import Context
+from envcheck.read.yaml_reader import Entry
+from envcheck.units import to_si
+
+COLDEST = -100.0
+HOTTEST = 100.0
+
+
+def read_site(context: Context, entry: Entry) -> Site:
+    """Read the place, its zones, degree days (K d) and altitude (m), and temperatures (deg C)."""
+    measures = [
+        (name, _degree_days(name, value))
+        for name, value in entry.items()
+        if name.startswith(("hdd", "cdd"))
+    ]
+    if "altitude" in entry:
+        measures.append(("altitude", context.number(entry, "altitude", "length")))
+    return Site(
+        place=entry.get("place", ""),
+        zones=tuple(
+            ZoneStated(
+                zone.get("rule_set", ""), str(zone["zone"]), zone.get("source", ""), zone.line
+            )
+            for zone in entry.get("zones", ())
+        ),
+        measures=tuple(measures),
+        indoor_temperature=_temperature(context, entry, "indoor_temperature"),
+        outdoor_temperature=_temperature(context, entry, "outdoor_temperature"),
+    )
+
+
+def _degree_days(name: str, value: float) -> float:
+    """The base temperature in the name tells the unit: no one heats to 32 deg C."""
+    return to_si(float(value), "degF*d" if int(name[3:]) >= 32 else "K*d")
+
+
+def _temperature(context: Context, entry: Entry, key: str) -> float | None:
+    if key not in entry:
+        return None
+    value = context.number(entry, key, "temperature")
+    if not COLDEST <= value <= HOTTEST and value == value:
+        context.add(
+            "out-of-range",
+            entry.lines[key],
+            found=entry[key],
+            expected=f"{COLDEST:.0f} degC to {HOTTEST:.0f} degC",
+            key=key,
+            hint="check the unit",
+        )
+    return value
+
+
+def read_options(context: Context, entry: Entry) -> Options:
+    """Read stock thicknesses, m, by material."""
+    stock = entry.get("stock", Entry(entry.line))
+    found = []
+    for name, texts in stock.items():
+        named = Entry(stock.lines[name])
+        named["material"], named.lines["material"] = name, stock.lines[name]
+        context.material(named)
+        sizes = Entry(texts.line)
+        for place, text in enumerate(texts):
+            sizes[str(place)], sizes.lines[str(place)] = text, texts.lines[place]
+        found.append((name, tuple(context.positive(sizes, key, "length") for key in sizes)))
+    return Options(tuple(found))
+
+
+def read_answers(context: Context, entries: list[Entry]) -> tuple[tuple[str, str], ...]:
+    """Read answers to findings, each as (``finding subject``, answer)."""
+    known = context.names.findings
+    for entry in entries:
+        if known and entry["finding"] not in known:
+            context.unknown("unknown-finding", entry.lines["finding"], entry["finding"], known)
+    return tuple((f"{entry['finding']} {entry['subject']}", entry["answer"]) for entry in entries)

@@ -1,0 +1,192 @@
+"""One element or assembly from drawing to verdict, every number repeatable by hand."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass
+
+from envcheck.model.judged import Judged, Line
+from envcheck.model.project import Assembly, Element, Fact, Project
+from envcheck.model.ruleset import RuleSet
+from envcheck.model.solved import Solved
+from envcheck.report import comparison, details, header, numbers, outline, rows, said, tree, wording
+from envcheck.report import worksheet as sheet
+from envcheck.report.inert import clean
+from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, Paragraph, Section
+from envcheck.report.view import ViewOptions, system_for
+
+
+@dataclass(frozen=True, slots=True)
+class Explained:
+    """The page of one element or assembly."""
+
+    subject: str
+    page: Page
+    width: int
+
+
+def subjects(project: Project) -> tuple[str, ...]:
+    """Every tag and assembly that can be explained."""
+    return (*project.elements, *project.assemblies)
+
+
+def build(
+    project: Project,
+    rulesets: Mapping[str, RuleSet],
+    judged: Judged,
+    subject: str,
+    options: ViewOptions | None = None,
+) -> Explained:
+    """Explain the element or else the assembly of that name.
+
+    Errors: KeyError for a name that is neither.
+    """
+    options = options or ViewOptions()
+    system = system_for(project, rulesets, options)
+    if subject in project.elements:
+        lines = [line for line in judged.lines if line.element == subject]
+        sections = _element(project, project.elements[subject], lines, system)
+    else:
+        assembly = project.assemblies[subject]
+        lines = [line for line in judged.lines if line.solved and line.solved.assembly == subject]
+        sections = [_drawn_assembly(assembly, lines)]
+    for solved in _distinct(lines):
+        sections += _solved(project, solved, lines, system)
+    for line in lines:
+        sections += _held(line, rulesets, system)
+    sections.append(Section("", (Paragraph(wording.DEFERRAL),)))
+    heading = f"{header.title(project)}: {clean(subject)}"
+    return Explained(clean(subject), Page(heading, tuple(sections)), options.width)
+
+
+def _distinct(lines: Iterable[Line]) -> list[Solved]:
+    """The solved assemblies of the lines, each once."""
+    found = {id(line.solved): line.solved for line in lines if line.solved is not None}
+    return list(found.values())
+
+
+def _element(project: Project, element: Element, lines: list[Line], system: str) -> list[Section]:
+    assembly = project.assemblies.get(element.assembly)
+    amount = rows.amount(element, system)
+    pairs = [
+        ("sheet", element.sheet),
+        ("surface", element.surface),
+        ("assembly", f"{assembly.id}: {assembly.title}" if assembly else element.assembly),
+        ("category", _category(element, lines)),
+        ("amount", f"{amount.text} {amount.unit}".strip()),
+        ("adjoins", wording.plain(element.adjoins)),
+        ("facing", element.facing),
+        ("tilt", f"{element.tilt:g} degrees"),
+        ("measured", element.measured),
+        ("note", element.note),
+        *((fact.name, _fact(fact)) for fact in element.facts),
+    ]
+    made = [Section("As drawn", (Facts(_pairs(pairs)),))]
+    if not lines:
+        made.append(Section("", (Paragraph("No line was judged for this element."),)))
+    return made
+
+
+def _fact(fact: Fact) -> str:
+    value = ("no", "yes")[fact.value] if isinstance(fact.value, bool) else fact.value
+    return f"{value} ({fact.sheet})" if fact.sheet else str(value)
+
+
+def _category(element: Element, lines: Iterable[Line]) -> str:
+    judged = dict.fromkeys(line.category for line in lines if line.category != element.category)
+    moved = f"; judged as {', '.join(judged)}" if judged else ""
+    return element.category + moved
+
+
+def _pairs(pairs: Iterable[tuple[str, str]]) -> tuple[Pair, ...]:
+    return tuple(Pair(clean(label), clean(text)) for label, text in pairs if text)
+
+
+def _drawn_assembly(assembly: Assembly, lines: list[Line]) -> Section:
+    pairs = _pairs((("sheet", assembly.sheet), ("title", assembly.title)))
+    blocks: list[Block] = [Facts(pairs)]
+    if not lines:
+        blocks.append(
+            Paragraph("No element that was judged uses this assembly; nothing is solved.")
+        )
+    return Section("As drawn", tuple(blocks))
+
+
+def _solved(project: Project, solved: Solved, lines: list[Line], system: str) -> list[Section]:
+    """Layers, worksheet, paths and temperatures of one solved assembly."""
+    assembly = project.assemblies[solved.assembly]
+    tags = dict.fromkeys(line.element for line in lines if line.solved is solved)
+    view = details.assembly_view(assembly, solved, tags, system)
+    made = [Section(f"Assembly {view.assembly}, {view.metric}", outline.assembly_blocks(view))]
+    if solved.steps:
+        made.append(Section("Worksheet", (Paragraph(_HOW), _worksheet(solved, system))))
+    grid = tree.paths(solved.tree, system)
+    if grid is not None:
+        made.append(Section("Paths and their share of the heat", (grid,)))
+    made += _temperatures(project, solved, system)
+    return made
+
+
+_HOW = (
+    "Each result follows from the numbers printed in its line; a number that an earlier step gave "
+    "stands as that step printed it."
+)
+
+
+def _worksheet(solved: Solved, system: str) -> Items:
+    entries = []
+    for line in sheet.write(solved.steps, system):
+        source = f" [{line.source}]" if line.source else ""
+        formula = f"{line.symbol} = {line.formula}" if line.formula else ""
+        given = "; ".join(line.operands)
+        text = "; with ".join(filter(None, (formula, given)))
+        entries.append(Entry(line.title + source, (text,) if text else (), (line.text,)))
+    return Items(tuple(entries), numbered=True)
+
+
+def _temperatures(project: Project, solved: Solved, system: str) -> list[Section]:
+    site = project.site
+    if site.indoor_temperature is None or site.outdoor_temperature is None or solved.tree is None:
+        return []
+    if solved.setting.metric != "U_assembly":
+        return []
+    air = (site.outdoor_temperature, site.indoor_temperature)
+    grids = tree.temperatures(solved.tree, *air, system)
+    outdoor, indoor = (numbers.temperature(value, system) for value in air)
+    text = f"Steady, for outdoor air at {outdoor} and indoor air at {indoor}."
+    return [Section("Temperatures at the interfaces", (Paragraph(text), *grids))]
+
+
+def _held(line: Line, rulesets: Mapping[str, RuleSet], system: str) -> list[Section]:
+    """Why this limit, the comparison, the verdict."""
+    metric = wording.METRICS.get(line.metric, wording.plain(line.metric))
+    heading = f"{clean(line.element)} held against {clean(line.ruleset)}: {metric}"
+    trail = [
+        (wording.TRAIL.get(step, wording.plain(step)), f"{chosen}: {why}" if why else chosen)
+        for step, chosen, why in line.trail
+    ]
+    source = said.limit_source(line.limit, line.ruleset)
+    pairs = [*trail, ("limit", f"{said.limit_text(line)} [{source}]" if source else "")]
+    blocks: list[Block] = [Facts(_pairs(pairs))] if any(text for _, text in pairs) else []
+    sums = comparison.sums(line, rulesets.get(line.ruleset), system)
+    if sums:
+        blocks.append(Items((Entry("Comparison in the printed unit", (), sums),)))
+    if line.paths:
+        blocks.append(_paths(line))
+    reasons = (*map(clean, line.reasons), *said.notes(line))
+    blocks.append(Items((Entry(f"Verdict: {said.verdict_text(line)}", reasons),)))
+    return [Section(heading, tuple(blocks))]
+
+
+def _paths(line: Line) -> Grid:
+    cells = tuple(
+        (
+            wording.PATHS.get(each.path, wording.plain(each.path)),
+            wording.STATES.get(each.state, each.state),
+            clean(each.value),
+            clean(each.limit),
+            clean(each.why),
+        )
+        for each in line.paths
+    )
+    return Grid(("path", "state", "value", "limit", "why"), cells, (), (4, 2, 3))

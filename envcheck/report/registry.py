@@ -1,0 +1,51 @@
+"""The one registry of formats, filled by being in the folder ``formats``.
+
+A format is a module with ``NAME``, ``TITLE``, ``EXTENSION`` and ``render(view) -> str``. It may
+have ``DETAILS = True`` (it always lists the assemblies) and ``explain(page, view) -> str`` for
+the page of ``envcheck explain``.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from functools import cache
+from importlib import import_module
+from pkgutil import iter_modules
+
+from envcheck.report.explain import Explained
+from envcheck.report.view import View
+
+
+@dataclass(frozen=True, slots=True)
+class Format:
+    """One way to lay a view out."""
+
+    name: str
+    title: str
+    extension: str
+    details: bool
+    render: Callable[[View], str]
+    explain: Callable[[Explained], str] | None
+
+
+@cache
+def names() -> tuple[str, ...]:
+    """Names of the formats, without importing any: the file's name is the format's."""
+    package = import_module("envcheck.report.formats")
+    return tuple(sorted(info.name for info in iter_modules(package.__path__)))
+
+
+def format_named(name: str) -> Format:
+    """Load one format. Errors: KeyError for a name that no file bears."""
+    if name not in names():
+        raise KeyError(name)
+    module = import_module(f"envcheck.report.formats.{name}")
+    return Format(
+        name=module.NAME,
+        title=module.TITLE,
+        extension=module.EXTENSION,
+        details=getattr(module, "DETAILS", False),
+        render=module.render,
+        explain=getattr(module, "explain", None),
+    )

@@ -1,0 +1,73 @@
+"""Paths through a solved network, their share of the heat, and temperatures between parts."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+
+from envcheck import units
+from envcheck.model.solved import Node, Parallel, Resistor, Series
+from envcheck.report import numbers
+from envcheck.report.inert import clean
+from envcheck.report.parts import Grid
+
+
+def paths(tree: Node | None, system: str) -> Grid | None:
+    """Every set of branches with its shares of area and heat; None where there is one path."""
+    found = [
+        (
+            clean(branch.title),
+            numbers.percent(share, 2),
+            numbers.resistance(branch.value, system),
+            numbers.percent(share / branch.value * node.value) if branch.value else "",
+        )
+        for node in _parallels(tree)
+        for share, branch in zip(node.shares, node.branches, strict=True)
+    ]
+    if not found:
+        return None
+    unit = units.label("resistance", system)
+    return Grid(("path", "area", f"R, {unit}", "heat"), tuple(found), (1, 2, 3), (0,))
+
+
+def _parallels(tree: Node | None) -> Iterable[Parallel]:
+    if isinstance(tree, Parallel):
+        yield tree
+        for branch in tree.branches:
+            yield from _parallels(branch)
+    elif isinstance(tree, Series):
+        for part in tree.parts:
+            yield from _parallels(part)
+
+
+def temperatures(tree: Node, outside: float, inside: float, system: str) -> list[Grid]:
+    """One table per path of the temperatures behind each part, outside first.
+
+    outside, inside: air temperatures in degrees C. The drop over a part is its share of the
+    path's resistance.
+    """
+    branches = tree.branches if isinstance(tree, Parallel) else (tree,)
+    return [_along(branch, outside, inside, system) for branch in branches if branch.value]
+
+
+def _along(path: Node, outside: float, inside: float, system: str) -> Grid:
+    parts = path.parts if isinstance(path, Series) else (path,)
+    unit = units.label("resistance", system)
+    passed = 0.0
+    rows = [("outdoor air", "", numbers.temperature(outside, system))]
+    for part in parts:
+        passed += part.value
+        behind = outside + (inside - outside) * passed / path.value
+        name = f"behind {_title(part)}"
+        rows.append(
+            (
+                clean(name),
+                numbers.resistance(part.value, system),
+                numbers.temperature(behind, system),
+            )
+        )
+    head = clean(path.title) if path.title else "path"
+    return Grid((head, f"R, {unit}", "temperature"), tuple(rows), (1, 2), (0,))
+
+
+def _title(part: Node) -> str:
+    return part.title or (part.symbol if isinstance(part, Resistor) else "part")
