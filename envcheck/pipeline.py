@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+import gc
+from collections.abc import Iterator, Mapping, Sequence
+from contextlib import contextmanager
 from dataclasses import dataclass, replace
 from functools import cache
 from pathlib import Path
@@ -10,12 +12,12 @@ from pathlib import Path
 from envcheck.errors import InputError, Problem
 from envcheck.judge import crosschecks
 from envcheck.judge.building import closed_rows, closings, ratios, take_means
-from envcheck.judge.classes import classify
+from envcheck.judge.classes import Class, classify
 from envcheck.judge.select import select
 from envcheck.judge.verdict import Case, judge, metrics
 from envcheck.model.judged import Finding, Judged, Line, Mean, Ratio
 from envcheck.model.names import Names
-from envcheck.model.project import Assembly, Bridge, Element, Project, RuleSetChoice
+from envcheck.model.project import Assembly, Bridge, Element, Project
 from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Properties, Setting, Solved
 from envcheck.read.materials import categories
@@ -64,6 +66,23 @@ def run(path: str, folders: Sequence[str] = ()) -> Run:
     the nearest folder ``rules`` at or above the project file.
     Errors: InputError with every problem of the project and of its rule sets.
     """
+    with _no_cycles_to_collect():
+        return _run(path, folders)
+
+
+@contextmanager
+def _no_cycles_to_collect() -> Iterator[None]:
+    """Pause the cycle collector: a run makes 10^5 objects and hardly a cycle among them."""
+    enabled = gc.isenabled()
+    gc.disable()
+    try:
+        yield
+    finally:
+        if enabled:
+            gc.enable()
+
+
+def _run(path: str, folders: Sequence[str]) -> Run:
     project = read_project(path, names())
     rulesets = _read_rulesets(project, folders or nearest_rules(path), path)
     made_of = {name: properties(assembly) for name, assembly in project.assemblies.items()}
@@ -74,8 +93,16 @@ def run(path: str, folders: Sequence[str] = ()) -> Run:
     found: list[Finding] = []
     for choice in project.rule_sets:
         ruleset = rulesets[choice.id]
-        measured = ratios(project, ruleset)
-        own = _judge_all(project, ruleset, choice, made_of, measured, solver, found)
+        classes = {
+            tag: classify(
+                element, assembly_of(project, element), made_of[element.assembly], ruleset
+            )
+            for tag, element in project.elements.items()
+        }
+        if choice.decides:
+            found += [c.finding for c in classes.values() if c.finding is not None]
+        measured = ratios(project, ruleset, {tag: c.category for tag, c in classes.items()})
+        own = _judge_all(project, ruleset, choice.decides, made_of, classes, measured, solver)
         own, taken = take_means(own, project, ruleset)
         lines += own
         all_ratios += measured
@@ -138,35 +165,42 @@ def _read_rulesets(project: Project, folders: Sequence[str], path: str) -> dict[
     return found
 
 
+def assembly_of(project: Project, element: Element) -> Assembly:
+    """The assembly that an element is made of."""
+    return project.assemblies[element.assembly]
+
+
 def _judge_all(
     project: Project,
     ruleset: RuleSet,
-    choice: RuleSetChoice,
+    decides: bool,
     made_of: Mapping[str, Properties],
+    classes: Mapping[str, Class],
     measured: Sequence[Ratio],
     solver: _Solver,
-    found: list[Finding],
 ) -> list[Line]:
-    """Judge every element by one rule set; findings of the class tests go to ``found``."""
+    """Judge every element by one rule set."""
     closed = closed_rows(ruleset, measured)
     derived = {ratio.name: ratio.value for ratio in measured if not ratio.missing}
     lines = []
-    for element in project.elements.values():
-        assembly = project.assemblies[element.assembly]
-        own = made_of[assembly.id]
-        found_class = classify(element, own, ruleset)
-        if found_class.finding is not None and choice.decides:
-            found.append(found_class.finding)
-        selection = select(element, found_class.category, ruleset, project, derived)
+    for tag, element in project.elements.items():
+        assembly, found = assembly_of(project, element), classes[tag]
+        selection = select(element, found.category, ruleset, project, derived)
         case = Case(
-            project, ruleset, choice.decides, element, assembly, own, found_class, selection, closed
+            project,
+            ruleset,
+            decides,
+            element,
+            assembly,
+            made_of[assembly.id],
+            found,
+            selection,
+            closed,
         )
-        for metric in metrics(selection, categories()[found_class.category].metric):
-            solved = (
-                solver.solve(element, assembly, found_class.category, metric, ruleset)
-                if metric in SOLVED_METRICS
-                else None
-            )
+        for metric in metrics(selection, categories()[found.category].metric):
+            solved = None
+            if metric in SOLVED_METRICS:
+                solved = solver.solve(element, assembly, found.category, metric, ruleset)
             lines.append(judge(case, metric, solved))
     return lines
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import replace
 
 from envcheck.judge.compare import compare
@@ -39,14 +39,20 @@ def closes(closing: Closing) -> bool:
     return abs(closing.missing) <= CLOSES_WITHIN * closing.gross
 
 
-def ratios(project: Project, ruleset: RuleSet) -> tuple[Ratio, ...]:
-    """Area ratios that the rule set caps, over the surfaces of the project's main space."""
+def ratios(project: Project, ruleset: RuleSet, categories: Mapping[str, str]) -> tuple[Ratio, ...]:
+    """Area ratios that the rule set caps, over the surfaces of the project's main space.
+
+    categories: by tag, the class in which each element is judged.
+    """
     return tuple(
-        _ratio(project, limit.of, limit.most, limit.clause) for limit in ruleset.area_limits
+        _ratio(project, categories, limit.of, limit.most, limit.clause)
+        for limit in ruleset.area_limits
     )
 
 
-def _ratio(project: Project, name: str, most: float, clause: str) -> Ratio:
+def _ratio(
+    project: Project, categories: Mapping[str, str], name: str, most: float, clause: str
+) -> Ratio:
     kind, counted, left_out = RATIO_PARTS[name]
     surfaces = [s for s in project.surfaces.values() if _counts(s, kind, project)]
     names = {surface.name for surface in surfaces}
@@ -54,8 +60,8 @@ def _ratio(project: Project, name: str, most: float, clause: str) -> Ratio:
     elements = [
         element
         for element in project.elements.values()
-        if matches(counted, element.category)
-        and element.category != left_out
+        if matches(counted, categories[element.tag])
+        and categories[element.tag] != left_out
         and element.surface in names
     ]
     numerator = sum(element.net_area or 0.0 for element in elements)

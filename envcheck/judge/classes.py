@@ -5,7 +5,8 @@ from __future__ import annotations
 from typing import NamedTuple
 
 from envcheck.model.judged import Choice, Finding
-from envcheck.model.project import Element
+from envcheck.model.patterns import matches
+from envcheck.model.project import Assembly, Element
 from envcheck.model.ruleset import ClassTest, RuleSet
 from envcheck.model.solved import Properties
 from envcheck.units import convert
@@ -18,52 +19,76 @@ class Class(NamedTuple):
     """The class that counts, how it was found, and what it contradicts."""
 
     category: str
-    choice: Choice | None
-    finding: Finding | None
+    choice: Choice | None = None
+    finding: Finding | None = None
     official: str = ""
     """Not empty: two classes fit and the official decides between them."""
     missing: str = ""
     """Not empty: the test cannot be made, and why."""
 
 
-def classify(element: Element, properties: Properties, ruleset: RuleSet) -> Class:
+def classify(
+    element: Element, assembly: Assembly, properties: Properties, ruleset: RuleSet
+) -> Class:
     """Apply the class test of the category that the project claims."""
-    test = next(
-        (t for t in ruleset.conventions.class_tests if t.category == element.category), None
-    )
+    tests = ruleset.conventions.class_tests
+    test = next((t for t in tests if matches(t.category, element.category)), None)
     if test is None:
-        return Class(element.category, None, None)
+        return Class(element.category)
+    if test.measure == "visible_transmittance":
+        return _by_light(element, assembly, test)
+    return _by_mass(element, properties, test)
+
+
+def _by_light(element: Element, assembly: Assembly, test: ClassTest) -> Class:
+    """An element that lets no light through is opaque, whatever frame it stands in."""
+    rated, window = assembly.rated, assembly.window
+    clear = window is not None or (
+        rated is not None
+        and ((rated.visible_transmittance or 0.0) > test.at_least or bool(rated.shgc))
+    )
+    if clear:
+        return Class(element.category)
+    why = f"{test.clause}: {assembly.id} lets no light through (no visible transmittance, no SHGC)"
+    finding = Finding(
+        "opaque-as-glazing",
+        "E",
+        element.tag,
+        element.sheet,
+        f"entered as {element.category}, and no visible transmittance or SHGC is stated",
+        f"by {test.clause} an opaque panel is {test.otherwise}, and is judged as such",
+        "the category of an opaque element, or the SHGC and visible transmittance of the glazing",
+    )
+    return Class(test.otherwise, Choice("class", test.otherwise, why), finding)
+
+
+def _by_mass(element: Element, properties: Properties, test: ClassTest) -> Class:
+    """A wall without the mass that its class asks for falls to the class of its framing."""
     counted, whole = _measured(test, properties)
     if counted is None:
         materials = ", ".join(properties.missing) or "the layers"
-        return Class(
-            element.category,
-            None,
-            None,
-            missing=f"density and specific heat of {materials}, for the class test of "
-            f"{test.clause}",
-        )
+        need = f"density and specific heat of {materials}, for the class test of {test.clause}"
+        return Class(element.category, missing=need)
     if counted >= test.at_least:
         why = f"{test.clause}: {_amount(test, counted)} is at least {test.text}"
-        return Class(element.category, Choice("class", element.category, why), None)
-    other = FRAMED[properties.framing]
+        return Class(element.category, Choice("class", element.category, why))
+    other = test.otherwise or FRAMED[properties.framing]
     why = f"{test.clause}: {_amount(test, counted)} is below {test.text}"
+    seen = f"claimed as {element.category}; {_amount(test, counted)} counts, {test.text} needed"
+    if whole is not None:
+        seen += f" ({_amount(test, whole)} over the whole wall)"
     finding = Finding(
         "class-claimed",
         "E",
         element.tag,
         element.sheet,
-        f"claimed as {element.category}; {_amount(test, counted)} counted"
-        + (f" ({_amount(test, whole)} over the whole wall)" if whole is not None else "")
-        + f", {test.text} needed",
-        f"by {test.clause} it is {other}, and judged as such",
+        seen,
+        f"by {test.clause} it is {other}, and is judged as such",
         "a category that the layers bear out, or layers with the mass that the class asks for",
     )
     official = ""
     if test.arguable and whole is not None and whole >= test.at_least:
-        official = (
-            f"{test.clause} leaves open how the wall is counted: {element.category} or {other}"
-        )
+        official = f"{test.clause} leaves the way of counting open: {element.category} or {other}"
     return Class(other, Choice("class", other, why), finding, official)
 
 
@@ -73,9 +98,7 @@ def _measured(test: ClassTest, properties: Properties) -> tuple[float | None, fl
         whole, indoor = properties.heat_capacity, properties.heat_capacity_indoor
     else:
         whole, indoor = properties.weight, properties.weight_indoor
-    if test.counted == "whole":
-        return whole, None
-    return indoor, whole
+    return (whole, None) if test.counted == "whole" else (indoor, whole)
 
 
 def _amount(test: ClassTest, value: float) -> str:

@@ -9,131 +9,18 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 from fnmatch import fnmatchcase
-from typing import NamedTuple
 
+from envcheck.judge.facts import Known, Value, fact_of, shown
+from envcheck.judge.selection import MissingFact, Outcome, Selection
 from envcheck.judge.zones import ZoneFound, find_zone, holds
 from envcheck.model.judged import Choice
-from envcheck.model.project import Element, Fact, Project
-from envcheck.model.ruleset import Condition, Dimension, Limit, RuleSet
+from envcheck.model.project import Element, Project
+from envcheck.model.ruleset import Limit, RuleSet
 
-Value = str | float
-INSULATION = "insulation"
-"""Path of labelled R-values, printed beside the value of the whole."""
+__all__ = ["MissingFact", "Outcome", "Selection", "select"]
+
 KEPT = 8
 """Rule sets whose index is kept."""
-
-
-@dataclass(frozen=True, slots=True)
-class MissingFact:
-    """A fact that a condition asks for and that nobody states, or states in no known word."""
-
-    name: str
-    allowed: tuple[str, ...]
-    """Allowed words; empty for a number."""
-    unit: str
-    meaning: str
-    sheet: str
-    """Drawing where the fact belongs, in words; may be empty."""
-    found: str = ""
-    """What is stated and cannot be used."""
-
-    def __str__(self) -> str:
-        wanted = " or ".join(self.allowed) if self.allowed else f"a number {self.unit}".strip()
-        what = f"{self.name} ({wanted})"
-        if self.found:
-            return f"{what} is stated as {self.found}, which the rule set does not know"
-        return f"{what} is not stated" + (f"; it belongs on the {self.sheet}" if self.sheet else "")
-
-
-@dataclass(frozen=True, slots=True)
-class Outcome:
-    """What the tables say for one metric and path."""
-
-    metric: str
-    path: str
-    state: str
-    """``found``, ``not_in_table``, ``missing_fact`` or ``two_rows``."""
-    limit: Limit | None
-    """The one limit, where it is found."""
-    candidates: tuple[Limit, ...] = ()
-    """Both of two rows, or the rows that the missing fact would choose between."""
-    missing: tuple[MissingFact, ...] = ()
-    why: str = ""
-    """Why there is no limit, in words."""
-
-
-@dataclass(frozen=True, slots=True)
-class Selection:
-    """The limits for one category of element in one place, with the trail that led to them."""
-
-    ruleset: str
-    category: str
-    zone: str
-    """Printed zone; empty where it could not be found."""
-    state: str
-    """``selected``; or ``not_in_force``, ``zone_missing``, ``zone_unknown``, ``zone_ambiguous``,
-    ``not_in_table``: then there are no outcomes and ``why`` says what is wrong."""
-    why: str
-    outcomes: tuple[Outcome, ...]
-    trail: tuple[Choice, ...]
-    by: Mapping[tuple[str, str], Outcome] = field(default_factory=dict, compare=False, repr=False)
-    """Outcomes by metric and path."""
-
-    @property
-    def metrics(self) -> tuple[str, ...]:
-        """Metrics that make a line each: those of the insulation path stand in another's line."""
-        main = [o.metric for o in self.outcomes if o.path != INSULATION]
-        return tuple(dict.fromkeys(main or [o.metric for o in self.outcomes]))
-
-    @property
-    def limits(self) -> dict[tuple[str, str], Limit]:
-        """The limits found, by metric and path."""
-        return {(o.metric, o.path): o.limit for o in self.outcomes if o.limit is not None}
-
-    def outcome(self, metric: str, path: str = "") -> Outcome | None:
-        """Outcome of a metric; without a path that of its main path."""
-        if path:
-            return self.by.get((metric, path))
-        found = [o for o in self.outcomes if o.metric == metric]
-        return min(found, key=lambda o: o.path == INSULATION, default=None)
-
-    def limit(self, metric: str, path: str = "") -> Limit | None:
-        """The limit of a metric, where one is found."""
-        outcome = self.outcome(metric, path)
-        return None if outcome is None else outcome.limit
-
-    def verdict_of(self, metric: str, path: str = "") -> str:
-        """Verdict that follows from having no limit; empty where there is one."""
-        outcome = self.outcome(metric, path)
-        if outcome is None and self.state == "selected":
-            return "not_in_table"
-        state = outcome.state if outcome is not None else self.state
-        return {"found": "", "not_in_table": "not_in_table"}.get(state, "not_decided")
-
-    def reason_of(self, metric: str, path: str = "") -> str:
-        """Why there is no limit, in words; empty where there is one."""
-        outcome = self.outcome(metric, path)
-        if outcome is None:
-            return self.why or f"no row of the rule set gives {metric} for {self.category}"
-        return outcome.why
-
-    @property
-    def _stopped_by(self) -> str:
-        return next((m for m in self.metrics if self.limit(m) is None), "")
-
-    @property
-    def verdict(self) -> str:
-        """Verdict of the first metric that has no limit; empty where all have one."""
-        return "" if self._all_found else self.verdict_of(self._stopped_by)
-
-    @property
-    def reason(self) -> str:
-        """Why the first metric that has no limit has none."""
-        return "" if self._all_found else self.reason_of(self._stopped_by)
-
-    @property
-    def _all_found(self) -> bool:
-        return bool(self.outcomes) and not self._stopped_by
 
 
 Group = tuple[tuple[str, str], tuple[tuple[Limit, ...], ...]]
@@ -173,7 +60,7 @@ def select(
     if key not in index.groups:
         _lay_out(index, zone.heads, category)
     facts = {
-        name: _fact(name, element, project, derived_facts or {}, ruleset.dimensions[name])
+        name: fact_of(name, element, project, derived_facts or {}, ruleset.dimensions[name])
         for name in index.dimensions[key]
     }
     memo = (id(project), category, tuple(facts.items()))
@@ -233,59 +120,6 @@ def _fit(category: str, pattern: str) -> int:
     return len(pattern.replace("*", "")) if fnmatchcase(category, pattern) else -1
 
 
-# --------------------------------------------------------------------------------------- facts
-
-
-class _Known(NamedTuple):
-    """The value of a fact and where it is said; the value None is not stated."""
-
-    value: Value | None
-    where: str
-    usable: bool = True
-
-
-def _fact(
-    name: str,
-    element: Element,
-    project: Project,
-    derived: Mapping[str, Value],
-    dimension: Dimension,
-) -> _Known:
-    stated = next((f for f in element.facts if f.name == name), None)
-    if stated is not None:
-        return _known(stated.value, _said(stated, element.tag), dimension)
-    if name in ("orientation", "facing") and element.facing:
-        return _known(element.facing, f"facing of {element.tag}", dimension)
-    if name == "adjoins":
-        return _known(element.adjoins, f"what {element.tag} adjoins", dimension)
-    stated = next((f for f in project.facts if f.name == name), None)
-    if stated is not None:
-        return _known(stated.value, _said(stated, "project"), dimension)
-    if name in derived:
-        return _known(derived[name], "computed from the project", dimension)
-    if dimension.default:
-        return _known(dimension.default, "default of the rule set", dimension)
-    return _Known(None, "")
-
-
-def _said(fact: Fact, where: str) -> str:
-    return f"fact of {where}, sheet {fact.sheet}" if fact.sheet else f"fact of {where}"
-
-
-def _known(value: str | float | bool, where: str, dimension: Dimension) -> _Known:
-    """Bring a value to the form of its dimension; a word that it does not know is unusable."""
-    if isinstance(value, bool):
-        value = "yes" if value else "no"
-    if dimension.values:
-        word = str(value).casefold()
-        usable = any(word == v.casefold() for v in dimension.values)
-        return _Known(str(value), where, usable)
-    try:
-        return _Known(float(value), where)
-    except ValueError:
-        return _Known(str(value), where, False)
-
-
 # ----------------------------------------------------------------------------------- selection
 
 
@@ -293,7 +127,7 @@ def _selection(
     index: _Index,
     zone: ZoneFound,
     category: str,
-    facts: Mapping[str, _Known],
+    facts: Mapping[str, Known],
     project: Project,
 ) -> Selection:
     ruleset = index.ruleset
@@ -321,7 +155,7 @@ def _outcome(
     key: tuple[str, str],
     levels: tuple[tuple[Limit, ...], ...],
     ruleset: RuleSet,
-    facts: Mapping[str, _Known],
+    facts: Mapping[str, Known],
 ) -> Outcome:
     """Go from the most specific rows down until rows hold, or could hold if a fact were known."""
     metric, path = key
@@ -345,12 +179,12 @@ def _outcome(
         if holding:
             rows = " and ".join(f"{x.clause}, {x.label}: {x.cell}" for x in holding)
             return Outcome(metric, path, "two_rows", None, tuple(holding), why=f"two rows: {rows}")
-    stated = ", ".join(f"{n} {_shown(k.value)}" for n, k in facts.items() if k.value is not None)
+    stated = ", ".join(f"{n} {shown(k.value)}" for n, k in facts.items() if k.value is not None)
     why = f"no row holds for {stated}" if stated else "no row holds"
     return Outcome(metric, path, "not_in_table", None, why=why)
 
 
-def _unknown(limit: Limit, facts: Mapping[str, _Known]) -> tuple[str, ...] | None:
+def _unknown(limit: Limit, facts: Mapping[str, Known]) -> tuple[str, ...] | None:
     """Facts that the limit still asks for; None where a known fact rules it out."""
     unknown = []
     for condition in limit.when:
@@ -362,16 +196,12 @@ def _unknown(limit: Limit, facts: Mapping[str, _Known]) -> tuple[str, ...] | Non
     return tuple(unknown)
 
 
-def _missing(name: str, ruleset: RuleSet, known: _Known) -> MissingFact:
+def _missing(name: str, ruleset: RuleSet, known: Known) -> MissingFact:
     dimension = ruleset.dimensions[name]
-    found = "" if known.value is None else f"{_shown(known.value)} ({known.where})"
+    found = "" if known.value is None else f"{shown(known.value)} ({known.where})"
     return MissingFact(
         name, dimension.values, dimension.unit, dimension.meaning, dimension.sheet, found
     )
-
-
-def _shown(value: Value | None) -> str:
-    return f"{value:.6g}" if isinstance(value, float) else str(value)
 
 
 # --------------------------------------------------------------------------------------- trail
@@ -404,7 +234,7 @@ def _not_in_force(ruleset: RuleSet, project: Project) -> str:
     )
 
 
-def _row_trail(outcomes: tuple[Outcome, ...], facts: Mapping[str, _Known]) -> list[Choice]:
+def _row_trail(outcomes: tuple[Outcome, ...], facts: Mapping[str, Known]) -> list[Choice]:
     trail: list[Choice] = []
     for outcome in outcomes:
         limit = outcome.limit
@@ -419,7 +249,7 @@ def _row_trail(outcomes: tuple[Outcome, ...], facts: Mapping[str, _Known]) -> li
         trail.append(Choice("row", limit.id, why))
         for condition in limit.when:
             fact = facts[condition.dimension]
-            chosen = f"{condition.dimension} = {_shown(fact.value)}"
+            chosen = f"{condition.dimension} = {shown(fact.value)}"
             trail.append(Choice("condition", chosen, f"meets {condition.text} ({fact.where})"))
         trail += [Choice("footnote", f"[{note.mark}]", note.text) for note in limit.notes]
     return list(dict.fromkeys(trail))

@@ -74,10 +74,10 @@ def judge(case: Case, metric: str, solved: Solved | None) -> Line:
         if answer is not None:
             return replace(line, verdict=answer[0], reasons=(answer[1],))
     assert limit is not None
+    compared = _compare(case, line, limit, solved)
     closing = _area_cap(case)
     if closing is not None:
-        return replace(line, verdict="path_closed", reasons=(closing,))
-    compared = _compare(case, line, limit, solved)
+        return replace(compared, verdict="path_closed", reasons=(closing, *compared.reasons))
     claim = _claim(case)
     if claim is not None:
         return _claimed(compared, claim)
@@ -153,6 +153,11 @@ def _evidence(case: Case) -> str | None:
     rated = case.assembly.rated
     if rated is None:
         return None
+    if rated.basis == "centre_of_glass":
+        return (
+            f"missing: values of the whole product for {case.assembly.id}, frame included; only "
+            f"those of the centre of glass are stated, on {case.assembly.sheet or 'its schedule'}"
+        )
     accepted = next(
         (
             kinds
@@ -251,7 +256,8 @@ def _depth(case: Case, limit: Limit) -> str | None:
     if limit.metric != "C_factor" or not case.properties.continuous_resistance:
         return None
     if element.insulated_depth is None:
-        return f"missing: the insulated depth of {element.tag}, on {element.sheet or 'its section'}"
+        sheet = case.assembly.sheet or element.sheet or "its section"
+        return f"missing: the depth to which {element.tag} is insulated, on {sheet}"
     if (
         element.depth_below_grade is not None
         and element.insulated_depth + 1e-3 < element.depth_below_grade

@@ -157,12 +157,12 @@ class MethodRule:
 
 @dataclass(frozen=True, slots=True)
 class ClassTest:
-    """The test that puts a wall in a class, by heat capacity per area or by weight."""
+    """The test that keeps an element in the class claimed: mass, or light let through."""
 
     category: str
-    """The class claimed."""
+    """The class claimed, or a pattern."""
     measure: str
-    """``heat_capacity`` or ``weight``"""
+    """``heat_capacity``, ``weight`` or ``visible_transmittance`` (above ``at_least``)"""
     at_least: float
     """J/(m2 K) or kg/m2"""
     text: str
@@ -172,6 +172,8 @@ class ClassTest:
     clause: str
     arguable: bool = False
     """The code leaves room: where ways of counting differ, the official decides."""
+    otherwise: str = ""
+    """Class of an element that fails; empty = by its framing."""
 
 
 @dataclass(frozen=True, slots=True)

@@ -1,4 +1,4 @@
-"""The grammar of a printed table's cells and of the conditions beside them.
+"""The grammar of a printed table's cells.
 
 ::
 
@@ -18,7 +18,7 @@ from functools import lru_cache
 from typing import NamedTuple
 
 from envcheck import units
-from envcheck.model.ruleset import Condition, Term
+from envcheck.model.ruleset import Term
 
 NO_REQUIREMENT = ("nr", "no requirement", "keine anforderung", "sans exigence", "uninsulated")
 NOT_COVERED = ("-", "\u2013", "\u2014", "n/a")
@@ -36,8 +36,9 @@ PREFIXES = {
     "VT": ("VT",),
 }
 """Prefix -> the metrics that it may stand for."""
-SUFFIXES = ("ci",)
-"""Suffixes that need no declaration: continuous insulation."""
+SUFFIXES = ("ci", "Ls", "FC", "std")
+"""Suffixes that need no declaration: continuous insulation, liner system, filled cavity, standard
+framing."""
 EXTENT_WORDS = ("perimeter", "under", "full")
 _MARKS = re.compile(r"\[([^\[\]]*)\]")
 _OR = re.compile(r"\s+or\s+")
@@ -47,12 +48,10 @@ _TERM = re.compile(
 )
 _REST = re.compile(r"(?P<suffix>[A-Za-z.]*)\s*(?:(?:for|,)\s*(?P<extent>\S.*))?")
 _BAND = re.compile(r"([A-Za-z]+) [A-Z][+]*")
-_INTERVAL = re.compile(r"([\[(])\s*([\d.,]*)\s*[,;]\s*([\d.,]*)\s*([\])])")
-_BOUND = re.compile(r"(<=|>=|<|>|=|\u2264|\u2265)?\s*(\d*[.,]?\d+)")
 
 
 class CellError(ValueError):
-    """A cell or condition that cannot be read; ``kind`` is an id of ``error_kinds``."""
+    """A cell, head or condition that cannot be read; ``kind`` is an id of ``error_kinds``."""
 
     def __init__(self, kind: str, expected: str = "", fix: str = "") -> None:
         super().__init__(kind)
@@ -270,53 +269,3 @@ def _example(grammar: Grammar) -> str:
     number = f"0{grammar.decimal}060" if grammar.sense == "max" else "13"
     more = ", 13+9ci" if grammar.plus else ""
     return f"a figure such as {number}{more}, or NR or -"
-
-
-# --------------------------------------------------------------------------------- conditions
-
-
-def read_condition(
-    text: str, dimension: str, words: tuple[str, ...], unit: str = "", decimal: str = "."
-) -> Condition:
-    """Read a condition: words (``N|E|W``), or an interval whose ends become SI.
-
-    ``words`` are those that the dimension allows; without any it is a number. Errors: CellError.
-    """
-    plain = text.strip()
-    if words:
-        return _words(plain, dimension, words)
-    interval = _INTERVAL.fullmatch(plain)
-    if interval is not None:
-        low = _bound(interval[2], unit, decimal)
-        high = _bound(interval[3], unit, decimal)
-        if low is not None and high is not None and low > high:
-            raise CellError("unreadable-condition", "the lower end first")
-        closed = interval[1] == "[", interval[4] == "]"
-        return Condition(dimension, (), low, high, *closed, plain)
-    bound = _BOUND.fullmatch(plain)
-    if bound is None:
-        raise CellError("unreadable-condition", "an interval such as <=0.30 or (0.30,0.50]")
-    value = _bound(bound[2], unit, decimal)
-    sign = (bound[1] or "=").replace("\u2264", "<=").replace("\u2265", ">=")
-    low = value if sign[0] in ">=" else None
-    high = value if sign[0] in "<=" else None
-    closed = sign in (">=", "="), sign in ("<=", "=")
-    return Condition(dimension, (), low, high, *closed, plain)
-
-
-def _words(text: str, dimension: str, words: tuple[str, ...]) -> Condition:
-    known = {w.casefold(): w for w in words}
-    found = [w.strip() for w in text.split("|")]
-    wrong = [w for w in found if w.casefold() not in known]
-    if wrong:
-        raise CellError("unknown-word", "one of " + ", ".join(words))
-    return Condition(dimension, tuple(known[w.casefold()] for w in found), text=text)
-
-
-def _bound(text: str, unit: str, decimal: str) -> float | None:
-    if not text:
-        return None
-    if ("," if decimal == "." else ".") in text:
-        raise CellError("cell-decimal-mark", f"the decimal mark {decimal!r}")
-    number = float(text.replace(",", "."))
-    return units.to_si(number, unit) if unit else number

@@ -23,8 +23,8 @@ from envcheck.read.yaml_reader import Entry
 
 
 def read_layers(context: Context, entries: list[Any]) -> tuple[Layer, ...]:
-    """Read layers from outside to inside."""
-    layers = [_KINDS[entry["kind"]](context, entry) for entry in entries]
+    """Read layers from outside to inside; those that the schema refused are None."""
+    layers = [_KINDS[entry["kind"]](context, entry) for entry in entries if entry is not None]
     if any(isinstance(layer, FramedLayer) for layer in layers):
         return with_crossed_insulation(layers)
     return tuple(layers)

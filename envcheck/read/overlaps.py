@@ -14,9 +14,7 @@ from envcheck.read.rule_parts import intersect
 Group = tuple[str, str, str, str, str]
 
 
-def check_overlaps(
-    limits: Iterable[Limit], document: Document, problems: list[Problem]
-) -> None:
+def check_overlaps(limits: Iterable[Limit], document: Document, problems: list[Problem]) -> None:
     """Report limits for the same zone, category, metric and path whose conditions overlap."""
     groups: dict[Group, list[Limit]] = defaultdict(list)
     for limit in limits:
@@ -35,9 +33,7 @@ def check_overlaps(
 
 def _both_hold(a: tuple[Condition, ...], b: tuple[Condition, ...]) -> bool:
     others = {c.dimension: c for c in b}
-    return all(
-        c.dimension not in others or intersect(c, others[c.dimension]) for c in a
-    )
+    return all(c.dimension not in others or intersect(c, others[c.dimension]) for c in a)
 
 
 def _overlap(a: Limit, b: Limit, document: Document) -> Problem:
@@ -46,5 +42,5 @@ def _overlap(a: Limit, b: Limit, document: Document) -> Problem:
     file = (folder / b.file).as_posix()
     conditions = ", ".join(f"{c.dimension} {c.text}" for c in b.when) or "no condition"
     where = f"line {a.line}" if a.file == b.file else f"{a.file}:{a.line}"
-    what = f"row {b.row!r} ({conditions})"
+    what = f"{b.metric}, row {b.row!r}, zone {b.zone!r}, {conditions}"
     return problem("conditions-overlap", file, b.line, found=what, where=where)

@@ -5,8 +5,9 @@ from __future__ import annotations
 import gc
 from collections.abc import Callable, Iterator
 from contextlib import contextmanager
+from difflib import get_close_matches
 from hashlib import sha256
-from pathlib import Path
+from pathlib import Path as FilePath
 from typing import Any, TypeVar
 
 from envcheck.errors import InputError
@@ -23,10 +24,12 @@ from envcheck.read.elements import (
 )
 from envcheck.read.files import read_bytes
 from envcheck.read.schema import check_paths
+from envcheck.read.schema_words import Path
 from envcheck.read.site import read_answers, read_options, read_site
 from envcheck.read.yaml_reader import Entry, read_yaml
 
 _Thing = TypeVar("_Thing")
+_NAMED = {"materials", "assemblies", "surfaces", "elements"}
 
 
 def read_project(path: str, names: Names) -> Project:
@@ -51,7 +54,7 @@ def _no_cycles_to_collect() -> Iterator[None]:
             gc.enable()
 
 
-def project_from_bytes(raw: bytes, shown: str, folder: Path, names: Names) -> Project:
+def project_from_bytes(raw: bytes, shown: str, folder: FilePath, names: Names) -> Project:
     """Read a project from the bytes of its file; ``folder`` is where its evidence lies."""
     data, problems = read_yaml(raw, shown)
     if data is None:
@@ -59,25 +62,46 @@ def project_from_bytes(raw: bytes, shown: str, folder: Path, names: Names) -> Pr
     context = Context(shown, folder, names)
     context.problems += problems
     wrong = check_paths(data, "project", shown)
-    context.problems += [made for _, made in wrong]
-    sections = _Sections(data, {path[:2] for path, _ in wrong} | {path[:1] for path, _ in wrong})
+    told = {made.line for made in problems}
+    context.problems += [made for _, made in wrong if made.line not in told]
+    sections = _Sections(data, [path for path, _ in wrong])
     project = _build(context, sections, sha256(raw).hexdigest())
     if context.problems:
         raise InputError(context.problems)
     return project
 
 
+def _prune_layer(data: Entry, path: Path) -> Path:
+    """Take a refused layer out, so that the rest of its assembly is still read.
+
+    Gives the path of what must be left out besides: nothing, but for the assembly as a whole
+    where something else in it is refused.
+    """
+    if path[:1] != ("assemblies",) or len(path) < 4 or path[2] != "layers":
+        return path
+    assembly = data["assemblies"][path[1]]
+    assembly["layers"][path[3]] = None
+    assembly.pop("fasteners", None)
+    return ()
+
+
 class _Sections:
     """Top-level sections without the entries that the schema refused."""
 
-    def __init__(self, data: Entry, wrong: set[tuple[str | int, ...]]) -> None:
+    def __init__(self, data: Entry, wrong: list[Path]) -> None:
         self.data = data
-        self.wrong = wrong
+        pruned = [_prune_layer(data, path) for path in wrong]
+        self.wrong = {path[:depth] for path in pruned for depth in (1, 2)}
 
     def mapping(self, name: str) -> dict[str, Any]:
         """All entries of a section, sound or not, for what refers to them by name."""
         section = self.data.get(name)
         return section if isinstance(section, Entry) else {}
+
+    def names(self, name: str) -> dict[str, Any]:
+        """All entries that may be referred to; those of a misspelt section count as well."""
+        meant = [name] if name in self.data else get_close_matches(name, self.data, n=1)
+        return self.mapping(meant[0]) if meant and meant[0] not in _NAMED - {name} else {}
 
     def each(self, name: str, make: Callable[[str, Entry], _Thing]) -> dict[str, _Thing]:
         """Make something of every sound entry of a section."""
@@ -104,9 +128,9 @@ class _Sections:
 
 
 def _build(context: Context, sections: _Sections, digest: str) -> Project:
-    entries, surfaces = sections.mapping("elements"), sections.mapping("surfaces")
-    assemblies = sections.mapping("assemblies")
-    context.own_ids = frozenset(sections.mapping("materials"))
+    entries, surfaces = sections.names("elements"), sections.names("surfaces")
+    assemblies = sections.names("assemblies")
+    context.own_ids = frozenset(sections.names("materials"))
     context.own = sections.each("materials", lambda n, e: read_material(context, n, e))
     built = sections.each("assemblies", lambda n, e: read_assembly(context, n, e))
     elements = sections.each(

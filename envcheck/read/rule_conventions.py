@@ -1,21 +1,17 @@
-"""How a code counts: films, methods, coefficient tables, class tests, each with where it is said."""
+"""How a code counts: films, methods, coefficient tables, class tests; and where it says so."""
 
 from __future__ import annotations
 
 from collections.abc import Mapping
-from functools import lru_cache
-from importlib.resources import files
-from io import StringIO
-from csv import DictReader
 from typing import Any, NamedTuple
 
 from envcheck import units
 from envcheck.errors import Problem, did_you_mean, one_of, problem
 from envcheck.model.names import Names
 from envcheck.model.ruleset import ClassTest, Conventions, FilmRow, MethodRule, TableRow
+from envcheck.read.coefficient_tables import built_in, film_sets, own_table
 from envcheck.read.patterns import fits_any
 from envcheck.read.rule_documents import Document
-from envcheck.read.sheets import read_lines
 
 DEFAULT = "default of envcheck"
 KEYS = (
@@ -23,51 +19,6 @@ KEYS = (
     "framing_shares", "class_tests", "evidence", "measured", "cavity_factors",
     "effective_layers", "f_factors",
 )  # fmt: skip
-
-
-class Form(NamedTuple):
-    """Columns of a coefficient table: numbers with the column of their unit, and words."""
-
-    value: tuple[str, str, str]
-    """Column, column of its unit (or empty), quantity."""
-    numbers: tuple[tuple[str, str, str], ...] = ()
-    """The same for the numbers that find a row; without a unit column the unit stands in the cell."""
-    words: tuple[str, ...] = ()
-
-
-_LENGTHS = (("depth", "", "length"), ("spacing", "", "length"))
-FORMS = {
-    "cavity_factors": Form(
-        ("factor", "", "number"), (("label", "unit", "resistance"), *_LENGTHS)
-    ),
-    "effective_layers": Form(
-        ("resistance", "unit", "resistance"), (("label", "unit", "resistance"), *_LENGTHS)
-    ),
-    "f_factors": Form(
-        ("f_factor", "f_unit", "linear_transmittance"),
-        (("extent", "", "length"), ("resistance", "unit", "resistance")),
-        ("position", "heated"),
-    ),
-    "air_spaces": Form(
-        ("resistance", "unit", "resistance"),
-        (
-            ("thickness", "thickness_unit", "length"),
-            ("emittance", "", "number"),
-            ("mean_temperature", "", "temperature"),
-        ),
-        ("direction",),
-    ),
-    "films": Form(("resistance", "unit", "resistance"), (), ("side", "adjoins", "direction")),
-}
-WORDS = {
-    "side": ("inside", "outside"),
-    "direction": ("up", "horizontal", "down", "*"),
-    "heated": ("yes", "no"),
-    "adjoins": (
-        "*", "outdoors", "ground", "vented_attic", "vented_crawl_space", "garage", "unheated",
-        "semiheated", "conditioned", "ventilated_cladding",
-    ),
-}  # fmt: skip
 
 
 class Source(NamedTuple):
@@ -94,7 +45,9 @@ def read_conventions(source: Source, problems: list[Problem]) -> Conventions:
         cladding=stated.get("cladding", "iso6946"),
         fasteners=stated.get("fasteners", "ignored"),
         tapered=tapered.get("use", "integral"),
-        tapered_mean_within=_quantity(source, tapered, "tapered", "mean_within", "length", problems),
+        tapered_mean_within=_quantity(
+            source, tapered, "tapered", "mean_within", "length", problems
+        ),
         crossed_insulation=stated.get("crossed_insulation", "zero"),
         framing_shares=_shares(source, problems),
         tables=tables,
@@ -200,12 +153,11 @@ def _known(
 def _films(source: Source, problems: list[Problem]) -> tuple[str, tuple[FilmRow, ...]]:
     stated = source.stated.get("films") or "iso6946"
     if stated.endswith(".csv"):
-        rows, name = _own(source, "films", stated, problems), stated
+        rows, name = own_table(source.origin["films"], "films", stated, problems), stated
     else:
         rows, name = built_in("films", stated), stated
         if not rows:
-            known = tuple(dict.fromkeys(r["set"] for r in _data("films.csv")))
-            _known(source, ("films",), stated, known, "unknown-film-set", problems)
+            _known(source, ("films",), stated, film_sets(), "unknown-film-set", problems)
     films = tuple(
         FilmRow(
             str(r.keys["side"]), str(r.keys["adjoins"]), str(r.keys["direction"]), r.value, r.text,
@@ -216,12 +168,10 @@ def _films(source: Source, problems: list[Problem]) -> tuple[str, tuple[FilmRow,
     return name, films
 
 
-def _tables(
-    source: Source, problems: list[Problem]
-) -> tuple[str, dict[str, tuple[TableRow, ...]]]:
+def _tables(source: Source, problems: list[Problem]) -> tuple[str, dict[str, tuple[TableRow, ...]]]:
     """Coefficient tables by name; air spaces are a formula, a built-in table or an own one."""
     tables = {
-        key: _own(source, key, str(source.stated[key]), problems)
+        key: own_table(source.origin[key], key, str(source.stated[key]), problems)
         for key in ("cavity_factors", "effective_layers", "f_factors")
         if source.stated.get(key) is not None
     }
@@ -230,75 +180,11 @@ def _tables(
         return air, tables
     own = air.endswith(".csv")
     tables["air_spaces"] = (
-        _own(source, "air_spaces", air, problems) if own else built_in("air_spaces", "")
+        own_table(source.origin["air_spaces"], "air_spaces", air, problems)
+        if own
+        else built_in("air_spaces", "")
     )
     return "table", tables
-
-
-@lru_cache(maxsize=8)
-def _data(name: str) -> tuple[dict[str, str], ...]:
-    text = (files("envcheck") / "data" / name).read_text(encoding="utf-8")
-    return tuple(DictReader(StringIO(text)))
-
-
-@lru_cache(maxsize=8)
-def built_in(table: str, chosen: str) -> tuple[TableRow, ...]:
-    """Rows of a table that comes with envcheck; of films those of one set."""
-    rows = (r for r in _data(f"{table}.csv") if not chosen or r["set"] == chosen)
-    return tuple(_table_row(table, row) for row in rows)
-
-
-def _own(
-    source: Source, key: str, file: str, problems: list[Problem]
-) -> tuple[TableRow, ...]:
-    """Read a coefficient table of the rule set's folder."""
-    document = source.origin[key]
-    shown = document.shown(file)
-    lines = read_lines(document.folder / file, shown, ",", problems)
-    if lines is None:
-        return ()
-    head = lines[0].cells if lines else []
-    form = FORMS[key]
-    needed = [c for spec in (form.value, *form.numbers) for c in spec[:2] if c]
-    needed = list(dict.fromkeys([*needed, *form.words, "src"]))
-    missing = [name for name in needed if name not in head]
-    if missing:
-        found, expected = ", ".join(head), ", ".join(needed)
-        fill = {"place": "a", "name": missing[0], "found": found, "expected": expected}
-        problems.append(problem("wrong-head", shown, 1, **fill))
-        return ()
-    rows = []
-    for line in lines[1:]:
-        if len(line.cells) != len(head):
-            fill = {"found": f"{len(line.cells)} columns", "expected": f"{len(head)}"}
-            problems.append(problem("ragged-row", shown, line.number, **fill))
-            continue
-        try:
-            rows.append(_table_row(key, dict(zip(head, line.cells, strict=True))))
-        except units.UnitError as error:
-            where = "a coefficient table"
-            fill = {"found": error.found, "expected": error.expected, "fix": error.fix}
-            problems.append(problem("unreadable-cell", shown, line.number, where=where, **fill))
-    return tuple(rows)
-
-
-def _table_row(table: str, cells: Mapping[str, str]) -> TableRow:
-    """Read one row. Errors: UnitError for a number, unit or word that cannot be read."""
-    form = FORMS[table]
-    keys: dict[str, str | float] = {}
-    for word in form.words:
-        allowed = WORDS.get(word)
-        if allowed and cells[word] not in allowed:
-            fix = did_you_mean(cells[word], allowed) or f"write one of them under {word!r}"
-            raise units.UnitError("unknown-word", cells[word], one_of(allowed), fix)
-        keys[word] = cells[word]
-    for name, unit, quantity in form.numbers:
-        if cells[name]:
-            keys[name] = units.parse(f"{cells[name]} {cells[unit]}" if unit else cells[name], quantity)
-    name, unit, quantity = form.value
-    text = f"{cells[name]} {cells[unit]}" if unit else cells[name]
-    source = cells.get("src", "")
-    return TableRow(table, keys, units.parse(text, quantity), text, source)
 
 
 # ------------------------------------------------------------------------------------- figures

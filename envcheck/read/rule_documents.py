@@ -141,8 +141,9 @@ def _check_dates(document: Document, problems: list[Problem]) -> None:
             found[key] = value
     if len(found) == 2 and found["until"] <= found["from"]:
         line = document.line("effective", "until")
-        fill = {"found": found["until"], "expected": f"a day after {found['from']}"}
-        problems.append(problem("dates-reversed", document.name, line, **fill))
+        end, expected = found["until"], f"a day after {found['from']}"
+        p = problem("dates-reversed", document.name, line, found=end, expected=expected)
+        problems.append(p)
 
 
 def read_chain(

@@ -16,7 +16,8 @@ from envcheck.model.ruleset import (
     Trigger,
     Zones,
 )
-from envcheck.read.cells import CellError, read_condition
+from envcheck.read.cells import CellError
+from envcheck.read.condition_text import read_condition
 from envcheck.read.patterns import fits_any
 from envcheck.read.rule_documents import Document
 
@@ -26,6 +27,11 @@ MEASURES = {
     "altitude": "m",
 }  # fmt: skip
 """Measures of a site that bound zones, with the unit of their printed numbers."""
+RATIOS = {
+    "window_wall_ratio": "area of vertical fenestration over gross wall area above grade",
+    "skylight_roof_ratio": "area of skylights over gross roof area",
+}
+"""Dimensions that need no declaration: the program computes them."""
 
 
 def read_zones(document: Document, problems: list[Problem]) -> Zones:
@@ -108,7 +114,7 @@ def intersect(a: Condition, b: Condition) -> bool:
 
 def read_dimensions(document: Document, problems: list[Problem]) -> dict[str, Dimension]:
     """Read what conditions may ask for."""
-    found = {}
+    found = {name: Dimension(name, meaning=words) for name, words in RATIOS.items()}
     for name, stated in (document.get("dimensions") or {}).items():
         line = document.line("dimensions", name)
         values, unit = tuple(stated.get("values") or ()), stated.get("unit", "")
@@ -121,7 +127,15 @@ def read_dimensions(document: Document, problems: list[Problem]) -> dict[str, Di
             problems.append(problem("dimension-without-values", document.name, line, found=name))
             continue
         if unit and not units.quantity_of(unit):
-            problems.append(problem("unknown-unit", document.name, line, found=unit, hint="use a spelling such as Btu/(ft2*degF)"))
+            problems.append(
+                problem(
+                    "unknown-unit",
+                    document.name,
+                    line,
+                    found=unit,
+                    hint="use a spelling such as Btu/(ft2*degF)",
+                )
+            )
             continue
         default, sheet = stated.get("default", ""), stated.get("sheet", "")
         if default and values and default not in values:
@@ -144,7 +158,7 @@ def read_area_limits(
     for i, stated in enumerate(document.get("area_limits") or ()):
         at = ("area_limits", i)
         most = _number(document, stated["max"], (*at, "max"), problems)
-        closes = tuple(stated.get("closes") or ())
+        closes = _own_names(document, tuple(stated.get("closes") or ()))
         if not closes:
             p = problem("cap-closes-nothing", document.name, document.line(*at))
             problems.append(p)
@@ -162,7 +176,7 @@ def read_averaging(
     for i, stated in enumerate(document.get("averaging") or ()):
         at = ("averaging", i)
         scope = stated["scope"]
-        patterns = (scope,) if isinstance(scope, str) else tuple(scope)
+        patterns = _own_names(document, (scope,) if isinstance(scope, str) else tuple(scope))
         if any(" " in p for p in patterns):
             remarks.append(f"{stated['clause']} permits a mean over {scope}; it is not taken here")
             continue
@@ -171,7 +185,9 @@ def read_averaging(
         exempt, area = stated.get("cap_exempt", ""), stated.get("cap_exempt_area")
         if exempt:
             _patterns(document, (exempt,), categories, (*at, "cap_exempt"), problems)
-        cap_value = None if cap is None else _number(document, cap, (*at, "individual_cap"), problems)
+        cap_value = (
+            None if cap is None else _number(document, cap, (*at, "individual_cap"), problems)
+        )
         square = (
             None
             if area is None
@@ -213,6 +229,13 @@ def say_tradeoff(document: Document) -> str:
     rule = f" ({stated['rule']})" if stated.get("rule") else ""
     say = f"; {stated['say']}" if stated.get("say") else ""
     return f"{clause}the code also offers a trade-off, {kind}{rule}; it is not computed here{say}"
+
+
+def _own_names(document: Document, names: tuple[str, ...]) -> tuple[str, ...]:
+    """Write the rule set's own names (``elements``) out as categories."""
+    own: Mapping[str, Any] = document.get("elements") or {}
+    listed = (own.get(name, name) for name in names)
+    return tuple(c for x in listed for c in ([x] if isinstance(x, str) else x))
 
 
 def _patterns(

@@ -68,6 +68,8 @@ def worded(
     if error.validator == "additionalProperties":
         yield from _unknown_keys(error, path, data, file, schema)
         return
+    if error.validator == "enum" and not isinstance(error.instance, str):
+        return  # the type is wrong as well, and says more
     if error.validator == "required":
         for name in error.validator_value:
             if name not in error.instance:

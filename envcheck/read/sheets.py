@@ -23,7 +23,8 @@ WHEN = "when:"
 class Column(NamedTuple):
     """A printed column: its heads from the top row down, and their footnote marks."""
 
-    index: int
+    at: int
+    """Position in the row, from 0."""
     heads: tuple[str, ...]
     marks: tuple[str, ...]
 
@@ -183,7 +184,7 @@ def _columns(
     for column in columns:
         if column.heads in seen:
             problems.append(problem("repeated-head", shown, heads[0].number, found=column.name))
-        seen[column.heads] = column.index
+        seen[column.heads] = column.at
     return tuple(columns)
 
 

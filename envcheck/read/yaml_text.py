@@ -51,6 +51,10 @@ def syntax_problem(error: yaml.MarkedYAMLError, file: str) -> Problem:
     mark: Any = error.problem_mark or error.context_mark
     start: Any = error.context_mark
     what = str(error.problem or error.context or "no YAML")
+    if "nesting" in what:
+        return problem("too-deep", file, mark.line + 1, found="more than 50 levels")
+    if "quoted scalar" in str(error.context) and start is not None:
+        mark = start
     in_flow = "," in what and "expected" in what and start is not None
     opened = f" (opened in line {start.line + 1})" if in_flow else ""
     fix = next((fix for words, fix in _FIXES if words in what), _FIX)
@@ -59,6 +63,7 @@ def syntax_problem(error: yaml.MarkedYAMLError, file: str) -> Problem:
 
 
 _FIXES = (
+    ("tab", "indent with spaces, not tabs"),
     ("cannot start any token", "indent with spaces, not tabs; quote text that starts with @ or `"),
     (
         "mapping values are not allowed",

@@ -16,7 +16,7 @@ class RatioView:
 
     name: str
     sum: str
-    """``2704 / 10720 ft2 = 25.2 %``"""
+    """``2704 / 10720 ft2 = 25.22 %``; empty where a part is missing."""
     cap: str
     state: str
     missing: tuple[str, ...]
@@ -77,7 +77,7 @@ def _ratio(ratio: Ratio, system: str) -> RatioView:
         state = "cap passed" if ratio.passed else "within the cap"
     return RatioView(
         name=clean(wording.RATIOS.get(ratio.name, wording.plain(ratio.name))),
-        sum=_division(ratio, system),
+        sum="" if ratio.missing else _division(ratio, system),
         cap=clean(f"{cap}, {ratio.clause}" if ratio.clause else cap),
         state=state,
         missing=tuple(map(clean, ratio.missing)),

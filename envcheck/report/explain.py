@@ -181,7 +181,7 @@ def _held(line: Line, rulesets: Mapping[str, RuleSet], system: str) -> list[Sect
 def _paths(line: Line) -> Grid:
     cells = tuple(
         (
-            wording.PATHS.get(each.path, wording.plain(each.path)),
+            wording.path(each.path, numbers.symbol(line.metric)),
             wording.STATES.get(each.state, each.state),
             clean(each.value),
             clean(each.limit),

@@ -103,7 +103,7 @@ def _zone(ruleset: RuleSet, lines: Iterable[Line], project: Project) -> str:
     for line in lines:
         for step, chosen, why in line.trail:
             if step == "zone":
-                return f"{chosen} ({why})" if why else chosen
+                return f"{chosen}: {why}" if why else chosen
     for stated in project.site.zones:
         if stated.ruleset in ("", ruleset.id):
             return f"{stated.zone} ({stated.source or 'stated by the project'})"
@@ -143,8 +143,11 @@ def _conventions(ruleset: RuleSet, system: str) -> Iterable[Convention]:
         counted = f"{test.category}: {wording.plain(test.measure)} at least {test.text}"
         counted += f", counted {wording.plain(test.counted)}"
         yield Convention("class test", clean(counted), clean(test.clause))
+    evidence: dict[tuple[str, ...], list[str]] = {}
     for category, kinds in conv.accepted_evidence.items():
-        counted = f"{category}: {', '.join(kinds)}"
+        evidence.setdefault(kinds, []).append(category)
+    for kinds, categories in evidence.items():
+        counted = f"{', '.join(categories)}: {', '.join(kinds)}"
         yield _said(conv, "accepted evidence", counted, "accepted_evidence", "evidence")
     if conv.dimensions_measured:
         counted = f"{conv.dimensions_measured} dimensions"
@@ -193,14 +196,9 @@ def _tapered(conv: Conventions, system: str) -> str:
 
 
 def not_judged(rulesets: Mapping[str, RuleSet]) -> tuple[str, ...]:
-    """What the rule sets say they do not cover, and trade-offs that are not computed."""
-    found: dict[str, None] = {}
-    for ruleset in rulesets.values():
-        for text in ruleset.not_judged:
-            found[clean(text)] = None
-        if ruleset.tradeoff:
-            found[clean(f"not computed: {ruleset.tradeoff}")] = None
-    return tuple(found)
+    """What the rule sets say they do not cover, each once."""
+    texts = (text for ruleset in rulesets.values() for text in ruleset.not_judged)
+    return tuple(dict.fromkeys(map(clean, texts)))
 
 
 def hashes(project: Project, rulesets: Mapping[str, RuleSet]) -> tuple[Pair, ...]:

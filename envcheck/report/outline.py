@@ -12,6 +12,7 @@ from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, 
 from envcheck.report.rows import Row
 from envcheck.report.view import View
 
+MOST_PLACES = 24
 TONES = {"fail": "bad", "pass": "good", "no_requirement": "good"}
 
 
@@ -56,41 +57,73 @@ def _table(view: View, rules: RuleSetView) -> Section:
     heading = f"Lines held against {rules.id}" if len(view.rule_sets) > 1 else "Lines"
     if not rows:
         return Section(heading, (Paragraph(wording.NOTHING),))
-    blocks: list[Block] = [grid(rows, rules.printed_apart)]
+    blocks: list[Block] = [grid(rows, rules.printed_apart, view.bounds)]
     if rules.units_note:
         blocks.append(Paragraph(f"{rules.units_note}. Negative room: over the limit."))
     return Section(heading, tuple(blocks))
 
 
-def grid(rows: Iterable[Row], apart: bool) -> Grid:
-    """The main table; ``apart`` adds the compared figure in the printed unit."""
-    heads = ["tag", "sheet", "built as", "value", "limit", "room left", "verdict"]
-    cells = []
-    tones = []
-    for row in rows:
-        value = f"{row.symbol} {row.value.text}" if row.value.text else "-"
-        line = [row.tag, row.sheet, row.built_as, value, row.limit or "-", row.room.text or "-"]
-        if apart:
-            line.insert(4, f"{row.compared.text} {row.compared.unit}".strip() or "-")
-        cells.append((*line, row.verdict_text))
-        tones.append(TONES.get(row.verdict, "open"))
+def grid(rows: Iterable[Row], apart: bool, bounds: bool) -> Grid:
+    """The main table.
+
+    ``apart`` adds the compared figure in the printed unit, ``bounds`` those of the drawn model.
+    """
+    rows = list(rows)
+    columns: list[tuple[str, int, list[str]]] = [
+        ("tag", 5, [row.tag for row in rows]),
+        ("sheet", 6, [row.sheet for row in rows]),
+        ("built as", 1, [row.built_as for row in rows]),
+        ("value", 0, [_value(row) for row in rows]),
+        ("limit", 3, [row.limit or "-" for row in rows]),
+        ("room left", 0, [row.room.text or "-" for row in rows]),
+        ("verdict", 2, [row.verdict_text for row in rows]),
+    ]
     if apart:
-        heads.insert(4, "as compared")
-    wrap = (2, 6, 4, 0, 1) if not apart else (2, 7, 4, 5, 0, 1)
-    right = (5,) if not apart else (6,)
-    return Grid(tuple(heads), tuple(cells), right, wrap, tuple(tones))
+        compared = [f"{row.compared.text} {row.compared.unit}".strip() or "-" for row in rows]
+        columns.insert(4, ("as compared", 4, compared))
+    if bounds:
+        between = [f"{row.low.text} {row.high.text}" if row.low.text else "-" for row in rows]
+        columns.insert(4, ("bounds", 0, between))
+    order = sorted((rank, place) for place, (_, rank, _) in enumerate(columns) if rank)
+    return Grid(
+        heads=tuple(head for head, _, _ in columns),
+        rows=tuple(zip(*(cells for _, _, cells in columns), strict=True)),
+        right=tuple(n for n, (head, _, _) in enumerate(columns) if head == "room left"),
+        wrap=tuple(place for _, place in order),
+        tones=tuple(TONES.get(row.verdict, "open") for row in rows),
+    )
+
+
+def _value(row: Row) -> str:
+    if row.verdict == "too_close" and row.low.text:
+        return f"{row.symbol} {row.low.text} to {row.high.text}"
+    return f"{row.symbol} {row.value.text}" if row.value.text else "-"
 
 
 def _over(rows: Iterable[Row]) -> Section:
-    entries = tuple(
-        Entry(
-            f"{_place(row.tag, row.sheet)}: {row.verdict_text}{_by(row)}",
-            (*row.reasons, *row.notes, *_paths(row), *_bounds(row)),
+    found = [
+        (
+            _place(row.tag, row.sheet),
+            f"{row.verdict_text}{_by(row)}",
+            (*row.reasons, *row.notes, *_bounds(row)),
         )
         for row in rows
         if row.verdict == "fail"
+    ]
+    return Section("Why over the limit", (_or_none(_grouped(found)),))
+
+
+def _grouped(found: Iterable[tuple[str, str, tuple[str, ...]]]) -> tuple[Entry, ...]:
+    """(place, what, lines) as entries, those that say the same of several places together."""
+    places: dict[tuple[str, tuple[str, ...]], list[str]] = {}
+    for place, what, lines in found:
+        same = places.setdefault((what, lines), [])
+        if place not in same:
+            same.append(place)
+    return tuple(
+        Entry(f"{wording.listed(where, MOST_PLACES)}: {what}", lines)
+        for (what, lines), where in places.items()
     )
-    return Section("Why over the limit", (_or_none(entries),))
 
 
 def _by(row: Row) -> str:
@@ -122,12 +155,8 @@ def _bounds(row: Row) -> tuple[str, ...]:
 
 
 def _items(found: Iterable[Item], numbered: bool = False) -> Items:
-    entries = tuple(
-        Entry(f"{_place(item.subject, item.sheet)}: {item.what}", item.lines) for item in found
-    )
-    if numbered and not entries:
-        return Items((Entry(wording.NOTHING),))
-    return Items(entries, numbered)
+    entries = _grouped((_place(item.subject, item.sheet), item.what, item.lines) for item in found)
+    return Items(entries, numbered) if entries or not numbered else _or_none(())
 
 
 def _or_none(entries: tuple[Entry, ...]) -> Items:
@@ -144,8 +173,8 @@ def _if_any(heading: str, block: Items) -> tuple[Section, ...]:
 
 def _noted(rows: Iterable[Row]) -> Items:
     return Items(
-        tuple(
-            Entry(f"{_place(row.tag, row.sheet)}: {row.verdict_text}", (*row.notes, *row.reasons))
+        _grouped(
+            (_place(row.tag, row.sheet), row.verdict_text, (*row.notes, *row.reasons))
             for row in rows
             if not row.open and row.verdict != "fail" and (row.notes or row.reasons)
         )
@@ -160,15 +189,16 @@ def _findings(found: Iterable[FindingView]) -> Items:
             f"settles it: {each.settles}" if each.settles else "",
             f"answered by the project: {each.answered}" if each.answered else "",
         )
-        head = f"[{each.severity_text}] {_place(each.subject, each.sheet)}: {each.seen}"
-        entries.append(Entry(f"{head} [{each.check}]", tuple(filter(None, lines))))
-    return Items(tuple(entries))
+        what = f"{each.seen} [{each.check}, {each.severity_text}]"
+        entries.append((_place(each.subject, each.sheet), what, tuple(filter(None, lines))))
+    return Items(_grouped(entries))
 
 
 def _building(view: View) -> tuple[Section, ...]:
-    entries = [
-        Entry(f"{r.name}: {r.sum} ({r.cap}): {r.state}", r.missing) for r in view.building.ratios
-    ]
+    entries = []
+    for ratio in view.building.ratios:
+        head = f"{ratio.name}: {ratio.sum} ({ratio.cap}): {ratio.state}".replace(":  (", ": (")
+        entries.append(Entry(head, tuple(f"missing: {text}" for text in ratio.missing)))
     for mean in view.building.means:
         head = f"mean {mean.group} ({mean.clause})" if mean.clause else f"mean {mean.group}"
         lines = tuple(filter(None, (f"worst member {mean.worst}", mean.cap)))
@@ -185,9 +215,7 @@ def _by_line(rows: Iterable[Row]) -> Items:
         size = f", {row.amount.text} {row.amount.unit}" if row.amount.text else ""
         limit = f"{row.symbol} {row.limit}" if row.limit else row.symbol
         head = f"{_place(row.tag, row.sheet)}{size}: {limit}; {source}"
-        lines = () if row.verdict == "fail" else (*_paths(row), *_bounds(row))
-        if not row.hand_check and row.value.text and row.assembly:
-            lines = (*lines, f"worksheet: envcheck explain PROJECT {row.tag}")
+        lines = (*_paths(row), *(() if row.verdict == "fail" else _bounds(row)))
         entries.append(Entry(head, lines, (row.hand_check,) if row.hand_check else ()))
     return _or_none(tuple(entries))
 
@@ -257,4 +285,4 @@ def _close(view: View) -> Section:
     pairs = (Pair("made by", view.tool), *(Pair(f"sha256 {h.label}", h.text) for h in view.hashes))
     if view.hashes:
         pairs = (*pairs, Pair("a hash", view.hash_note))
-    return Section("", (Paragraph(view.deferral), Facts(pairs)))
+    return Section("", (Paragraph(view.summary), Paragraph(view.deferral), Facts(pairs)))

@@ -15,7 +15,7 @@ LABEL = 22
 GAP = 2
 """Spaces between columns, as tabulate's ``simple`` sets them."""
 NARROWEST = 12
-_PIECES = re.compile(r"[+-]?\d[\d.,]*|[^\W\d_]|\W|_")
+_PIECES = re.compile(r"[0-9a-f]{64}|[+-]?\d[\d.,]*|[^\W\d_]|\W|_")
 
 
 def write(page: Page, width: int, colour: bool) -> str:
@@ -38,8 +38,12 @@ def _block(block: Block, width: int, colour: bool) -> list[str]:
             return wrap(text, width)
         case Facts(pairs):
             found: list[str] = []
+            label = max([LABEL, *(len(pair.label) + 2 for pair in pairs)])
             for pair in pairs:
-                found += hang(f"{pair.label:<{LABEL}}", pair.text, width)
+                if label > width // 2:
+                    found += [*wrap(pair.label, width), *hang("    ", pair.text, width)]
+                else:
+                    found += hang(f"{pair.label:<{label}}", pair.text, width)
             return found
         case Items(entries, numbered):
             return _items(entries, numbered, width)

@@ -36,6 +36,12 @@ def names() -> tuple[str, ...]:
     return tuple(sorted(info.name for info in iter_modules(package.__path__)))
 
 
+@cache
+def explaining() -> tuple[str, ...]:
+    """Names of the formats that lay out the page of ``explain``."""
+    return tuple(name for name in names() if format_named(name).explain is not None)
+
+
 def format_named(name: str) -> Format:
     """Load one format. Errors: KeyError for a name that no file bears."""
     if name not in names():

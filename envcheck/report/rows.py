@@ -6,7 +6,7 @@ from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 
 from envcheck import units
-from envcheck.model.judged import Comparison, Line
+from envcheck.model.judged import Comparison, Line, PathResult
 from envcheck.model.project import Element, Project
 from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Solved
@@ -128,7 +128,7 @@ def _row(
         open=line.open,
         reasons=tuple(map(clean, line.reasons)),
         notes=said.notes(line),
-        paths=tuple(map(_path, line.paths)),
+        paths=tuple(_path(path, line.metric) for path in line.paths),
         hand_check=_hand_check(line, system, value, sums),
         trail=tuple(_choice(step, chosen, why) for step, chosen, why in line.trail),
     )
@@ -213,10 +213,10 @@ def _room_share(comparison: Comparison | None) -> str:
     return f"{numbers.signed(100.0 * comparison.margin / comparison.limit, 1)} %"
 
 
-def _path(result: tuple[str, str, str, str, str]) -> PathRow:
-    path, state, value, limit, why = result
-    words = wording.PATHS.get(path, wording.plain(path)), wording.STATES.get(state, state)
-    return PathRow(*words, clean(value), clean(limit), clean(why))
+def _path(result: PathResult, metric: str) -> PathRow:
+    path = wording.path(result.path, numbers.symbol(metric))
+    state = wording.STATES.get(result.state, wording.plain(result.state))
+    return PathRow(path, state, clean(result.value), clean(result.limit), clean(result.why))
 
 
 def _choice(step: str, chosen: str, why: str) -> Pair:

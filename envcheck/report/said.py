@@ -43,12 +43,10 @@ def limit_source(limit: Limit | None, ruleset: str) -> str:
     """Table, row, zone and clause where the limit stands in print."""
     if limit is None:
         return ""
-    parts = [limit.table, f'"{limit.label or limit.row}"']
+    parts = [limit.clause or limit.table, f'"{limit.label or limit.row}"']
     if limit.zone and limit.zone != "*":
         parts.append(limit.zone)
-    parts += [condition.text or condition.dimension for condition in limit.when]
-    if limit.clause and limit.clause != limit.table:
-        parts.append(limit.clause)
+    parts += [f"{wording.plain(when.dimension)} {when.text}".strip() for when in limit.when]
     if limit.ruleset != ruleset:
         parts.append(f"printed in {limit.ruleset}")
     if limit.replaced:
@@ -75,12 +73,12 @@ def notes(line: Line) -> tuple[str, ...]:
     found = [
         wording.FLAGS.get(flag, wording.plain(flag))
         for flag in line.flags
-        if not (flag == "rounding" and line.verdict != "pass")
+        if flag != "rounding"  # the verdict's own words say it
     ]
     own = line.own
     if own is not None:
         word = "within" if own.within else "over"
         found.append(f"alone it would be {word}: {compared(own)} against {limit_number(own)}")
     if line.with_exception:
-        found.append(f"with the claimed exception: {line.with_exception}")
+        found.append(f"claimed exception: {line.with_exception}")
     return tuple(map(clean, found))

@@ -36,6 +36,8 @@ class ViewOptions:
     """Characters a line of the text format may take."""
     details: bool = False
     """Assemblies with their layers."""
+    bounds: bool = False
+    """A column with the bounds of the drawn model."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -65,6 +67,7 @@ class View:
     hash_note: str
     colour: bool
     width: int
+    bounds: bool
 
 
 def build(
@@ -106,6 +109,7 @@ def build(
         hash_note=wording.HASH_NOTE,
         colour=options.colour,
         width=options.width,
+        bounds=options.bounds,
     )
 
 

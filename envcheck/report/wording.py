@@ -17,8 +17,7 @@ SHORT_OF = "short of its limit"
 AFTER_ROUNDING = "within its limit after rounding"
 FLAGS = {
     "method": "the verdict hangs on the method",
-    "rounding": "within its limit only after rounding",
-    "at_limit": "exactly at its limit",
+    "at_limit": "the compared value equals the limit",
 }
 METRICS = {
     "U_assembly": "U-factor of the assembly",
@@ -75,7 +74,7 @@ TRAIL = {
     "class": "class",
     "rounding": "rounding",
 }
-PATHS = {"assembly": "U-factor path", "insulation": "R-value path"}
+INSULATION_PATH = "R-value path"
 STATES = {
     "pass": "within",
     "fail": "over",
@@ -136,3 +135,10 @@ def listed(names: tuple[str, ...] | list[str], most: int = 12) -> str:
     """Write names in a row, cut where there are very many."""
     more = f" and {len(names) - most} more" if len(names) > most else ""
     return ", ".join(names[:most]) + more
+
+
+def path(name: str, symbol: str) -> str:
+    """Name a path: ``assembly`` by the letter of its metric."""
+    if name == "insulation":
+        return INSULATION_PATH
+    return f"{symbol}-factor path" if name == "assembly" else plain(name)

@@ -104,9 +104,9 @@ def _formula(sheet: _Sheet, step: Step, system: str) -> None:
     except (ArithmeticError, ValueError):
         result = numbers.in_system(step.value, step.quantity, system)
     stated = tuple(
-        f"{o.name} = {values[o.name]} {units.label(o.quantity, system)}".rstrip()
+        f"{o.name} = {_earlier(sheet, o) or values[o.name]} {_unit(sheet, o, system)}".rstrip()
         for o in step.operands
-        if not _is_earlier(sheet, o)
+        if _earlier(sheet, o) != o.name
     )
     written = arithmetic.fill(step.expression, values)
     text = numbers.significant(result, RESULT_DIGITS)
@@ -116,9 +116,9 @@ def _formula(sheet: _Sheet, step: Step, system: str) -> None:
 def _in_si(sheet: _Sheet, step: Step) -> None:
     """Convert what the formula needs, compute in SI, convert the result back."""
     for operand in step.operands:
-        earlier = _is_earlier(sheet, operand)
-        if earlier and (operand.name, "SI") not in sheet.printed:
-            _convert(sheet, operand.name, operand.quantity, "IP", "SI")
+        earlier = _earlier(sheet, operand)
+        if earlier and (earlier, "SI") not in sheet.printed:
+            _convert(sheet, earlier, operand.quantity, "IP", "SI")
     _formula(sheet, step, "SI")
     if (step.symbol, "IP") not in sheet.printed:
         _convert(sheet, step.symbol, step.quantity, "SI", "IP")
@@ -150,14 +150,24 @@ def _holds_in_ip(step: Step) -> bool:
 
 
 def _operand(sheet: _Sheet, operand: Operand, system: str) -> str:
-    if _is_earlier(sheet, operand):
-        return sheet.printed[operand.name, system]
+    earlier = _earlier(sheet, operand)
+    if earlier:
+        return sheet.printed[earlier, system]
     return _text(operand.value, operand.quantity, system, sheet.digits)
 
 
-def _is_earlier(sheet: _Sheet, operand: Operand) -> bool:
+def _earlier(sheet: _Sheet, operand: Operand) -> str:
+    """Symbol of the step that gave the operand: of its name, else of its very value; or empty."""
     given = sheet.given.get(operand.name)
-    return given is not None and abs(given - operand.value) <= 1e-9 * abs(given)
+    if given is not None and abs(given - operand.value) <= 1e-9 * abs(given):
+        return operand.name
+    if given is None:
+        return ""
+    return next((name for name, value in sheet.given.items() if value == operand.value), "")
+
+
+def _unit(sheet: _Sheet, operand: Operand, system: str) -> str:
+    return "" if _earlier(sheet, operand) else units.label(operand.quantity, system)
 
 
 def _text(value: float, quantity: str, system: str, digits: int) -> str:

@@ -213,7 +213,7 @@ def _closed(decision: Decision, corrections: Sequence[Correction]) -> tuple[Step
     additions = [step for correction in corrections for step in correction.addends]
     if not additions or decision.value is None:
         return (*decision.steps, *steps)
-    clear = Operand("U", decision.value, "u_factor")
+    clear = Operand(decision.steps[-1].symbol, decision.value, "u_factor")
     return (*decision.steps, *steps, total_step("U_total", clear, additions))
 
 

@@ -33,8 +33,7 @@ def test_broken_file_names_its_mistake(case: dict) -> None:
 
 @pytest.mark.parametrize("case", CASES, ids=lambda case: case["file"])
 def test_one_mistake_gives_one_problem(case: dict) -> None:
-    several = {"alias-bomb.yaml", "self-alias.yaml", "very-long-title.yaml"}
-    if case["file"] in several:
+    if case["file"] in {"alias-bomb.yaml", "self-alias.yaml"}:
         pytest.skip("an anchor stands beside each alias")
     with pytest.raises(InputError) as caught:
         read_project(str(BROKEN / case["file"]), NAMES)
@@ -64,12 +63,6 @@ def test_all_problems_come_at_once_in_order_of_line(tmp_path: Path) -> None:
         read_project(str(file), NAMES)
     problems = caught.value.problems
     assert [p.kind.id for p in problems] == [
-        "bad-date",
-        "missing-unit",
-        "duplicate-key",
-        "unknown-key",
-        "unknown-category",
-    ] or [p.kind.id for p in problems] == [
         "bad-date",
         "unknown-material",
         "missing-unit",

@@ -14,7 +14,7 @@ TITLE = "JSON, versioned, with a schema"
 EXTENSION = "json"
 DETAILS = True
 SCHEMA_VERSION = 1
-LAYOUT = ("colour", "width")
+LAYOUT = ("colour", "width", "bounds")
 """Fields of a view that say how to print, not what."""
 
 

@@ -41,14 +41,12 @@ def f_factor(
     near = [r for r in rows if r.keys["heated"] == word and r.keys["position"] == position]
     for row in near:
         if position == "none" or (
-            _same(row.keys["extent"], extent) and _same(row.keys["resistance"], resistance)
+            _same(_number(row, "extent"), extent) and _same(_number(row, "resistance"), resistance)
         ):
             return row
     slab = "heated slab" if heated else "unheated slab"
     what = "without insulation" if position == "none" else _words(position, extent, resistance)
-    others = "; ".join(
-        _words("", float(r.keys["extent"]), float(r.keys["resistance"])) for r in near
-    )
+    others = "; ".join(_words("", _number(r, "extent"), _number(r, "resistance")) for r in near)
     known = f" (the table has {others})" if others else ""
     raise NotDecided(f"a row of the rule set's F-factors for a {slab} {what}{known}")
 
@@ -107,8 +105,12 @@ def _position(slab: Slab) -> tuple[str, tuple[str, ...]]:
     return slab.insulation, ()
 
 
-def _same(printed: str | float, value: float) -> bool:
-    return isclose(float(printed), value, rel_tol=SAME, abs_tol=1e-9)
+def _number(row: TableRow, key: str) -> float:
+    return float(row.keys.get(key, 0.0))
+
+
+def _same(printed: float, value: float) -> bool:
+    return isclose(printed, value, rel_tol=SAME, abs_tol=1e-9)
 
 
 def _words(position: str, extent: float, resistance: float) -> str:

@@ -1,0 +1,85 @@
+"""The program ``envcheck``: runs a command and turns what happened into an exit status.
+
+0 no line over its limit and none open; 1 at least one over its limit; 2 input or usage; 3 none
+over, at least one open; 70 a fault of envcheck itself; 130 interrupted; 141 the reader of the
+output went away. Nothing else ends with 1, except 3 where the user asked ``--fail-on open``.
+"""
+
+from __future__ import annotations
+
+import os
+import sys
+from collections.abc import Sequence
+
+INPUT = 2
+FAULT = 70
+INTERRUPTED = 130
+CLOSED_PIPE = 141
+"""What a shell reports for a program whose output was no longer wanted (128 + SIGPIPE)."""
+
+
+def main(arguments: Sequence[str] | None = None) -> int:
+    """Run the command line and give the exit status; never raises, whatever the input."""
+    try:
+        return _run(list(sys.argv[1:] if arguments is None else arguments))
+    except KeyboardInterrupt:
+        return INTERRUPTED
+    except BrokenPipeError:
+        return _closed_pipe()
+    except Exception as error:
+        return _fault(error)
+
+
+def _run(arguments: list[str]) -> int:
+    import click
+
+    from envcheck.cli import envcheck
+    from envcheck.errors import InputError
+
+    for stream in (sys.stdout, sys.stderr):
+        if hasattr(stream, "reconfigure"):
+            stream.reconfigure(errors="backslashreplace")
+    try:
+        status = envcheck.main(arguments, prog_name="envcheck", standalone_mode=False)
+        sys.stdout.flush()
+        return status if isinstance(status, int) else 0
+    except InputError as error:
+        print(error, file=sys.stderr)
+        return INPUT
+    except click.exceptions.Abort:
+        return INTERRUPTED
+    except click.ClickException as error:
+        error.show(sys.stderr)
+        return INPUT
+    except SystemExit:
+        # click ends so, and only so, where the pipe it writes to is closed
+        return _closed_pipe()
+
+
+def _closed_pipe() -> int:
+    """Keep the interpreter from complaining when it flushes a closed standard output at exit."""
+    try:
+        nowhere = os.open(os.devnull, os.O_WRONLY)
+        os.dup2(nowhere, sys.stdout.fileno())
+    except (OSError, ValueError):
+        pass
+    return CLOSED_PIPE
+
+
+def _fault(error: Exception) -> int:
+    if os.environ.get("ENVCHECK_DEBUG"):
+        import traceback
+
+        traceback.print_exc()
+    what = " ".join(str(error).split())[:200]
+    print(
+        f"envcheck: internal error {type(error).__name__}: {what}. This is a fault of envcheck, "
+        "not of your file: please report it with the file that shows it "
+        "(ENVCHECK_DEBUG=1 prints where it happened).",
+        file=sys.stderr,
+    )
+    return FAULT
+
+
+if __name__ == "__main__":
+    sys.exit(main())

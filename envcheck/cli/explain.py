@@ -1,0 +1,54 @@
+"""``envcheck explain``: one element or assembly, from layers to verdict."""
+
+from __future__ import annotations
+
+import click
+
+from envcheck.cli import options
+from envcheck.cli.writing import deliver
+from envcheck.errors import InputError, did_you_mean, one_of, problem
+from envcheck.report import registry
+
+
+@click.command()
+@options.PROJECT
+@click.argument("subject", metavar="TAG_OR_ASSEMBLY")
+@options.RULES
+@options.one_of(registry.explaining(), "text")
+@options.OUTPUT
+@options.UNITS
+def explain(
+    project: str,
+    subject: str,
+    rules: tuple[str, ...],
+    format_name: str,
+    output: str | None,
+    units: str | None,
+) -> int:
+    """Show how one element or assembly of PROJECT comes to its value and its verdict.
+
+    Every step can be repeated with a pocket calculator, to the last printed digit. The exit status
+    is 0 whatever the verdict.
+
+    \b
+    A worked line:
+      envcheck explain library.yaml N-W1 --units IP
+    """
+    from envcheck import pipeline
+    from envcheck.report import explain as explained
+    from envcheck.report.view import ViewOptions
+
+    run = pipeline.run(project, rules)
+    known = explained.subjects(run.project)
+    if subject not in known:
+        hint = did_you_mean(subject, known) or "name an element or an assembly of the project"
+        file, expected = run.project.file, one_of(known)
+        raise InputError(
+            [problem("unknown-element", file, None, name=subject, expected=expected, hint=hint)]
+        )
+    asked = ViewOptions(units=units or "", width=options.width(output))
+    made = explained.build(run.project, run.rulesets, run.judged, subject, asked)
+    write = registry.format_named(format_name).explain
+    assert write is not None
+    deliver(write(made), output, (project,))
+    return 0

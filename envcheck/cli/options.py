@@ -1,0 +1,74 @@
+"""Options that several commands share."""
+
+from __future__ import annotations
+
+import os
+import shutil
+import sys
+from collections.abc import Callable
+from typing import Any, TypeVar
+
+import click
+
+PROJECT = click.argument("project", type=click.Path(allow_dash=True))
+RULES = click.option(
+    "--rules",
+    "rules",
+    multiple=True,
+    metavar="DIR",
+    type=click.Path(exists=True, file_okay=False),
+    help="Folder that holds rule sets; may be given several times. Without it, the nearest "
+    "folder 'rules' at or above the project file.",
+)
+UNITS = click.option(
+    "--units",
+    type=click.Choice(["SI", "IP"], case_sensitive=False),
+    metavar="SI|IP",
+    help="Units of the report. Without it, the project's, else those of the rule set.",
+)
+OUTPUT = click.option(
+    "-o",
+    "--output",
+    metavar="FILE",
+    type=click.Path(dir_okay=False),
+    help="Write to FILE, whole or not at all, and not to standard output.",
+)
+COLOR = click.option(
+    "--color",
+    type=click.Choice(["auto", "always", "never"]),
+    default="auto",
+    show_default=True,
+    help="Colour beside the words of the text format; NO_COLOR is honoured.",
+)
+Function = TypeVar("Function", bound=Callable[..., Any])
+WIDTH = 100
+NARROWEST = 72
+
+
+def one_of(names: tuple[str, ...], default: str) -> Callable[[Function], Function]:
+    """Make the option ``--format`` from the names that the registry knows."""
+    return click.option(
+        "-f",
+        "--format",
+        "format_name",
+        type=click.Choice(names),
+        default=default,
+        show_default=True,
+        help="Form of the report.",
+    )
+
+
+def colour(choice: str, output: str | None) -> bool:
+    """Decide on colour: the option, then NO_COLOR, FORCE_COLOR, then whether a person reads."""
+    if choice != "auto":
+        return choice == "always"
+    if output or os.environ.get("NO_COLOR"):
+        return False
+    return bool(os.environ.get("FORCE_COLOR")) or sys.stdout.isatty()
+
+
+def width(output: str | None) -> int:
+    """Width of the text format: 100 columns, less only on a narrower terminal."""
+    if output or not sys.stdout.isatty():
+        return WIDTH
+    return max(NARROWEST, min(WIDTH, shutil.get_terminal_size((WIDTH, 24)).columns))

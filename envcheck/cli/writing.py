@@ -1,0 +1,56 @@
+"""Where a finished report goes: standard output, or a file that is written whole or not at all."""
+
+from __future__ import annotations
+
+import os
+import sys
+import tempfile
+from contextlib import suppress
+from pathlib import Path
+
+import click
+
+
+def deliver(text: str, output: str | None, inputs: tuple[str, ...] = ()) -> None:
+    """Write a report. ``inputs`` are files that must not be overwritten by it.
+
+    Errors: click.ClickException where the file cannot be written.
+    """
+    if output is None or output == "-":
+        sys.stdout.write(text)
+        sys.stdout.flush()
+        return
+    target = Path(os.path.realpath(output))
+    if target.exists() and not target.is_file():
+        raise click.ClickException(f"{output}: is no regular file. Fix: name a file to write")
+    for name in inputs:
+        if name != "-" and target.exists() and Path(name).exists() and target.samefile(name):
+            raise click.ClickException(f"{output}: is the input. Fix: name another file to write")
+    try:
+        write_whole(text, target)
+    except OSError as error:
+        reason = error.strerror or str(error)
+        raise click.ClickException(f"{output}: cannot be written ({reason})") from error
+
+
+def write_whole(text: str, target: Path) -> None:
+    """Write beside the target and put it in place in one step."""
+    handle, name = tempfile.mkstemp(dir=target.parent, prefix=f".{target.name}.")
+    try:
+        with open(handle, "w", encoding="utf-8", newline="\n") as file:  # noqa: PTH123
+            file.write(text)
+        Path(name).chmod(_mode(target))
+        Path(name).replace(target)
+    except BaseException:
+        with suppress(OSError):
+            Path(name).unlink()
+        raise
+
+
+def _mode(target: Path) -> int:
+    """Permissions of the file that is replaced, or those of a new file."""
+    if target.exists():
+        return target.stat().st_mode & 0o777
+    umask = os.umask(0)
+    os.umask(umask)
+    return 0o666 & ~umask

@@ -1,0 +1,125 @@
+"""The limits selected for an element, or what stands in the way, with the trail."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+
+from envcheck.model.judged import Choice
+from envcheck.model.ruleset import Limit
+
+INSULATION = "insulation"
+"""Path of labelled R-values, printed beside the value of the whole."""
+
+
+@dataclass(frozen=True, slots=True)
+class MissingFact:
+    """A fact that a condition asks for and that nobody states, or states in no known word."""
+
+    name: str
+    allowed: tuple[str, ...]
+    """Allowed words; empty for a number."""
+    unit: str
+    meaning: str
+    sheet: str
+    """Drawing where the fact belongs, in words; may be empty."""
+    found: str = ""
+    """What is stated and cannot be used."""
+
+    def __str__(self) -> str:
+        wanted = " or ".join(self.allowed) if self.allowed else f"a number {self.unit}".strip()
+        what = f"{self.name} ({wanted})"
+        if self.found:
+            return f"{what} is stated as {self.found}, which the rule set does not know"
+        return f"{what} is not stated" + (f"; it belongs on the {self.sheet}" if self.sheet else "")
+
+
+@dataclass(frozen=True, slots=True)
+class Outcome:
+    """What the tables say for one metric and path."""
+
+    metric: str
+    path: str
+    state: str
+    """``found``, ``not_in_table``, ``missing_fact`` or ``two_rows``."""
+    limit: Limit | None
+    """The one limit, where it is found."""
+    candidates: tuple[Limit, ...] = ()
+    """Both of two rows, or the rows that the missing fact would choose between."""
+    missing: tuple[MissingFact, ...] = ()
+    why: str = ""
+    """Why there is no limit, in words."""
+
+
+@dataclass(frozen=True, slots=True)
+class Selection:
+    """The limits for one category of element in one place, with the trail that led to them."""
+
+    ruleset: str
+    category: str
+    zone: str
+    """Printed zone; empty where it could not be found."""
+    state: str
+    """``selected``; or ``not_in_force``, ``zone_missing``, ``zone_unknown``, ``zone_ambiguous``,
+    ``not_in_table``: then there are no outcomes and ``why`` says what is wrong."""
+    why: str
+    outcomes: tuple[Outcome, ...]
+    trail: tuple[Choice, ...]
+    by: Mapping[tuple[str, str], Outcome] = field(default_factory=dict, compare=False, repr=False)
+    """Outcomes by metric and path."""
+
+    @property
+    def metrics(self) -> tuple[str, ...]:
+        """Metrics that make a line each: those of the insulation path stand in another's line."""
+        main = [o.metric for o in self.outcomes if o.path != INSULATION]
+        return tuple(dict.fromkeys(main or [o.metric for o in self.outcomes]))
+
+    @property
+    def limits(self) -> dict[tuple[str, str], Limit]:
+        """The limits found, by metric and path."""
+        return {(o.metric, o.path): o.limit for o in self.outcomes if o.limit is not None}
+
+    def outcome(self, metric: str, path: str = "") -> Outcome | None:
+        """Outcome of a metric; without a path that of its main path."""
+        if path:
+            return self.by.get((metric, path))
+        found = [o for o in self.outcomes if o.metric == metric]
+        return min(found, key=lambda o: o.path == INSULATION, default=None)
+
+    def limit(self, metric: str, path: str = "") -> Limit | None:
+        """The limit of a metric, where one is found."""
+        outcome = self.outcome(metric, path)
+        return None if outcome is None else outcome.limit
+
+    def verdict_of(self, metric: str, path: str = "") -> str:
+        """Verdict that follows from having no limit; empty where there is one."""
+        outcome = self.outcome(metric, path)
+        if outcome is None and self.state == "selected":
+            return "not_in_table"
+        state = outcome.state if outcome is not None else self.state
+        return {"found": "", "not_in_table": "not_in_table"}.get(state, "not_decided")
+
+    def reason_of(self, metric: str, path: str = "") -> str:
+        """Why there is no limit, in words; empty where there is one."""
+        outcome = self.outcome(metric, path)
+        if outcome is None:
+            return self.why or f"no row of the rule set gives {metric} for {self.category}"
+        return outcome.why
+
+    @property
+    def _stopped_by(self) -> str:
+        return next((m for m in self.metrics if self.limit(m) is None), "")
+
+    @property
+    def verdict(self) -> str:
+        """Verdict of the first metric that has no limit; empty where all have one."""
+        return "" if self._all_found else self.verdict_of(self._stopped_by)
+
+    @property
+    def reason(self) -> str:
+        """Why the first metric that has no limit has none."""
+        return "" if self._all_found else self.reason_of(self._stopped_by)
+
+    @property
+    def _all_found(self) -> bool:
+        return bool(self.outcomes) and not self._stopped_by

@@ -1,0 +1,234 @@
+"""Materials, profiles and layers as read: what an assembly is made of, all numbers SI.
+
+The order of layers is always from outside to inside. ``line`` is the line in the project file
+where a thing starts, for messages of later stages.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+
+@dataclass(frozen=True, slots=True)
+class Material:
+    """One material: conductivity, or a resistance for a stated thickness (then converted)."""
+
+    id: str
+    title: str
+    conductivity: float
+    """W/(m K)"""
+    density: float | None = None
+    """kg/m3"""
+    specific_heat: float | None = None
+    """J/(kg K)"""
+    material_class: str = ""
+    """Plausibility class (``insulation``, ``wood``, ``metal``, ``masonry``, ``board`` ...)."""
+    source: str = ""
+    """Where the conductivity comes from; ``assumed`` where nobody says."""
+    evidence: str = ""
+    """Kind of evidence: label, rating, test, table, calculation, assumed."""
+    combustible: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class Profile:
+    """A cold-formed steel profile; lengths are overall dimensions in m."""
+
+    id: str
+    web: float
+    """Depth of the web across the wall, m."""
+    flange: float
+    """Width of each flange along the wall, m."""
+    thickness: float
+    """Design thickness of the sheet, m."""
+    lip: float = 0.0
+    """Overall depth of the stiffening lip at the flange ends, m."""
+    shape: str = "C"
+    """``C`` (flanges to one side), ``Z`` (flanges to opposite sides), ``hat``."""
+    source: str = ""
+
+
+# ------------------------------------------------------------------------------------- layers
+
+
+@dataclass(frozen=True, slots=True)
+class Layer:
+    """What every layer has."""
+
+    kind: str
+    title: str
+    line: int
+
+
+@dataclass(frozen=True, slots=True)
+class MaterialLayer(Layer):
+    """A homogeneous layer: ``thickness`` of ``material``."""
+
+    material: Material
+    thickness: float
+    """m"""
+
+
+@dataclass(frozen=True, slots=True)
+class ResistanceLayer(Layer):
+    """A layer of stated resistance (label, table, test); no conductivity is implied by it."""
+
+    resistance: float
+    """m2 K/W"""
+    thickness: float
+    """m; 0 where it does not matter (decks, membranes)."""
+    material: Material | None
+    """Names class, density and specific heat where they matter."""
+    source: str
+    evidence: str
+
+
+@dataclass(frozen=True, slots=True)
+class ContactLayer(Layer):
+    """A contact resistance between two faces."""
+
+    resistance: float
+    """m2 K/W"""
+    source: str
+
+
+@dataclass(frozen=True, slots=True)
+class AirSpaceLayer(Layer):
+    """An air space across the whole area."""
+
+    thickness: float
+    """m"""
+    ventilation: str
+    """``unventilated``, ``slightly`` or ``well`` (in the sense of ISO 6946)."""
+    emittances: tuple[float, float]
+    """Of the outer and the inner face; 0.9 where nothing is said."""
+
+
+@dataclass(frozen=True, slots=True)
+class Fill:
+    """What fills a cavity: exactly one of material, label or air."""
+
+    material: Material | None = None
+    label: float | None = None
+    """Labelled resistance at the product's own thickness, m2 K/W."""
+    product_thickness: float | None = None
+    """Thickness of the product before it is placed, m; None = that of the cavity."""
+    installed_label: float | None = None
+    """Resistance that the maker states at the thickness in place, m2 K/W."""
+    air: AirSpaceLayer | None = None
+    source: str = ""
+    evidence: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Member:
+    """What stands between the cavities of a framed layer."""
+
+    material: Material
+    width: float
+    """Width along the wall, m (of a profile: its flange)."""
+    spacing: float | None
+    """Centre to centre, m; None where only a share of the area is stated."""
+    profile: Profile | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class Extra:
+    """Plates, sills, headers: a share of the wall area beside the members."""
+
+    title: str
+    share: float
+    """0..1 of the wall area"""
+    material: Material
+    thickness: float
+    """m of that material that counts in the direction of heat flow"""
+
+
+@dataclass(frozen=True, slots=True)
+class FramedLayer(Layer):
+    """Members at a spacing with infill between them."""
+
+    thickness: float
+    """Depth of the layer, m."""
+    member: Member
+    fill: Fill
+    share: float | None
+    """Whole framing share of the area, 0..1, where stated; else members at their spacing."""
+    share_from: str
+    """Where the share comes from, in words, or empty."""
+    extras: tuple[Extra, ...]
+    orientation: str
+    """``vertical`` or ``horizontal`` run of the members."""
+    crosses_insulation: bool
+    """The layer is insulation outside (or inside) the main framing that members interrupt."""
+
+
+@dataclass(frozen=True, slots=True)
+class MasonryLayer(Layer):
+    """Units with shells and webs (hollow or filled), or solid units with joints."""
+
+    thickness: float
+    """m"""
+    material: Material
+    """Of shells and webs."""
+    shell: float
+    """Thickness of one face shell, m; two are counted."""
+    web_share: float
+    """Share of the area that webs take between the shells, 0..1."""
+    fill: Fill
+    mortar: Material | None
+    joint_share: float
+    """Share of the area that mortar joints take over the whole thickness, 0..1."""
+    grouted_share: float
+    """Share of the area whose cells are grouted solid, 0..1."""
+    grout: Material | None
+    cell_resistance: float | None
+    """Stated resistance of the cell (air or fill) over its depth, m2 K/W."""
+    weight: float | None = None
+    """Stated weight per area, kg/m2, for class tests; None = from the densities."""
+
+
+@dataclass(frozen=True, slots=True)
+class TaperedLayer(Layer):
+    """Insulation of varying thickness."""
+
+    material: Material
+    least: float
+    """m"""
+    greatest: float
+    """m"""
+    shape: str
+    """``rectangle``, ``triangle_thickest_apex``, ``triangle_thinnest_apex``."""
+
+
+@dataclass(frozen=True, slots=True)
+class Fasteners:
+    """Mechanical fasteners through an insulating layer."""
+
+    layer: str
+    """Title of the layer that they cross."""
+    material: Material
+    diameter: float
+    """m"""
+    density: float
+    """1/m2"""
+    penetration: float | None
+    """Length within the insulation, m; None = its whole thickness."""
+    line: int
+
+
+@dataclass(frozen=True, slots=True)
+class Bridge:
+    """A linear or point bridge added to the clear field."""
+
+    kind: str
+    """``line`` (psi) or ``point`` (chi)."""
+    title: str
+    value: float
+    """psi in W/(m K) or chi in W/K"""
+    amount: float
+    """Length in m or count of one element; per m2 where ``per_area``."""
+    per_area: bool
+    source: str
+    evidence: str
+    line: int
