@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+from typing import Any
 
 import pint
 import pytest
@@ -13,7 +14,7 @@ from envcheck.units import UNITS, UnitError, convert, in_system, label, parse, q
 
 # pint's own Btu rounds the International Table Btu to 1055.056 J; ISO 31-4 (from memory) has
 # 1055.05585262 J, which pint calls Btu_it.
-PINT = pint.UnitRegistry()
+PINT: Any = pint.UnitRegistry()
 PINT_NAMES = {
     "Btu": "Btu_it",
     "degF": "delta_degF",

@@ -19,9 +19,10 @@ class Step(NamedTuple):
     """One line of the worksheet.
 
     ``symbol`` names the result (``R3``, ``R3_web``, ``U``) and is unique within a worksheet; an
-    operand of that name is that result. ``expression`` names the operands in braces and uses only ``+ - * / **``, parentheses and the
-    functions ``ln exp sqrt min max``: ``{L} / {k}``. An empty expression is a value taken from a
-    source. With ``si_only`` the formula holds constants that are true in SI alone.
+    operand of that name is that result. ``expression`` names the operands in braces and uses only
+    ``+ - * / **``, parentheses and the functions ``ln exp sqrt min max``: ``{L} / {k}``. An empty
+    expression is a value taken from a source. With ``si_only`` the formula holds constants that
+    are true in SI alone.
     """
 
     symbol: str

@@ -1,0 +1,1 @@
+"""Files to model: strict YAML with lines, schemas, quantities, references, rule sets."""

@@ -32,6 +32,8 @@ def read_material(context: Context, name: str, entry: Entry) -> Material:
     conductivity = NAN
     if kind == "conductivity":
         conductivity = context.positive(entry, "conductivity", "conductivity")
+        hint = "it belongs beside 'resistance'"
+        context.out_of_place(entry, ("thickness",), f"{where} with a conductivity", hint)
     elif kind == "resistance":
         resistance = context.positive(entry, "resistance", "resistance")
         if "thickness" in entry:
@@ -189,6 +191,12 @@ def _slab(context: Context, entry: Entry) -> Slab:
     if edge is not None:
         position, covered = edge["position"], edge.get("top_edge_covered")
         size = {"vertical": "depth", "horizontal": "width"}.get(position)
+        context.out_of_place(
+            edge,
+            tuple(key for key in ("depth", "width") if key != size),
+            f"edge insulation of position {position!r}",
+            f"use {size!r}" if size else "delete it, or mend the position",
+        )
         for key in () if position == "none" else filter(None, ("resistance", size)):
             if key not in edge:
                 where = f"{position} edge insulation"

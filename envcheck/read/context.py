@@ -160,6 +160,14 @@ class Context:
         )
         return ""
 
+    def out_of_place(self, entry: Entry, keys: tuple[str, ...], where: str, hint: str) -> None:
+        """Note keys that say nothing where they stand, so that none is passed over in silence."""
+        for key in keys:
+            if key in entry:
+                self.add(
+                    "unknown-key", entry.lines[key], found=key, key=key, where=where, hint=hint
+                )
+
     def evidence(self, entry: Entry) -> str:
         """Kind of evidence; ``assumed`` where nobody names a source."""
         default = "" if "source" in entry else "assumed"

@@ -17,27 +17,26 @@ def read_bytes(path: str) -> tuple[bytes, str, Path]:
 
     ``-`` reads standard input, whose folder is the current one. Errors: InputError.
     """
-    if path == "-":
-        raw = sys.stdin.buffer.read(LARGEST + 1)
-        shown, folder = STDIN, Path()
-    else:
-        shown, folder = path, Path(path).parent
-        raw = _from_file(path)
+    stdin = path == "-"
+    shown, folder = (STDIN, Path()) if stdin else (path, Path(path).parent)
+    raw = _bytes(shown, stdin=stdin)
     if len(raw) > LARGEST:
         expected = f"at most {LARGEST // 1024**2} MB"
         raise InputError([problem("file-too-large", shown, None, expected=expected)])
     return raw, shown, folder
 
 
-def _from_file(path: str) -> bytes:
+def _bytes(shown: str, *, stdin: bool) -> bytes:
     kind, found = "file-unreadable", ""
     try:
-        with Path(path).open("rb") as file:
+        if stdin:
+            return sys.stdin.buffer.read(LARGEST + 1)
+        with Path(shown).open("rb") as file:
             return file.read(LARGEST + 1)
     except FileNotFoundError:
         kind = "file-missing"
     except IsADirectoryError:
         kind = "file-is-folder"
-    except (OSError, ValueError) as error:
-        found = getattr(error, "strerror", None) or str(error)
-    raise InputError([problem(kind, path, None, found=found)])
+    except (OSError, ValueError, AttributeError) as error:
+        found = getattr(error, "strerror", None) or str(error)  # a closed stdin is None
+    raise InputError([problem(kind, shown, None, found=found)])

@@ -30,6 +30,9 @@ def read_fill(context: Context, entry: Entry, where: str) -> Fill:
     """Read what fills a cavity: exactly one of material, label, resistance and air space."""
     kind = context.exactly_one(entry, ("material", "label", "resistance", "air_space"), where)
     source, evidence = entry.get("source", ""), context.evidence(entry)
+    if kind not in ("label", ""):
+        product = ("product_thickness", "label_in_place")
+        context.out_of_place(entry, product, f"a fill by {kind}", "it belongs beside 'label'")
     if kind == "material":
         return Fill(material=context.material(entry), source=source, evidence=evidence)
     if kind == "air_space":

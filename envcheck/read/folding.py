@@ -57,8 +57,9 @@ def fold(
         if amends:
             _check_amended(document, found, cells, problems)
             found = {
-                key: tuple(_replacing(limit, cells.get(key, ())) for limit in limits)
+                key: tuple(_replacing(limit, cells[key]) for limit in limits)
                 for key, limits in found.items()
+                if key in cells
             }
         if holds or not amends:
             cells |= found
@@ -160,11 +161,11 @@ def _check_amended(
         limit = limits[0]
         file = document.shown(limit.file.partition("/")[2])
         if key[:3] not in rows:
-            known = sorted({r[1] for r in rows if r[0] == key[0]})
-            fix = did_you_mean(limit.row, [k for k in known if k != limit.row])
-            conditions = ", ".join(f"{d} {t}" for d, t in key[2])
-            found_row = f"{limit.row} ({conditions})" if conditions else limit.row
-            fill = {"found": found_row, "expected": one_of(known), "fix": fix}
+            known = sorted(_row_words(r[1], r[2]) for r in rows if r[0] == key[0])
+            name = _row_words(limit.row, key[2])
+            same = [k for k in known if k.partition(" ")[0] == limit.row]
+            fix = did_you_mean(name, same or known)
+            fill = {"found": name, "expected": one_of(same or known), "fix": fix}
             problems.append(problem("no-base-row", file, limit.line, **fill))
         else:
             known = sorted(" / ".join(h) for t, h in columns if t == key[0])
@@ -172,3 +173,9 @@ def _check_amended(
             fix = did_you_mean(name, known)
             fill = {"found": name, "expected": one_of(known), "fix": fix}
             problems.append(problem("no-base-cell", file, limit.line, **fill))
+
+
+def _row_words(key: str, when: tuple[tuple[str, str], ...]) -> str:
+    """A row in words: its key and what its conditions say."""
+    conditions = ", ".join(f"{dimension} {text}" for dimension, text in when)
+    return f"{key} ({conditions})" if conditions else key

@@ -101,7 +101,7 @@ def _profile(context: Context, member: Entry, thickness: float) -> Profile:
     for key, size, limit, words in (
         ("web", profile.web, thickness, "the thickness of the layer"),
         ("thickness", 2 * profile.thickness, min(profile.web, profile.flange), "half the profile"),
-        ("lip", 2 * profile.lip, profile.web, "half the web"),
+        ("lip", 0.0 if profile.shape == "hat" else 2 * profile.lip, profile.web, "half the web"),
     ):
         if size > limit + MATCHES:
             found_size = f"{size * 1000:.4g} mm against {limit * 1000:.4g} mm"

@@ -187,6 +187,7 @@ def _units(document: Document, problems: list[Problem]) -> dict[str, str]:
             expected += f" or {units.label(quantity, 'IP')}"
             fill = {"found": spelling, "expected": expected, "key": key}
             problems.append(problem("wrong-table-unit", document.name, line, **fill))
+            found[key] = units.label(quantity, "SI")
     if "U" in found:
         found.setdefault("C", found["U"])
     return found

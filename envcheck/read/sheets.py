@@ -131,6 +131,8 @@ def read_sheet(
         return None
     first = 2 + len(dimensions)
     columns = _columns(heads, first, width - 1, shown, problems)
+    if len({column.heads for column in columns}) < len(columns):
+        return None
     rows = (_row(line, dimensions, shown, problems) for line in body if line not in ragged)
     return Sheet(shown, columns, tuple(row for row in rows if row is not None), dimensions)
 

@@ -139,6 +139,7 @@ def _closing(closing: Closing, system: str) -> ClosingView:
     parts = [f"{numbers.area(area, system)} {clean(name)}" for name, area in closing.parts]
     if len(parts) > MOST_PARTS:
         parts = [*parts[:MOST_PARTS], f"... ({len(closing.parts)} parts in all)"]
+    total = numbers.area(sum(area for _, area in closing.parts), system)
     share = closing.missing / closing.gross if closing.gross else 0.0
     if abs(share) <= CLOSES_WITHIN:
         state = "closes"
@@ -149,6 +150,7 @@ def _closing(closing: Closing, system: str) -> ClosingView:
     return ClosingView(
         surface=clean(closing.surface),
         sheet=clean(closing.sheet),
-        sum=f"gross {numbers.area(closing.gross, system)} {unit}; parts {' + '.join(parts) or '0'}",
+        sum=f"{' + '.join(parts) or '0'} = {total} of gross "
+        f"{numbers.area(closing.gross, system)} {unit}",
         state=state,
     )

@@ -33,8 +33,8 @@ class RuleSetView:
     conventions: tuple[Convention, ...]
     units_note: str
     """Which unit stands behind each letter of the table."""
-    printed_apart: bool
-    """The report's units are not those in which the table is printed and compared."""
+    printed_units: str
+    """Units in which the table is printed and compared, where the report's are others."""
 
 
 def title(project: Project) -> str:
@@ -62,7 +62,8 @@ def rule_set(ruleset: RuleSet, lines: Iterable[Line], project: Project, system: 
     """Head of one rule set; the zone comes from the trail of its lines."""
     own = [line for line in lines if line.ruleset == ruleset.id]
     decides = all(choice.decides for choice in project.rule_sets if choice.id == ruleset.id)
-    printed = {numbers.system_of(line.limit.unit) for line in own if line.limit} - {""}
+    printed = dict.fromkeys(clean(x.limit.unit) for x in own if x.limit and x.limit.unit)
+    apart = any(numbers.system_of(unit) != system for unit in printed)
     pairs = (
         ("jurisdiction", ruleset.jurisdiction),
         ("status", status(ruleset)),
@@ -77,7 +78,7 @@ def rule_set(ruleset: RuleSet, lines: Iterable[Line], project: Project, system: 
         facts=tuple(Pair(label, clean(text)) for label, text in pairs if text),
         conventions=tuple(_conventions(ruleset, system)),
         units_note=_units_note(own, system),
-        printed_apart=bool(printed - {system}),
+        printed_units=", ".join(printed) if apart else "",
     )
 
 

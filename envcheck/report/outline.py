@@ -57,9 +57,15 @@ def _table(view: View, rules: RuleSetView) -> Section:
     heading = f"Lines held against {rules.id}" if len(view.rule_sets) > 1 else "Lines"
     if not rows:
         return Section(heading, (Paragraph(wording.NOTHING),))
-    blocks: list[Block] = [grid(rows, rules.printed_apart, view.bounds)]
-    if rules.units_note:
-        blocks.append(Paragraph(f"{rules.units_note}. Negative room: over the limit."))
+    printed = rules.printed_units
+    notes = (
+        rules.units_note,
+        f"compared figure, limit and room left as printed, in {printed}" if printed else "",
+        "negative room: over the limit",
+    )
+    note = "; ".join(filter(None, notes))
+    blocks: list[Block] = [grid(rows, bool(printed), view.bounds)]
+    blocks.append(Paragraph(f"{note[0].upper()}{note[1:]}."))
     return Section(heading, tuple(blocks))
 
 
@@ -73,17 +79,16 @@ def grid(rows: Iterable[Row], apart: bool, bounds: bool) -> Grid:
         ("tag", 5, [row.tag for row in rows]),
         ("sheet", 6, [row.sheet for row in rows]),
         ("built as", 1, [row.built_as for row in rows]),
-        ("value", 0, [_value(row) for row in rows]),
+        ("value", 7, [_value(row) for row in rows]),
         ("limit", 3, [row.limit or "-" for row in rows]),
         ("room left", 0, [row.room.text or "-" for row in rows]),
         ("verdict", 2, [row.verdict_text for row in rows]),
     ]
     if apart:
-        compared = [f"{row.compared.text} {row.compared.unit}".strip() or "-" for row in rows]
-        columns.insert(4, ("as compared", 4, compared))
+        columns.insert(4, ("as compared", 0, [row.compared.text or "-" for row in rows]))
     if bounds:
-        between = [f"{row.low.text} {row.high.text}" if row.low.text else "-" for row in rows]
-        columns.insert(4, ("bounds", 0, between))
+        between = [_between(row) if row.low.text else "-" for row in rows]
+        columns.insert(4, ("bounds", 4, between))
     order = sorted((rank, place) for place, (_, rank, _) in enumerate(columns) if rank)
     return Grid(
         heads=tuple(head for head, _, _ in columns),
@@ -94,9 +99,15 @@ def grid(rows: Iterable[Row], apart: bool, bounds: bool) -> Grid:
     )
 
 
+def _between(row: Row) -> str:
+    if row.low.text == row.high.text:
+        return row.low.text
+    return f"{row.low.text} to {row.high.text}"
+
+
 def _value(row: Row) -> str:
     if row.verdict == "too_close" and row.low.text:
-        return f"{row.symbol} {row.low.text} to {row.high.text}"
+        return f"{row.symbol} {_between(row)}"
     return f"{row.symbol} {row.value.text}" if row.value.text else "-"
 
 
@@ -151,7 +162,7 @@ def _paths(row: Row) -> tuple[str, ...]:
 def _bounds(row: Row) -> tuple[str, ...]:
     if not row.low.text or (row.low == row.high and row.low.text == row.value.text):
         return ()
-    return (f"bounds of the drawn model: {row.low.text} to {row.high.text} {row.low.unit}",)
+    return (f"bounds of the drawn model: {_between(row)} {row.low.unit}",)
 
 
 def _items(found: Iterable[Item], numbered: bool = False) -> Items:

@@ -7,7 +7,7 @@ from collections.abc import Iterable
 
 from tabulate import tabulate
 
-from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Paragraph
+from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, Paragraph
 
 COLOURS = {"bad": "\x1b[31m", "open": "\x1b[33m", "good": "\x1b[32m"}
 PLAIN = "\x1b[0m"
@@ -37,18 +37,18 @@ def _block(block: Block, width: int, colour: bool) -> list[str]:
         case Paragraph(text):
             return wrap(text, width)
         case Facts(pairs):
-            found: list[str] = []
-            label = max([LABEL, *(len(pair.label) + 2 for pair in pairs)])
-            for pair in pairs:
-                if label > width // 2:
-                    found += [*wrap(pair.label, width), *hang("    ", pair.text, width)]
-                else:
-                    found += hang(f"{pair.label:<{label}}", pair.text, width)
-            return found
+            return [line for pair in pairs for line in _fact(pair, width)]
         case Items(entries, numbered):
             return _items(entries, numbered, width)
         case Grid():
             return grid(block, width, colour)
+
+
+def _fact(pair: Pair, width: int) -> list[str]:
+    lead = f"{pair.label:<{LABEL}}"
+    if len(pair.label) < LABEL:
+        return hang(lead, pair.text, width)
+    return [*wrap(pair.label, width), *hang(" " * LABEL, pair.text, width)]
 
 
 def _items(entries: Iterable[Entry], numbered: bool, width: int) -> list[str]:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from pathlib import Path
+from typing import Any
 
 import pytest
 import yaml
@@ -16,7 +17,7 @@ CASES = yaml.safe_load((BROKEN / "index.yaml").read_text(encoding="utf-8"))
 
 
 @pytest.mark.parametrize("case", CASES, ids=lambda case: case["file"])
-def test_broken_file_names_its_mistake(case: dict) -> None:
+def test_broken_file_names_its_mistake(case: dict[str, Any]) -> None:
     with pytest.raises(InputError) as caught:
         read_project(str(BROKEN / case["file"]), NAMES)
     problems = caught.value.problems
@@ -31,10 +32,12 @@ def test_broken_file_names_its_mistake(case: dict) -> None:
     assert len(message) < 1000
 
 
-@pytest.mark.parametrize("case", CASES, ids=lambda case: case["file"])
-def test_one_mistake_gives_one_problem(case: dict) -> None:
-    if case["file"] in {"alias-bomb.yaml", "self-alias.yaml"}:
-        pytest.skip("an anchor stands beside each alias")
+SINGLE = [c for c in CASES if c["file"] not in {"alias-bomb.yaml", "self-alias.yaml"}]
+"""Beside each alias stands an anchor, and both are refused."""
+
+
+@pytest.mark.parametrize("case", SINGLE, ids=lambda case: case["file"])
+def test_one_mistake_gives_one_problem(case: dict[str, Any]) -> None:
     with pytest.raises(InputError) as caught:
         read_project(str(BROKEN / case["file"]), NAMES)
     assert len(caught.value.problems) == 1, str(caught.value)
@@ -70,5 +73,5 @@ def test_all_problems_come_at_once_in_order_of_line(tmp_path: Path) -> None:
         "unknown-key",
         "unknown-category",
     ]
-    lines = [p.line for p in problems]
+    lines = [p.line or 0 for p in problems]
     assert lines == sorted(lines)

@@ -1,0 +1,106 @@
+"""Opaque panels entered as glazing, and glass passed off as the whole product."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from envcheck.judge.compare import compare, rounded
+from envcheck.judge.crosschecks import Check, Facts
+from envcheck.judge.words import listed, system, trimmed
+from envcheck.model.judged import Finding, Line
+from envcheck.model.project import Assembly, Element
+from envcheck.units import in_system, label
+
+OPAQUE_WORDS = ("spandrel", "opaque")
+
+
+def opaque_as_glazing(facts: Facts) -> Iterator[Finding]:
+    """Fenestration that lets no light pass; a warning where nobody says whether it does."""
+    for element in facts.project.elements.values():
+        if not element.category.startswith("fenestration."):
+            continue
+        assembly = facts.project.assemblies.get(element.assembly)
+        found = _opaque(assembly) if assembly is not None else None
+        if found is not None:
+            severity, why = found
+            yield Finding(
+                "opaque-as-glazing",
+                severity,
+                element.tag,
+                element.sheet,
+                f"entered as {element.category}; {element.assembly} {why}",
+                "a spandrel or another opaque panel counts as opaque wall, in no area of glass"
+                + _as_host(facts, element),
+                "its category as an opaque wall, or its SHGC and visible transmittance",
+            )
+
+
+def _opaque(assembly: Assembly) -> tuple[str, str] | None:
+    """Severity and what shows that no light passes; None where light does."""
+    if assembly.kind == "layers":
+        return "E", "is built of opaque layers"
+    rated = assembly.rated
+    if rated is None or rated.shgc:
+        return None
+    if rated.visible_transmittance == 0:
+        return "E", "has no SHGC and a visible transmittance of 0"
+    if rated.visible_transmittance is not None:
+        return None
+    named = any(word in assembly.title.casefold() for word in OPAQUE_WORDS)
+    why = "states no SHGC and no visible transmittance"
+    return ("E", f"({assembly.title}) {why}") if named else ("W", why)
+
+
+def _as_host(facts: Facts, element: Element) -> str:
+    """How it stands against the limit of the wall that it is cut from."""
+    host, own = _line(facts, element.host), _line(facts, element.tag)
+    if host is None or host.limit is None or own is None or own.solved is None:
+        return ""
+    limit, value = host.limit, own.solved.value
+    if limit.kind != "number" or not limit.metric.startswith("U_") or value is None:
+        return ""
+    term = limit.alternatives[0][0]
+    comparison = compare(value, term, limit, facts.rulesets[host.ruleset])
+    state = "within" if comparison.within else "over"
+    return (
+        f"; held against the row of {element.host} it has "
+        f"{rounded(comparison.value, comparison.decimals + 1)}, {state} {term.text}"
+    )
+
+
+def _line(facts: Facts, tag: str) -> Line | None:
+    return next(
+        (x for x in facts.lines if x.element == tag and x.decides and x.metric.startswith("U_")),
+        None,
+    )
+
+
+def centre_of_glass(facts: Facts) -> Iterator[Finding]:
+    """A rated product in use whose U-factor is that of the glass alone."""
+    units = system(facts.project, facts.rulesets)
+    uses: dict[str, list[str]] = {}
+    for element in facts.project.elements.values():
+        uses.setdefault(element.assembly, []).append(element.tag)
+    for assembly in facts.project.assemblies.values():
+        rated = assembly.rated
+        if rated is None or rated.basis != "centre_of_glass" or assembly.id not in uses:
+            continue
+        value = "a value"
+        if rated.u_factor is not None:
+            shown = trimmed(in_system(rated.u_factor, "u_factor", units), 4)
+            value = f"{shown} {label('u_factor', units)}"
+        yield Finding(
+            "centre-of-glass",
+            "E",
+            assembly.id,
+            assembly.sheet,
+            f"{value} is stated for the centre of the glass; used by {listed(uses[assembly.id])}",
+            "frame and edge of the glass are left out; they mostly raise the value",
+            "the rating of the whole product, frame included",
+        )
+
+
+CHECKS = (
+    Check("opaque-as-glazing", "Opaque panel entered as glazing", opaque_as_glazing),
+    Check("centre-of-glass", "Centre of glass for the whole product", centre_of_glass),
+)

@@ -1,0 +1,321 @@
+"""A value printed on a drawing, and the ways of counting that would lead to it.
+
+A declared value that is not the computed one is mostly a known slip: labels added up, framing left
+out, a mean thickness. Each slip is computed here from the same layers; the one that rounds to the
+printed digits explains the value.
+"""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable, Iterator, Mapping
+from decimal import Decimal
+from typing import NamedTuple
+
+from envcheck.judge.compare import exact_decimal, rounded
+from envcheck.judge.words import method, resistance
+from envcheck.model.project import (
+    AirSpaceLayer,
+    Assembly,
+    ContactLayer,
+    Declared,
+    Fill,
+    FramedLayer,
+    Layer,
+    MaterialLayer,
+    ResistanceLayer,
+)
+from envcheck.model.solved import Node, Properties, Resistor, Series, Solved
+from envcheck.units import convert
+
+TOLERANCE = 0.01
+"""Share by which a declared value may miss the computed one."""
+SHORT = 4
+"""Decimals from which a value is shown with no more than the drawing has."""
+R_IP = "h*ft2*degF/Btu"
+R_SI = "m2*K/W"
+_TYPED = re.compile(r"(R-|RSI[ -])?((?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d+)?) ?(.*)", re.ASCII)
+METRICS = {
+    "u_factor": ("U_assembly", "U_product", "C_factor"),
+    "resistance": ("U_assembly", "U_product", "C_factor"),
+    "linear_transmittance": ("F_factor",),
+}
+"""Quantity of a declared value -> metrics that it can be held against."""
+WORDS = {
+    "parallel_path": "parallel paths were taken",
+    "isothermal_planes": "isothermal planes were taken",
+    "combined": "the mean of both resistances was taken (ISO 6946)",
+    "mean_thickness": "the tapered layer was taken at its mean thickness",
+    "least_thickness": "the tapered layer was taken at its least thickness",
+    "integral": "the tapered layer was counted by the areas of equal thickness",
+    "centre_of_glass": "the centre of the glass was taken",
+}
+"""Values beside the one that decides, as the slip that they are here."""
+
+
+class Figure(NamedTuple):
+    """A value as typed."""
+
+    prefix: str
+    """``R-``, ``RSI `` or empty."""
+    digits: Decimal
+    unit: str
+    """A spelling of ``units``."""
+
+    @property
+    def decimals(self) -> int:
+        """Decimals as typed."""
+        exponent = self.digits.as_tuple().exponent
+        return max(0, -int(exponent))
+
+    def printed(self, value: float) -> Decimal:
+        """An SI value in this unit, at these decimals."""
+        return rounded(convert(value, self.unit), self.decimals)
+
+    def show(self, value: float) -> str:
+        """An SI value in this unit, one decimal more than typed where that is little."""
+        decimals = self.decimals + (self.decimals < SHORT)
+        return f"{self.prefix}{rounded(convert(value, self.unit), decimals)}"
+
+
+class Disagreement(NamedTuple):
+    """A declared value that is not the computed one."""
+
+    figure: Figure
+    solved: Solved
+    """The solution that the value is nearest to being about: the first one."""
+    computed: str
+    """``0.0647``, or ``between 0.2730 and 0.2735``."""
+    off: float
+    """Computed over declared, less 1."""
+
+
+class Reading(NamedTuple):
+    """A way of counting that gives another value."""
+
+    words: str
+    value: float
+    """U, C or F, SI."""
+
+
+def figure(declared: Declared) -> Figure | None:
+    """Take the typed text apart; None where its digits cannot be told."""
+    match = _TYPED.fullmatch(declared.text.strip())
+    if match is None:
+        return None
+    prefix = match[1] or ""
+    unit = {"": match[3], "R-": R_IP}.get(prefix, R_SI)
+    return Figure(prefix, Decimal(match[2]), unit) if unit else None
+
+
+def disagreement(assembly: Assembly, solutions: Iterable[Solved]) -> Disagreement | None:
+    """Hold the declared value against every solution; None where it agrees with one of them.
+
+    It agrees where a solution rounds to its digits, or lies within 1 % and one unit of its last
+    digit. A value that only bounds decide agrees with anything between them.
+    """
+    declared = assembly.declared
+    typed = figure(declared) if declared is not None else None
+    if declared is None or typed is None:
+        return None
+    first: Disagreement | None = None
+    for solved in solutions:
+        ends = _ends(solved, declared.quantity)
+        if ends is None:
+            continue
+        if _agrees(typed, *ends):
+            return None
+        if first is None:
+            first = _disagreement(typed, solved, *ends)
+    return first
+
+
+def _ends(solved: Solved, quantity: str) -> tuple[float, float] | None:
+    """Least and greatest computed value in the declared quantity, SI."""
+    if solved.setting.metric not in METRICS.get(quantity, ()):
+        return None
+    low, high = solved.value, solved.value
+    if solved.decided_by_bracket:
+        low, high = solved.low, solved.high
+    if not low or not high:
+        return None
+    return (1.0 / high, 1.0 / low) if quantity == "resistance" else (low, high)
+
+
+def _agrees(typed: Figure, low: float, high: float) -> bool:
+    if typed.printed(low) <= typed.digits <= typed.printed(high):
+        return True
+    nearest = low if typed.digits < typed.printed(low) else high
+    exact = exact_decimal(convert(nearest, typed.unit))
+    unit = Decimal(1).scaleb(-typed.decimals)
+    near = abs(exact - typed.digits) <= exact * exact_decimal(TOLERANCE)
+    return near and abs(typed.printed(nearest) - typed.digits) <= unit
+
+
+def _disagreement(typed: Figure, solved: Solved, low: float, high: float) -> Disagreement:
+    nearest = low if typed.digits < typed.printed(low) else high
+    off = convert(nearest, typed.unit) / float(typed.digits) - 1.0
+    computed = typed.show(low)
+    if low != high:
+        computed = f"between {computed} and {typed.show(high)}"
+    return Disagreement(typed, solved, computed, off)
+
+
+def explain(
+    found: Disagreement, assembly: Assembly, properties: Properties | None
+) -> Reading | None:
+    """The first reading that rounds to the printed digits; None where no reading does."""
+    declared = assembly.declared
+    for reading in readings(assembly, properties, found.solved, system_of(found.figure)):
+        inverse = declared is not None and declared.quantity == "resistance"
+        if reading.value > 0 and found.figure.printed(
+            1.0 / reading.value if inverse else reading.value
+        ) == (found.figure.digits):
+            return reading
+    return None
+
+
+def system_of(typed: Figure) -> str:
+    """System of the typed unit."""
+    return "IP" if "Btu" in typed.unit or "ft" in typed.unit else "SI"
+
+
+# --------------------------------------------------------------------------------- the readings
+
+
+def readings(
+    assembly: Assembly, properties: Properties | None, solved: Solved, units: str
+) -> Iterator[Reading]:
+    """Known slips of counting, the likeliest first."""
+    metric = solved.setting.metric
+    films = solved.setting.outside_film + solved.setting.inside_film
+    films = films if metric.startswith("U_") else 0.0
+    if properties is not None and metric != "F_factor":
+        yield from _labels(properties, films, units)
+    for beside in solved.beside:
+        words = WORDS.get(beside.name, f"the value by {method(beside.name)} was taken")
+        yield Reading(words, beside.value)
+    for words, value in (
+        (
+            "outer insulation that metal crosses was counted in full",
+            crossed_in_full(assembly, solved),
+        ),
+        ("compressed insulation was counted at its full label", full_label(assembly, solved)),
+        ("framing was left out: all layers in series", _unbridged(assembly, solved, films)),
+        ("fasteners and bridges were left out", solved.clear),
+    ):
+        if value is not None:
+            yield Reading(words, value)
+    if solved.value and films and 1.0 / solved.value > films:
+        yield Reading("surface films were left out", 1.0 / (1.0 / solved.value - films))
+
+
+def _labels(properties: Properties, films: float, units: str) -> Iterator[Reading]:
+    total = properties.label_sum
+    if not total:
+        return
+    outer = properties.continuous_resistance > 0 or bool(properties.crossed)
+    if properties.cavity_resistance is None:
+        which = "the label of the insulation was taken alone"
+    elif outer:
+        which = "the labels of cavity and outer insulation were added"
+    else:
+        which = "the label of the cavity insulation was taken alone"
+    shown = resistance(total, units)
+    yield Reading(f"{which} ({shown})", 1.0 / total)
+    if films:
+        added = which.replace("taken alone", "added to the films")
+        added = added.replace("were added", "and the films were added")
+        yield Reading(f"{added} ({resistance(total + films, units)})", 1.0 / (total + films))
+
+
+def recomputed(tree: Node, values: Mapping[str, float]) -> float:
+    """Resistance of a tree with some resistors changed.
+
+    values: symbol -> m2 K/W. Returns m2 K/W; 0 where a branch beside others has none.
+    Source: resistances in series add, conductances side by side add by their share.
+    """
+    if isinstance(tree, Resistor):
+        return values.get(tree.symbol, tree.value)
+    if isinstance(tree, Series):
+        return sum(recomputed(part, values) for part in tree.parts)
+    branches = [recomputed(branch, values) for branch in tree.branches]
+    if any(value <= 0 for value in branches):
+        return 0.0
+    return 1.0 / sum(s / r for s, r in zip(tree.shares, branches, strict=True))
+
+
+def _changed(solved: Solved, values: Mapping[str, float]) -> float | None:
+    """U with some resistors of the tree changed and the same corrections, W/(m2 K)."""
+    if not values or solved.tree is None or not solved.clear or solved.value is None:
+        return None
+    as_is, changed = recomputed(solved.tree, {}), recomputed(solved.tree, values)
+    if changed <= 0 or abs(as_is * solved.clear - 1.0) > 1e-6 or abs(changed - as_is) < 1e-9:
+        return None
+    return 1.0 / changed + solved.value - solved.clear
+
+
+def full_label(assembly: Assembly, solved: Solved) -> float | None:
+    """U with every compressed fill at its full label, W/(m2 K); None where nothing changes."""
+    return _changed(
+        solved,
+        {
+            f"R{number}_fill": layer.fill.label
+            for number, layer in enumerate(assembly.layers, 1)
+            if isinstance(layer, FramedLayer) and layer.fill.label is not None
+        },
+    )
+
+
+def crossed_in_full(assembly: Assembly, solved: Solved) -> float | None:
+    """U with insulation that metal crosses counted in full; None where nothing changes."""
+    return _changed(
+        solved,
+        {
+            f"R{number}": value
+            for number, layer in enumerate(assembly.layers, 1)
+            if isinstance(layer, FramedLayer) and layer.crosses_insulation
+            for value in [fill_resistance(layer.fill, layer.thickness)]
+            if value is not None
+        },
+    )
+
+
+def fill_resistance(fill: Fill, depth: float) -> float | None:
+    """Resistance of a fill as labelled, or of its depth (m) of a material, m2 K/W."""
+    if fill.label is not None:
+        return fill.label
+    return None if fill.material is None else depth / fill.material.conductivity
+
+
+def _unbridged(assembly: Assembly, solved: Solved, films: float) -> float | None:
+    """U of films and layers in series, members left out; None where nothing is framed."""
+    start = max(
+        (
+            number + 1
+            for number, layer in enumerate(assembly.layers)
+            if isinstance(layer, AirSpaceLayer) and layer.ventilation == "well"
+        ),
+        default=0,
+    )
+    layers = assembly.layers[start:]
+    total = films
+    if not any(isinstance(layer, FramedLayer) for layer in layers):
+        return None
+    for layer, row in zip(layers, solved.layers[start:], strict=False):
+        value = plain_resistance(layer)
+        if isinstance(layer, FramedLayer):
+            value = fill_resistance(layer.fill, layer.thickness)
+        elif value is None:
+            value = row.resistance
+        if value is None:
+            return None
+        total += value
+    return 1.0 / total if total > 0 else None
+
+
+def plain_resistance(layer: Layer) -> float | None:
+    """Resistance of a layer of one material or a stated one, m2 K/W; None for any other."""
+    if isinstance(layer, MaterialLayer):
+        return layer.thickness / layer.material.conductivity
+    return layer.resistance if isinstance(layer, ResistanceLayer | ContactLayer) else None

@@ -1,0 +1,58 @@
+"""The page of one element or assembly."""
+
+from __future__ import annotations
+
+from pathlib import Path
+
+import pytest
+
+from envcheck.report import explain, registry
+from envcheck.report.view import ViewOptions
+from tests.report.fixture import JUDGED, PROJECT, RULESETS
+
+EXPECTED = Path(__file__).parent / "expected"
+
+
+def written(subject: str, name: str = "text", units: str = "") -> str:
+    made = explain.build(PROJECT, RULESETS, JUDGED, subject, ViewOptions(units=units))
+    write = registry.format_named(name).explain
+    assert write is not None
+    return write(made)
+
+
+@pytest.mark.parametrize(
+    ("subject", "name", "units", "file"),
+    [
+        ("N-1", "text", "", "explain-n-1.txt"),
+        ("W2", "text", "SI", "explain-w2-si.txt"),
+        ("N-2", "markdown", "", "explain-n-2.md"),
+    ],
+)
+def test_exact_text(subject: str, name: str, units: str, file: str) -> None:
+    expected = (EXPECTED / file).read_text(encoding="utf-8")
+    assert written(subject, name, units) == expected
+
+
+def test_an_assembly_that_nothing_uses_says_so() -> None:
+    judged = type(JUDGED)(**{**{n: getattr(JUDGED, n) for n in JUDGED.__slots__}, "lines": ()})
+    made = explain.build(PROJECT, RULESETS, judged, "W1")
+    text = registry.format_named("text").explain(made)  # type: ignore[misc]
+    assert "nothing is solved" in text
+
+
+def test_every_tag_and_assembly_can_be_explained() -> None:
+    for subject in explain.subjects(PROJECT):
+        assert subject in written(subject)
+
+
+def test_an_unknown_subject_is_refused() -> None:
+    with pytest.raises(KeyError, match="W77"):
+        explain.build(PROJECT, RULESETS, JUDGED, "W77")
+
+
+def test_temperatures_run_from_the_outdoor_to_the_indoor_air() -> None:
+    """The drop over a film of 0.17 in a path of 23.51 is 30 K x 0.17 / 23.51 = 0.22 K."""
+    text = written("W2", units="SI")
+    assert "behind outside film" in text
+    assert "-9.8 degC" in text
+    assert text.count("20.0 degC") == 3

@@ -1,0 +1,55 @@
+"""Text of a user steers no terminal, no page and no spreadsheet."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+
+import pytest
+
+from envcheck.report import registry, view
+from envcheck.report.inert import as_code, clean, for_csv, for_markdown
+from tests.report.fixture import JUDGED, PROJECT, RULESETS
+
+HOSTILE = "=cmd|' /C calc'!A0 \x1b[31mred\x07 \u202egnp.exe <script>alert(1)</script> | **x** `y`"
+
+
+def hostile(name: str) -> str:
+    assemblies = dict(PROJECT.assemblies)
+    assemblies["W1"] = replace(assemblies["W1"], title=HOSTILE, sheet="a\nb")
+    project = replace(PROJECT, title=HOSTILE, prepared_by=HOSTILE, assemblies=assemblies)
+    lines = tuple(replace(line, reasons=(HOSTILE, *line.reasons)) for line in JUDGED.lines)
+    judged = replace(JUDGED, lines=lines, remarks=(HOSTILE,))
+    asked = view.ViewOptions(details=True)
+    return registry.format_named(name).render(view.build(project, RULESETS, judged, asked))
+
+
+@pytest.mark.parametrize("name", registry.names())
+def test_no_control_or_direction_character_comes_through(name: str) -> None:
+    for char in hostile(name):
+        assert char == "\n" or char.isprintable(), repr(char)
+
+
+def test_markdown_holds_no_markup_of_the_user() -> None:
+    page = hostile("markdown")
+    assert "<script" not in page.replace("\\<script", "")
+    table = [line for line in page.splitlines() if line.startswith("| N-1 ")]
+    assert len(table) == 1
+    assert table[0].replace("\\|", "").count("|") == 8
+
+
+def test_csv_guards_formulas() -> None:
+    assert ",'=cmd|" in hostile("csv") or "\"'=cmd|" in hostile("csv")
+    assert for_csv("+1") == "'+1"
+    assert for_csv("@x") == "'@x"
+    assert for_csv("-") == "'-"
+    assert for_csv("W1") == "W1"
+
+
+def test_plain_text_stays_as_it_is() -> None:
+    assert clean("Mur extérieur, 外壁") == "Mur extérieur, 外壁"
+    assert clean("می‌خواهم") == "می‌خواهم"  # a zero-width non-joiner within a word
+    assert clean("two\nlines\tand\u00a0more") == "two lines and more"
+    assert clean("\x1b[2J") == "\\x1b[2J"
+    assert clean("\u202e") == "\\u202e"
+    assert for_markdown("a|b_c") == "a\\|b\\_c"
+    assert as_code("a`b") == "`a'b`"
