@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections import defaultdict
-from collections.abc import Iterable
+from collections.abc import Iterable, Mapping
 from dataclasses import replace
 from typing import Any
 
@@ -25,7 +25,9 @@ TILTS = {
 SKYLIGHT = "fenestration.skylight"
 
 
-def read_surface(context: Context, name: str, entry: Entry) -> Surface:
+def read_surface(
+    context: Context, name: str, entry: Entry, elements: Mapping[str, Entry]
+) -> Surface:
     """Read a facade, roof or floor as drawn."""
     gross = context.positive(entry, "gross_area", "area")
     below = 0.0
@@ -34,16 +36,29 @@ def read_surface(context: Context, name: str, entry: Entry) -> Surface:
     if below > gross:
         found = f"{entry['below_grade_area']} of {entry['gross_area']}"
         context.add("below-grade-over-gross", entry.lines["below_grade_area"], found=found)
-    shows = entry.get("shows", {})
     return Surface(
         name=name,
         sheet=entry.get("sheet", ""),
         gross_area=gross,
         below_grade_area=below,
         kind=entry["kind"],
-        shows=tuple(Opening(tag, float(count)) for tag, count in shows.items()),
+        shows=tuple(
+            _opening(context, tag, shown, elements) for tag, shown in entry.get("shows", {}).items()
+        ),
         line=entry.line,
+        adjoins=entry.get("adjoins", "outdoors"),
+        space_category=entry.get("space_category", ""),
     )
+
+
+def _opening(context: Context, tag: str, shown: Any, elements: Mapping[str, Entry]) -> Opening:
+    if not isinstance(shown, Entry):
+        return Opening(tag, float(shown))
+    host = shown.get("host", "")
+    if host and host not in elements:
+        context.unknown("unknown-element", shown.lines["host"], host, elements)
+    area = context.optional(shown, "area", "area")
+    return Opening(tag, float(shown["count"]), area, host)
 
 
 def read_facts(entry: Entry) -> tuple[Fact, ...]:

@@ -5,6 +5,7 @@ from __future__ import annotations
 import gc
 from collections.abc import Callable, Iterator
 from contextlib import contextmanager
+from dataclasses import replace
 from difflib import get_close_matches
 from hashlib import sha256
 from pathlib import Path as FilePath
@@ -12,7 +13,7 @@ from typing import Any, TypeVar
 
 from envcheck.errors import InputError
 from envcheck.model.names import Names
-from envcheck.model.project import Project, RuleSetChoice
+from envcheck.model.project import Assembly, Fact, Project, RuleSetChoice
 from envcheck.read.assemblies import read_assembly, read_material
 from envcheck.read.context import Context
 from envcheck.read.elements import (
@@ -136,6 +137,7 @@ def _build(context: Context, sections: _Sections, digest: str) -> Project:
     elements = sections.each(
         "elements", lambda n, e: read_element(context, n, e, assemblies, surfaces)
     )
+    facts = read_facts(sections.whole("facts"))
     head = sections.whole("project")
     return Project(
         file=context.file,
@@ -148,11 +150,11 @@ def _build(context: Context, sections: _Sections, digest: str) -> Project:
         invented=head.get("invented", ""),
         units=head.get("units", ""),
         site=read_site(context, sections.whole("site")),
-        facts=read_facts(sections.whole("facts")),
+        facts=facts,
         rule_sets=_rule_sets(sections),
         materials={**context.own, **context.used},
-        assemblies=built,
-        surfaces=sections.each("surfaces", lambda n, e: read_surface(context, n, e)),
+        assemblies={name: _heated_as_stated(one, facts) for name, one in built.items()},
+        surfaces=sections.each("surfaces", lambda n, e: read_surface(context, n, e, entries)),
         elements=with_openings(context, elements, entries),
         exceptions=tuple(
             read_exception(context, entry, entries) for _, entry in sections.items("exceptions")
@@ -162,6 +164,14 @@ def _build(context: Context, sections: _Sections, digest: str) -> Project:
         sha256=digest,
         lines=dict(sections.data.lines),
     )
+
+
+def _heated_as_stated(assembly: Assembly, facts: tuple[Fact, ...]) -> Assembly:
+    """A slab that does not say whether it is heated takes the project's fact ``slab_heated``."""
+    stated = next((fact.value for fact in facts if fact.name == "slab_heated"), None)
+    if assembly.slab is None or assembly.slab.heated is not None or stated not in ("yes", "no"):
+        return assembly
+    return replace(assembly, slab=replace(assembly.slab, heated=stated == "yes"))
 
 
 def _rule_sets(sections: _Sections) -> tuple[RuleSetChoice, ...]:

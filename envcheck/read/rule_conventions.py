@@ -14,6 +14,12 @@ from envcheck.read.patterns import fits_any
 from envcheck.read.rule_documents import Document
 
 DEFAULT = "default of envcheck"
+NOT_STATED = "not stated"
+WITHOUT_DEFAULT = (
+    "methods", "framing_shares", "class_tests", "evidence", "measured", "cavity_factors",
+    "effective_layers", "f_factors",
+)  # fmt: skip
+"""Conventions that envcheck has no value of its own for."""
 KEYS = (
     "films", "air_spaces", "methods", "cladding", "fasteners", "tapered", "crossed_insulation",
     "framing_shares", "class_tests", "evidence", "measured", "cavity_factors",
@@ -65,7 +71,7 @@ def read_conventions(source: Source, problems: list[Problem]) -> Conventions:
 def _where(source: Source, key: str) -> str:
     """Say where a convention comes from."""
     if source.stated.get(key) is None:
-        return DEFAULT
+        return NOT_STATED if key in WITHOUT_DEFAULT else DEFAULT
     document = source.origin[key]
     clause = (source.stated.get("clauses") or {}).get(key)
     value = source.stated[key]

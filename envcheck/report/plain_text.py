@@ -13,8 +13,10 @@ COLOURS = {"bad": "\x1b[31m", "open": "\x1b[33m", "good": "\x1b[32m"}
 PLAIN = "\x1b[0m"
 LABEL = 22
 GAP = 2
-"""Spaces between columns, as tabulate's ``simple`` sets them."""
+"""Spaces between columns, as tabulate's ``plain`` sets them."""
 NARROWEST = 12
+FLOORS = (24, 18, 14, 12, 8)
+"""Widths to which columns give way, round by round."""
 _PIECES = re.compile(r"[0-9a-f]{64}|[+-]?\d[\d.,]*|[^\W\d_]|\W|_")
 
 
@@ -109,15 +111,12 @@ def grid(block: Grid, width: int, colour: bool) -> list[str]:
             if len(cell) > widths[column]:
                 widths[column] = len(cell)
     _narrow(widths, block, width)
-    heads = ["\n".join(wrap(head, w)) for head, w in zip(block.heads, widths, strict=True)]
-    physical: list[list[str]] = []
+    lines = [*_physical(block.heads, widths, ""), ["-" * width for width in widths]]
     for number, row in enumerate(block.rows):
         tone = COLOURS.get(block.tones[number], "") if colour and block.tones else ""
-        physical += _physical(row, widths, tone)
-    align = ["right" if n in block.right else "left" for n in range(len(heads))]
-    return tabulate(
-        physical, heads, tablefmt="simple", disable_numparse=True, colalign=align
-    ).split("\n")
+        lines += _physical(row, widths, tone)
+    align = ["right" if n in block.right else "left" for n in range(len(widths))]
+    return tabulate(lines, tablefmt="plain", disable_numparse=True, colalign=align).split("\n")
 
 
 def _physical(row: tuple[str, ...], widths: list[int], tone: str) -> list[list[str]]:
@@ -137,8 +136,7 @@ def _physical(row: tuple[str, ...], widths: list[int], tone: str) -> list[list[s
 def _narrow(widths: list[int], block: Grid, width: int) -> None:
     """Take the excess from the columns that may wrap, the first named ones first."""
     excess = sum(widths) + GAP * (len(widths) - 1) - width
-    floors = (24, NARROWEST)
-    for floor in floors:
+    for floor in FLOORS:
         for column in block.wrap:
             if excess <= 0:
                 return

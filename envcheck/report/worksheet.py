@@ -54,8 +54,8 @@ class _Sheet:
     lines: list[Line] = field(default_factory=list)
     given: dict[str, float] = field(default_factory=dict)
     """Symbol -> exact SI value."""
-    printed: dict[tuple[str, str], str] = field(default_factory=dict)
-    """(symbol, system) -> printed result."""
+    printed: dict[str, dict[str, str]] = field(default_factory=dict)
+    """Symbol -> unit -> printed result; the first unit is the one it was computed in."""
 
 
 def write(steps: Iterable[Step], system: str, digits: int = OPERAND_DIGITS) -> tuple[Line, ...]:
@@ -114,14 +114,9 @@ def _formula(sheet: _Sheet, step: Step, system: str) -> None:
 
 
 def _in_si(sheet: _Sheet, step: Step) -> None:
-    """Convert what the formula needs, compute in SI, convert the result back."""
-    for operand in step.operands:
-        earlier = _earlier(sheet, operand)
-        if earlier and (earlier, "SI") not in sheet.printed:
-            _convert(sheet, earlier, operand.quantity, "IP", "SI")
+    """Compute in SI and convert the result."""
     _formula(sheet, step, "SI")
-    if (step.symbol, "IP") not in sheet.printed:
-        _convert(sheet, step.symbol, step.quantity, "SI", "IP")
+    _in_unit(sheet, step.symbol, units.label(step.quantity, sheet.system), step.quantity)
 
 
 _HOLDS_IN_IP: dict[tuple[str, str, tuple[str, ...]], bool] = {}
@@ -152,7 +147,8 @@ def _holds_in_ip(step: Step) -> bool:
 def _operand(sheet: _Sheet, operand: Operand, system: str) -> str:
     earlier = _earlier(sheet, operand)
     if earlier:
-        return sheet.printed[earlier, system]
+        unit = units.label(operand.quantity, system)
+        return _in_unit(sheet, earlier, unit, operand.quantity)
     return _text(operand.value, operand.quantity, system, sheet.digits)
 
 
@@ -181,22 +177,25 @@ def _print(
     formula = arithmetic.named(step.expression)
     title, source = clean(step.title), clean(step.source)
     sheet.lines.append(Line(step.symbol, title, formula, stated, written, result, unit, source))
-    sheet.printed[step.symbol, system] = result
-    if not unit:
-        sheet.printed[step.symbol, "SI"] = sheet.printed[step.symbol, "IP"] = result
+    sheet.printed[step.symbol] = {unit: result}
 
 
-def _convert(sheet: _Sheet, symbol: str, quantity: str, start: str, end: str) -> None:
-    """Print a line that takes a result to the other system."""
-    text = sheet.printed[symbol, start]
-    unit, target = units.label(quantity, start), units.label(quantity, end)
+def _in_unit(sheet: _Sheet, symbol: str, target: str, quantity: str) -> str:
+    """Give an earlier result in a unit, with a line that converts it where that is another."""
+    known = sheet.printed[symbol]
+    if target in known:
+        return known[target]
+    unit, text = next(iter(known.items()))
+    if not unit or not target:
+        return text
     if quantity == "temperature":
-        written = f"{text} * 1.8 + 32" if end == "IP" else f"({text} - 32) / 1.8"
+        written = f"{text} * 1.8 + 32" if target == "degF" else f"({text} - 32) / 1.8"
     else:
-        factor = numbers.factor(quantity, "IP") / numbers.factor(quantity, "SI")
-        sign = "/" if end == "IP" else "*"
+        ratio = units.to_si(1.0, unit) / units.to_si(1.0, target)
+        sign, factor = ("*", ratio) if ratio > 1.0 else ("/", 1.0 / ratio)
         written = f"{text} {sign} {numbers.significant(factor, OPERAND_DIGITS)}"
     result = numbers.significant(arithmetic.evaluate(written, {}), RESULT_DIGITS)
     title = f"{symbol} from {unit} to {target}"
     sheet.lines.append(Line(symbol, title, "", (), written, result, target, ""))
-    sheet.printed[symbol, end] = result
+    known[target] = result
+    return result

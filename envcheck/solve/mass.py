@@ -114,6 +114,11 @@ def _framed(layer: FramedLayer) -> Mass:
 
 
 def _masonry(layer: MasonryLayer) -> Mass:
+    """Shells, webs, fill, grout and joints; a stated weight stands for all of them."""
+    if layer.weight is not None:
+        stored = layer.material.specific_heat
+        missing = () if stored is not None else (layer.material.title,)
+        return Mass(layer.weight, layer.weight * stored if stored else None, missing)
     shares = column_shares(layer)
     core = layer.thickness - 2.0 * layer.shell
     units = 1.0 - layer.joint_share

@@ -170,7 +170,7 @@ def test_references() -> None:
         ("0.06 0.07", U, "unreadable-cell"),
         ("20 13", R, "unreadable-cell"),
         ("nan", U, "unreadable-cell"),
-        ("1e3", U, "trailing-letter"),
+        ("1e3", U, "unreadable-cell"),
         ("20xx", R, "unknown-suffix"),
         ("WER B", U._replace(metrics=("WER",)), "cell-not-executed"),
         ("R-10 perimeter & under entire slab", R, "cell-not-executed"),

@@ -43,7 +43,7 @@ def test_every_step_of_the_fixture_can_be_repeated(solved: object, system: str) 
     lines = worksheet.write(solved.steps, system)  # type: ignore[attr-defined]
     assert_repeatable(lines)
     value = numbers.in_system(solved.value, "u_factor", system)  # type: ignore[attr-defined]
-    assert float(lines[-1].result) == pytest.approx(value, rel=2e-6)
+    assert float(lines[-1].result) == pytest.approx(value, rel=1e-5)
 
 
 @pytest.mark.parametrize("system", ["SI", "IP"])
@@ -92,8 +92,8 @@ def test_a_formula_with_si_constants_stays_in_si_between_two_conversions() -> No
     assert_repeatable(lines)
     assert [line.symbol for line in lines] == ["R1", "R2", "R2", "R1", "R3", "R3"]
     assert lines[1].operands == ("d = 0.0127 m",)
-    assert lines[2].text.endswith("/ 0.176110184 = 1.14334 h ft2 F/Btu")
-    assert lines[3].text == "R1 = 1 * 0.176110184 = 0.17611 m2 K/W"
+    assert lines[2].text.endswith("= 0.201268 * 5.67826334 = 1.14285 h ft2 F/Btu")
+    assert lines[3].text == "R1 = 1 / 5.67826334 = 0.17611 m2 K/W"
 
 
 def test_the_hand_check_takes_the_fewest_digits_that_give_the_value() -> None:
