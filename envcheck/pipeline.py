@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import gc
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from contextlib import contextmanager
 from dataclasses import dataclass, replace
 from functools import cache
@@ -55,7 +55,7 @@ def names() -> Names:
         methods=prescribable(),
         categories=tuple(categories()),
         film_sets=("iso6946", "handbook"),
-        findings=tuple(check.id for check in crosschecks.checks()) + ("class-claimed",),
+        findings=(*(check.id for check in crosschecks.checks()), "class-claimed"),
     )
 
 
@@ -85,7 +85,8 @@ def _no_cycles_to_collect() -> Iterator[None]:
 def _run(path: str, folders: Sequence[str]) -> Run:
     project = read_project(path, names())
     rulesets = _read_rulesets(project, folders or nearest_rules(path), path)
-    made_of = {name: properties(assembly) for name, assembly in project.assemblies.items()}
+    compressed = rulesets[project.rule_sets[0].id].conventions.tables.get("compressed_batts", ())
+    made_of = {name: properties(a, compressed) for name, a in project.assemblies.items()}
     solver = _Solver(project)
     lines: list[Line] = []
     all_ratios: list[Ratio] = []
@@ -100,7 +101,7 @@ def _run(path: str, folders: Sequence[str]) -> Run:
             for tag, element in project.elements.items()
         }
         if choice.decides:
-            found += [c.finding for c in classes.values() if c.finding is not None]
+            found += _merged(c.finding for c in classes.values() if c.finding is not None)
         measured = ratios(project, ruleset, {tag: c.category for tag, c in classes.items()})
         own = _judge_all(project, ruleset, choice.decides, made_of, classes, measured, solver)
         own, taken = take_means(own, project, ruleset)
@@ -163,6 +164,17 @@ def _read_rulesets(project: Project, folders: Sequence[str], path: str) -> dict[
     if problems:
         raise InputError(problems)
     return found
+
+
+def _merged(findings: Iterable[Finding]) -> list[Finding]:
+    """Say once what was seen the same way of several elements."""
+    found: dict[tuple[str, str], Finding] = {}
+    for finding in findings:
+        key = (finding.check, finding.seen)
+        known = found.get(key)
+        subject = finding.subject if known is None else f"{known.subject}, {finding.subject}"
+        found[key] = replace(known or finding, subject=subject)
+    return list(found.values())
 
 
 def assembly_of(project: Project, element: Element) -> Assembly:

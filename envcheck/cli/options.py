@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import os
-import shutil
 import sys
 from collections.abc import Callable
 from typing import Any, TypeVar
@@ -71,4 +70,8 @@ def width(output: str | None) -> int:
     """Width of the text format: 100 columns, less only on a narrower terminal."""
     if output or not sys.stdout.isatty():
         return WIDTH
-    return max(NARROWEST, min(WIDTH, shutil.get_terminal_size((WIDTH, 24)).columns))
+    try:
+        columns = os.get_terminal_size(sys.stdout.fileno()).columns
+    except OSError:
+        return WIDTH
+    return max(NARROWEST, min(WIDTH, columns))

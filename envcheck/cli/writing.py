@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import os
 import sys
-import tempfile
 from contextlib import suppress
 from pathlib import Path
 
@@ -35,6 +34,8 @@ def deliver(text: str, output: str | None, inputs: tuple[str, ...] = ()) -> None
 
 def write_whole(text: str, target: Path) -> None:
     """Write beside the target and put it in place in one step."""
+    import tempfile  # costs more to load than the rest of a small report
+
     handle, name = tempfile.mkstemp(dir=target.parent, prefix=f".{target.name}.")
     try:
         with open(handle, "w", encoding="utf-8", newline="\n") as file:  # noqa: PTH123

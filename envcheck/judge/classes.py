@@ -50,16 +50,7 @@ def _by_light(element: Element, assembly: Assembly, test: ClassTest) -> Class:
     if clear:
         return Class(element.category)
     why = f"{test.clause}: {assembly.id} lets no light through (no visible transmittance, no SHGC)"
-    finding = Finding(
-        "opaque-as-glazing",
-        "E",
-        element.tag,
-        element.sheet,
-        f"entered as {element.category}, and no visible transmittance or SHGC is stated",
-        f"by {test.clause} an opaque panel is {test.otherwise}, and is judged as such",
-        "the category of an opaque element, or the SHGC and visible transmittance of the glazing",
-    )
-    return Class(test.otherwise, Choice("class", test.otherwise, why), finding)
+    return Class(test.otherwise, Choice("class", test.otherwise, why))
 
 
 def _by_mass(element: Element, properties: Properties, test: ClassTest) -> Class:

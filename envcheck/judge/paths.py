@@ -80,12 +80,12 @@ def _short_of(term: Term, limit: Limit, brought: Insulation, ruleset: RuleSet) -
 
 
 def _part(term: Term, brought: Insulation) -> float:
-    """The insulation that a term speaks of, m2 K/W."""
+    """The insulation that a term speaks of, m2 K/W; without a role, all that is labelled."""
     if term.role == "ci":
         return brought.continuous or 0.0
-    if term.role == "cavity" or brought.cavity is not None:
+    if term.role == "cavity":
         return brought.cavity or 0.0
-    return brought.continuous or 0.0
+    return (brought.cavity or 0.0) + (brought.continuous or 0.0)
 
 
 def describe(brought: Insulation, limit: Limit) -> str:

@@ -86,6 +86,7 @@ def _zone(index: _Index, project: Project) -> ZoneFound:
     known = index.zones.get(id(project))
     if known is None or known[0] is not project:
         index.done.clear()
+        index.zones.clear()
         known = index.zones[id(project)] = (project, find_zone(index.ruleset, project.site))
     return known[1]
 

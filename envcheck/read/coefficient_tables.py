@@ -13,7 +13,7 @@ from envcheck import units
 from envcheck.errors import Problem, did_you_mean, one_of, problem
 from envcheck.model.ruleset import TableRow
 from envcheck.read.rule_documents import Document
-from envcheck.read.sheets import read_lines
+from envcheck.read.sheets import is_plain, read_lines
 
 
 class Form(NamedTuple):
@@ -76,6 +76,10 @@ def own_table(
     document: Document, key: str, file: str, problems: list[Problem]
 ) -> tuple[TableRow, ...]:
     """Read a coefficient table of the rule set's folder."""
+    if not is_plain(file):
+        at = document.line("conventions", key)
+        problems.append(problem("sheet-outside", document.name, at, found=file))
+        return ()
     shown = document.shown(file)
     lines = read_lines(document.folder / file, shown, ",", problems)
     if lines is None:

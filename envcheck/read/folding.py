@@ -10,7 +10,7 @@ from envcheck.errors import Problem, did_you_mean, one_of, problem
 from envcheck.model.ruleset import Dimension, Limit
 from envcheck.read.rule_documents import Document
 from envcheck.read.rule_tables import expand
-from envcheck.read.sheets import read_sheet
+from envcheck.read.sheets import Sheet, is_plain, read_sheet
 from envcheck.read.table_entry import CellKey, Table
 
 LATER_TABLE_KEYS = {
@@ -18,6 +18,7 @@ LATER_TABLE_KEYS = {
     "weights": "weights in a mean",
     "otherwise_row": "a row for all other cases",
 }
+HEAD_ROWS = ("1", "2", "3")
 LATER_SCOPES = ("any_point", "whole_envelope", "by_head")
 
 
@@ -108,20 +109,8 @@ def _read_table(
     problems: list[Problem],
 ) -> dict[CellKey, tuple[Limit, ...]]:
     """Read one sheet and expand it; guidance is read for its mistakes and left out."""
-    other: dict[str, Any] = {}
-    notes: dict[str, Any] = {}
-    for d in chain[: list(chain).index(document) + 1]:
-        other |= d.data
-        by_table: Mapping[str, Any] = d.get("notes") or {}
-        notes |= {**(by_table.get("*") or {}), **(by_table.get(settings["id"]) or {})}
-    file = str(settings["file"])
-    sheet = read_sheet(
-        document.folder / file,
-        document.shown(file),
-        str(other.get("separator", ",")),
-        int(settings.get("header_rows", 1)),
-        problems,
-    )
+    other, notes = _surroundings(document, chain, str(settings["id"]))
+    sheet = _sheet(document, i, settings, str(other.get("separator", ",")), problems)
     if sheet is None:
         return {}
     for dimension in sheet.when:
@@ -138,6 +127,40 @@ def _read_table(
     )  # fmt: skip
     cells = expand(table, problems)
     return {} if settings.get("status") == "guidance" else cells
+
+
+def _surroundings(
+    document: Document, chain: Sequence[Document], table: str
+) -> tuple[dict[str, Any], dict[str, Any]]:
+    """Give settings of the whole rule set and footnotes of a table, those of the base below."""
+    other: dict[str, Any] = {}
+    notes: dict[str, Any] = {}
+    for d in chain[: list(chain).index(document) + 1]:
+        other |= d.data
+        by_table: Mapping[str, Any] = d.get("notes") or {}
+        notes |= {**(by_table.get("*") or {}), **(by_table.get(table) or {})}
+    return other, notes
+
+
+def _sheet(
+    document: Document,
+    i: int,
+    settings: Mapping[str, Any],
+    separator: str,
+    problems: list[Problem],
+) -> Sheet | None:
+    file, rows = str(settings["file"]), str(settings.get("header_rows", "1"))
+    if not is_plain(file):
+        line = document.line("tables", i, "file")
+        problems.append(problem("sheet-outside", document.name, line, found=file))
+        return None
+    if rows not in HEAD_ROWS:
+        line = document.line("tables", i, "header_rows")
+        fill = {"found": rows, "expected": "1, 2 or 3 rows of heads"}
+        problems.append(problem("unreadable-figure", document.name, line, **fill))
+        return None
+    path = document.folder / file
+    return read_sheet(path, document.shown(file), separator, int(rows), problems)
 
 
 def _replacing(limit: Limit, base: tuple[Limit, ...]) -> Limit:

@@ -4,9 +4,11 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 from fnmatch import fnmatchcase
+from functools import lru_cache
 
 
-def fits_any(pattern: str, names: Iterable[str]) -> bool:
+@lru_cache(maxsize=1024)
+def fits_any(pattern: str, names: tuple[str, ...]) -> bool:
     """Whether a pattern fits at least one name."""
     return any(name == pattern or fnmatchcase(name, pattern) for name in names)
 

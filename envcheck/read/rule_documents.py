@@ -17,6 +17,7 @@ from envcheck.read.yaml_reader import Entry, line_of, read_yaml
 MEANING = "ruleset.yaml"
 LONGEST_CHAIN = 12
 _ID = re.compile(r"[a-z0-9][a-z0-9-]*")
+_DATE = re.compile(r"\d{4}-\d\d-\d\d")
 _NOTHING = ("", "null", "~")
 
 
@@ -44,9 +45,13 @@ class Document:
         return None if isinstance(value, str) and value in _NOTHING else value
 
     def date(self, *path: str) -> date | None:
-        """Date at a path; the schema has seen to its form."""
+        """Date at a path. Errors: ValueError for what is no date."""
         text = self.get(*path)
-        return date.fromisoformat(text) if isinstance(text, str) else None
+        if not isinstance(text, str):
+            return None
+        if not _DATE.fullmatch(text):
+            raise ValueError(text)
+        return date.fromisoformat(text)
 
     def shown(self, file: str) -> str:
         """Name of a file of the folder, as shown in messages."""

@@ -9,6 +9,7 @@ from __future__ import annotations
 
 import csv
 import io
+import re
 from pathlib import Path
 from typing import NamedTuple
 
@@ -18,6 +19,12 @@ from envcheck.read.cells import CellError, split_marks
 LARGEST = 2_000_000
 """Bytes; no printed table is larger."""
 WHEN = "when:"
+_PLAIN = re.compile(r"[\w-][\w.-]*\.csv")
+
+
+def is_plain(file: str) -> bool:
+    """Whether a name is that of a CSV file, without any path."""
+    return _PLAIN.fullmatch(file) is not None
 
 
 class Column(NamedTuple):

@@ -85,19 +85,19 @@ def gather(
     project: Project, rulesets: Mapping[str, RuleSet], judged: Judged
 ) -> tuple[CautionText, ...]:
     """All cautions of a report, triggered ones first by topic, then those that always stand."""
-    found: dict[str, dict[str, list[str]]] = {topic: {} for topic in ALWAYS}
+    found: dict[str, dict[str, dict[str, None]]] = {topic: {} for topic in ALWAYS}
     for topic, reason, subject in _triggered(project, rulesets, judged):
-        subjects = found.setdefault(topic, {}).setdefault(reason, [])
-        if subject and subject not in subjects:
-            subjects.append(subject)
+        subjects = found.setdefault(topic, {}).setdefault(reason, {})
+        if subject:
+            subjects[subject] = None
     order = [*TOPICS, *(topic for topic in found if topic not in TOPICS)]
     return tuple(_written(topic, found[topic]) for topic in order if topic in found)
 
 
-def _written(topic: str, reasons: Mapping[str, list[str]]) -> CautionText:
+def _written(topic: str, reasons: Mapping[str, Mapping[str, None]]) -> CautionText:
     heading, text = TOPICS.get(topic, (plain(clean(topic)).capitalize(), ""))
     lines = (
-        f"{listed(subjects)}: {reason}" if subjects else reason
+        f"{listed(list(subjects))}: {reason}" if subjects else reason
         for reason, subjects in reasons.items()
     )
     return CautionText(topic, heading, text, tuple(clean(line) for line in lines))

@@ -37,9 +37,17 @@ DECIMALS = {
 SIGNIFICANT = 12
 """Digits of a binary number that mean anything; noise beyond them never decides a half."""
 
+NEAR_HALF = 1e-3
+FAR = 1e8
+"""Within these no noise of a float can reach a half, and plain formatting rounds right."""
+
 
 def fixed(value: float, decimals: int) -> str:
     """Round half-up to ``decimals`` places, after cutting binary noise."""
+    scaled = abs(value) * 10.0**decimals
+    if scaled < FAR and abs(scaled % 1.0 - 0.5) > NEAR_HALF:
+        text = f"{value:.{decimals}f}"
+        return text if text[0] != "-" or scaled >= 0.5 else text[1:]
     number = Decimal(f"{value:.{SIGNIFICANT}g}")
     rounded = number.quantize(Decimal(1).scaleb(-decimals), ROUND_HALF_UP)
     return f"{abs(rounded) if rounded.is_zero() else rounded:f}"

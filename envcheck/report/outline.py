@@ -126,13 +126,11 @@ def _over(rows: Iterable[Row]) -> Section:
 
 def _grouped(found: Iterable[tuple[str, str, tuple[str, ...]]]) -> tuple[Entry, ...]:
     """(place, what, lines) as entries, those that say the same of several places together."""
-    places: dict[tuple[str, tuple[str, ...]], list[str]] = {}
+    places: dict[tuple[str, tuple[str, ...]], dict[str, None]] = {}
     for place, what, lines in found:
-        same = places.setdefault((what, lines), [])
-        if place not in same:
-            same.append(place)
+        places.setdefault((what, lines), {})[place] = None
     return tuple(
-        Entry(f"{wording.listed(where, MOST_PLACES)}: {what}", lines)
+        Entry(f"{wording.listed(list(where), MOST_PLACES)}: {what}", lines)
         for (what, lines), where in places.items()
     )
 

@@ -5,15 +5,13 @@ from __future__ import annotations
 import re
 from collections.abc import Iterable
 
-from tabulate import tabulate
-
 from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, Paragraph
 
 COLOURS = {"bad": "\x1b[31m", "open": "\x1b[33m", "good": "\x1b[32m"}
 PLAIN = "\x1b[0m"
 LABEL = 22
 GAP = 2
-"""Spaces between columns, as tabulate's ``plain`` sets them."""
+"""Spaces between columns."""
 NARROWEST = 12
 FLOORS = (24, 18, 14, 12, 8)
 """Widths to which columns give way, round by round."""
@@ -115,8 +113,12 @@ def grid(block: Grid, width: int, colour: bool) -> list[str]:
     for number, row in enumerate(block.rows):
         tone = COLOURS.get(block.tones[number], "") if colour and block.tones else ""
         lines += _physical(row, widths, tone)
-    align = ["right" if n in block.right else "left" for n in range(len(widths))]
-    return tabulate(lines, tablefmt="plain", disable_numparse=True, colalign=align).split("\n")
+    for column in block.right:
+        for line in lines:
+            line[column] = line[column].rjust(widths[column])
+    gap = " " * GAP
+    form = gap.join(f"{{:<{width}}}" for width in widths[:-1]) + gap + "{}"
+    return [form.format(*line) for line in lines]
 
 
 def _physical(row: tuple[str, ...], widths: list[int], tone: str) -> list[list[str]]:

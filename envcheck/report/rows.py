@@ -2,14 +2,13 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable
 from dataclasses import dataclass
+from itertools import starmap
 
 from envcheck import units
 from envcheck.model.judged import Comparison, Line, PathResult
 from envcheck.model.project import Element, Project
-from envcheck.model.ruleset import RuleSet
-from envcheck.model.solved import Solved
 from envcheck.report import numbers, said, wording, worksheet
 from envcheck.report.inert import clean
 from envcheck.report.parts import Pair
@@ -81,23 +80,45 @@ class Row:
     paths: tuple[PathRow, ...]
     hand_check: str
     trail: tuple[Pair, ...]
+    """Why this limit; empty unless details are asked for."""
 
 
 def build(
-    lines: Iterable[Line], project: Project, rulesets: Mapping[str, RuleSet], system: str
+    lines: Iterable[Line], project: Project, system: str, trails: bool = True
 ) -> tuple[Row, ...]:
-    """Make the rows in the order of ``lines``; sums of one solved assembly are written once."""
-    sums: dict[tuple[int, str], str] = {}
-    return tuple(_row(line, project, rulesets, system, sums) for line in lines)
+    """Make the rows in the order of ``lines``; ``trails`` asks why each limit was selected."""
+    written = _Written(trails)
+    return tuple(_row(line, project, system, written) for line in lines)
 
 
-def _row(
-    line: Line,
-    project: Project,
-    rulesets: Mapping[str, RuleSet],
-    system: str,
-    sums: dict[tuple[int, str], str],
-) -> Row:
+class _Written:
+    """What several lines share and is written once: sums of an assembly, places of a limit."""
+
+    def __init__(self, trails: bool) -> None:
+        self.trails = trails
+        self._sums: dict[tuple[int, str], str] = {}
+        self._sources: dict[tuple[int, str], str] = {}
+
+    def sum(self, line: Line, system: str, value: Figure) -> str:
+        """The shortest sum whose result is the row's value; empty where there is none."""
+        solved = line.solved
+        if solved is None or not value.text or solved.setting.metric != line.metric:
+            return ""
+        key = (id(solved), value.text)
+        if key not in self._sums:
+            places = len(value.text.partition(".")[2])
+            self._sums[key] = worksheet.shortest(solved.hand_check, system, places, value.text)
+        return self._sums[key]
+
+    def source(self, line: Line) -> str:
+        """Where the limit stands in print."""
+        key = (id(line.limit), line.ruleset)
+        if key not in self._sources:
+            self._sources[key] = said.limit_source(line.limit, line.ruleset)
+        return self._sources[key]
+
+
+def _row(line: Line, project: Project, system: str, written: _Written) -> Row:
     element = project.elements.get(line.element)
     assembly = project.assemblies.get(element.assembly) if element else None
     own = line.own or line.comparison
@@ -120,7 +141,7 @@ def _row(
         high=_bound(line, system, high=True),
         limit=said.limit_text(line),
         limit_number=_limit_number(line.comparison),
-        limit_source=said.limit_source(line.limit, line.ruleset),
+        limit_source=written.source(line),
         room=_room(own, line.metric),
         room_share=_room_share(own),
         verdict=line.verdict,
@@ -129,8 +150,8 @@ def _row(
         reasons=tuple(map(clean, line.reasons)),
         notes=said.notes(line),
         paths=tuple(_path(path, line.metric) for path in line.paths),
-        hand_check=_hand_check(line, system, value, sums),
-        trail=tuple(_choice(step, chosen, why) for step, chosen, why in line.trail),
+        hand_check=written.sum(line, system, value),
+        trail=tuple(starmap(_choice, line.trail)) if written.trails else (),
     )
 
 
@@ -222,19 +243,3 @@ def _path(result: PathResult, metric: str) -> PathRow:
 def _choice(step: str, chosen: str, why: str) -> Pair:
     label = wording.TRAIL.get(step, wording.plain(step))
     return Pair(clean(label), clean(f"{chosen}: {why}" if why else chosen))
-
-
-def _hand_check(line: Line, system: str, value: Figure, sums: dict[tuple[int, str], str]) -> str:
-    solved = line.solved
-    if solved is None or not value.text or solved.setting.metric != line.metric:
-        return ""
-    key = (id(solved), value.text)
-    if key not in sums:
-        sums[key] = hand_check(solved, system, value.text)
-    return sums[key]
-
-
-def hand_check(solved: Solved, system: str, shown: str) -> str:
-    """The shortest sum whose result is the row's value; empty where it takes a worksheet."""
-    places = len(shown.partition(".")[2])
-    return worksheet.shortest(solved.hand_check, system, places, shown)

@@ -83,7 +83,7 @@ def build(
     options = options or ViewOptions()
     system = system_for(project, rulesets, options)
     ordered = in_order(judged.lines, rulesets)
-    made = rows.build(ordered, project, rulesets, system)
+    made = rows.build(ordered, project, system, options.details)
     findings = items.findings(judged.findings)
     return View(
         title=header.title(project),

@@ -98,19 +98,25 @@ def _value(sheet: _Sheet, step: Step) -> None:
 
 
 def _formula(sheet: _Sheet, step: Step, system: str) -> None:
-    values = {o.name: _operand(sheet, o, system) for o in step.operands}
+    values: dict[str, str] = {}
+    stated: list[str] = []
+    for operand in step.operands:
+        name, unit = operand.name, units.label(operand.quantity, system)
+        earlier = _earlier(sheet, operand) if sheet.given else ""
+        if earlier:
+            values[name] = _in_unit(sheet, earlier, unit, operand.quantity)
+            if earlier != name:
+                stated.append(f"{name} = {earlier}")
+        else:
+            values[name] = _text(operand.value, operand.quantity, system, sheet.digits)
+            stated.append(f"{name} = {values[name]} {unit}".rstrip())
     try:
         result = arithmetic.evaluate(step.expression, {k: float(v) for k, v in values.items()})
     except (ArithmeticError, ValueError):
         result = numbers.in_system(step.value, step.quantity, system)
-    stated = tuple(
-        f"{o.name} = {_earlier(sheet, o) or values[o.name]} {_unit(sheet, o, system)}".rstrip()
-        for o in step.operands
-        if _earlier(sheet, o) != o.name
-    )
     written = arithmetic.fill(step.expression, values)
     text = numbers.significant(result, RESULT_DIGITS)
-    _print(sheet, step, system, written, stated, text)
+    _print(sheet, step, system, written, tuple(stated), text)
 
 
 def _in_si(sheet: _Sheet, step: Step) -> None:
@@ -144,14 +150,6 @@ def _holds_in_ip(step: Step) -> bool:
     return abs(result - expected) <= COHERENT * abs(expected)
 
 
-def _operand(sheet: _Sheet, operand: Operand, system: str) -> str:
-    earlier = _earlier(sheet, operand)
-    if earlier:
-        unit = units.label(operand.quantity, system)
-        return _in_unit(sheet, earlier, unit, operand.quantity)
-    return _text(operand.value, operand.quantity, system, sheet.digits)
-
-
 def _earlier(sheet: _Sheet, operand: Operand) -> str:
     """Symbol of the step that gave the operand: of its name, else of its very value; or empty."""
     given = sheet.given.get(operand.name)
@@ -160,10 +158,6 @@ def _earlier(sheet: _Sheet, operand: Operand) -> str:
     if given is None:
         return ""
     return next((name for name, value in sheet.given.items() if value == operand.value), "")
-
-
-def _unit(sheet: _Sheet, operand: Operand, system: str) -> str:
-    return "" if _earlier(sheet, operand) else units.label(operand.quantity, system)
 
 
 def _text(value: float, quantity: str, system: str, digits: int) -> str:

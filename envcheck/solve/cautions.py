@@ -14,6 +14,7 @@ from envcheck.model.project import (
     TaperedLayer,
 )
 from envcheck.model.solved import Caution
+from envcheck.solve.conventions import ventilated_at
 
 THICK_OUTSIDE = 0.05
 """m of insulation outside the structure from which attachment is worth a word; common practice,
@@ -27,7 +28,8 @@ def cautions(assembly: Assembly) -> tuple[Caution, ...]:
     if insulated:
         titles = ", ".join(layer.title for layer in insulated)
         found.append(Caution("moisture", f"{assembly.id}: insulation in {titles}"))
-    inner = _inside_of_masonry(assembly.layers)
+    vented = ventilated_at(assembly.layers)
+    inner = _inside_of_masonry(assembly.layers[0 if vented is None else vented + 1 :])
     if inner is not None:
         reason = f"{assembly.id}: {inner.title} inside solid or hollow masonry"
         found.append(Caution("solid_masonry", reason))
@@ -99,8 +101,12 @@ def _structure(assembly: Assembly) -> list[Caution]:
             found.append(Caution("structure", f"{assembly.id}: roof build-up of {layer.title}"))
         elif isinstance(layer, FramedLayer) and layer.crosses_insulation:
             found.append(Caution("structure", f"{assembly.id}: {layer.title}"))
-        elif isinstance(layer, MaterialLayer) and is_insulation(layer.material):
-            if layer.thickness >= THICK_OUTSIDE and layer is not assembly.layers[-1]:
-                reason = f"{assembly.id}: attachment through {layer.title}"
-                found.append(Caution("structure", reason))
+        elif (
+            isinstance(layer, MaterialLayer)
+            and is_insulation(layer.material)
+            and layer.thickness >= THICK_OUTSIDE
+            and layer is not assembly.layers[-1]
+        ):
+            reason = f"{assembly.id}: attachment through {layer.title}"
+            found.append(Caution("structure", reason))
     return found

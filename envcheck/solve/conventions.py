@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from envcheck.model.patterns import matches
 from envcheck.model.project import (
     AirSpaceLayer,
     Assembly,
@@ -10,7 +11,6 @@ from envcheck.model.project import (
     Layer,
     MasonryLayer,
 )
-from envcheck.model.patterns import matches
 from envcheck.model.ruleset import Conventions, FilmRow, MethodRule
 from envcheck.model.solved import Setting
 from envcheck.solve.methods.framed import is_metal

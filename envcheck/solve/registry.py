@@ -77,7 +77,7 @@ class Method:
     decides: Callable[[Wall], Decision] | None = None
     """A way to wire a layered assembly that a rule set may prescribe."""
     solves: tuple[tuple[str, Callable[..., Decision]], ...] = ()
-    """Ways to solve an assembly of another kind: (kind, function(assembly, setting, conventions))."""
+    """Other kinds that it solves: (kind, function(assembly, setting, conventions))."""
     metric: str = "U_assembly"
 
 

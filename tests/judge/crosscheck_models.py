@@ -100,11 +100,16 @@ def insulation(thickness: float, title: str = "XPS") -> MaterialLayer:
 
 
 def assembly(name: str = "W1", declared: str = "", quantity: str = "u_factor", **more: Any) -> Any:
-    more = {"kind": "layers", "title": f"Assembly {name}", "sheet": "A-501/1", "line": 1} | more
+    fields: dict[str, Any] = {
+        "kind": "layers",
+        "title": f"Assembly {name}",
+        "sheet": "A-501/1",
+        "line": 1,
+    }
     if declared:
         value = parse(declared, quantity)
-        more["declared"] = Declared(value, quantity, declared, "A-501/1")
-    return Assembly(name, **more)
+        fields["declared"] = Declared(value, quantity, declared, "A-501/1")
+    return Assembly(name, **(fields | more))
 
 
 def rated(u_factor: float | None = 0.32, **more: Any) -> Rated:

@@ -4,7 +4,8 @@ from __future__ import annotations
 
 import pytest
 
-from envcheck.judge.readings import disagreement, explain, figure
+from envcheck.judge.figures import disagreement, figure
+from envcheck.judge.readings import explain
 from tests.judge import crosscheck_models as m
 
 BRICK_WALL = (m.insulation(0.0381), m.board("R-0.56"), m.stud(material=m.STEEL))

@@ -6,6 +6,7 @@ inch, pound and Btu (the International Table Btu of 1055.05585262 J).
 
 from __future__ import annotations
 
+import json
 import shutil
 from dataclasses import replace
 from datetime import date
@@ -17,6 +18,8 @@ from envcheck.errors import InputError
 from envcheck.model.ruleset import Limit, RuleSet
 from envcheck.read.rule_documents import known_ids
 from envcheck.read.rulesets import default_folders, find, read_ruleset
+from envcheck.read.schema import schema_text
+from envcheck.read.yaml_reader import read_yaml
 from tests.read.names import NAMES as FEW
 
 HERE = Path(__file__).parent.parent
@@ -290,7 +293,7 @@ def test_conventions_of_the_county() -> None:
     row = found.tables["cavity_factors"][0]
     assert row.value == 0.46 and "from memory" in row.source
     assert row.keys["spacing"] == pytest.approx(0.4064) and row.keys["depth"] == 3.625 * 0.0254
-    slab = [r for r in found.tables["f_factors"] if r.keys["position"] == "vertical"][0]
+    slab = next(r for r in found.tables["f_factors"] if r.keys["position"] == "vertical")
     assert slab.value == pytest.approx(0.54 * 1.730735, rel=1e-6)
     assert slab.keys["heated"] == "no"
     (test,) = found.class_tests
@@ -361,3 +364,20 @@ def test_remarks_say_what_is_not_judged(tmp_path: Path) -> None:
     assert {x.table for x in ruleset.limits} == {"T2"}
     said = "\n".join(ruleset.remarks)
     assert "Table 1 is guidance" in said and "9.9" in said and "area-weighted mean" in said
+
+
+@pytest.mark.parametrize("folder", sorted(SHIPPED.iterdir()), ids=lambda f: f.name)
+def test_shipped_files_fit_the_schema_as_an_editor_reads_them(folder: Path) -> None:
+    jsonschema = pytest.importorskip("jsonschema")
+    schema = json.loads(schema_text("rules"))
+    jsonschema.Draft202012Validator.check_schema(schema)
+    data, problems = read_yaml((folder / "ruleset.yaml").read_bytes(), "ruleset.yaml")
+    assert not problems
+    errors = list(jsonschema.Draft202012Validator(schema).iter_errors(data))
+    assert not errors, errors[0].message
+
+
+def test_every_key_of_the_schema_is_described() -> None:
+    schema = json.loads(schema_text("rules"))
+    for name, key in schema["properties"].items():
+        assert key.get("description") or name in ("jurisdiction",), name

@@ -31,7 +31,8 @@ def test_stacked_heads_repeat_to_the_right(tmp_path: Path) -> None:
     sheet, problems = read(tmp_path, PRINTED)
     assert sheet is not None and not problems
     assert [c.heads for c in sheet.columns] == [
-        ("Zone 1", "U-factor"), ("Zone 1", "R-value"), ("Zone 2", "U-factor"), ("Zone 2", "R-value"),
+        ("Zone 1", "U-factor"), ("Zone 1", "R-value"),
+        ("Zone 2", "U-factor"), ("Zone 2", "R-value"),
     ]  # fmt: skip
     assert sheet.columns[1].marks == ("d",)
     assert sheet.columns[3].name == "Zone 2 / R-value"

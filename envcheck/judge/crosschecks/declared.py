@@ -6,18 +6,18 @@ from collections.abc import Iterator, Sequence
 
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.crosschecks.labels import is_label
-from envcheck.judge.readings import disagreement, explain
+from envcheck.judge.figures import disagreement
+from envcheck.judge.readings import explain
 from envcheck.judge.words import lines_by_assembly, percent
 from envcheck.model.judged import Finding, Line
 from envcheck.model.solved import Solved
 
 
-def solutions(assembly: str, facts: Facts, lines: Sequence[Line]) -> list[Solved]:
-    """Every solution of an assembly that decides a line, the first one first."""
-    own = facts.solved.get(assembly)
-    found = [] if own is None else [own]
-    found += [line.solved for line in lines if line.solved is not None]
-    return list({id(solved): solved for solved in found}.values())
+def solutions(assembly: str, facts: Facts, lines: Sequence[Line]) -> Iterator[Solved]:
+    """The solutions of an assembly: the first one, then those of its lines."""
+    if assembly in facts.solved:
+        yield facts.solved[assembly]
+    yield from (line.solved for line in lines if line.solved is not None)
 
 
 def declared_differs(facts: Facts) -> Iterator[Finding]:

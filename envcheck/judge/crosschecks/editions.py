@@ -3,10 +3,10 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from datetime import date
 
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.model.judged import Finding
+from envcheck.model.project import Project
 from envcheck.model.ruleset import Edition
 
 
@@ -26,7 +26,7 @@ def edition_superseded(facts: Facts) -> Iterator[Finding]:
                 "E" if base and choice.decides else "N",
                 edition.id,
                 "",
-                f"permit application of {on}; {_name(edition)} {_dates(edition, on)}",
+                f"permit application of {on}; {_name(edition)} {_dates(edition, facts.project)}",
                 _suggests(base, choice.decides),
                 "the edition in force on that date, or the date of the application",
             )
@@ -36,9 +36,10 @@ def _name(edition: Edition) -> str:
     return " ".join(part for part in (edition.title, edition.edition) if part) or edition.id
 
 
-def _dates(edition: Edition, on: date) -> str:
-    if edition.effective_from is not None and on < edition.effective_from:
-        return f"is in force only from {edition.effective_from}"
+def _dates(edition: Edition, project: Project) -> str:
+    on, start = project.permit_application_date, edition.effective_from
+    if on is not None and start is not None and on < start:
+        return f"is in force only from {start}"
     if edition.effective_until is not None:
         return f"was in force until {edition.effective_until}"
     return "is not in force"

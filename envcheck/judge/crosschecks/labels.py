@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from envcheck.judge.crosschecks import Check, Facts
-from envcheck.judge.readings import disagreement
+from envcheck.judge.figures import disagreement
 from envcheck.judge.words import lines_by_assembly, percent
 from envcheck.model.judged import Finding
 from envcheck.model.project import Assembly, FramedLayer

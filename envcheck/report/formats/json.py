@@ -21,7 +21,17 @@ LAYOUT = ("colour", "width", "bounds")
 def render(view: View) -> str:
     """Write the view as one JSON object; same view, same bytes."""
     kept = {name: plain(getattr(view, name)) for name in _names(View) if name not in LAYOUT}
-    return json.dumps({"schema_version": SCHEMA_VERSION, **kept}, indent=1) + "\n"
+    members = {"schema_version": SCHEMA_VERSION, **kept}
+    return (
+        "{\n" + ",\n".join(f'"{key}": {_member(each)}' for key, each in members.items()) + "\n}\n"
+    )
+
+
+def _member(value: object) -> str:
+    """One member of the report; of an array one item a line, which keeps differences readable."""
+    if not isinstance(value, list) or not value:
+        return json.dumps(value)
+    return "[\n " + ",\n ".join(map(json.dumps, value)) + "\n]"
 
 
 @cache

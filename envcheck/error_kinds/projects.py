@@ -1,0 +1,134 @@
+"""Kinds of errors in a project: references, amounts, sizes."""
+
+from __future__ import annotations
+
+from envcheck.error_kinds.kind import Kind
+
+KINDS = (
+    Kind(
+        "unknown-material",
+        "the material {name!r} is not known",
+        "{hint}",
+        "A material id that neither the project nor the library holds.",
+    ),
+    Kind(
+        "unknown-profile",
+        "the steel profile {name!r} is not known",
+        "{hint}",
+        "A profile id that the library does not hold; profiles can be described in place.",
+    ),
+    Kind(
+        "unknown-assembly",
+        "the assembly {name!r} is not in this file",
+        "{hint}",
+        "An element names an assembly that is not described.",
+    ),
+    Kind(
+        "unknown-surface",
+        "the surface {name!r} is not in this file",
+        "{hint}",
+        "An element names a surface that is not described.",
+    ),
+    Kind(
+        "unknown-element",
+        "the element {name!r} is not in this file",
+        "{hint}",
+        "A host, exception or answer names an element that is not there.",
+    ),
+    Kind(
+        "unknown-layer",
+        "the assembly has no layer titled {name!r}",
+        "{hint}",
+        "Fasteners name the title of the layer they cross.",
+    ),
+    Kind(
+        "unknown-category",
+        "the category {name!r} is not known",
+        "{hint}",
+        "Categories are a fixed list.",
+    ),
+    Kind(
+        "unknown-finding",
+        "the finding {name!r} is not known",
+        "{hint}",
+        "An answer names the id of a finding.",
+    ),
+    Kind(
+        "needs-one-of",
+        "{where} needs exactly one of {keys}",
+        "{hint}",
+        "A value that can be given in several ways, given in none or in several.",
+    ),
+    Kind(
+        "no-amount",
+        "the element has no amount",
+        "give net_area, gross_area, perimeter, or count with width and height",
+        "An element needs an area, a perimeter, or a count with a size.",
+    ),
+    Kind(
+        "two-amounts",
+        "the element has more than one amount",
+        "keep one: net_area, gross_area, perimeter, or count with width and height",
+        "Two amounts of one element may contradict each other.",
+    ),
+    Kind(
+        "wrong-amount",
+        "a {category} is measured by {measure}",
+        "{hint}",
+        "Slab edges are measured by their length, everything else by area.",
+    ),
+    Kind(
+        "net-over-gross",
+        "the net area is larger than the gross area",
+        "exchange the two, or keep the one that the drawing shows",
+        "An impossible area.",
+    ),
+    Kind(
+        "openings-over-host",
+        "the openings are larger than the element that holds them",
+        "check the counts and sizes of {openings}",
+        "Openings that name this element as host take up all of its gross area or more.",
+    ),
+    Kind(
+        "own-host",
+        "the element is its own host",
+        "name the wall or roof that the opening is cut from",
+        "An opening that names itself.",
+    ),
+    Kind(
+        "below-grade-over-gross",
+        "the area below grade is larger than the gross area",
+        "check both areas",
+        "An impossible area.",
+    ),
+    Kind(
+        "framing-too-wide",
+        "the members are as wide as their spacing or wider",
+        "check width and spacing",
+        "Members that leave no cavity.",
+    ),
+    Kind(
+        "shares-over-one",
+        "the shares leave no room: together {total}",
+        "check the shares",
+        "Shares of framing and headers, or of webs and joints, that take up all of the area.",
+    ),
+    Kind(
+        "too-thick",
+        "{key!r} is larger than {limit}",
+        "check both sizes",
+        "A part larger than what it lies in.",
+    ),
+    Kind(
+        "evidence-outside",
+        "the evidence lies outside the project's folder",
+        "copy the document into the project's folder and name it from there",
+        "Nothing in a project file reaches outside the folder that it lies in.",
+    ),
+    Kind(
+        "unknown-key",
+        "{key!r} is not a key of {where}",
+        "{hint}",
+        "A key that the format does not know, most often a misspelling.",
+    ),
+)
