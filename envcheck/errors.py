@@ -17,6 +17,8 @@ from envcheck.error_kinds import KINDS, Kind
 __all__ = ["KINDS", "InputError", "Kind", "Problem", "did_you_mean", "one_of", "problem"]
 
 MOST_NAMES = 12
+LONGEST = 1000
+"""Characters of one part of a message."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -73,10 +75,10 @@ def problem(
         kind,
         file,
         line,
-        kind.what.format(**fill),
+        visible(kind.what.format(**fill), LONGEST),
         visible(str(found)),
-        str(expected),
-        fix or kind.fix.format(**fill),
+        visible(str(expected), LONGEST),
+        visible(fix or kind.fix.format(**fill), LONGEST),
     )
 
 

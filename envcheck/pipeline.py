@@ -173,7 +173,7 @@ def _merged(findings: Iterable[Finding]) -> list[Finding]:
         key = (finding.check, finding.seen)
         known = found.get(key)
         subject = finding.subject if known is None else f"{known.subject}, {finding.subject}"
-        found[key] = replace(known or finding, subject=subject)
+        found[key] = (known or finding)._replace(subject=subject)
     return list(found.values())
 
 

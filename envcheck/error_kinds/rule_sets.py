@@ -21,7 +21,7 @@ KINDS = (
         "conditions-overlap",
         "two rows hold at once, the other one at {where}",
         "correct the conditions so that exactly one row is left for each case",
-        "Exactly one limit must remain for an element; which of two counts is never chosen at run time.",
+        "Exactly one limit must remain for an element; none of two is chosen at run time.",
     ),
     Kind(
         "dates-reversed",
@@ -39,13 +39,13 @@ KINDS = (
         "metric-not-executed",
         "{where}: this metric is not judged by this version",
         "leave the column or row out, and say so under `not_judged:`",
-        "The format knows metrics that are not computed yet; their limits would never be checked, so they are refused.",
+        "The format knows metrics that are not computed yet; their limits are refused.",
     ),
     Kind(
         "not-executed",
         "the rule set asks for {what}, which this version does not judge",
         "leave it out, and say so under `not_judged:`",
-        "Nothing of a rule set is passed over in silence: what is not judged yet is refused or remarked.",
+        "Nothing is passed over in silence: what is not judged yet is refused or remarked.",
     ),
     Kind(
         "paths-not-stated",
@@ -69,7 +69,7 @@ KINDS = (
         "rule-set-not-id",
         "a rule set is named by its id, not by a path",
         "write the folder's name alone; `--rules` names the folder that holds it",
-        "Ids are lower-case words joined by hyphens; nothing in a file reaches outside the folders of `--rules`.",
+        "Ids are lower-case words joined by hyphens; no file reaches outside `--rules`.",
     ),
     Kind(
         "undeclared-condition",
@@ -129,7 +129,7 @@ KINDS = (
         "unmapped-row",
         "the row fits no envcheck category",
         "say under `rows:` which category it covers",
-        "Every printed row is mapped to the categories that it covers, by its key or by `element:`.",
+        "Every printed row is mapped to categories, by its key or by `element:`.",
     ),
     Kind(
         "unreadable-condition",
@@ -147,7 +147,7 @@ KINDS = (
         "wrong-table-unit",
         "the unit of {key!r} is not one that its figures can have",
         "write the printed unit, with a point or star between its parts",
-        "U and C: Btu/(h.ft2.F) or W/(m2.K); R: h.ft2.F/Btu or (m2.K)/W; F: Btu/(h.ft.F) or W/(m.K).",
+        "U, C: Btu/(h.ft2.F), W/(m2.K); R: h.ft2.F/Btu, (m2.K)/W; F: Btu/(h.ft.F), W/(m.K).",
     ),
     Kind(
         "zones-overlap",

@@ -9,7 +9,7 @@ KINDS = (
         "blank-cell",
         "{where}: the cell is blank",
         "type the printed figure, NR where the code asks nothing, or - where it has no such case",
-        "A gap in a sheet. A blank would read as no limit, so it is refused; a table that leaves cells unprinted says `blank: not_printed`.",
+        "A blank would read as no limit; a table that leaves cells out says `blank: not_printed`.",
     ),
     Kind(
         "broken-csv",
@@ -27,7 +27,7 @@ KINDS = (
         "cell-not-executed",
         "{where}: this kind of cell is not judged by this version",
         "type a figure, or leave the row out and say so under `not_judged:`",
-        "The format knows rating bands, references to rows and lengths in words; they are not judged yet and never guessed.",
+        "Rating bands, references to rows and lengths in words are not judged yet.",
     ),
     Kind(
         "empty-sheet",
@@ -51,7 +51,7 @@ KINDS = (
         "merged-across-quantities",
         "{where}: the cell repeats one that holds another quantity",
         "type the figure instead of < or ^",
-        "`<` and `^` repeat a merged cell; between a U column and an R column that would be a wrong figure.",
+        "`<` and `^` repeat a merged cell; from a U column to an R column that is wrong.",
     ),
     Kind(
         "missing-row-key",

@@ -46,8 +46,7 @@ class PathResult(NamedTuple):
     why: str
 
 
-@dataclass(frozen=True, slots=True)
-class Comparison:
+class Comparison(NamedTuple):
     """A number held against a limit, in the printed unit."""
 
     value: float
@@ -103,8 +102,7 @@ class Line:
         return self.verdict not in SETTLED
 
 
-@dataclass(frozen=True, slots=True)
-class Finding:
+class Finding(NamedTuple):
     """What a cross-check saw."""
 
     check: str
@@ -122,8 +120,7 @@ class Finding:
     """The project's answer, where it gives one."""
 
 
-@dataclass(frozen=True, slots=True)
-class Ratio:
+class Ratio(NamedTuple):
     """An area ratio with its parts, m2."""
 
     name: str
@@ -137,8 +134,7 @@ class Ratio:
     missing: tuple[str, ...] = ()
 
 
-@dataclass(frozen=True, slots=True)
-class Mean:
+class Mean(NamedTuple):
     """An area-weighted mean that the project asks for."""
 
     group: str
@@ -152,8 +148,7 @@ class Mean:
     """What the individual cap says, in words."""
 
 
-@dataclass(frozen=True, slots=True)
-class Closing:
+class Closing(NamedTuple):
     """One surface's areas: gross = net + openings, m2."""
 
     surface: str

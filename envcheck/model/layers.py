@@ -6,11 +6,10 @@ where a thing starts, for messages of later stages.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from typing import NamedTuple
 
 
-@dataclass(frozen=True, slots=True)
-class Material:
+class Material(NamedTuple):
     """One material: conductivity, or a resistance for a stated thickness (then converted)."""
 
     id: str
@@ -30,8 +29,7 @@ class Material:
     combustible: bool = False
 
 
-@dataclass(frozen=True, slots=True)
-class Profile:
+class Profile(NamedTuple):
     """A cold-formed steel profile; lengths are overall dimensions in m."""
 
     id: str
@@ -51,28 +49,23 @@ class Profile:
 # ------------------------------------------------------------------------------------- layers
 
 
-@dataclass(frozen=True, slots=True)
-class Layer:
-    """What every layer has."""
+class MaterialLayer(NamedTuple):
+    """A homogeneous layer: ``thickness`` of ``material``."""
 
     kind: str
     title: str
     line: int
-
-
-@dataclass(frozen=True, slots=True)
-class MaterialLayer(Layer):
-    """A homogeneous layer: ``thickness`` of ``material``."""
-
     material: Material
     thickness: float
     """m"""
 
 
-@dataclass(frozen=True, slots=True)
-class ResistanceLayer(Layer):
+class ResistanceLayer(NamedTuple):
     """A layer of stated resistance (label, table, test); no conductivity is implied by it."""
 
+    kind: str
+    title: str
+    line: int
     resistance: float
     """m2 K/W"""
     thickness: float
@@ -83,19 +76,23 @@ class ResistanceLayer(Layer):
     evidence: str
 
 
-@dataclass(frozen=True, slots=True)
-class ContactLayer(Layer):
+class ContactLayer(NamedTuple):
     """A contact resistance between two faces."""
 
+    kind: str
+    title: str
+    line: int
     resistance: float
     """m2 K/W"""
     source: str
 
 
-@dataclass(frozen=True, slots=True)
-class AirSpaceLayer(Layer):
+class AirSpaceLayer(NamedTuple):
     """An air space across the whole area."""
 
+    kind: str
+    title: str
+    line: int
     thickness: float
     """m"""
     ventilation: str
@@ -104,8 +101,7 @@ class AirSpaceLayer(Layer):
     """Of the outer and the inner face; 0.9 where nothing is said."""
 
 
-@dataclass(frozen=True, slots=True)
-class Fill:
+class Fill(NamedTuple):
     """What fills a cavity: exactly one of material, label or air."""
 
     material: Material | None = None
@@ -120,8 +116,7 @@ class Fill:
     evidence: str = ""
 
 
-@dataclass(frozen=True, slots=True)
-class Member:
+class Member(NamedTuple):
     """What stands between the cavities of a framed layer."""
 
     material: Material
@@ -132,8 +127,7 @@ class Member:
     profile: Profile | None = None
 
 
-@dataclass(frozen=True, slots=True)
-class Extra:
+class Extra(NamedTuple):
     """Plates, sills, headers: a share of the wall area beside the members."""
 
     title: str
@@ -144,10 +138,12 @@ class Extra:
     """m of that material that counts in the direction of heat flow"""
 
 
-@dataclass(frozen=True, slots=True)
-class FramedLayer(Layer):
+class FramedLayer(NamedTuple):
     """Members at a spacing with infill between them."""
 
+    kind: str
+    title: str
+    line: int
     thickness: float
     """Depth of the layer, m."""
     member: Member
@@ -163,10 +159,12 @@ class FramedLayer(Layer):
     """The layer is insulation outside (or inside) the main framing that members interrupt."""
 
 
-@dataclass(frozen=True, slots=True)
-class MasonryLayer(Layer):
+class MasonryLayer(NamedTuple):
     """Units with shells and webs (hollow or filled), or solid units with joints."""
 
+    kind: str
+    title: str
+    line: int
     thickness: float
     """m"""
     material: Material
@@ -188,10 +186,12 @@ class MasonryLayer(Layer):
     """Stated weight per area, kg/m2, for class tests; None = from the densities."""
 
 
-@dataclass(frozen=True, slots=True)
-class TaperedLayer(Layer):
+class TaperedLayer(NamedTuple):
     """Insulation of varying thickness."""
 
+    kind: str
+    title: str
+    line: int
     material: Material
     least: float
     """m"""
@@ -201,8 +201,7 @@ class TaperedLayer(Layer):
     """``rectangle``, ``triangle_thickest_apex``, ``triangle_thinnest_apex``."""
 
 
-@dataclass(frozen=True, slots=True)
-class Fasteners:
+class Fasteners(NamedTuple):
     """Mechanical fasteners through an insulating layer."""
 
     layer: str
@@ -217,8 +216,7 @@ class Fasteners:
     line: int
 
 
-@dataclass(frozen=True, slots=True)
-class Bridge:
+class Bridge(NamedTuple):
     """A linear or point bridge added to the clear field."""
 
     kind: str
@@ -232,3 +230,15 @@ class Bridge:
     source: str
     evidence: str
     line: int
+
+
+Layer = (
+    MaterialLayer
+    | ResistanceLayer
+    | ContactLayer
+    | AirSpaceLayer
+    | FramedLayer
+    | MasonryLayer
+    | TaperedLayer
+)
+"""Every layer has a kind, a title and a line; the order in an assembly is from outside in."""

@@ -8,6 +8,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass, field
 from datetime import date
+from typing import NamedTuple
 
 from envcheck.model.layers import (
     AirSpaceLayer,
@@ -63,8 +64,7 @@ __all__ = [
 # --------------------------------------------------------------------------------- assemblies
 
 
-@dataclass(frozen=True, slots=True)
-class Declared:
+class Declared(NamedTuple):
     """The value printed on the drawing."""
 
     value: float
@@ -75,8 +75,7 @@ class Declared:
     sheet: str
 
 
-@dataclass(frozen=True, slots=True)
-class Window:
+class Window(NamedTuple):
     """ISO 10077-1 parts of a window or door: whole unit from glass, frame and spacer."""
 
     width: float
@@ -90,8 +89,7 @@ class Window:
     sources: tuple[str, ...] = ()
 
 
-@dataclass(frozen=True, slots=True)
-class Rated:
+class Rated(NamedTuple):
     """A tested or rated whole product."""
 
     u_factor: float | None
@@ -108,8 +106,7 @@ class Rated:
     """File in the project's folder, or a reference; may be empty."""
 
 
-@dataclass(frozen=True, slots=True)
-class Slab:
+class Slab(NamedTuple):
     """A slab on the ground."""
 
     insulation: str
@@ -129,8 +126,7 @@ class Slab:
     area: float | None
 
 
-@dataclass(frozen=True, slots=True)
-class Assembly:
+class Assembly(NamedTuple):
     """One construction: layers from outside to inside, or a product, slab or window."""
 
     id: str
@@ -168,8 +164,7 @@ class Opening:
     """Tag of the element that it is cut from, where that is stated."""
 
 
-@dataclass(frozen=True, slots=True)
-class Surface:
+class Surface(NamedTuple):
     """A facade, roof or floor as drawn: gross area and what the drawing shows on it."""
 
     name: str
@@ -188,8 +183,7 @@ class Surface:
     """Of the space behind it, where that is not the project's."""
 
 
-@dataclass(frozen=True, slots=True)
-class Fact:
+class Fact(NamedTuple):
     """A value that a condition of a rule set asks for."""
 
     name: str
@@ -237,8 +231,7 @@ class Element:
     note: str = ""
 
 
-@dataclass(frozen=True, slots=True)
-class ExceptionClaim:
+class ExceptionClaim(NamedTuple):
     """A clause that somebody claims for an element."""
 
     element: str
@@ -251,8 +244,7 @@ class ExceptionClaim:
     line: int
 
 
-@dataclass(frozen=True, slots=True)
-class RuleSetChoice:
+class RuleSetChoice(NamedTuple):
     """One rule set to judge by."""
 
     id: str
@@ -260,8 +252,7 @@ class RuleSetChoice:
     line: int
 
 
-@dataclass(frozen=True, slots=True)
-class ZoneStated:
+class ZoneStated(NamedTuple):
     """Zone of the site under one rule set (or any, with an empty id)."""
 
     ruleset: str
@@ -270,8 +261,7 @@ class ZoneStated:
     line: int
 
 
-@dataclass(frozen=True, slots=True)
-class Site:
+class Site(NamedTuple):
     """Where the building stands."""
 
     place: str

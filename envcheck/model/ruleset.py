@@ -8,10 +8,10 @@ from __future__ import annotations
 
 from dataclasses import dataclass, field
 from datetime import date
+from typing import NamedTuple
 
 
-@dataclass(frozen=True, slots=True)
-class Term:
+class Term(NamedTuple):
     """One number of a cell: ``13``, ``9ci``, ``R-15 for 24 in``."""
 
     number: float
@@ -30,8 +30,7 @@ class Term:
         return len(self.text.partition(".")[2])
 
 
-@dataclass(frozen=True, slots=True)
-class Condition:
+class Condition(NamedTuple):
     """A condition on one dimension: words, or an interval with open or closed ends."""
 
     dimension: str
@@ -55,8 +54,7 @@ class Condition:
         return above and below
 
 
-@dataclass(frozen=True, slots=True)
-class Dimension:
+class Dimension(NamedTuple):
     """What a condition may ask for."""
 
     name: str
@@ -70,8 +68,7 @@ class Dimension:
     """Drawing where the fact belongs ("mechanical schedule"), for the missing-fact message."""
 
 
-@dataclass(frozen=True, slots=True)
-class Note:
+class Note(NamedTuple):
     """A footnote of a table."""
 
     mark: str
@@ -81,8 +78,7 @@ class Note:
     """The program cannot decide it: the verdict becomes ``official_decides``."""
 
 
-@dataclass(frozen=True, slots=True)
-class Limit:
+class Limit(NamedTuple):
     """One cell in long form."""
 
     id: str
@@ -124,8 +120,7 @@ class Limit:
 # -------------------------------------------------------------------------------- conventions
 
 
-@dataclass(frozen=True, slots=True)
-class FilmRow:
+class FilmRow(NamedTuple):
     """A surface resistance for a side, what lies beyond it and the direction of heat flow."""
 
     side: str
@@ -141,8 +136,7 @@ class FilmRow:
     source: str
 
 
-@dataclass(frozen=True, slots=True)
-class MethodRule:
+class MethodRule(NamedTuple):
     """The method that the rule set prescribes for a class of construction."""
 
     category: str
@@ -155,8 +149,7 @@ class MethodRule:
     """Of the upper limit, for the weighted rule."""
 
 
-@dataclass(frozen=True, slots=True)
-class ClassTest:
+class ClassTest(NamedTuple):
     """The test that keeps an element in the class claimed: mass, or light let through."""
 
     category: str
@@ -176,8 +169,7 @@ class ClassTest:
     """Class of an element that fails; empty = by its framing."""
 
 
-@dataclass(frozen=True, slots=True)
-class TableRow:
+class TableRow(NamedTuple):
     """One row of a coefficient table: cavity factors, effective layers, F-factors, air spaces.
 
     Keys and values by column; SI numbers, words as text.
@@ -222,8 +214,7 @@ class Conventions:
     """Key -> "Table 5 of the rule set" or "default of envcheck"."""
 
 
-@dataclass(frozen=True, slots=True)
-class AreaLimit:
+class AreaLimit(NamedTuple):
     """An area cap and the rows that it closes."""
 
     of: str
@@ -234,8 +225,7 @@ class AreaLimit:
     """Category patterns whose rows do not apply above the cap."""
 
 
-@dataclass(frozen=True, slots=True)
-class Averaging:
+class Averaging(NamedTuple):
     """A mean that the code permits."""
 
     clause: str
@@ -250,8 +240,7 @@ class Averaging:
     """m2"""
 
 
-@dataclass(frozen=True, slots=True)
-class Trigger:
+class Trigger(NamedTuple):
     """Alterations: the target applies where more than ``share`` of an element is renewed."""
 
     share: float
@@ -259,16 +248,14 @@ class Trigger:
     text: str
 
 
-@dataclass(frozen=True, slots=True)
-class ExceptionClause:
+class ExceptionClause(NamedTuple):
     """A clause that lets an official waive a row."""
 
     clause: str
     text: str
 
 
-@dataclass(frozen=True, slots=True)
-class Zones:
+class Zones(NamedTuple):
     """How the site's zone is found."""
 
     order: tuple[str, ...]
@@ -281,8 +268,7 @@ class Zones:
     """Letters that fall back to the plain zone."""
 
 
-@dataclass(frozen=True, slots=True)
-class Edition:
+class Edition(NamedTuple):
     """One document in the chain of a folded rule set."""
 
     id: str

@@ -117,8 +117,7 @@ class Caution(NamedTuple):
     reason: str
 
 
-@dataclass(frozen=True, slots=True)
-class Setting:
+class Setting(NamedTuple):
     """Everything that fixes the value of an assembly beside its own description.
 
     Hashable: an assembly is solved once per distinct setting. Resolved from the element and the
@@ -176,8 +175,7 @@ class Solved:
     """The shortest sum that a reviewer can repeat; usually one step."""
 
 
-@dataclass(frozen=True, slots=True)
-class Properties:
+class Properties(NamedTuple):
     """What an assembly is before any method: class tests, insulation path, what it is made of."""
 
     heat_capacity: float | None

@@ -13,7 +13,6 @@ A cell is read for one metric at a time: :class:`Grammar` says what row and colu
 from __future__ import annotations
 
 import re
-from dataclasses import replace
 from functools import lru_cache
 from typing import NamedTuple
 
@@ -186,7 +185,8 @@ def _part(text: str, grammar: Grammar, role: str) -> tuple[Term, ...]:
         raise CellError("unreadable-cell", f"at most {len(grammar.plus)} figures in a sum")
     roles = grammar.plus or (role,) * len(terms)
     return tuple(
-        t if t.role else replace(t, role=role or r) for t, r in zip(terms, roles, strict=False)
+        t if t.role else Term(t.number, t.text, role or r, t.extent, t.metric)
+        for t, r in zip(terms, roles, strict=False)
     )
 
 

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from dataclasses import replace
 from typing import Any, NamedTuple
 
 from envcheck.errors import Problem, did_you_mean, one_of, problem
@@ -166,7 +165,7 @@ def _sheet(
 def _replacing(limit: Limit, base: tuple[Limit, ...]) -> Limit:
     if not base:
         return limit
-    return replace(limit, replaced=f"{base[0].cell} ({base[0].ruleset}, {base[0].clause})")
+    return limit._replace(replaced=f"{base[0].cell} ({base[0].ruleset}, {base[0].clause})")
 
 
 def _check_amended(

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
 from envcheck.model.project import Extra, FramedLayer, Layer, Material, Member, Profile
 from envcheck.read.context import MATCHES, NAN, Context
 from envcheck.read.fills import read_fill
@@ -131,7 +129,7 @@ def with_crossed_insulation(layers: list[Layer]) -> tuple[Layer, ...]:
     ]
     main = max(carrying)[1] if carrying else -1
     return tuple(
-        replace(layer, crosses_insulation=True)
+        layer._replace(crosses_insulation=True)
         if isinstance(layer, FramedLayer) and place != main and _interrupts(layer)
         else layer
         for place, layer in enumerate(layers)

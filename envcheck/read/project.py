@@ -5,7 +5,6 @@ from __future__ import annotations
 import gc
 from collections.abc import Callable, Iterator
 from contextlib import contextmanager
-from dataclasses import replace
 from difflib import get_close_matches
 from hashlib import sha256
 from pathlib import Path as FilePath
@@ -171,7 +170,7 @@ def _heated_as_stated(assembly: Assembly, facts: tuple[Fact, ...]) -> Assembly:
     stated = next((fact.value for fact in facts if fact.name == "slab_heated"), None)
     if assembly.slab is None or assembly.slab.heated is not None or stated not in ("yes", "no"):
         return assembly
-    return replace(assembly, slab=replace(assembly.slab, heated=stated == "yes"))
+    return assembly._replace(slab=assembly.slab._replace(heated=stated == "yes"))
 
 
 def _rule_sets(sections: _Sections) -> tuple[RuleSetChoice, ...]:

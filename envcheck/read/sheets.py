@@ -19,6 +19,7 @@ from envcheck.read.cells import CellError, split_marks
 LARGEST = 2_000_000
 """Bytes; no printed table is larger."""
 WHEN = "when:"
+_CONTROL = re.compile("[\x00-\x08\x0b\x0c\x0e-\x1f\x7f-\x9f\u202a-\u202e\u2066-\u2069]")
 _PLAIN = re.compile(r"[\w-][\w.-]*\.csv")
 
 
@@ -87,9 +88,11 @@ def read_text(path: Path, shown: str, problems: list[Problem]) -> str | None:
         found = f"byte 0x{data[error.start]:02x}"
         problems.append(problem("wrong-encoding", shown, line, found=found))
         return None
-    if "\0" in text:
-        line = text[: text.index("\0")].count("\n") + 1
-        problems.append(problem("wrong-encoding", shown, line, found="a NUL byte"))
+    control = _CONTROL.search(text)
+    if control:
+        line = text.count("\n", 0, control.start()) + 1
+        found = f"U+{ord(control[0]):04X}"
+        problems.append(problem("control-character", shown, line, found=found))
         return None
     return text
 

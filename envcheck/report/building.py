@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from envcheck import units
 from envcheck.model.judged import Closing, Judged, Mean, Ratio
@@ -10,8 +10,7 @@ from envcheck.report import numbers, wording
 from envcheck.report.inert import clean
 
 
-@dataclass(frozen=True, slots=True)
-class RatioView:
+class RatioView(NamedTuple):
     """An area ratio with its parts."""
 
     name: str
@@ -22,8 +21,7 @@ class RatioView:
     missing: tuple[str, ...]
 
 
-@dataclass(frozen=True, slots=True)
-class MeanView:
+class MeanView(NamedTuple):
     """An area-weighted mean."""
 
     rule_set: str
@@ -34,8 +32,7 @@ class MeanView:
     cap: str
 
 
-@dataclass(frozen=True, slots=True)
-class ClosingView:
+class ClosingView(NamedTuple):
     """Gross = net + openings of one surface."""
 
     surface: str
@@ -44,8 +41,7 @@ class ClosingView:
     state: str
 
 
-@dataclass(frozen=True, slots=True)
-class Building:
+class Building(NamedTuple):
     """Everything about the building as a whole."""
 
     ratios: tuple[RatioView, ...]

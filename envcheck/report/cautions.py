@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from envcheck.model.judged import Judged
 from envcheck.model.project import Project
@@ -71,8 +71,7 @@ CONCEALED = ("wall.wood_frame", "wall.steel_frame", "roof.attic", "roof.rafter")
 """Categories whose cavities hold wiring and hot items, where an existing one is filled."""
 
 
-@dataclass(frozen=True, slots=True)
-class CautionText:
+class CautionText(NamedTuple):
     """One caution with what triggered it; no reasons where it always stands."""
 
     topic: str

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from envcheck import units
 from envcheck.model.judged import Line
@@ -13,8 +13,7 @@ from envcheck.report import numbers, wording
 from envcheck.report.inert import clean
 
 
-@dataclass(frozen=True, slots=True)
-class LayerView:
+class LayerView(NamedTuple):
     """One layer as listed."""
 
     title: str
@@ -25,8 +24,7 @@ class LayerView:
     note: str
 
 
-@dataclass(frozen=True, slots=True)
-class BesideView:
+class BesideView(NamedTuple):
     """A value by another route."""
 
     name: str
@@ -36,8 +34,7 @@ class BesideView:
     note: str
 
 
-@dataclass(frozen=True, slots=True)
-class AssemblyView:
+class AssemblyView(NamedTuple):
     """One assembly solved under one setting."""
 
     assembly: str

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from envcheck.model.judged import Judged, Line
 from envcheck.model.project import Assembly, Element, Fact, Project
@@ -16,8 +16,7 @@ from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, 
 from envcheck.report.view import ViewOptions, system_for
 
 
-@dataclass(frozen=True, slots=True)
-class Explained:
+class Explained(NamedTuple):
     """The page of one element or assembly."""
 
     subject: str

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from envcheck.model.judged import Line
 from envcheck.model.project import Project
@@ -13,8 +13,7 @@ from envcheck.report.inert import clean
 from envcheck.report.parts import Pair
 
 
-@dataclass(frozen=True, slots=True)
-class Convention:
+class Convention(NamedTuple):
     """How this code counts one thing, and where that is said."""
 
     topic: str
@@ -22,8 +21,7 @@ class Convention:
     where: str
 
 
-@dataclass(frozen=True, slots=True)
-class RuleSetView:
+class RuleSetView(NamedTuple):
     """A rule set as the head names it."""
 
     id: str

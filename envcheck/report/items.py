@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from envcheck.model.judged import Finding, Judged, Line
 from envcheck.model.project import Project
@@ -12,8 +12,7 @@ from envcheck.report.inert import clean
 from envcheck.report.rows import Row
 
 
-@dataclass(frozen=True, slots=True)
-class Item:
+class Item(NamedTuple):
     """Something that waits for somebody, with where it belongs."""
 
     subject: str
@@ -22,8 +21,7 @@ class Item:
     lines: tuple[str, ...]
 
 
-@dataclass(frozen=True, slots=True)
-class FindingView:
+class FindingView(NamedTuple):
     """What a cross-check saw, in words."""
 
     check: str

@@ -2,33 +2,29 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from typing import NamedTuple
 
 
-@dataclass(frozen=True, slots=True)
-class Pair:
+class Pair(NamedTuple):
     """A label and what it says."""
 
     label: str
     text: str
 
 
-@dataclass(frozen=True, slots=True)
-class Paragraph:
+class Paragraph(NamedTuple):
     """Running text."""
 
     text: str
 
 
-@dataclass(frozen=True, slots=True)
-class Facts:
+class Facts(NamedTuple):
     """Labels and texts below each other."""
 
     pairs: tuple[Pair, ...]
 
 
-@dataclass(frozen=True, slots=True)
-class Entry:
+class Entry(NamedTuple):
     """One item of a list: a head and lines beneath it."""
 
     head: str
@@ -37,16 +33,14 @@ class Entry:
     """Lines of arithmetic, set off as such."""
 
 
-@dataclass(frozen=True, slots=True)
-class Items:
+class Items(NamedTuple):
     """A list; ``numbered`` counts from 1."""
 
     entries: tuple[Entry, ...]
     numbered: bool = False
 
 
-@dataclass(frozen=True, slots=True)
-class Grid:
+class Grid(NamedTuple):
     """A table of text cells."""
 
     heads: tuple[str, ...]
@@ -62,16 +56,14 @@ class Grid:
 Block = Paragraph | Facts | Items | Grid
 
 
-@dataclass(frozen=True, slots=True)
-class Section:
+class Section(NamedTuple):
     """A heading (may be empty) and its blocks."""
 
     heading: str
     blocks: tuple[Block, ...]
 
 
-@dataclass(frozen=True, slots=True)
-class Page:
+class Page(NamedTuple):
     """A title and sections."""
 
     title: str

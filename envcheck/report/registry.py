@@ -8,17 +8,18 @@ the page of ``envcheck explain``.
 from __future__ import annotations
 
 from collections.abc import Callable
-from dataclasses import dataclass
 from functools import cache
 from importlib import import_module
 from pkgutil import iter_modules
+from typing import TYPE_CHECKING, NamedTuple
 
-from envcheck.report.explain import Explained
 from envcheck.report.view import View
 
+if TYPE_CHECKING:
+    from envcheck.report.explain import Explained
 
-@dataclass(frozen=True, slots=True)
-class Format:
+
+class Format(NamedTuple):
     """One way to lay a view out."""
 
     name: str

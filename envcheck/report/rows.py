@@ -3,8 +3,8 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from dataclasses import dataclass
 from itertools import starmap
+from typing import NamedTuple
 
 from envcheck import units
 from envcheck.model.judged import Comparison, Line, PathResult
@@ -14,8 +14,7 @@ from envcheck.report.inert import clean
 from envcheck.report.parts import Pair
 
 
-@dataclass(frozen=True, slots=True)
-class Figure:
+class Figure(NamedTuple):
     """A number as printed."""
 
     text: str
@@ -30,8 +29,7 @@ class Figure:
 NO_FIGURE = Figure("", "")
 
 
-@dataclass(frozen=True, slots=True)
-class PathRow:
+class PathRow(NamedTuple):
     """One of several paths of a line."""
 
     path: str
@@ -41,8 +39,7 @@ class PathRow:
     why: str
 
 
-@dataclass(frozen=True, slots=True)
-class Row:
+class Row(NamedTuple):
     """One line of the check."""
 
     rule_set: str

@@ -7,7 +7,7 @@ input gives the same view, since nothing here asks for the clock or the environm
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from envcheck import __version__
 from envcheck.model.judged import Judged, Line
@@ -23,8 +23,7 @@ from envcheck.report.parts import Pair
 from envcheck.report.rows import Row
 
 
-@dataclass(frozen=True, slots=True)
-class ViewOptions:
+class ViewOptions(NamedTuple):
     """What the reader asks for."""
 
     units: str = ""
@@ -40,8 +39,7 @@ class ViewOptions:
     """A column with the bounds of the drawn model."""
 
 
-@dataclass(frozen=True, slots=True)
-class View:
+class View(NamedTuple):
     """A whole report."""
 
     title: str

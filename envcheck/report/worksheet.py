@@ -9,7 +9,7 @@ lines that convert stand before and behind it.
 from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
-from dataclasses import dataclass, field
+from typing import NamedTuple
 
 from envcheck import units
 from envcheck.model.solved import Operand, Step
@@ -22,8 +22,7 @@ COHERENT = 1e-7
 """Most by which a formula that holds in both systems may differ between them: noise."""
 
 
-@dataclass(frozen=True, slots=True)
-class Line:
+class Line(NamedTuple):
     """One printed step."""
 
     symbol: str
@@ -45,17 +44,17 @@ class Line:
         return f"{self.symbol} = {middle}{self.result} {self.unit}".rstrip()
 
 
-@dataclass(slots=True)
 class _Sheet:
     """What has been printed so far."""
 
-    system: str
-    digits: int
-    lines: list[Line] = field(default_factory=list)
-    given: dict[str, float] = field(default_factory=dict)
-    """Symbol -> exact SI value."""
-    printed: dict[str, dict[str, str]] = field(default_factory=dict)
-    """Symbol -> unit -> printed result; the first unit is the one it was computed in."""
+    def __init__(self, system: str, digits: int) -> None:
+        self.system = system
+        self.digits = digits
+        self.lines: list[Line] = []
+        self.given: dict[str, float] = {}
+        """Symbol -> exact SI value."""
+        self.printed: dict[str, dict[str, str]] = {}
+        """Symbol -> unit -> printed result; the first unit is the one it was computed in."""
 
 
 def write(steps: Iterable[Step], system: str, digits: int = OPERAND_DIGITS) -> tuple[Line, ...]:

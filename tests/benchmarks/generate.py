@@ -13,8 +13,8 @@ site:
 facts: {space_category: conditioned, slab_heated: false}
 rule_sets: [merrow-2025]
 materials:
-  board: {title: board, conductivity: 0.16 W/(m*K), density: 800 kg/m3, specific_heat: 1000 J/(kg*K),
-          class: board, source: invented, evidence: assumed}
+  board: {title: board, conductivity: 0.16 W/(m*K), density: 800 kg/m3,
+          specific_heat: 1000 J/(kg*K), class: board, source: invented, evidence: assumed}
   foam: {title: foam, conductivity: 0.034 W/(m*K), density: 30 kg/m3, specific_heat: 1450 J/(kg*K),
          class: insulation, combustible: true, source: invented, evidence: assumed}
   wool: {title: wool, conductivity: 0.037 W/(m*K), density: 30 kg/m3, specific_heat: 1030 J/(kg*K),

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
 from datetime import date
 from typing import Any
 
@@ -377,6 +376,6 @@ def beside_each_other(*branches: tuple[float, Series]) -> Parallel:
 __all__ = [
     "STEEL", "WOOD", "WOOL", "XPS", "Beside", "LayerRow", "Node", "Opening", "RuleSetChoice",
     "assembly", "beside_each_other", "board", "check", "comparison", "edition", "element", "facts",
-    "insulation", "limit", "line", "path", "properties", "r", "rated", "replace", "ruleset", "run",
+    "insulation", "limit", "line", "path", "properties", "r", "rated", "ruleset", "run",
     "setting", "solved", "stud", "surface", "u",
 ]  # fmt: skip

@@ -2,11 +2,10 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
 import pytest
 
 from envcheck.judge.building import closings
+from tests.changed import changed
 from tests.judge import crosscheck_models as m
 
 FT2 = 0.09290304
@@ -14,7 +13,7 @@ FT2 = 0.09290304
 
 def given(elements, surfaces, assemblies=(), **more):
     made = m.facts(tuple(assemblies), tuple(elements), tuple(surfaces), **more)
-    return replace(made, closings=closings(made.project))
+    return changed(made, closings=closings(made.project))
 
 
 def test_a_surface_that_does_not_close():
@@ -100,7 +99,7 @@ def hatch_roof(mark, **more):
         m.assembly("HT1", sheet="A-522/4", layers=(m.board("R-0.94"),), **more),
     )
     surface = m.surface("Roof", 8200 * FT2, HT1=mark)
-    return given([attic, other], [replace(surface, kind="roof")], assemblies, lines=lines)
+    return given([attic, other], [changed(surface, kind="roof")], assemblies, lines=lines)
 
 
 @pytest.mark.parametrize(
@@ -117,8 +116,8 @@ def test_a_hatch_left_out_turns_the_mean(mark):
 
 def test_no_mean_where_nobody_can_tell_the_area_or_the_field():
     made = hatch_roof(m.Opening("HT1", 1))
-    closed = tuple(replace(c, missing=0.0) for c in made.closings)
-    (found,) = m.run("drawn-not-entered", replace(made, closings=closed))
+    closed = tuple(changed(c, missing=0.0) for c in made.closings)
+    (found,) = m.run("drawn-not-entered", changed(made, closings=closed))
     assert found.suggests == "the element is left out"
     (other,) = m.run("drawn-not-entered", hatch_roof(m.Opening("HT1", 1, 1.0, host="elsewhere")))
     assert "mean" not in other.suggests

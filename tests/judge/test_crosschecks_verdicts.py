@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
 from datetime import date
 
 import pytest
@@ -10,13 +9,14 @@ import pytest
 from envcheck.judge.crosschecks import checks, findings
 from envcheck.model.judged import PathResult
 from envcheck.model.project import ExceptionClaim
+from tests.changed import changed
 from tests.judge import crosscheck_models as m
 
 
 def hangs(*lines, refused=("parallel_path",)):
     elements = tuple(m.element(line.element) for line in lines)
     answer = m.solved(m.u(0.0647), setting=m.setting("cavity_factor", refused=refused))
-    lines = tuple(replace(line, solved=answer) for line in lines)
+    lines = tuple(changed(line, solved=answer) for line in lines)
     return m.run("hangs-on-method", m.facts((m.assembly(),), elements, lines=lines))
 
 
@@ -57,7 +57,7 @@ def test_on_which_side_the_bracket_lies(verdict, value, low, high, words):
 
 def test_no_flag_no_settled_verdict_or_another_path_is_no_finding():
     by_labels = (PathResult("insulation", "pass", "13 + 9ci", "13+9ci", ""),)
-    assert not hangs(replace(flagged(), flags=()))
+    assert not hangs(changed(flagged(), flags=()))
     assert not hangs(flagged(verdict="official_decides"))
     assert not hangs(flagged(verdict="pass", paths=by_labels))
     assert not hangs(flagged(decides=False))
@@ -104,7 +104,7 @@ def test_an_amendment_or_a_draft_out_of_its_dates_is_a_note():
     (found,) = superseded(m.edition(), late)
     assert (found.severity, found.subject) == ("N", "town")
     assert found.suggests == "the amendment is not applied"
-    (draft,) = superseded(replace(late, id="x"), decides=False)
+    (draft,) = superseded(changed(late, id="x"), decides=False)
     assert draft.severity == "N"
 
 
@@ -131,7 +131,7 @@ def test_a_claim_without_evidence():
 def test_an_answer_goes_with_its_finding():
     given, _ = claimed("", False)
     answers = (("exception-without-evidence N-W1", "order follows by mail"),)
-    answered = replace(given, project=replace(given.project, accepted=answers))
+    answered = changed(given, project=changed(given.project, accepted=answers))
     (found,) = findings(answered)
     assert found.answered == "order follows by mail"
 

@@ -6,7 +6,6 @@ in codes with climate zones and amendments, no source.
 
 from __future__ import annotations
 
-from dataclasses import replace
 from datetime import date
 from time import perf_counter
 
@@ -26,6 +25,7 @@ from envcheck.model.ruleset import (
     Term,
     Zones,
 )
+from tests.changed import changed
 
 DAY = date(2026, 3, 2)
 
@@ -170,7 +170,7 @@ def test_zones_that_cannot_be_found() -> None:
 def test_a_zone_stated_for_another_rule_set_is_not_taken() -> None:
     other = Site("nowhere", (ZoneStated("elsewhere", "Z1", "map", 3), ZoneStated("", "Z2", "", 4)))
     assert find_zone(rules(), other).heads == ("Z2",)
-    mine = replace(other, zones=(*other.zones, ZoneStated("town", "Z3", "map", 5)))
+    mine = changed(other, zones=(*other.zones, ZoneStated("town", "Z3", "map", 5)))
     assert find_zone(rules(), mine).heads == ("Z3 and Z2w",)
 
 
@@ -315,7 +315,7 @@ def test_two_rows_that_differ_are_both_named() -> None:
 
 
 def test_a_zone_in_two_printed_zones_of_one_table_is_two_rows() -> None:
-    both = replace(ZONES, members={"Z1": ("Z5",), "Z2": ("Z5",)})
+    both = changed(ZONES, members={"Z1": ("Z5",), "Z2": ("Z5",)})
     ruleset = rules(limit("Z1", "wall.mass", "0.4"), limit("Z2", "wall.mass", "0.3"), zones=both)
     assert pick(ruleset, element(), project(site("Z5"))).outcome("U_assembly").state == "two_rows"
 
@@ -329,7 +329,7 @@ def test_the_trail_tells_every_step_in_order() -> None:
     )
     note = Note("a", "info", "a remark", False)
     wall = limit("Z2", "wall.mass", "0.30", words("space", "heated"), notes=(note,))
-    ruleset = rules(replace(wall, replaced="0.35 (old, Table 1)"), chain=(BASE, later))
+    ruleset = rules(changed(wall, replaced="0.35 (old, Table 1)"), chain=(BASE, later))
     trail = pick(ruleset, element(space="heated")).trail
     assert [c.step for c in trail] == [
         "date", "edition", "amendment", "zone", "row", "condition", "footnote",
@@ -342,7 +342,7 @@ def test_the_trail_tells_every_step_in_order() -> None:
 
 
 def test_an_edition_not_in_force_decides_nothing() -> None:
-    early = replace(BASE, effective_from=date(2027, 1, 1), in_force=False)
+    early = changed(BASE, effective_from=date(2027, 1, 1), in_force=False)
     found = pick(rules(limit("Z2", "wall.mass", "0.3"), chain=(early,)), element())
     assert (found.state, found.verdict) == ("not_in_force", "not_decided")
     assert "2027-01-01" in found.reason and "2026-03-02" in found.reason
@@ -359,7 +359,7 @@ def test_equal_elements_share_one_selection_and_others_do_not() -> None:
 
 def test_a_thousand_elements_cost_little() -> None:
     of = project(space="heated")
-    elements = [replace(element(), tag=f"E{i}") for i in range(1000)]
+    elements = [changed(element(), tag=f"E{i}") for i in range(1000)]
     started = perf_counter()
     for own in elements:
         pick(BY_SPACE, own, of)

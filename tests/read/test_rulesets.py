@@ -8,7 +8,6 @@ from __future__ import annotations
 
 import json
 import shutil
-from dataclasses import replace
 from datetime import date
 from pathlib import Path
 
@@ -20,6 +19,7 @@ from envcheck.read.rule_documents import known_ids
 from envcheck.read.rulesets import default_folders, find, read_ruleset
 from envcheck.read.schema import schema_text
 from envcheck.read.yaml_reader import read_yaml
+from tests.changed import changed
 from tests.read.names import NAMES as FEW
 
 HERE = Path(__file__).parent.parent
@@ -29,7 +29,7 @@ METHODS = (
     "series", "parallel_path", "isothermal_planes", "weighted", "cavity_factor", "effective_layer",
     "two_dimensional", "c_factor", "f_factor", "iso13370_slab", "iso10077_window", "rated",
 )  # fmt: skip
-NAMES = replace(FEW, methods=METHODS)
+NAMES = changed(FEW, methods=METHODS)
 DAY = date(2026, 3, 2)
 R_IP = 3600 * 0.3048**2 * (5 / 9) / 1055.05585262
 

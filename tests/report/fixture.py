@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from dataclasses import replace
 from datetime import date
+from typing import Any, TypeVar
 
 from envcheck.model.judged import (
     Choice,
@@ -53,6 +54,15 @@ from envcheck.model.solved import (
 )
 from envcheck.units import to_si
 
+Record = TypeVar("Record")
+
+
+def changed(record: Record, **more: Any) -> Record:
+    """A copy with other values, of a dataclass or a named tuple."""
+    renew = getattr(record, "_replace", None)
+    return renew(**more) if renew else replace(record, **more)  # type: ignore[type-var]
+
+
 R_UNIT = "h*ft2*degF/Btu"
 U_UNIT = "Btu/(h ft2 F)"
 
@@ -86,7 +96,7 @@ def element(tag: str, name: str, category: str, area: float, **more: object) -> 
         adjoins="outdoors", facing="N", tilt=90.0, depth_below_grade=None, insulated_depth=None,
         renewed=None, measured="outside", mean_with="", facts=(), bridges=(),
     )  # fmt: skip
-    return replace(made, **more)  # type: ignore[arg-type]
+    return changed(made, **more)
 
 
 ASSEMBLIES = (
@@ -151,7 +161,7 @@ def limit(row: str, label: str, cell: str, metric: str = "U_assembly", **more: o
         when=(), path="assembly", applies_to="each_component", notes=(), src="E",
         file="table-1.csv", line=3,
     )  # fmt: skip
-    return replace(made, **more)  # type: ignore[arg-type]
+    return changed(made, **more)
 
 
 CONVENTIONS = Conventions(
@@ -227,7 +237,7 @@ def solved(name: str, metric: str, method: str, value: float | None, **more: obj
         low=None, high=None, bracket_note="", decided_by_bracket=False, ratio=None, beside=(),
         tree=None, steps=(), layers=(), assumptions=(), cautions=(),
     )  # fmt: skip
-    return replace(made, **more)  # type: ignore[arg-type]
+    return changed(made, **more)
 
 
 def resistance(symbol: str, title: str, value: float, source: str) -> Step:
@@ -338,7 +348,7 @@ def compared(value: float, rounded: float, bound: float, **more: object) -> Comp
         value=value, compared=rounded, limit=bound, decimals=3, unit=U_UNIT, sense="max",
         within=rounded <= bound, by_rounding=rounded <= bound < value, margin=bound - value,
     )  # fmt: skip
-    return replace(made, **more)  # type: ignore[arg-type]
+    return changed(made, **more)
 
 
 def line(tag: str, category: str, verdict: str, **more: object) -> Line:
@@ -351,7 +361,7 @@ def line(tag: str, category: str, verdict: str, **more: object) -> Line:
             Choice("row", category, "Table 1 covers the category"),
         ),
     )  # fmt: skip
-    return replace(made, **more)  # type: ignore[arg-type]
+    return changed(made, **more)
 
 
 LINES = (

@@ -8,7 +8,7 @@ import pytest
 
 from envcheck.report import explain, registry
 from envcheck.report.view import ViewOptions
-from tests.report.fixture import JUDGED, PROJECT, RULESETS
+from tests.report.fixture import JUDGED, PROJECT, RULESETS, changed
 
 EXPECTED = Path(__file__).parent / "expected"
 
@@ -34,7 +34,7 @@ def test_exact_text(subject: str, name: str, units: str, file: str) -> None:
 
 
 def test_an_assembly_that_nothing_uses_says_so() -> None:
-    judged = type(JUDGED)(**{**{n: getattr(JUDGED, n) for n in JUDGED.__slots__}, "lines": ()})
+    judged = changed(JUDGED, lines=())
     made = explain.build(PROJECT, RULESETS, judged, "W1")
     text = registry.format_named("text").explain(made)  # type: ignore[misc]
     assert "nothing is solved" in text

@@ -97,7 +97,7 @@ def test_csv_has_numbers_as_numbers_with_units_in_the_heads() -> None:
     assert float(first["area [ft2]"]) == 1818
     assert float(first["room left [printed unit]"]) == -0.0047
     assert first["U or C [W/(m2 K)]"] == ""
-    assert set(rows[0]) == set(csv.DictReader(io.StringIO(written("csv", units="SI"))).fieldnames)
+    assert list(rows[0]) == written("csv", units="SI").splitlines()[0].split(",")
 
 
 def test_text_fits_its_width_and_breaks_no_number() -> None:

@@ -2,23 +2,21 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
 import pytest
 
 from envcheck.report import registry, view
 from envcheck.report.inert import as_code, clean, for_csv, for_markdown
-from tests.report.fixture import JUDGED, PROJECT, RULESETS
+from tests.report.fixture import JUDGED, PROJECT, RULESETS, changed
 
 HOSTILE = "=cmd|' /C calc'!A0 \x1b[31mred\x07 \u202egnp.exe <script>alert(1)</script> | **x** `y`"
 
 
 def hostile(name: str) -> str:
     assemblies = dict(PROJECT.assemblies)
-    assemblies["W1"] = replace(assemblies["W1"], title=HOSTILE, sheet="a\nb")
-    project = replace(PROJECT, title=HOSTILE, prepared_by=HOSTILE, assemblies=assemblies)
-    lines = tuple(replace(line, reasons=(HOSTILE, *line.reasons)) for line in JUDGED.lines)
-    judged = replace(JUDGED, lines=lines, remarks=(HOSTILE,))
+    assemblies["W1"] = changed(assemblies["W1"], title=HOSTILE, sheet="a\nb")
+    project = changed(PROJECT, title=HOSTILE, prepared_by=HOSTILE, assemblies=assemblies)
+    lines = tuple(changed(line, reasons=(HOSTILE, *line.reasons)) for line in JUDGED.lines)
+    judged = changed(JUDGED, lines=lines, remarks=(HOSTILE,))
     asked = view.ViewOptions(details=True)
     return registry.format_named(name).render(view.build(project, RULESETS, judged, asked))
 

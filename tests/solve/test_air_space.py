@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import csv
-from dataclasses import replace
 from pathlib import Path
 
 import numpy as np
@@ -23,6 +22,7 @@ from envcheck.solve.methods.air_space import (
 )
 from envcheck.solve.registry import NotDecided
 from envcheck.units import to_si
+from tests.changed import changed
 from tests.solve.samples import INCH, R_IP, assert_recomputes, context
 
 
@@ -150,4 +150,4 @@ def test_table_convention_draws_from_the_table_and_recomputes() -> None:
 
 def test_missing_table_is_named() -> None:
     with pytest.raises(NotDecided, match="a table of air spaces"):
-        draw_air_space(space(0.02), context("up", replace(Conventions(), air_spaces="table")))
+        draw_air_space(space(0.02), context("up", changed(Conventions(), air_spaces="table")))

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
 import numpy as np
 import pytest
 
@@ -18,6 +16,7 @@ from envcheck.solve.methods.iso13370_slab import (
 )
 from envcheck.solve.registry import NotDecided
 from envcheck.units import convert, parse
+from tests.changed import changed
 from tests.solve.samples import (
     INCH,
     R_IP,
@@ -108,7 +107,7 @@ def test_dimension_and_thickness() -> None:
 
 
 def test_everything_missing_is_named_at_once() -> None:
-    bare = replace(SLAB, perimeter=None, area=None, wall_thickness=None, soil_conductivity=None)
+    bare = changed(SLAB, perimeter=None, area=None, wall_thickness=None, soil_conductivity=None)
     with pytest.raises(NotDecided) as caught:
         solve_slab(assembly(*FLOOR, kind="slab-on-grade", slab=bare), setting(), Conventions())
     for word in ("perimeter", "area", "wall_thickness", "soil_conductivity"):
@@ -116,14 +115,14 @@ def test_everything_missing_is_named_at_once() -> None:
 
 
 def test_edge_insulation_is_said_not_to_count() -> None:
-    slab = replace(SLAB, insulation="vertical", resistance=1.0, extent=0.6)
+    slab = changed(SLAB, insulation="vertical", resistance=1.0, extent=0.6)
     solved = solve_slab(assembly(*FLOOR, kind="slab-on-grade", slab=slab), setting(), Conventions())
     assert any("edge insulation" in said for said in solved.assumptions)
 
 
 def edge(**changes: object) -> Slab:
     slab = Slab("vertical", 10 * R_IP, 24 * INCH, False, True, None, None, None, None)
-    return replace(slab, **changes)  # type: ignore[arg-type]
+    return changed(slab, **changes)  # type: ignore[arg-type]
 
 
 def f_of(slab: Slab) -> float:

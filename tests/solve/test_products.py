@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
@@ -13,6 +11,7 @@ from envcheck.model.ruleset import Conventions
 from envcheck.solve.methods.iso10077_window import solve_window, window_geometry, window_u
 from envcheck.solve.methods.rated import solve_rated
 from envcheck.solve.registry import NotDecided
+from tests.changed import changed
 from tests.solve.samples import assembly, assert_recomputes, setting
 
 RATED = Rated(2.0, 0.4, 0.5, "whole_product", "label", "a rating standard", "label.txt")
@@ -27,7 +26,7 @@ def test_whole_product_decides_as_stated() -> None:
 
 
 def test_centre_of_glass_never_decides_but_is_shown() -> None:
-    rated = replace(RATED, basis="centre_of_glass")
+    rated = changed(RATED, basis="centre_of_glass")
     found = solve_rated(assembly(kind="rated", rated=rated), setting(), Conventions())
     assert found.value is None
     assert "only the centre of glass is stated" in found.missing[0]
@@ -35,14 +34,14 @@ def test_centre_of_glass_never_decides_but_is_shown() -> None:
 
 
 def test_default_value_is_said() -> None:
-    rated = replace(RATED, basis="default")
+    rated = changed(RATED, basis="default")
     found = solve_rated(assembly(kind="rated", rated=rated), setting(), Conventions())
     assert found.value == 2.0
     assert "default" in found.assumptions[0]
 
 
 def test_no_u_factor_is_missing() -> None:
-    rated = replace(RATED, u_factor=None)
+    rated = changed(RATED, u_factor=None)
     with pytest.raises(NotDecided, match="whole product"):
         solve_rated(assembly(kind="rated", rated=rated), setting(), Conventions())
 
@@ -58,7 +57,7 @@ def test_window_by_hand() -> None:
 
 
 def test_frame_without_glass_is_refused() -> None:
-    window = replace(WINDOW, frame_width=0.6)
+    window = changed(WINDOW, frame_width=0.6)
     with pytest.raises(NotDecided, match="leaves glass"):
         solve_window(assembly(kind="window", window=window), setting(), Conventions())
 

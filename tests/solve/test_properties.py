@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
 import pytest
 
 from envcheck.model.project import (
@@ -20,6 +18,7 @@ from envcheck.model.solved import Properties
 from envcheck.solve.mass import heat_capacity, mass_of, sheet_per_area
 from envcheck.solve.properties import properties
 from envcheck.units import convert, parse
+from tests.changed import changed
 from tests.solve.samples import (
     INCH,
     R_IP,
@@ -104,7 +103,7 @@ def test_brackets_are_named_where_there_is_insulation_to_cross() -> None:
     wall = assembly(plane("wool", WOOL, 0.1), STUDS, bridges=(bridge,))
     assert properties(wall).bracketed == ("brackets",)
     assert properties(wall).continuous_resistance == pytest.approx(0.1 / 0.037)
-    bare = replace(wall, layers=(STUDS,))
+    bare = changed(wall, layers=(STUDS,))
     assert properties(bare).bracketed == ()
 
 
@@ -140,7 +139,7 @@ def block(**changes: object) -> MasonryLayer:
     layer = MasonryLayer(
         "masonry", "block", 1, 0.19, unit, 0.03, 0.2, Fill(), None, 0.0, 0.0, None, 0.17
     )
-    return replace(layer, **changes)  # type: ignore[arg-type]
+    return changed(layer, **changes)  # type: ignore[arg-type]
 
 
 def test_masonry_counts_its_solid_share() -> None:

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Callable
-from dataclasses import replace
 
 import numpy as np
 import pytest
@@ -15,6 +14,7 @@ from envcheck.model.ruleset import Conventions
 from envcheck.model.solved import Operand, Step
 from envcheck.solve.methods.tapered import SHAPES, draw_tapered, mean_thickness, taper
 from envcheck.solve.registry import Decision
+from tests.changed import changed
 from tests.solve.samples import INCH, R_IP, U_IP, assert_recomputes, context, material
 
 POLYISO = material("polyiso", INCH / (5.7 * R_IP), "insulation")
@@ -102,7 +102,7 @@ def test_porch_roof_in_si() -> None:
     ],
 )
 def test_convention_picks_the_way(way: str, within: float | None, symbol: str) -> None:
-    conventions = replace(Conventions(), tapered=way, tapered_mean_within=within)
+    conventions = changed(Conventions(), tapered=way, tapered_mean_within=within)
     found = taper(at_least(5.0), layer(PIR, 0.1, 0.2), conventions)
     expected = {
         "integral": SHAPES["rectangle"].u_factor(5.0, 0.1 / 0.023),

@@ -7,7 +7,7 @@ was seen, what it suggests, and what would settle it; it never changes a verdict
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Mapping
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from functools import cache
 from importlib import import_module
 from pkgutil import iter_modules
@@ -56,6 +56,6 @@ def findings(facts: Facts) -> tuple[Finding, ...]:
     answers = dict(facts.project.accepted)
     found = [finding for check in checks() for finding in check.run(facts)]
     return tuple(
-        replace(finding, answered=answers.get(f"{finding.check} {finding.subject}", ""))
+        finding._replace(answered=answers.get(f"{finding.check} {finding.subject}", ""))
         for finding in found
     )

@@ -3,8 +3,6 @@
 from __future__ import annotations
 
 import json
-from dataclasses import fields, is_dataclass
-from functools import cache
 
 from envcheck.report.rows import Figure
 from envcheck.report.view import View
@@ -20,7 +18,7 @@ LAYOUT = ("colour", "width", "bounds")
 
 def render(view: View) -> str:
     """Write the view as one JSON object; same view, same bytes."""
-    kept = {name: plain(getattr(view, name)) for name in _names(View) if name not in LAYOUT}
+    kept = {name: plain(getattr(view, name)) for name in View._fields if name not in LAYOUT}
     members = {"schema_version": SCHEMA_VERSION, **kept}
     return (
         "{\n" + ",\n".join(f'"{key}": {_member(each)}' for key, each in members.items()) + "\n}\n"
@@ -34,19 +32,15 @@ def _member(value: object) -> str:
     return "[\n " + ",\n ".join(map(json.dumps, value)) + "\n]"
 
 
-@cache
-def _names(kind: type) -> tuple[str, ...]:
-    return tuple(field.name for field in fields(kind))
-
-
 def plain(value: object) -> object:
-    """Dataclasses as objects, tuples as arrays; a figure also carries its number."""
+    """Records as objects, tuples as arrays; a figure also carries its number."""
     if isinstance(value, str | int | float) or value is None:
         return value
     if isinstance(value, Figure):
         return {"text": value.text, "number": value.number, "unit": value.unit}
     if isinstance(value, tuple):
-        return [plain(item) for item in value]
-    if is_dataclass(value) and not isinstance(value, type):
-        return {name: plain(getattr(value, name)) for name in _names(type(value))}
+        names = getattr(value, "_fields", None)
+        if names is None:
+            return [plain(item) for item in value]
+        return {name: plain(item) for name, item in zip(names, value, strict=True)}
     raise TypeError(f"nothing of JSON: {type(value).__name__}")

@@ -3,12 +3,15 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
+from typing import TYPE_CHECKING
 
 from envcheck.report import outline
-from envcheck.report.explain import Explained
 from envcheck.report.inert import as_code, for_markdown
 from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Paragraph
 from envcheck.report.view import View
+
+if TYPE_CHECKING:
+    from envcheck.report.explain import Explained
 
 NAME = "markdown"
 TITLE = "Markdown with tables"

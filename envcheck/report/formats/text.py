@@ -2,9 +2,13 @@
 
 from __future__ import annotations
 
+from typing import TYPE_CHECKING
+
 from envcheck.report import outline, plain_text
-from envcheck.report.explain import Explained
 from envcheck.report.view import View
+
+if TYPE_CHECKING:
+    from envcheck.report.explain import Explained
 
 NAME = "text"
 TITLE = "plain text, 100 columns"
