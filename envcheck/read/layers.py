@@ -94,7 +94,7 @@ def _masonry(context: Context, entry: Entry) -> Layer:
                         where="the masonry layer", hint=hint)  # fmt: skip
             break
     shell = context.positive(entry, "shell", "length") if "shell" in entry else thickness / 2
-    if hollow and 2 * shell >= thickness:
+    if hollow and "shell" in entry and 2 * shell >= thickness:
         found = f"twice {entry.get('shell')} against {entry['thickness']}"
         limit = "half the thickness of the unit"
         context.add("too-thick", entry.lines["shell"], found=found, key="shell", limit=limit)

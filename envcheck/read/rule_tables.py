@@ -130,7 +130,7 @@ def _spot(
         sense,
         unit == units.label(METRICS[metric].quantity, "SI"),
         str(table.other.get("decimal", ".")),
-        tuple(merged.get("plus", ())) if metric == "R_insulation" else (),
+        tuple(map(str, merged.get("plus") or ())) if metric == "R_insulation" else (),
         kind,
         roles,
         str(merged.get("extent", "")),

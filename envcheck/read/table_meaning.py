@@ -55,7 +55,7 @@ def categories_of(
 
     A name of the rule set's own (``elements``) stands for the categories that it lists.
     """
-    stated = [element] if isinstance(element, str) else list(element or ())
+    stated = [element] if isinstance(element, str) else [str(e) for e in element or ()]
     own: Mapping[str, Any] = table.other.get("elements") or {}
     found: list[str] = []
     for name in stated or [row.key]:
@@ -116,7 +116,7 @@ def _condition(
         fix = did_you_mean(name, table.dimensions) or f"declare {name!r} under `dimensions:`"
         p = problem("undeclared-condition", file, line, found=name, fix=fix)
     else:
-        joined = "|".join(text) if isinstance(text, list) else str(text)
+        joined = "|".join(map(str, text)) if isinstance(text, list) else str(text)
         decimal = str(table.other.get("decimal", ".")) if printed else "."
         try:
             return read_condition(joined, name, dimension.values, dimension.unit, decimal)
@@ -235,7 +235,7 @@ def slash_of(
         return "", (), ()
     kind, sides = next(iter(stated.items()))
     if kind != "when":
-        return kind, tuple(sides), ()
+        return str(kind), tuple(map(str, sides)), ()
     conditions = []
     for side in sides:
         read = [

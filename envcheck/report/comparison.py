@@ -32,6 +32,14 @@ def sums(line: Line, ruleset: RuleSet | None, system: str) -> tuple[str, ...]:
     )
 
 
+def end(name: str, bound: Comparison) -> str:
+    """One end of the bracket held against the limit."""
+    sign = ">=" if bound.sense == "min" else "<="
+    holds = "holds" if bound.within else "does not hold"
+    text = f"{said.compared(bound)} {sign} {said.limit_number(bound)} {bound.unit}".rstrip()
+    return f"{name} bound: {text} {holds}"
+
+
 def _rounded(value: str, own: Comparison, ruleset: RuleSet | None) -> tuple[str, str]:
     """The compared figure and the line that leads to it."""
     clause = f" ({ruleset.rounding_clause})" if ruleset and ruleset.rounding_clause else ""

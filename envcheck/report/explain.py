@@ -170,6 +170,9 @@ def _held(line: Line, rulesets: Mapping[str, RuleSet], system: str) -> list[Sect
     sums = comparison.sums(line, rulesets.get(line.ruleset), system)
     if sums:
         blocks.append(Items((Entry("Comparison in the printed unit", (), sums),)))
+    if line.low is not None and line.high is not None:
+        ends = tuple(comparison.end(*pair) for pair in (("low", line.low), ("high", line.high)))
+        blocks.append(Items((Entry("Bounds of the drawn model, compared likewise", (), ends),)))
     if line.paths:
         blocks.append(_paths(line))
     reasons = (*map(clean, line.reasons), *said.notes(line))

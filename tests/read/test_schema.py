@@ -105,7 +105,7 @@ def spoilt(data: st.DataObject) -> Any:
                 node = node[step]
             act = data.draw(st.sampled_from(["set", "drop", "rename"]))
             if act == "set":
-                node[last] = data.draw(st.sampled_from(JUNK))
+                node[last] = copy.deepcopy(data.draw(st.sampled_from(JUNK)))
             elif act == "drop":
                 del node[last]
             else:
