@@ -14,7 +14,7 @@ from envcheck.judge import crosschecks
 from envcheck.judge.building import closed_rows, closings, ratios, take_means
 from envcheck.judge.classes import Class, classify
 from envcheck.judge.select import select
-from envcheck.judge.verdict import Case, judge, metrics
+from envcheck.judge.verdict import Case, judge
 from envcheck.model.judged import Finding, Judged, Line, Mean, Ratio
 from envcheck.model.names import Names
 from envcheck.model.project import Assembly, Bridge, Element, Project
@@ -22,7 +22,7 @@ from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Properties, Setting, Solved
 from envcheck.read.materials import categories
 from envcheck.read.project import read_project
-from envcheck.read.rulesets import read_ruleset
+from envcheck.read.rulesets import default_folders, read_ruleset
 from envcheck.solve.assembly import solve
 from envcheck.solve.conventions import resolve
 from envcheck.solve.properties import properties
@@ -84,7 +84,7 @@ def _no_cycles_to_collect() -> Iterator[None]:
 
 def _run(path: str, folders: Sequence[str]) -> Run:
     project = read_project(path, names())
-    rulesets = _read_rulesets(project, folders or nearest_rules(path), path)
+    rulesets = _read_rulesets(project, default_folders(path, folders))
     compressed = rulesets[project.rule_sets[0].id].conventions.tables.get("compressed_batts", ())
     made_of = {name: properties(a, compressed) for name, a in project.assemblies.items()}
     solver = _Solver(project)
@@ -141,23 +141,18 @@ def exit_status(judged: Judged) -> int:
     return OPEN if unsettled or any(line.open for line in deciding) else COMPLIES
 
 
-def nearest_rules(path: str) -> tuple[str, ...]:
-    """The nearest folder ``rules`` at or above the project file (or the current folder)."""
-    start = Path.cwd() if path == "-" else Path(path).resolve().parent
-    for folder in (start, *start.parents):
-        if (folder / "rules").is_dir():
-            return (str(folder / "rules"),)
-    return ()
-
-
-def _read_rulesets(project: Project, folders: Sequence[str], path: str) -> dict[str, RuleSet]:
+def _read_rulesets(project: Project, folders: Sequence[Path]) -> dict[str, RuleSet]:
     """Read every rule set that the project names; all their problems at once."""
     found: dict[str, RuleSet] = {}
     problems: list[Problem] = []
     for choice in project.rule_sets:
         try:
             found[choice.id] = read_ruleset(
-                choice.id, folders, project.permit_application_date, names()
+                choice.id,
+                folders,
+                project.permit_application_date,
+                names(),
+                asked=(project.file, choice.line),
             )
         except InputError as error:
             problems += error.problems
@@ -209,7 +204,7 @@ def _judge_all(
             selection,
             closed,
         )
-        for metric in metrics(selection, categories()[found.category].metric):
+        for metric in selection.metrics or (categories()[found.category].metric,):
             solved = None
             if metric in SOLVED_METRICS:
                 solved = solver.solve(element, assembly, found.category, metric, ruleset)
@@ -256,6 +251,7 @@ def _remarks(project: Project, rulesets: Mapping[str, RuleSet]) -> tuple[str, ..
         ruleset = rulesets[choice.id]
         if ruleset.tradeoff:
             found.append(f"{ruleset.title}: {ruleset.tradeoff}")
+        found += [f"{ruleset.title}: {remark}" for remark in ruleset.remarks]
         if not choice.decides:
             found.append(f"{ruleset.title} is for information: it sets no exit status")
     return tuple(found)

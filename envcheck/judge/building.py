@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import replace
 
 from envcheck.judge.compare import compare
 from envcheck.model.judged import Closing, Line, Mean, Ratio
@@ -142,8 +141,7 @@ def _take_mean(
     )
     reason = f"area-weighted mean of {name!r} by {rule.clause}; worst member {worst.element}"
     return [
-        replace(
-            line,
+        line._replace(
             verdict="pass" if within else "fail",
             own=line.comparison,
             comparison=comparison,
@@ -201,4 +199,4 @@ def _individual_cap(
 
 
 def _undecided(line: Line, group: str, why: str) -> Line:
-    return replace(line, verdict="not_decided", own=line.comparison, group=group, reasons=(why,))
+    return line._replace(verdict="not_decided", own=line.comparison, group=group, reasons=(why,))

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from decimal import ROUND_HALF_UP, Decimal
+from functools import cache
 
 from envcheck.model.judged import Comparison
 from envcheck.model.ruleset import Limit, RuleSet, Term
@@ -20,9 +21,9 @@ def compare(value: float, term: Term, limit: Limit, ruleset: RuleSet) -> Compari
     decimals). A value equal to the limit is within it.
     """
     printed = convert(value, limit.unit) if limit.unit else value
-    compared = rounded(printed, decimals_of(term, ruleset))
-    bound = Decimal(term.text)
     exact = exact_decimal(printed)
+    compared = _rounded(exact, decimals_of(term, ruleset))
+    bound = Decimal(term.text)
     within = compared <= bound if limit.sense == "max" else compared >= bound
     within_exactly = exact <= bound if limit.sense == "max" else exact >= bound
     margin = bound - exact if limit.sense == "max" else exact - bound
@@ -53,7 +54,13 @@ def exact_decimal(value: float) -> Decimal:
 
 def rounded(value: float, decimals: int | None) -> Decimal:
     """Round half-up to decimals, or not at all."""
-    exact = exact_decimal(value)
-    if decimals is None:
-        return exact
-    return exact.quantize(Decimal(1).scaleb(-decimals), ROUND_HALF_UP)
+    return _rounded(exact_decimal(value), decimals)
+
+
+def _rounded(exact: Decimal, decimals: int | None) -> Decimal:
+    return exact if decimals is None else exact.quantize(_place(decimals), ROUND_HALF_UP)
+
+
+@cache
+def _place(decimals: int) -> Decimal:
+    return Decimal(1).scaleb(-decimals)

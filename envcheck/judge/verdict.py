@@ -3,21 +3,22 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass, replace
+from typing import NamedTuple
 
 from envcheck.judge.classes import Class
 from envcheck.judge.compare import compare
 from envcheck.judge.paths import insulation_of, insulation_path
-from envcheck.judge.select import Outcome, Selection
+from envcheck.judge.selection import INSULATION, Selection
 from envcheck.model.judged import Choice, Comparison, Line, PathResult, Ratio
 from envcheck.model.patterns import matches
 from envcheck.model.project import Assembly, Element, ExceptionClaim, Project
 from envcheck.model.ruleset import Limit, RuleSet
 from envcheck.model.solved import Properties, Solved
 
+R_INSULATION = "R_insulation"
 
-@dataclass(frozen=True, slots=True)
-class Case:
+
+class Case(NamedTuple):
     """Everything that one line is judged from."""
 
     project: Project
@@ -32,22 +33,6 @@ class Case:
     """Category patterns whose rows an area cap closes."""
 
 
-STOPPED = {"not_in_table": "not_in_table"}
-"""Verdict of a selection without a limit, by its state; every other state is ``not_decided``."""
-INSULATION = ("R_insulation", "insulation")
-
-
-def metrics(selection: Selection, default: str) -> tuple[str, ...]:
-    """Metrics that an element is judged in: a line each.
-
-    The R-value path is no line of its own where the table also limits the assembly.
-    """
-    if not selection.metrics:
-        return (default,)
-    own = tuple(metric for metric in selection.metrics if metric != INSULATION[0])
-    return own or selection.metrics
-
-
 def judge(case: Case, metric: str, solved: Solved | None) -> Line:
     """Judge one element in one metric.
 
@@ -55,8 +40,7 @@ def judge(case: Case, metric: str, solved: Solved | None) -> Line:
     verdict: the class, the limit, the share renewed, a claimed exception, an area cap, the
     evidence, the value, the comparison.
     """
-    outcome = _outcome(case.selection, metric)
-    limit = outcome.limit if outcome is not None else None
+    limit = case.selection.limit(metric)
     line = Line(
         ruleset=case.ruleset.id,
         decides=case.decides,
@@ -70,14 +54,14 @@ def judge(case: Case, metric: str, solved: Solved | None) -> Line:
         comparison=None,
         trail=_trail(case),
     )
-    for answer in (_class(case), _limit(case, outcome), _renewed(case)):
+    for answer in (_class(case), _limit(case, metric, limit), _renewed(case)):
         if answer is not None:
-            return replace(line, verdict=answer[0], reasons=(answer[1],))
+            return line._replace(verdict=answer[0], reasons=(answer[1],))
     assert limit is not None
     compared = _compare(case, line, limit, solved)
     closing = _area_cap(case)
     if closing is not None:
-        return replace(compared, verdict="path_closed", reasons=(closing, *compared.reasons))
+        return compared._replace(verdict="path_closed", reasons=(closing, *compared.reasons))
     claim = _claim(case)
     if claim is not None:
         return _claimed(compared, claim)
@@ -85,13 +69,6 @@ def judge(case: Case, metric: str, solved: Solved | None) -> Line:
 
 
 # ------------------------------------------------------------------- what stands in the way
-
-
-def _outcome(selection: Selection, metric: str) -> Outcome | None:
-    for path in ("assembly", "", "insulation"):
-        if (metric, path) in selection.by:
-            return selection.by[metric, path]
-    return None
 
 
 def _class(case: Case) -> tuple[str, str] | None:
@@ -102,13 +79,12 @@ def _class(case: Case) -> tuple[str, str] | None:
     return None
 
 
-def _limit(case: Case, outcome: Outcome | None) -> tuple[str, str] | None:
-    if outcome is None:
-        return STOPPED.get(case.selection.state, "not_decided"), case.selection.why
-    limit = outcome.limit
+def _limit(case: Case, metric: str, limit: Limit | None) -> tuple[str, str] | None:
     if limit is None:
-        missing = "missing: " if outcome.state == "missing_fact" else ""
-        return STOPPED.get(outcome.state, "not_decided"), f"{missing}{outcome.why}"
+        outcome = case.selection.outcome(metric)
+        missing = outcome is not None and outcome.state == "missing_fact"
+        why = case.selection.reason_of(metric)
+        return case.selection.verdict_of(metric), f"missing: {why}" if missing else why
     if limit.kind == "not_covered":
         return "not_in_table", f"the table prints {limit.cell!r} here: the code has no such case"
     if limit.kind == "no_requirement":
@@ -194,8 +170,7 @@ def _claimed(line: Line, claim: ExceptionClaim) -> Line:
     reason = f"exception {claim.clause} claimed by {claim.claimed_by or 'nobody named'}: {evidence}"
     without = line.verdict.replace("_", " ")
     words = f"with it: waived if the official agrees; without it: {without}"
-    return replace(
-        line,
+    return line._replace(
         verdict="official_decides",
         reasons=(reason, claim.reason, *line.reasons) if claim.reason else (reason, *line.reasons),
         with_exception=words,
@@ -215,7 +190,7 @@ def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Lin
     if missing is None and value is None:
         missing = f"missing: {limit.metric} of {case.assembly.id}"
     labels = _labels(case, limit)
-    if limit.metric == INSULATION[0]:
+    if limit.metric == R_INSULATION:
         return _by_labels(line, labels)
     if missing is not None or value is None:
         return _without_value(line, missing or "", limit, labels)
@@ -228,8 +203,7 @@ def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Lin
         "",
     )
     passed = comparison.within or (labels is not None and labels.state == "pass")
-    line = replace(
-        line,
+    line = line._replace(
         verdict="pass" if passed else "fail",
         comparison=comparison,
         paths=(own, labels) if labels is not None else (),
@@ -272,9 +246,8 @@ def _depth(case: Case, limit: Limit) -> str | None:
 
 def _labels(case: Case, limit: Limit) -> PathResult | None:
     """The R-value path, where the table prints one for this element."""
-    outcome = case.selection.by.get(INSULATION)
-    other = outcome.limit if outcome is not None else None
-    if other is None or other.kind != "number" or limit.path not in ("assembly", "insulation"):
+    other = case.selection.limit(R_INSULATION, INSULATION)
+    if other is None or other.kind != "number" or case.assembly.kind in ("rated", "window"):
         return None
     brought = insulation_of(case.assembly, case.element, case.properties)
     return insulation_path(other, brought, case.ruleset)
@@ -284,23 +257,21 @@ def _by_labels(line: Line, labels: PathResult | None) -> Line:
     """A table that limits labelled insulation only."""
     if labels is None or labels.state == "not_available":
         why = labels.why if labels is not None else "labelled insulation"
-        return replace(line, verdict="not_decided", reasons=(f"missing: {why}",))
-    return replace(line, verdict=labels.state, reasons=(labels.why,), paths=(labels,))
+        return line._replace(verdict="not_decided", reasons=(f"missing: {why}",))
+    return line._replace(verdict=labels.state, reasons=(labels.why,), paths=(labels,))
 
 
 def _without_value(line: Line, missing: str, limit: Limit, labels: PathResult | None) -> Line:
     """No U-factor: the R-value path may still carry the line."""
     if labels is None or labels.state != "pass":
         paths = (PathResult("assembly", "not_decided", "", limit.cell, missing),)
-        return replace(
-            line,
+        return line._replace(
             verdict="not_decided",
             reasons=(missing,),
             paths=(*paths, labels) if labels is not None else (),
         )
     own = PathResult("assembly", "not_decided", "", limit.cell, missing)
-    return replace(
-        line,
+    return line._replace(
         verdict="pass",
         reasons=(f"by the R-value path: {labels.value} {labels.why}",),
         paths=(own, labels),
@@ -331,7 +302,7 @@ def _by_bracket(case: Case, line: Line, limit: Limit, solved: Solved) -> Line:
         verdict, why = "fail", "the whole bracket lies over the limit"
     else:
         verdict, why = "too_close", "the limit lies inside the bracket, which decides here"
-    return replace(line, verdict=verdict, reasons=(why,), comparison=high, low=low, high=high)
+    return line._replace(verdict=verdict, reasons=(why,), comparison=high, low=low, high=high)
 
 
 def _with_bracket(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Line:
@@ -344,13 +315,13 @@ def _with_bracket(case: Case, line: Line, limit: Limit, solved: Solved | None) -
     if comparison.compared == comparison.limit:
         flags.append("at_limit")
     if solved is None or solved.low is None or solved.high is None or limit.metric == "SHGC":
-        return replace(line, flags=tuple(flags))
+        return line._replace(flags=tuple(flags))
     term = limit.alternatives[0][0]
     low = compare(solved.low, term, limit, case.ruleset)
     high = compare(solved.high, term, limit, case.ruleset)
     if {low.within, high.within, comparison.within} == {True, False}:
         flags.append("method")
-    return replace(line, low=low, high=high, flags=tuple(flags))
+    return line._replace(low=low, high=high, flags=tuple(flags))
 
 
 def _trail(case: Case) -> tuple[Choice, ...]:

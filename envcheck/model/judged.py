@@ -65,8 +65,7 @@ class Comparison(NamedTuple):
     """Room left to the limit, unrounded, printed unit; negative = over."""
 
 
-@dataclass(frozen=True, slots=True)
-class Line:
+class Line(NamedTuple):
     """One element held against one limit."""
 
     ruleset: str

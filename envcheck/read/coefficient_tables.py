@@ -46,6 +46,14 @@ FORMS = {
         ),
         ("direction",),
     ),
+    "compressed_batts": Form(
+        ("resistance", "", "resistance"),
+        (
+            ("label", "", "resistance"),
+            ("product_thickness", "", "length"),
+            ("cavity_depth", "", "length"),
+        ),
+    ),
     "films": Form(("resistance", "unit", "resistance"), (), ("side", "adjoins", "direction")),
 }
 WORDS = {

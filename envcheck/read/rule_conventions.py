@@ -20,6 +20,12 @@ WITHOUT_DEFAULT = (
     "effective_layers", "f_factors",
 )  # fmt: skip
 """Conventions that envcheck has no value of its own for."""
+MEASURED = {
+    "heat_capacity": "heat_capacity",
+    "weight": "area_weight",
+    "visible_transmittance": "share",
+}
+"""What a class test measures, and the quantity of its threshold."""
 KEYS = (
     "films", "air_spaces", "methods", "cladding", "fasteners", "tapered", "crossed_insulation",
     "framing_shares", "class_tests", "evidence", "measured", "cavity_factors",
@@ -103,14 +109,25 @@ def _methods(source: Source, problems: list[Problem]) -> tuple[MethodRule, ...]:
 def _class_tests(source: Source, problems: list[Problem]) -> tuple[ClassTest, ...]:
     tests = []
     for i, test in enumerate(source.stated.get("class_tests") or ()):
-        quantity = "heat_capacity" if test["measure"] == "heat_capacity" else "area_weight"
+        quantity = MEASURED[test["measure"]]
         value = _parse(source, test["at_least"], quantity, ("class_tests", i, "at_least"), problems)
         if value is None or not _pattern(source, "class_tests", test["category"], problems, i):
             continue
         counted, arguable = test.get("counted", "whole"), test.get("arguable") == "yes"
-        text, clause = test["at_least"], test.get("clause", "")
+        otherwise = test.get("otherwise", "")
+        if otherwise and not _pattern(source, "class_tests", otherwise, problems, i):
+            continue
         tests.append(
-            ClassTest(test["category"], test["measure"], value, text, counted, clause, arguable)
+            ClassTest(
+                test["category"],
+                test["measure"],
+                value,
+                test["at_least"],
+                counted,
+                test.get("clause", ""),
+                arguable,
+                otherwise,
+            )
         )
     return tuple(tests)
 
@@ -181,6 +198,7 @@ def _tables(source: Source, problems: list[Problem]) -> tuple[str, dict[str, tup
         for key in ("cavity_factors", "effective_layers", "f_factors")
         if source.stated.get(key) is not None
     }
+    tables["compressed_batts"] = built_in("compressed_batts", "")
     air = source.stated.get("air_spaces") or "iso6946"
     if air == "iso6946":
         return air, tables

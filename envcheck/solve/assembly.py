@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import replace
 from typing import NamedTuple
 
 from envcheck.model.project import Assembly, Bridge, Layer, TaperedLayer
@@ -204,7 +203,7 @@ def _decide(wall: Wall) -> tuple[Decision, tuple[Correction, ...]]:
                 decision = taper(decision, layer, conventions)
     except NotDecided as missing:
         return Decision(None, missing=(str(missing),)), ()
-    return replace(decision, replaced={**changed, **decision.replaced}), (fasteners,)
+    return decision._replace(replaced={**changed, **decision.replaced}), (fasteners,)
 
 
 def _closed(decision: Decision, corrections: Sequence[Correction]) -> tuple[Step, ...]:

@@ -48,7 +48,7 @@ def plane_wall(thickness: float, conductivity: float) -> float:
 def in_series(title: str, parts: Iterable[Node]) -> Series:
     """Connect nodes one behind another."""
     nodes = tuple(parts)
-    return Series(title, nodes, sum(node.value for node in nodes))
+    return Series(title, nodes, sum([node.value for node in nodes]))
 
 
 def in_parallel(title: str, branches: Iterable[tuple[float, Node]]) -> Parallel:

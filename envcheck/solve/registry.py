@@ -2,12 +2,13 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
-from dataclasses import dataclass, field
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass
 from functools import cache
 from importlib import import_module
 from pkgutil import iter_modules
-from typing import TYPE_CHECKING
+from types import MappingProxyType
+from typing import TYPE_CHECKING, NamedTuple
 
 if TYPE_CHECKING:
     from envcheck.model.project import Assembly, Layer
@@ -19,8 +20,7 @@ class NotDecided(Exception):
     """What a method misses, in plain words that complete "missing: ..."; never the user's typo."""
 
 
-@dataclass(frozen=True, slots=True)
-class Context:
+class Context(NamedTuple):
     """What a layer may ask for while it is drawn."""
 
     symbol: str
@@ -29,8 +29,7 @@ class Context:
     conventions: Conventions
 
 
-@dataclass(frozen=True, slots=True)
-class Wall:
+class Wall(NamedTuple):
     """A layered assembly between its two films, drawn as blocks, outside first."""
 
     assembly: Assembly
@@ -43,8 +42,7 @@ class Wall:
     """The layers that the blocks were drawn from, one for one."""
 
 
-@dataclass(frozen=True, slots=True)
-class Decision:
+class Decision(NamedTuple):
     """What a method makes of an assembly; ``value`` None where something is missing."""
 
     value: float | None
@@ -57,7 +55,7 @@ class Decision:
     assumptions: tuple[str, ...] = ()
     beside: tuple[Beside, ...] = ()
     cautions: tuple[Caution, ...] = ()
-    replaced: dict[int, str] = field(default_factory=dict)
+    replaced: Mapping[int, str] = MappingProxyType({})
     """Index of a layer -> what the method counts in its place, in words."""
     by_bracket: bool = False
 

@@ -25,12 +25,15 @@ from envcheck.solve.registry import Wall
 FILM_TO_FILM = "sum of resistances, film to film"
 
 
-def align(blocks: Sequence[Block]) -> list[Block]:
+def align(blocks: Sequence[Block]) -> Sequence[Block]:
     """Cut the columns of blocks that share a pattern at each other's edges.
 
     Blocks of one pattern have the same repeat width and stand in line. Returns the blocks in the
     same order, those of one pattern with equal ``widths``.
     """
+    patterns = [block.pattern for block in blocks if block.pattern]
+    if len(set(patterns)) == len(patterns):
+        return blocks
     edges: dict[str, set[float]] = {}
     for block in blocks:
         if block.pattern:
@@ -84,8 +87,8 @@ class _Column(NamedTuple):
 
     title: str
     share: float
-    resistors: tuple[tuple[int, Resistor], ...]
-    """(index of the block, resistor)"""
+    first: int
+    """Number of the first such column."""
 
 
 def parallel_paths(wall: Wall, symbol: str = "R") -> Wired:
@@ -96,19 +99,17 @@ def parallel_paths(wall: Wall, symbol: str = "R") -> Wired:
     the worksheet.
     """
     blocks = align(wall.blocks)
-    plain = [(-1, wall.outside), (len(blocks), wall.inside)]
-    plain += [
-        (i, row[0]) for i, block in enumerate(blocks) if not block.pattern for row in block.cells
-    ]
+    patterns = _patterns(blocks)
     paths: list[tuple[float, Series]] = []
-    for columns in product(*_patterns(blocks)):
-        parts = sorted(
-            [*plain, *(pair for column in columns for pair in column.resistors)],
-            key=lambda pair: pair[0],
-        )
+    for columns in product(*patterns.values()):
+        chosen = dict(zip(patterns, columns, strict=True))
+        parts: list[Node] = [wall.outside]
+        for block in blocks:
+            column = chosen[block.pattern].first if block.pattern else 0
+            parts += [row[column] for row in block.cells]
+        parts.append(wall.inside)
         title = " and ".join(column.title for column in columns)
-        share = prod(column.share for column in columns)
-        paths.append((share, in_series(title, [resistor for _, resistor in parts])))
+        paths.append((prod(column.share for column in columns), in_series(title, parts)))
     if len(paths) == 1:
         return Wired(paths[0][1], (_sum_step(symbol, FILM_TO_FILM, paths[0][1]),))
     tree = in_parallel("parallel paths", paths)
@@ -181,38 +182,40 @@ def bounds(wall: Wall) -> tuple[float, float]:
 
 def layer_steps(wall: Wall) -> list[Step]:
     """The steps that lead to every resistor of the wall, each once, outside first."""
-    resistors = [wall.outside]
-    resistors += [resistor for block in wall.blocks for row in block.cells for resistor in row]
-    resistors.append(wall.inside)
-    steps: dict[str, Step] = {}
-    for resistor in resistors:
-        for step in resistor.steps:
-            steps.setdefault(step.symbol, step)
+    steps = {step.symbol: step for step in wall.outside.steps}
+    for block in wall.blocks:
+        for row in block.cells:
+            for cell in row:
+                for step in cell.steps:
+                    steps.setdefault(step.symbol, step)
+    for step in wall.inside.steps:
+        steps.setdefault(step.symbol, step)
     return list(steps.values())
 
 
-def _patterns(blocks: Sequence[Block]) -> list[list[_Column]]:
+def _patterns(blocks: Sequence[Block]) -> dict[str, list[_Column]]:
     """For each pattern its distinct columns with their shares."""
-    by_pattern: dict[str, list[tuple[int, Block]]] = {}
-    for index, block in enumerate(blocks):
+    members: dict[str, list[Block]] = {}
+    for block in blocks:
         if block.pattern:
-            by_pattern.setdefault(block.pattern, []).append((index, block))
-    return [_columns(members) for members in by_pattern.values()]
+            members.setdefault(block.pattern, []).append(block)
+    return {pattern: _columns(of_one) for pattern, of_one in members.items()}
 
 
-def _columns(members: list[tuple[int, Block]]) -> list[_Column]:
-    widths = members[0][1].widths
+def _columns(blocks: list[Block]) -> list[_Column]:
+    """Columns of blocks that stand in line; those of the same pieces are one."""
+    widths = blocks[0].widths
     total = sum(widths)
     found: dict[tuple[str, ...], _Column] = {}
-    for column, width in enumerate(widths):
-        resistors = tuple((i, row[column]) for i, block in members for row in block.cells)
-        key = tuple(resistor.symbol for _, resistor in resistors)
-        share = width / total
-        if key in found:
-            found[key] = found[key]._replace(share=found[key].share + share)
+    for index, width in enumerate(widths):
+        cells = [row[index] for block in blocks for row in block.cells]
+        key = tuple([cell.symbol for cell in cells])
+        known = found.get(key)
+        if known is None:
+            title = " and ".join(dict.fromkeys(cell.title for cell in cells))
+            found[key] = _Column(title, width / total, index)
         else:
-            titles = dict.fromkeys(resistor.title for _, resistor in resistors)
-            found[key] = _Column(" and ".join(titles), share, resistors)
+            found[key] = known._replace(share=known.share + width / total)
     return list(found.values())
 
 

@@ -296,7 +296,8 @@ def test_conventions_of_the_county() -> None:
     slab = next(r for r in found.tables["f_factors"] if r.keys["position"] == "vertical")
     assert slab.value == pytest.approx(0.54 * 1.730735, rel=1e-6)
     assert slab.keys["heated"] == "no"
-    (test,) = found.class_tests
+    test, light = found.class_tests
+    assert (light.category, light.otherwise) == ("fenestration.*", "wall.steel_frame")
     assert test.at_least == pytest.approx(6 * 1055.05585262 / (0.09290304 * 5 / 9), rel=1e-9)
     assert (test.counted, test.clause) == ("indoor_of_continuous_insulation", "2.4")
     assert found.tapered_mean_within == pytest.approx(0.0254)

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
 from envcheck.model.project import FramedLayer, Layer
 from envcheck.solve.cells import homogeneous, stated_cell
 from envcheck.solve.methods.fills import fill_resistor
@@ -45,7 +43,7 @@ def count_crossed(wall: Wall) -> tuple[Wall, dict[int, str]]:
             fill = fill_resistor(layer.fill, layer.thickness, context)
             blocks[index] = homogeneous(fill, layer.thickness)
             changed[index] = "crossed by continuous metal: counted in full by the rule set"
-    return replace(wall, blocks=tuple(blocks)), changed
+    return wall._replace(blocks=tuple(blocks)), changed
 
 
 METHODS = (

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
 from envcheck.model.project import Fill
 from envcheck.model.solved import Resistor
 from envcheck.solve.cells import material_cell, stated_cell
@@ -18,7 +16,7 @@ def fill_resistor(fill: Fill, depth: float, context: Context) -> Resistor:
     if fill.material is not None:
         return material_cell(symbol, fill.material.title, depth, fill.material)
     if fill.air is not None:
-        return draw_air_space(fill.air, replace(context, symbol=symbol)).cells[0][0]
+        return draw_air_space(fill.air, context._replace(symbol=symbol)).cells[0][0]
     assert fill.label is not None, "the reader asks for a material, a label or an air space"
     if fill.installed_label is None and (fill.product_thickness or depth) <= depth + 1e-6:
         return stated_cell(symbol, "insulation as labelled", fill.label, fill.source)

@@ -8,7 +8,6 @@ one resistance; what stands outside and inside of it stays in series.
 from __future__ import annotations
 
 from collections.abc import Callable
-from dataclasses import replace
 
 from envcheck.model.project import FramedLayer
 from envcheck.model.ruleset import TableRow
@@ -112,12 +111,12 @@ def _decide(wall: Wall, cell: Callable[[FramedLayer, Context], Resistor]) -> Dec
             replaced[index] = "steel framing counted by the rule set's coefficient"
         else:
             blocks.append(block)
-    counted = replace(wall, blocks=tuple(blocks))
+    counted = wall._replace(blocks=tuple(blocks))
     decision = decided(counted, parallel_paths(counted))
     if replaced:
-        return replace(decision, replaced=replaced)
+        return decision._replace(replaced=replaced)
     note = "no steel framing found in this assembly: layers wired as parallel paths"
-    return replace(decision, assumptions=(note,))
+    return decision._replace(assumptions=(note,))
 
 
 METHODS = (

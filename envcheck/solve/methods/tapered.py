@@ -7,7 +7,6 @@ that of the greatest thickness beyond the least. Assumption: slope of at most 5 
 from __future__ import annotations
 
 from collections.abc import Callable
-from dataclasses import replace
 from typing import NamedTuple
 
 from envcheck.model.project import TaperedLayer
@@ -119,8 +118,7 @@ def taper(decision: Decision, layer: TaperedLayer, conventions: Conventions) -> 
     ways = _ways(layer, rest, added)
     way = ways.pop(name)
     beside = (Beside(w.beside, w.value, f"tapered layer counted {w.words}") for w in ways.values())
-    return replace(
-        decision,
+    return decision._replace(
         value=way.value,
         steps=(*decision.steps, *_steps(decision.value, layer, way, rest, added)),
         beside=(*decision.beside, *beside),

@@ -2,15 +2,13 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
-
 from envcheck.solve.methods.wirings import decide_isothermal_planes
 from envcheck.solve.registry import Decision, Method, Wall
 
 
 def decide_two_dimensional(wall: Wall) -> Decision:
     """Bracket the drawn section; its high end stands for the value in sums and means."""
-    return replace(decide_isothermal_planes(wall), by_bracket=True)
+    return decide_isothermal_planes(wall)._replace(by_bracket=True)
 
 
 METHODS = (
