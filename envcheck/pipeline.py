@@ -8,6 +8,7 @@ from contextlib import contextmanager
 from dataclasses import dataclass, replace
 from functools import cache
 from pathlib import Path
+from typing import TYPE_CHECKING
 
 from envcheck.errors import InputError, Problem
 from envcheck.judge import crosschecks
@@ -24,9 +25,12 @@ from envcheck.read.materials import categories
 from envcheck.read.project import read_project
 from envcheck.read.rulesets import default_folders, read_ruleset
 from envcheck.solve.assembly import solve
-from envcheck.solve.conventions import resolve
+from envcheck.solve.conventions import Resolver
 from envcheck.solve.properties import properties
 from envcheck.solve.registry import prescribable
+
+if TYPE_CHECKING:
+    import pandas
 
 COMPLIES, OVER, OPEN = 0, 1, 3
 """Exit status of a run: none over and none open; at least one over; none over, some open."""
@@ -46,6 +50,35 @@ class Run:
     solved: dict[str, Solved]
     """By assembly id: one solution of each, for what the report lists."""
     exit_status: int
+
+    def to_frame(self) -> pandas.DataFrame:
+        """A row per line, for notebooks: values in SI, comparison in the printed unit."""
+        import pandas
+
+        return pandas.DataFrame([_record(self.project, line) for line in self.judged.lines])
+
+
+def _record(project: Project, line: Line) -> dict[str, object]:
+    element, comparison, solved = project.elements[line.element], line.comparison, line.solved
+    return {
+        "rule_set": line.ruleset,
+        "element": line.element,
+        "assembly": element.assembly,
+        "category": line.category,
+        "sheet": element.sheet,
+        "surface": element.surface,
+        "net_area_m2": element.net_area,
+        "metric": line.metric,
+        "value_si": solved.value if solved is not None else None,
+        "low_si": solved.low if solved is not None else None,
+        "high_si": solved.high if solved is not None else None,
+        "compared": comparison.compared if comparison is not None else None,
+        "limit": comparison.limit if comparison is not None else None,
+        "printed_unit": comparison.unit if comparison is not None else "",
+        "room_left": comparison.margin if comparison is not None else None,
+        "verdict": line.verdict,
+        "reasons": "; ".join(line.reasons),
+    }
 
 
 @cache
@@ -218,13 +251,17 @@ class _Solver:
     def __init__(self, project: Project) -> None:
         self._project = project
         self._found: dict[tuple[str, Setting, tuple[Bridge, ...], float | None], Solved] = {}
+        self._resolvers: dict[str, Resolver] = {}
         self.first: dict[str, Solved] = {}
         """By assembly id: its first solution, for what the report lists."""
 
     def solve(
         self, element: Element, assembly: Assembly, category: str, metric: str, ruleset: RuleSet
     ) -> Solved:
-        setting = resolve(element, assembly, category, metric, ruleset.conventions, ruleset.id)
+        resolver = self._resolvers.get(ruleset.id)
+        if resolver is None:
+            resolver = self._resolvers[ruleset.id] = Resolver(ruleset.conventions, ruleset.id)
+        setting = resolver.resolve(element, assembly, category, metric)
         area = element.net_area if element.bridges else None
         key = (assembly.id, setting, element.bridges, area)
         if key not in self._found:

@@ -23,7 +23,7 @@ def compare(value: float, term: Term, limit: Limit, ruleset: RuleSet) -> Compari
     printed = convert(value, limit.unit) if limit.unit else value
     exact = exact_decimal(printed)
     compared = _rounded(exact, decimals_of(term, ruleset))
-    bound = Decimal(term.text)
+    bound = _printed(term.text)
     within = compared <= bound if limit.sense == "max" else compared >= bound
     within_exactly = exact <= bound if limit.sense == "max" else exact >= bound
     margin = bound - exact if limit.sense == "max" else exact - bound
@@ -38,6 +38,11 @@ def compare(value: float, term: Term, limit: Limit, ruleset: RuleSet) -> Compari
         by_rounding=within and not within_exactly,
         margin=float(margin),
     )
+
+
+@cache
+def _printed(text: str) -> Decimal:
+    return Decimal(text)
 
 
 def decimals_of(term: Term, ruleset: RuleSet) -> int | None:

@@ -23,7 +23,7 @@ no source."""
 
 def cautions(assembly: Assembly) -> tuple[Caution, ...]:
     """Cautions of one assembly, each with the reason that triggered it."""
-    found = []
+    found: list[Caution] = []
     insulated = [layer for layer in assembly.layers if insulation_of(layer)]
     if insulated:
         titles = ", ".join(layer.title for layer in insulated)

@@ -21,47 +21,63 @@ STEEP = 60.0
 is horizontal within 30 degrees of the horizontal plane)."""
 
 
-def resolve(
-    element: Element,
-    assembly: Assembly,
-    category: str,
-    metric: str,
-    conventions: Conventions,
-    key: str,
-) -> Setting:
-    """Resolve films and method for one element.
+class Resolver:
+    """Resolves films and method under one rule set's conventions; what repeats is found once."""
 
-    category: the class it is judged in. metric: what the limit speaks of (``U_assembly`` ...).
-    key: name of the conventions, so that settings of two rule sets never mix.
-    """
-    rule = method_rule(conventions, category, assembly.kind, metric)
-    if rule is not None:
-        method, method_from = rule.method, rule.clause
-        refused, weight = rule.refused, rule.weight
-    else:
-        method, method_from = assumed_method(assembly, metric)
-        refused, weight = (), None
-    direction = direction_of_flow(element.tilt)
-    films = conventions.films
-    inside = _film(films, "inside", element.adjoins, direction)
-    outside = _film(films, "outside", element.adjoins, direction)
-    cladding = _film(films, "outside", "ventilated_cladding", direction)
-    stated = "stated in the project"
-    outside_stated, inside_stated = assembly.outside_film, assembly.inside_film
-    return Setting(
-        metric=metric,
-        method=method,
-        method_from=method_from,
-        refused=refused,
-        weight=weight,
-        direction=direction,
-        outside_film=outside.resistance if outside_stated is None else outside_stated,
-        outside_film_from=outside.source if outside_stated is None else stated,
-        inside_film=inside.resistance if inside_stated is None else inside_stated,
-        inside_film_from=inside.source if inside_stated is None else stated,
-        cladding_film=cladding.resistance,
-        conventions=key,
-    )
+    def __init__(self, conventions: Conventions, key: str) -> None:
+        """``key`` names the conventions, so that settings of two rule sets never mix."""
+        self._conventions, self._key = conventions, key
+        self._films: dict[tuple[str, str], tuple[FilmRow, FilmRow, FilmRow]] = {}
+        self._rules: dict[tuple[str, str, str], MethodRule | None] = {}
+
+    def resolve(self, element: Element, assembly: Assembly, category: str, metric: str) -> Setting:
+        """Resolve one element.
+
+        category: the class it is judged in. metric: what the limit speaks of (``U_assembly``).
+        """
+        rule = self._rule(category, assembly.kind, metric)
+        if rule is not None:
+            method, method_from = rule.method, rule.clause
+            refused, weight = rule.refused, rule.weight
+        else:
+            method, method_from = assumed_method(assembly, metric)
+            refused, weight = (), None
+        direction = direction_of_flow(element.tilt)
+        outside, inside, cladding = self._three_films(element.adjoins, direction)
+        stated = "stated in the project"
+        outer, inner = assembly.outside_film, assembly.inside_film
+        return Setting(
+            metric=metric,
+            method=method,
+            method_from=method_from,
+            refused=refused,
+            weight=weight,
+            direction=direction,
+            outside_film=outside.resistance if outer is None else outer,
+            outside_film_from=outside.source if outer is None else stated,
+            inside_film=inside.resistance if inner is None else inner,
+            inside_film_from=inside.source if inner is None else stated,
+            cladding_film=cladding.resistance,
+            conventions=self._key,
+        )
+
+    def _rule(self, category: str, kind: str, metric: str) -> MethodRule | None:
+        asked = (category, kind, metric)
+        if asked not in self._rules:
+            self._rules[asked] = method_rule(self._conventions, *asked)
+        return self._rules[asked]
+
+    def _three_films(self, adjoins: str, direction: str) -> tuple[FilmRow, FilmRow, FilmRow]:
+        """Outside, inside, and outside a well-ventilated cavity."""
+        asked = (adjoins, direction)
+        if asked not in self._films:
+            films = self._conventions.films
+            self._films[asked] = (
+                _film(films, "outside", adjoins, direction),
+                _film(films, "inside", adjoins, direction),
+                _film(films, "outside", "ventilated_cladding", direction),
+            )
+        return self._films[asked]
 
 
 def direction_of_flow(tilt: float) -> str:

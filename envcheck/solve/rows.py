@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
+
 from envcheck.model.project import (
     AirSpaceLayer,
     ContactLayer,
@@ -19,46 +21,44 @@ from envcheck.solve.registry import Wall
 
 
 def layer_rows(
-    wall: Wall, notes: dict[int, str], outer: tuple[LayerRow, ...]
+    wall: Wall, notes: Mapping[int, str], outer: tuple[LayerRow, ...]
 ) -> tuple[LayerRow, ...]:
     """All layers, those outside a ventilated cavity first; bridged ones without a resistance."""
     found = list(outer)
     for index, (layer, block) in enumerate(zip(wall.layers, wall.blocks, strict=True)):
-        row = plain_row(layer, notes.get(index, ""))
-        if not block.pattern:
-            row = row._replace(resistance=sum(cells[0].value for cells in block.cells))
-        found.append(row)
+        note = notes.get(index, "") if notes else ""
+        if block.pattern:
+            found.append(plain_row(layer, note))
+        else:
+            found.append(plain_row(layer, note, sum([cells[0].value for cells in block.cells])))
     return tuple(found)
 
 
-def plain_row(layer: Layer, note: str = "") -> LayerRow:
-    """One layer by its own description."""
+def plain_row(layer: Layer, note: str = "", counted: float | None = None) -> LayerRow:
+    """One layer by its own description; ``counted`` is the resistance that it has in a wall."""
     match layer:
-        case MaterialLayer():
-            k, source = layer.material.conductivity, layer.material.source
-            return LayerRow(layer.title, layer.thickness, k, layer.thickness / k, source, note)
-        case ResistanceLayer():
-            r = layer.resistance
-            return LayerRow(layer.title, layer.thickness, None, r, layer.source, note)
-        case ContactLayer():
-            return LayerRow(layer.title, 0.0, None, layer.resistance, layer.source, note)
+        case MaterialLayer(_, title, _, material, thickness):
+            k = material.conductivity
+            r = thickness / k if counted is None else counted
+            return LayerRow(title, thickness, k, r, material.source, note)
+        case ResistanceLayer() | ContactLayer():
+            thickness = layer.thickness if isinstance(layer, ResistanceLayer) else 0.0
+            return LayerRow(layer.title, thickness, None, layer.resistance, layer.source, note)
         case AirSpaceLayer():
             words = note or f"air space, {VENTILATION[layer.ventilation]}"
-            return LayerRow(layer.title, layer.thickness, None, None, "", words)
+            return LayerRow(layer.title, layer.thickness, None, counted, "", words)
         case TaperedLayer():
-            words = f"tapered {layer.least:.3g} m to {layer.greatest:.3g} m, {layer.shape}"
+            words = note or f"tapered ({layer.shape.replace('_', ' ')}), at its least thickness"
             k, source = layer.material.conductivity, layer.material.source
-            return LayerRow(layer.title, layer.least, k, None, source, note or words)
+            return LayerRow(layer.title, layer.least, k, counted, source, words)
         case FramedLayer():
             words = "; ".join(part for part in (_framing(layer), note) if part)
-            return LayerRow(
-                layer.title, layer.thickness, None, None, _fill_source(layer.fill), words
-            )
+            source = _fill_source(layer.fill)
+            return LayerRow(layer.title, layer.thickness, None, counted, source, words)
         case MasonryLayer():
-            words = f"webs {layer.web_share * 100:.3g} % of the area"
+            words = note or f"webs {layer.web_share * 100:.3g} % of the area"
             k, source = layer.material.conductivity, layer.material.source
-            return LayerRow(layer.title, layer.thickness, k, None, source, note or words)
-    raise TypeError(f"a layer of kind {layer.kind!r} has no row")
+            return LayerRow(layer.title, layer.thickness, k, counted, source, words)
 
 
 VENTILATION = {

@@ -1,0 +1,85 @@
+"""``python -m tests.benchmarks``: every budget as a ratio against its yardstick.
+
+Each figure is the median of fresh processes run in turn (yardstick, envcheck, yardstick ...), since
+machines are noisy and drift. Nothing here asserts; the exit status is 1 where a budget is missed.
+"""
+
+from __future__ import annotations
+
+import os
+import resource
+import subprocess
+import sys
+import tempfile
+import time
+from pathlib import Path
+from statistics import median
+
+from tests.benchmarks.generate import project
+
+ROOT = Path(__file__).parent.parent.parent
+RULES = ROOT / "rules"
+CHECK = [sys.executable, "-m", "envcheck", "check", "--rules", str(RULES)]
+IMPORT_CLICK = [sys.executable, "-c", "import click"]
+IMPORT_FOUR = [sys.executable, "-c", "import click, yaml, jsonschema, tabulate"]
+LOAD = "import sys, yaml; yaml.load(open(sys.argv[1], encoding='utf-8'), Loader=yaml.CSafeLoader)"
+
+
+def seconds(command: list[str]) -> float:
+    """Wall time of one fresh process, bytecode cached, output thrown away."""
+    env = {k: v for k, v in os.environ.items() if k != "PYTHONDONTWRITEBYTECODE"}
+    start = time.perf_counter()
+    subprocess.run(command, cwd=ROOT, env=env, stdout=subprocess.DEVNULL, check=True)
+    return time.perf_counter() - start
+
+
+def pair(ours: list[str], yardstick: list[str], runs: int) -> tuple[float, float, float]:
+    """Medians of both, and the median of the ratios pair by pair, after one warm-up."""
+    seconds(ours), seconds(yardstick)
+    pairs = [(seconds(ours), seconds(yardstick)) for _ in range(runs)]
+    a, b = zip(*pairs, strict=True)
+    return median(a), median(b), median(x / y for x, y in pairs)
+
+
+def peak_mib(command: list[str]) -> float:
+    """Largest memory of a process and its children, MiB."""
+    script = (
+        "import resource, subprocess, sys; subprocess.run(sys.argv[1:], stdout=subprocess.DEVNULL);"
+        "print(resource.getrusage(resource.RUSAGE_CHILDREN).ru_maxrss)"
+    )
+    made = subprocess.run(
+        [sys.executable, "-c", script, *command], cwd=ROOT, capture_output=True, text=True
+    )
+    return float(made.stdout) / 1024.0
+
+
+def main() -> int:
+    """Measure and print; 1 where a budget is missed."""
+    with tempfile.TemporaryDirectory() as folder:
+        files = {}
+        for size in (10, 1000, 2000):
+            files[size] = Path(folder) / f"project-{size}.yaml"
+            files[size].write_text(project(size), encoding="utf-8")
+        small, large, double = (str(files[size]) for size in (10, 1000, 2000))
+        load = [sys.executable, "-c", LOAD]
+        rows = [
+            ("--help / import click", [*CHECK[:3], "--help"], IMPORT_CLICK, 2.0, 9),
+            ("check of 10 / four imports", [*CHECK, small], IMPORT_FOUR, 1.6, 9),
+            ("check of 1,000 x 10 / C load", [*CHECK, large], [*load, large], 1.0, 7),
+            ("check of 2,000 / of 1,000", [*CHECK, double], [*CHECK, large], 2.2, 5),
+        ]
+        missed = 0
+        print(f"{'what':32} {'ours s':>8} {'yard s':>8} {'ratio':>7} {'budget':>7}")
+        for title, ours, yardstick, budget, runs in rows:
+            a, b, ratio = pair(ours, yardstick, runs)
+            over = ratio > budget
+            missed += over
+            print(f"{title:32} {a:8.3f} {b:8.3f} {ratio:7.2f} {budget:7.2f}{'  MISSED' * over}")
+        print(f"peak memory, check of 1,000: {peak_mib([*CHECK, large]):.0f} MiB")
+        print(f"peak memory, C load of it:   {peak_mib([*load, large]):.0f} MiB")
+    return 1 if missed else 0
+
+
+if __name__ == "__main__":
+    resource.setrlimit(resource.RLIMIT_CORE, (0, 0))
+    sys.exit(main())
