@@ -7,6 +7,7 @@ output went away. Nothing else ends with 1, except 3 where the user asked ``--fa
 
 from __future__ import annotations
 
+import gc
 import os
 import sys
 from collections.abc import Sequence
@@ -20,6 +21,7 @@ CLOSED_PIPE = 141
 
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run the command line and give the exit status; never raises, whatever the input."""
+    gc.disable()
     try:
         return _run(list(sys.argv[1:] if arguments is None else arguments))
     except KeyboardInterrupt:

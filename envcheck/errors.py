@@ -9,20 +9,23 @@ mends a file in one round.
 from __future__ import annotations
 
 from collections.abc import Iterable
-from dataclasses import dataclass
-from difflib import get_close_matches
-
-from envcheck.error_kinds import KINDS, Kind
-
-__all__ = ["KINDS", "InputError", "Kind", "Problem", "did_you_mean", "one_of", "problem"]
+from typing import NamedTuple
 
 MOST_NAMES = 12
 LONGEST = 1000
 """Characters of one part of a message."""
 
 
-@dataclass(frozen=True, slots=True)
-class Problem:
+class Kind(NamedTuple):
+    """One kind of error: ``what`` and ``fix`` are templates, ``about`` explains it in the docs."""
+
+    id: str
+    what: str
+    fix: str
+    about: str
+
+
+class Problem(NamedTuple):
     """One kind of error met at one place."""
 
     kind: Kind
@@ -68,8 +71,10 @@ def problem(
 ) -> Problem:
     """Make one problem; ``fill`` completes the kind's sentence and, unless given, its fix.
 
-    Errors: KeyError for an id that :data:`KINDS` does not know (a fault of ours, not the user's).
+    Errors: KeyError for an id that the catalogue does not know (a fault of ours, not the user's).
     """
+    from envcheck.error_kinds import KINDS  # only where something is wrong
+
     kind = KINDS[kind_id]
     return Problem(
         kind,
@@ -90,6 +95,8 @@ def visible(text: str, longest: int = 80) -> str:
 
 def did_you_mean(name: str, known: Iterable[str]) -> str:
     """Say which of the known names was likely meant, as ``did you mean 'x'?`` or nothing."""
+    from difflib import get_close_matches
+
     close = get_close_matches(name, list(known), n=1, cutoff=0.6)
     return f"did you mean {close[0]!r}?" if close else ""
 

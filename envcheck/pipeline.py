@@ -5,7 +5,7 @@ from __future__ import annotations
 import gc
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 from contextlib import contextmanager
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from functools import cache
 from pathlib import Path
 from typing import TYPE_CHECKING
@@ -278,7 +278,7 @@ class _Solver:
                 if host is None or assembly is None or assembly.id in self.first:
                     continue
                 metric = categories()[host.category].metric
-                element = replace(host, tag=mark.tag, assembly=mark.tag)
+                element = host._replace(tag=mark.tag, assembly=mark.tag)
                 self.solve(element, assembly, host.category, metric, ruleset)
 
 

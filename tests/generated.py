@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from pathlib import Path
 
-from envcheck.errors import KINDS
+from envcheck.error_kinds import KINDS
 from envcheck.judge.crosschecks import checks
 from envcheck.solve.registry import methods
 

@@ -7,9 +7,7 @@ the docs. Ids are stable: people look them up and scripts match them.
 from __future__ import annotations
 
 from envcheck.error_kinds import files, projects, rule_sets, sheets
-from envcheck.error_kinds.kind import Kind
-
-__all__ = ["KINDS", "Kind"]
+from envcheck.errors import Kind
 
 _ALL = (*files.KINDS, *projects.KINDS, *rule_sets.KINDS, *sheets.KINDS)
 KINDS: dict[str, Kind] = {kind.id: kind for kind in _ALL}

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from envcheck.error_kinds.kind import Kind
+from envcheck.errors import Kind
 
 KINDS = (
     Kind(

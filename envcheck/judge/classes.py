@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import NamedTuple
 
 from envcheck.model.judged import Choice, Finding
-from envcheck.model.patterns import matches
+from envcheck.model.patterns import in_words, matches
 from envcheck.model.project import Assembly, Element
 from envcheck.model.ruleset import ClassTest, RuleSet
 from envcheck.model.solved import Properties
@@ -50,7 +50,7 @@ def _by_light(element: Element, assembly: Assembly, test: ClassTest) -> Class:
     if clear:
         return Class(element.category)
     why = f"{test.clause}: {assembly.id} lets no light through (no visible transmittance, no SHGC)"
-    return Class(test.otherwise, Choice("class", test.otherwise, why))
+    return Class(test.otherwise, Choice("class", in_words(test.otherwise), why))
 
 
 def _by_mass(element: Element, properties: Properties, test: ClassTest) -> Class:
@@ -62,10 +62,11 @@ def _by_mass(element: Element, properties: Properties, test: ClassTest) -> Class
         return Class(element.category, missing=need)
     if counted >= test.at_least:
         why = f"{test.clause}: {_amount(test, counted)} is at least {test.text}"
-        return Class(element.category, Choice("class", element.category, why))
+        return Class(element.category, Choice("class", in_words(element.category), why))
     other = test.otherwise or FRAMED[properties.framing]
     why = f"{test.clause}: {_amount(test, counted)} is below {test.text}"
-    seen = f"claimed as {element.category}; {_amount(test, counted)} counts, {test.text} needed"
+    claimed = in_words(element.category)
+    seen = f"claimed as {claimed}; {_amount(test, counted)} counts, {test.text} needed"
     if whole is not None:
         seen += f" ({_amount(test, whole)} over the whole wall)"
     finding = Finding(
@@ -74,13 +75,14 @@ def _by_mass(element: Element, properties: Properties, test: ClassTest) -> Class
         element.tag,
         element.sheet,
         seen,
-        f"by {test.clause} it is {other}, and is judged as such",
+        f"by {test.clause} it is {in_words(other)}, and is judged as such (category {other})",
         "a category that the layers bear out, or layers with the mass that the class asks for",
+        title="The layers do not bear out the class",
     )
     official = ""
     if test.arguable and whole is not None and whole >= test.at_least:
-        official = f"{test.clause} leaves the way of counting open: {element.category} or {other}"
-    return Class(other, Choice("class", other, why), finding, official)
+        official = f"{test.clause} leaves the way of counting open: {claimed} or {in_words(other)}"
+    return Class(other, Choice("class", in_words(other), why), finding, official)
 
 
 def _measured(test: ClassTest, properties: Properties) -> tuple[float | None, float | None]:

@@ -34,9 +34,9 @@ def insulation_of(assembly: Assembly, element: Element, properties: Properties) 
         return Insulation(None, slab.resistance if covered else 0.0, slab.extent)
     why_not = ""
     if properties.crossed:
-        why_not = f"metal crosses the insulation: {properties.crossed[0]}"
+        why_not = f"metal crosses the insulation ({properties.crossed[0]})"
     elif properties.bracketed:
-        why_not = f"brackets are not fasteners: {properties.bracketed[0]}"
+        why_not = f"brackets are not fasteners ({properties.bracketed[0]})"
     extent = element.insulated_depth
     return Insulation(
         properties.cavity_resistance, properties.continuous_resistance, extent, why_not
@@ -71,12 +71,21 @@ def _short_of(term: Term, limit: Limit, brought: Insulation, ruleset: RuleSet) -
     comparison = compare(has, term, limit, ruleset)
     if not comparison.within:
         what = {"ci": "continuous", "cavity": "cavity"}.get(term.role, "labelled")
+        if not has:
+            return f"no {what} insulation, R-{term.text} is asked for"
         return f"{what} R-{_short(comparison.value)} is below R-{term.text}"
     if term.extent is not None:
         reaches = brought.extent or 0.0
         if reaches + EXTENT_TOLERANCE < term.extent:
-            return f"insulation reaches {reaches:.3g} m of {term.extent:.3g} m"
+            return f"insulation reaches {reach(reaches, limit)} of {reach(term.extent, limit)}"
     return None
+
+
+def reach(value: float, limit: Limit) -> str:
+    """Write how far insulation reaches, given in m, in the system of the printed limit."""
+    if "Btu" in limit.unit:
+        return f"{_short(convert(value, 'in'))} in"
+    return f"{_short(value)} m"
 
 
 def _part(term: Term, brought: Insulation) -> float:

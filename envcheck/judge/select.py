@@ -11,9 +11,10 @@ from dataclasses import dataclass, field
 from fnmatch import fnmatchcase
 
 from envcheck.judge.facts import Known, Value, fact_of, shown
-from envcheck.judge.selection import MissingFact, Outcome, Selection
+from envcheck.judge.selection import METRICS, MissingFact, Outcome, Selection
 from envcheck.judge.zones import ZoneFound, find_zone, holds
 from envcheck.model.judged import Choice
+from envcheck.model.patterns import in_words
 from envcheck.model.project import Element, Project
 from envcheck.model.ruleset import Limit, RuleSet
 
@@ -145,7 +146,8 @@ def _selection(
     groups = index.groups[(zone.heads, category)]
     if not groups:
         printed = f" for zone {zone.printed}" if zone.printed else ""
-        return stopped("not_in_table", f"no row of {ruleset.title} covers {category}{printed}")
+        why = f"no row of {ruleset.title} covers {in_words(category)}{printed}"
+        return stopped("not_in_table", why)
     outcomes = tuple(_outcome(key, levels, ruleset, facts) for key, levels in groups)
     trail += _row_trail(outcomes, facts)
     by = {(o.metric, o.path): o for o in outcomes}
@@ -239,18 +241,19 @@ def _row_trail(outcomes: tuple[Outcome, ...], facts: Mapping[str, Known]) -> lis
     trail: list[Choice] = []
     for outcome in outcomes:
         limit = outcome.limit
-        what = f"{outcome.metric}, {outcome.path}" if outcome.path else outcome.metric
+        what = METRICS.get(outcome.metric, outcome.metric)
         if limit is None:
             trail.append(Choice("row", f"{what}: none", outcome.why))
             continue
-        covers = ", ".join(limit.categories)
-        why = f"{limit.clause}, row {limit.label!r}, covers {covers}; {what} {limit.cell}"
+        covers = ", ".join(map(in_words, limit.categories))
+        why = f'{limit.clause}, row "{limit.label}", covers {covers}; {what} {limit.cell}'
         if limit.replaced:
             why += f"; replaces {limit.replaced}"
         trail.append(Choice("row", limit.id, why))
         for condition in limit.when:
             fact = facts[condition.dimension]
-            chosen = f"{condition.dimension} = {shown(fact.value)}"
-            trail.append(Choice("condition", chosen, f"meets {condition.text} ({fact.where})"))
+            chosen = f"{condition.dimension.replace('_', ' ')} {shown(fact.value)}"
+            why = f"the row asks for {condition.text} ({fact.where})"
+            trail.append(Choice("condition", chosen, why))
         trail += [Choice("footnote", f"[{note.mark}]", note.text) for note in limit.notes]
     return list(dict.fromkeys(trail))

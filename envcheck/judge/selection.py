@@ -6,8 +6,18 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field
 
 from envcheck.model.judged import Choice
+from envcheck.model.patterns import in_words
 from envcheck.model.ruleset import Limit
 
+METRICS = {
+    "U_assembly": "U-factor",
+    "U_product": "U-factor of the whole product",
+    "C_factor": "C-factor",
+    "F_factor": "F-factor",
+    "R_insulation": "R-value of the insulation",
+    "R_total": "total R-value",
+}
+"""Metrics in words; the others are words already."""
 INSULATION = "insulation"
 """Path of labelled R-values, printed beside the value of the whole."""
 
@@ -28,10 +38,12 @@ class MissingFact:
 
     def __str__(self) -> str:
         wanted = " or ".join(self.allowed) if self.allowed else f"a number {self.unit}".strip()
-        what = f"{self.name} ({wanted})"
+        what = f"{self.name.replace('_', ' ')} ({wanted})"
         if self.found:
             return f"{what} is stated as {self.found}, which the rule set does not know"
-        return f"{what} is not stated" + (f"; it belongs on the {self.sheet}" if self.sheet else "")
+        sheet = f"; it belongs on the {self.sheet}" if self.sheet else ""
+        fact = f" (fact {self.name})" if "_" in self.name else ""
+        return f"{what} is not stated{fact}{sheet}"
 
 
 @dataclass(frozen=True, slots=True)
@@ -103,7 +115,8 @@ class Selection:
         """Why there is no limit, in words; empty where there is one."""
         outcome = self.outcome(metric, path)
         if outcome is None:
-            return self.why or f"no row of the rule set gives {metric} for {self.category}"
+            what = METRICS.get(metric, metric)
+            return self.why or f"no row of the rule set gives {what} for {in_words(self.category)}"
         return outcome.why
 
     @property

@@ -7,7 +7,7 @@ from typing import NamedTuple
 
 from envcheck.judge.classes import Class
 from envcheck.judge.compare import compare
-from envcheck.judge.paths import insulation_of, insulation_path
+from envcheck.judge.paths import insulation_of, insulation_path, reach
 from envcheck.judge.selection import INSULATION, Selection
 from envcheck.model.judged import Choice, Comparison, Line, PathResult, Ratio
 from envcheck.model.patterns import matches
@@ -16,6 +16,17 @@ from envcheck.model.ruleset import Limit, RuleSet
 from envcheck.model.solved import Properties, Solved
 
 R_INSULATION = "R_insulation"
+OUTCOMES = {"pass": "within its limit", "fail": "over its limit"}
+"""What a claimed line is without its claim, in words; anything else is not decided."""
+METRICS = {
+    "U_assembly": "the U-factor",
+    "U_product": "the U-factor of the whole product",
+    "C_factor": "the C-factor",
+    "F_factor": "the F-factor",
+    "R_total": "the total R-value",
+    "VT": "the visible transmittance",
+}
+PATH_STATES = {"not_available": " not available", "not_decided": " not decided"}
 
 
 class Case(NamedTuple):
@@ -168,7 +179,7 @@ def _claimed(line: Line, claim: ExceptionClaim) -> Line:
         else "no evidence file"
     )
     reason = f"exception {claim.clause} claimed by {claim.claimed_by or 'nobody named'}: {evidence}"
-    without = line.verdict.replace("_", " ")
+    without = OUTCOMES.get(line.verdict, "not decided")
     words = f"with it: waived if the official agrees; without it: {without}"
     return line._replace(
         verdict="official_decides",
@@ -188,7 +199,7 @@ def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Lin
         return _by_bracket(case, line, limit, solved)
     value = _value(case, limit, solved)
     if missing is None and value is None:
-        missing = f"missing: {limit.metric} of {case.assembly.id}"
+        missing = f"missing: {METRICS.get(limit.metric, limit.metric)} of {case.assembly.id}"
     labels = _labels(case, limit)
     if limit.metric == R_INSULATION:
         return _by_labels(line, labels)
@@ -238,7 +249,8 @@ def _depth(case: Case, limit: Limit) -> str | None:
     ):
         return (
             f"missing: a value for the part of {element.tag} below its insulation "
-            f"({element.insulated_depth:.3g} m of {element.depth_below_grade:.3g} m insulated): "
+            f"({reach(element.insulated_depth, limit)} of "
+            f"{reach(element.depth_below_grade, limit)} insulated): "
             "enter two elements, split at that depth"
         )
     return None
@@ -273,20 +285,18 @@ def _without_value(line: Line, missing: str, limit: Limit, labels: PathResult | 
     own = PathResult("assembly", "not_decided", "", limit.cell, missing)
     return line._replace(
         verdict="pass",
-        reasons=(f"by the R-value path: {labels.value} {labels.why}",),
+        reasons=(f"by the R-value path: {labels.value}, {labels.why}",),
         paths=(own, labels),
     )
 
 
 def _reasons(comparison: Comparison, labels: PathResult | None) -> tuple[str, ...]:
     found = []
-    if comparison.by_rounding:
-        found.append("within its limit after rounding only")
     if labels is not None and not comparison.within:
         if labels.state == "pass":
             found.append(f"by the R-value path: {labels.value}, {labels.why}")
         else:
-            found.append(f"R-value path {labels.state.replace('_', ' ')}: {labels.why}")
+            found.append(f"R-value path{PATH_STATES.get(labels.state, '')}: {labels.why}")
     return tuple(found)
 
 
@@ -297,11 +307,11 @@ def _by_bracket(case: Case, line: Line, limit: Limit, solved: Solved) -> Line:
     low = compare(solved.low, term, limit, case.ruleset)
     high = compare(solved.high, term, limit, case.ruleset)
     if high.within:
-        verdict, why = "pass", "the whole bracket lies within the limit"
+        verdict, why = "pass", "both bounds lie within the limit"
     elif not low.within:
-        verdict, why = "fail", "the whole bracket lies over the limit"
+        verdict, why = "fail", "both bounds lie over the limit"
     else:
-        verdict, why = "too_close", "the limit lies inside the bracket, which decides here"
+        verdict, why = "too_close", "the limit lies between the bounds, which decide here"
     return line._replace(verdict=verdict, reasons=(why,), comparison=high, low=low, high=high)
 
 

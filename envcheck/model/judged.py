@@ -117,6 +117,8 @@ class Finding(NamedTuple):
     """What would settle it."""
     answered: str = ""
     """The project's answer, where it gives one."""
+    title: str = ""
+    """What the check looks for, in a few words."""
 
 
 class Ratio(NamedTuple):

@@ -152,12 +152,11 @@ class Assembly(NamedTuple):
 # ----------------------------------------------------------------------------------- elements
 
 
-@dataclass(frozen=True, slots=True)
-class Opening:
+class Opening(NamedTuple):
     """An opening's mark as a surface shows it."""
 
     tag: str
-    count: float
+    count: float  # type: ignore[assignment]  # hides tuple.count, which nobody calls
     area: float | None = None
     """m2 in all, where the drawing shows it."""
     host: str = ""
@@ -193,8 +192,7 @@ class Fact(NamedTuple):
     line: int
 
 
-@dataclass(frozen=True, slots=True)
-class Element:
+class Element(NamedTuple):
     """One real piece of the building: an amount of an assembly, tied to a drawing sheet."""
 
     tag: str
@@ -208,7 +206,7 @@ class Element:
     gross_area: float | None
     perimeter: float | None
     """m"""
-    count: float | None
+    count: float | None  # type: ignore[assignment]  # hides tuple.count, which nobody calls
     host: str
     """Tag of the element that this opening is cut from, or empty."""
     adjoins: str
@@ -273,8 +271,7 @@ class Site(NamedTuple):
     outdoor_temperature: float | None = None
 
 
-@dataclass(frozen=True, slots=True)
-class Options:
+class Options(NamedTuple):
     """What a remedy may use."""
 
     stock: tuple[tuple[str, tuple[float, ...]], ...] = ()

@@ -6,8 +6,9 @@ so ``Term.number`` is the printed number, the one exception to SI inside.
 
 from __future__ import annotations
 
-from dataclasses import dataclass, field
+from collections.abc import Mapping
 from datetime import date
+from types import MappingProxyType
 from typing import NamedTuple
 
 
@@ -182,8 +183,7 @@ class TableRow(NamedTuple):
     source: str
 
 
-@dataclass(frozen=True, slots=True)
-class Conventions:
+class Conventions(NamedTuple):
     """How this code counts. ``where`` says for each key whether it is stated or our default."""
 
     films: tuple[FilmRow, ...] = ()
@@ -204,13 +204,13 @@ class Conventions:
     """Insulation crossed by continuous metal: ``zero``, ``counted`` or ``two_dimensional``."""
     framing_shares: tuple[tuple[str, float, str], ...] = ()
     """(category pattern, share, clause)"""
-    tables: dict[str, tuple[TableRow, ...]] = field(default_factory=dict)
+    tables: Mapping[str, tuple[TableRow, ...]] = MappingProxyType({})
     class_tests: tuple[ClassTest, ...] = ()
-    accepted_evidence: dict[str, tuple[str, ...]] = field(default_factory=dict)
+    accepted_evidence: Mapping[str, tuple[str, ...]] = MappingProxyType({})
     """Category pattern -> kinds of evidence (and ``standard:NAME``) that it accepts."""
     dimensions_measured: str = ""
     """``outside`` or ``inside`` where the code says."""
-    where: dict[str, str] = field(default_factory=dict)
+    where: Mapping[str, str] = MappingProxyType({})
     """Key -> "Table 5 of the rule set" or "default of envcheck"."""
 
 
@@ -282,8 +282,7 @@ class Edition(NamedTuple):
     sha256: str
 
 
-@dataclass(frozen=True, slots=True)
-class RuleSet:
+class RuleSet(NamedTuple):
     """A base edition with the amendments in force folded over it."""
 
     id: str

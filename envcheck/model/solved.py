@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
 from typing import NamedTuple
 
 
@@ -144,8 +143,7 @@ class Setting(NamedTuple):
     """Key of the rule set whose Conventions apply."""
 
 
-@dataclass(frozen=True, slots=True)
-class Solved:
+class Solved(NamedTuple):
     """The answer for one assembly under one setting."""
 
     assembly: str

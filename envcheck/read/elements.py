@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections import defaultdict
 from collections.abc import Iterable, Mapping
-from dataclasses import replace
 from typing import Any
 
 from envcheck.model.project import Bridge, Element, ExceptionClaim, Fact, Opening, Surface
@@ -242,7 +241,7 @@ def with_openings(
                 found=f"{held:.4g} m2 of openings in {element.gross_area:.4g} m2",
                 openings=", ".join(o.tag for o in openings[tag]),
             )
-        done[tag] = replace(element, net_area=net)
+        done[tag] = element._replace(net_area=net)
     return done
 
 

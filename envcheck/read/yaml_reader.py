@@ -172,10 +172,19 @@ class _Builder:
             kind = event.__class__
             if kind is scalar:
                 line = event.start_mark.line + 1
+                text = event.value
+                plain = not (event.style or event.anchor or event.tag)
                 if key is None and here.__class__ is Entry:
-                    key = self._key(event, here, line)
+                    if plain and text not in here.lines and text.isprintable() and text != "<<":
+                        here.lines[text] = line
+                        key = text
+                    else:
+                        key = self._key(event, here, line)
                     continue
-                value = self._scalar(event, line)
+                if plain and text and text[0] not in _START:
+                    value = text
+                else:
+                    value = self._scalar(event, line)
             elif kind in close:
                 value, line = here, here.line
                 here, key = self.stack.pop()

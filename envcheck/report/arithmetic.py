@@ -10,10 +10,12 @@ import ast
 import math
 import operator
 import re
-from collections.abc import Callable, Mapping
+from collections.abc import Callable, Mapping, Sequence
 from functools import lru_cache
+from operator import itemgetter
+from typing import NamedTuple
 
-Evaluate = Callable[[Mapping[str, float]], float]
+Evaluate = Callable[[Sequence[float]], float]
 _BINARY: dict[type[ast.operator], Callable[[float, float], float]] = {
     ast.Add: operator.add,
     ast.Sub: operator.sub,
@@ -28,20 +30,22 @@ _FUNCTIONS: dict[str, Callable[..., float]] = {
     "min": min,
     "max": max,
 }
+_NAME = "operand_"
 _OPERAND = re.compile(r"\{([^{}]+)\}")
 
 
 def fill(expression: str, values: Mapping[str, str]) -> str:
-    """Write the formula with its operands' printed values in place of their names.
+    """Write the formula with its operands' printed values in place of their names."""
+    formula = compiled(expression)
+    return filled(formula, [values[name] for name in formula.names])
+
+
+def filled(formula: Formula, texts: Sequence[str]) -> str:
+    """Write the formula with a text at each place.
 
     A negative value gets parentheses, so that the written formula means the same.
     """
-
-    def put(match: re.Match[str]) -> str:
-        text = values[match[1]]
-        return f"({text})" if text.startswith("-") else text
-
-    return _OPERAND.sub(put, expression)
+    return formula.form % tuple(f"({text})" if text[0] == "-" else text for text in texts)
 
 
 def named(expression: str) -> str:
@@ -49,49 +53,59 @@ def named(expression: str) -> str:
     return expression.replace("{", "").replace("}", "")
 
 
+class Formula(NamedTuple):
+    """A formula taken apart once, however often it is filled in."""
+
+    names: tuple[str, ...]
+    """Names of the operands as they stand, one of each place."""
+    form: str
+    """The formula with ``%s`` at each place of an operand."""
+    evaluate: Evaluate
+
+
 @lru_cache(maxsize=4096)
-def compiled(expression: str) -> Evaluate:
-    """Turn a formula with operands in braces into a function of their values.
+def compiled(expression: str) -> Formula:
+    """Turn a formula with operands in braces into a function of their values, by place.
 
     Errors: ValueError for anything that is no formula; the function raises ArithmeticError or
     ValueError where the numbers have no result.
     """
-    names: list[str] = []
-
-    def number(match: re.Match[str]) -> str:
-        names.append(match[1])
-        return f" operand_{len(names) - 1} "
-
+    pieces = _OPERAND.split(expression)
+    names = tuple(pieces[1::2])
+    numbered = "".join(
+        f" {_NAME}{place // 2} " if place % 2 else text for place, text in enumerate(pieces)
+    )
     try:
-        tree = ast.parse(_OPERAND.sub(number, expression).strip(), mode="eval").body
+        tree = ast.parse(numbered.strip(), mode="eval").body
     except SyntaxError as error:
         raise ValueError(f"no formula: {expression!r}") from error
-    return _node(tree, names)
+    form = "%s".join(text.replace("%", "%%") for text in pieces[::2])
+    return Formula(names, form, _node(tree))
 
 
 def evaluate(expression: str, values: Mapping[str, float]) -> float:
     """Evaluate a formula; ``values`` by the operand names in braces."""
-    return compiled(expression)(values)
+    formula = compiled(expression)
+    return formula.evaluate([values[name] for name in formula.names])
 
 
-def _node(node: ast.expr, names: list[str]) -> Evaluate:
+def _node(node: ast.expr) -> Evaluate:
     match node:
         case ast.Constant(value=int() | float() as constant) if not isinstance(constant, bool):
             fixed = float(constant)
             return lambda values: fixed
-        case ast.Name(id=name) if name.startswith("operand_"):
-            key = names[int(name.removeprefix("operand_"))]
-            return lambda values: values[key]
+        case ast.Name(id=name) if name.startswith(_NAME):
+            return itemgetter(int(name.removeprefix(_NAME)))
         case ast.BinOp(op=ast.Add()):
-            return _sum([_node(term, names) for term in _terms(node)])
+            return _sum(_terms(node))
         case ast.BinOp(left=left, op=op, right=right) if type(op) in _BINARY:
-            first, second, apply = _node(left, names), _node(right, names), _BINARY[type(op)]
+            first, second, apply = _node(left), _node(right), _BINARY[type(op)]
             return lambda values: apply(first(values), second(values))
         case ast.UnaryOp(op=ast.USub(), operand=operand):
-            inner = _node(operand, names)
+            inner = _node(operand)
             return lambda values: -inner(values)
         case ast.Call(func=ast.Name(id=name), args=args, keywords=[]) if name in _FUNCTIONS:
-            function, inputs = _FUNCTIONS[name], [_node(arg, names) for arg in args]
+            function, inputs = _FUNCTIONS[name], [_node(arg) for arg in args]
             return lambda values: function(*(each(values) for each in inputs))
     raise ValueError(f"not allowed in a formula: {ast.unparse(node)!r}")
 
@@ -105,5 +119,11 @@ def _terms(node: ast.expr) -> list[ast.expr]:
     return [node, *reversed(terms)]
 
 
-def _sum(terms: list[Evaluate]) -> Evaluate:
-    return lambda values: sum(term(values) for term in terms)
+def _sum(terms: list[ast.expr]) -> Evaluate:
+    names = [term.id for term in terms if isinstance(term, ast.Name)]
+    places = [int(name.removeprefix(_NAME)) for name in names if name.startswith(_NAME)]
+    if len(places) == len(terms):
+        pick = itemgetter(*places)
+        return lambda values: sum(pick(values))
+    parts = [_node(term) for term in terms]
+    return lambda values: sum(part(values) for part in parts)

@@ -6,10 +6,21 @@ from collections.abc import Iterable, Mapping
 from typing import NamedTuple
 
 from envcheck.model.judged import Judged, Line
+from envcheck.model.patterns import in_words
 from envcheck.model.project import Assembly, Element, Fact, Project
 from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Solved
-from envcheck.report import comparison, details, header, numbers, outline, rows, said, tree, wording
+from envcheck.report import (
+    assembly_page,
+    comparison,
+    details,
+    header,
+    numbers,
+    rows,
+    said,
+    tree,
+    wording,
+)
 from envcheck.report import worksheet as sheet
 from envcheck.report.inert import clean
 from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, Paragraph, Section
@@ -92,9 +103,11 @@ def _fact(fact: Fact) -> str:
 
 
 def _category(element: Element, lines: Iterable[Line]) -> str:
-    judged = dict.fromkeys(line.category for line in lines if line.category != element.category)
+    judged = dict.fromkeys(
+        in_words(line.category) for line in lines if line.category != element.category
+    )
     moved = f"; judged as {', '.join(judged)}" if judged else ""
-    return element.category + moved
+    return in_words(element.category) + moved
 
 
 def _pairs(pairs: Iterable[tuple[str, str]]) -> tuple[Pair, ...]:
@@ -116,7 +129,7 @@ def _solved(project: Project, solved: Solved, lines: list[Line], system: str) ->
     assembly = project.assemblies[solved.assembly]
     tags = dict.fromkeys(line.element for line in lines if line.solved is solved)
     view = details.assembly_view(assembly, solved, tags, system)
-    made = [Section(f"Assembly {view.assembly}, {view.metric}", outline.assembly_blocks(view))]
+    made = [Section(f"Assembly {view.assembly}, {view.metric}", assembly_page.blocks(view))]
     if solved.steps:
         made.append(Section("Worksheet", (Paragraph(_HOW), _worksheet(solved, system))))
     grid = tree.paths(solved.tree, system)
@@ -160,10 +173,7 @@ def _held(line: Line, rulesets: Mapping[str, RuleSet], system: str) -> list[Sect
     """Why this limit, the comparison, the verdict."""
     metric = wording.METRICS.get(line.metric, wording.plain(line.metric))
     heading = f"{clean(line.element)} held against {clean(line.ruleset)}: {metric}"
-    trail = [
-        (wording.TRAIL.get(step, wording.plain(step)), f"{chosen}: {why}" if why else chosen)
-        for step, chosen, why in line.trail
-    ]
+    trail = [said.choice(*step) for step in line.trail]
     source = said.limit_source(line.limit, line.ruleset)
     pairs = [*trail, ("limit", f"{said.limit_text(line)} [{source}]" if source else "")]
     blocks: list[Block] = [Facts(_pairs(pairs))] if any(text for _, text in pairs) else []

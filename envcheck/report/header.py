@@ -6,6 +6,7 @@ from collections.abc import Iterable, Mapping
 from typing import NamedTuple
 
 from envcheck.model.judged import Line
+from envcheck.model.patterns import in_words
 from envcheck.model.project import Project
 from envcheck.model.ruleset import Conventions, RuleSet
 from envcheck.report import numbers, wording
@@ -59,7 +60,6 @@ def facts(project: Project, date: str) -> tuple[Pair, ...]:
 def rule_set(ruleset: RuleSet, lines: Iterable[Line], project: Project, system: str) -> RuleSetView:
     """Head of one rule set; the zone comes from the trail of its lines."""
     own = [line for line in lines if line.ruleset == ruleset.id]
-    decides = all(choice.decides for choice in project.rule_sets if choice.id == ruleset.id)
     printed = dict.fromkeys(clean(x.limit.unit) for x in own if x.limit and x.limit.unit)
     apart = any(numbers.system_of(unit) != system for unit in printed)
     pairs = (
@@ -67,17 +67,44 @@ def rule_set(ruleset: RuleSet, lines: Iterable[Line], project: Project, system: 
         ("status", status(ruleset)),
         ("documents", "; ".join(_documents(ruleset))),
         ("zone", _zone(ruleset, own, project)),
-        ("weight", "" if decides else "information only, decides nothing"),
+        ("weight", "" if decides(ruleset, project) else "information only, decides nothing"),
     )
     return RuleSetView(
         id=clean(ruleset.id),
         title=clean(ruleset.title),
-        decides=decides,
+        decides=decides(ruleset, project),
         facts=tuple(Pair(label, clean(text)) for label, text in pairs if text),
         conventions=tuple(_conventions(ruleset, system)),
         units_note=_units_note(own, system),
         printed_units=", ".join(printed) if apart else "",
     )
+
+
+def decides(ruleset: RuleSet, project: Project) -> bool:
+    """Whether a rule set decides, or is held beside for information only."""
+    return all(choice.decides for choice in project.rule_sets if choice.id == ruleset.id)
+
+
+def lead(project: Project, rulesets: Iterable[RuleSet], lines: Iterable[Line]) -> tuple[str, ...]:
+    """Place, rule set, zone and status: a line for each rule set."""
+    zones: dict[str, str] = {}
+    for line in lines:
+        if line.ruleset not in zones:
+            zone = next((chosen for step, chosen, _ in line.trail if step == "zone"), "")
+            zones[line.ruleset] = zone
+    found = []
+    for ruleset in rulesets:
+        word = wording.STATUS.get(ruleset.status, ruleset.status)
+        zone = zones.get(ruleset.id, "")
+        parts = (
+            project.site.place,
+            ruleset.title,
+            f"zone {zone}" if zone else "zone not found",
+            f"invented {word}" if ruleset.invented else word,
+            "" if decides(ruleset, project) else "information only",
+        )
+        found.append(clean("; ".join(filter(None, parts))))
+    return tuple(found)
 
 
 def status(ruleset: RuleSet) -> str:
@@ -135,16 +162,20 @@ def _conventions(ruleset: RuleSet, system: str) -> Iterable[Convention]:
     crossed = wording.CROSSED.get(conv.crossed_insulation, conv.crossed_insulation)
     yield _said(conv, "crossed insulation", crossed, "crossed_insulation")
     for category, share, clause in conv.framing_shares:
-        yield Convention("framing share", f"{category}: {numbers.percent(share)}", clean(clause))
+        counted = f"{in_words(category)}: {numbers.percent(share)}"
+        yield Convention("framing share", counted, clean(clause))
     if not conv.framing_shares:
         yield Convention("framing share", "none is built in: each as the project states", "project")
     for test in conv.class_tests:
-        counted = f"{test.category}: {wording.plain(test.measure)} at least {test.text}"
-        counted += f", counted {wording.plain(test.counted)}"
+        counted = f"{in_words(test.category)}: {wording.plain(test.measure)} at least {test.text}"
+        if test.measure == "visible_transmittance":
+            counted = f"{in_words(test.category)}: must let light through"
+        else:
+            counted += f", counted {wording.plain(test.counted)}"
         yield Convention("class test", clean(counted), clean(test.clause))
     evidence: dict[tuple[str, ...], list[str]] = {}
     for category, kinds in conv.accepted_evidence.items():
-        evidence.setdefault(kinds, []).append(category)
+        evidence.setdefault(kinds, []).append(in_words(category))
     for kinds, categories in evidence.items():
         counted = f"{', '.join(categories)}: {', '.join(kinds)}"
         yield _said(conv, "accepted evidence", counted, "accepted_evidence", "evidence")
@@ -165,7 +196,7 @@ def _said(conv: Conventions, topic: str, counted: str, *keys: str) -> Convention
 def _films(conv: Conventions) -> str:
     if conv.film_set in wording.FILM_SETS:
         return wording.FILM_SETS[conv.film_set]
-    return f"{conv.film_set or 'table of the rule set'}"
+    return f"table {conv.film_set}" if conv.film_set else "table of the rule set"
 
 
 def _methods(conv: Conventions) -> Iterable[tuple[str, str]]:
@@ -173,7 +204,7 @@ def _methods(conv: Conventions) -> Iterable[tuple[str, str]]:
     found: dict[tuple[str, float | None, tuple[str, ...], str], list[str]] = {}
     for rule in conv.methods:
         key = (rule.method, rule.weight, rule.refused, rule.clause)
-        found.setdefault(key, []).append(rule.category)
+        found.setdefault(key, []).append(in_words(rule.category))
     for (method, weight, refused, clause), categories in found.items():
         text = wording.METHODS.get(method, wording.plain(method))
         text += f" (weight {weight:g})" if weight is not None else ""

@@ -53,17 +53,17 @@ def unsettled(finding: Finding) -> bool:
 
 
 def open_items(rows: Iterable[Row], judged: Judged) -> tuple[Item, ...]:
-    """Open lines with their reasons, then findings that must be settled."""
+    """Open lines that decide with their reasons, then findings that must be settled by title."""
     found = [
         Item(row.tag, row.sheet, row.verdict_text, (*row.reasons, *row.notes))
         for row in rows
-        if row.open
+        if row.open and row.decides
     ]
     for finding in judged.findings:
         if unsettled(finding):
-            lines = tuple(filter(None, (clean(finding.seen), clean(finding.settles))))
-            what = f"finding {clean(finding.check)}"
-            found.append(Item(clean(finding.subject), clean(finding.sheet), what, lines))
+            title = clean(finding.title) or wording.plain(clean(finding.check).replace("-", " "))
+            what = f"finding: {title[0].lower()}{title[1:]}"
+            found.append(Item(clean(finding.subject), clean(finding.sheet), what, ()))
     return tuple(found)
 
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+from collections.abc import Iterable
 from decimal import ROUND_HALF_UP, Decimal
 from functools import lru_cache
 
@@ -77,11 +78,13 @@ def symbol(metric: str) -> str:
     return SYMBOLS.get(metric, metric)
 
 
+@lru_cache(maxsize=64)
 def unit(metric: str, system: str) -> str:
     """Give the unit of a metric as printed in ``system``."""
     return units.label(quantity(metric), system)
 
 
+@lru_cache(maxsize=256)
 def decimals(metric: str, system: str, printed: int = 0) -> int:
     """Decimals of an unrounded value: one more than the printed limit has, at the least."""
     return max(DECIMALS.get((quantity(metric), system), 3), printed + 1)
@@ -106,6 +109,7 @@ def in_unit(value: float, spelling: str) -> float:
     return units.convert(value, spelling) if spelling else value
 
 
+@lru_cache(maxsize=64)
 def system_of(spelling: str) -> str:
     """Tell which system a printed unit belongs to: ``SI``, ``IP`` or empty for plain numbers."""
     if not spelling:
@@ -136,6 +140,11 @@ def resistance(value: float | None, system: str) -> str:
 def area(value: float, system: str) -> str:
     """Write an area without its unit, trailing zeros cut."""
     return trimmed(in_system(value, "area", system), 1 if system == "IP" else 2)
+
+
+def total(texts: Iterable[str]) -> str:
+    """Add printed numbers up as they are printed."""
+    return f"{sum(map(Decimal, texts)):f}"
 
 
 def percent(share: float, decimals: int = 1) -> str:

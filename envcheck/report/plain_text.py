@@ -5,6 +5,7 @@ from __future__ import annotations
 import re
 from collections.abc import Iterable
 
+from envcheck.report import tabular
 from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, Paragraph
 
 COLOURS = {"bad": "\x1b[31m", "open": "\x1b[33m", "good": "\x1b[32m"}
@@ -79,6 +80,18 @@ def wrap(text: str, width: int) -> list[str]:
     if len(text) <= width:
         return [text]
     lines: list[str] = []
+    start = 0
+    while len(text) - start > width:
+        cut = text.rfind(" ", start, start + width + 1)
+        if cut <= start:
+            return [*lines, *_long_words(text[start:], width)]
+        lines.append(text[start:cut])
+        start = cut + 1
+    return [*lines, text[start:]]
+
+
+def _long_words(text: str, width: int) -> list[str]:
+    lines: list[str] = []
     line = ""
     for word in text.split(" "):
         if line and len(line) + 1 + len(word) <= width:
@@ -113,16 +126,11 @@ def grid(block: Grid, width: int, colour: bool) -> list[str]:
     for number, row in enumerate(block.rows):
         tone = COLOURS.get(block.tones[number], "") if colour and block.tones else ""
         lines += _physical(row, widths, tone)
-    for column in block.right:
-        for line in lines:
-            line[column] = line[column].rjust(widths[column])
-    gap = " " * GAP
-    form = gap.join(f"{{:<{width}}}" for width in widths[:-1]) + gap + "{}"
-    return [form.format(*line) for line in lines]
+    return tabular.lines(lines, block.right, "plain")
 
 
 def _physical(row: tuple[str, ...], widths: list[int], tone: str) -> list[list[str]]:
-    """One table row as lines of cells, so that the table itself knows single lines only."""
+    """One table row as lines of cells, broken where a cell is wider than its column."""
     if all(len(cell) <= width for cell, width in zip(row, widths, strict=True)):
         lines = [list(row)]
     else:

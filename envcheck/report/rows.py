@@ -3,13 +3,15 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
+from functools import lru_cache
 from itertools import starmap
 from typing import NamedTuple
 
 from envcheck import units
 from envcheck.model.judged import Comparison, Line, PathResult
 from envcheck.model.project import Element, Project
-from envcheck.report import numbers, said, wording, worksheet
+from envcheck.model.solved import Step
+from envcheck.report import hand_check, numbers, said, wording
 from envcheck.report.inert import clean
 from envcheck.report.parts import Pair
 
@@ -63,6 +65,8 @@ class Row(NamedTuple):
     """Bounds of the drawn model, in the units of the report."""
     limit: str
     """As printed, with its sense."""
+    against: str
+    """The number held against, with its sense."""
     limit_number: Figure
     limit_source: str
     room: Figure
@@ -89,11 +93,14 @@ def build(
 
 
 class _Written:
-    """What several lines share and is written once: sums of an assembly, places of a limit."""
+    """What several lines share and is written once: sums of an assembly, places of a limit.
+
+    Assemblies of the same layers, and one assembly under rule sets of the same films, share a sum.
+    """
 
     def __init__(self, trails: bool) -> None:
         self.trails = trails
-        self._sums: dict[tuple[int, str], str] = {}
+        self._sums: dict[tuple[float | None, str], list[tuple[tuple[Step, ...], str]]] = {}
         self._sources: dict[tuple[int, str], str] = {}
 
     def sum(self, line: Line, system: str, value: Figure) -> str:
@@ -101,11 +108,14 @@ class _Written:
         solved = line.solved
         if solved is None or not value.text or solved.setting.metric != line.metric:
             return ""
-        key = (id(solved), value.text)
-        if key not in self._sums:
-            places = len(value.text.partition(".")[2])
-            self._sums[key] = worksheet.shortest(solved.hand_check, system, places, value.text)
-        return self._sums[key]
+        key = (solved.value, value.text)
+        for steps, text in self._sums.get(key, ()):
+            if steps is solved.hand_check or steps == solved.hand_check:
+                return text
+        places = len(value.text.partition(".")[2])
+        text = hand_check.shortest(solved.hand_check, system, places, value.text)
+        self._sums.setdefault(key, []).append((solved.hand_check, text))
+        return text
 
     def source(self, line: Line) -> str:
         """Where the limit stands in print."""
@@ -120,6 +130,7 @@ def _row(line: Line, project: Project, system: str, written: _Written) -> Row:
     assembly = project.assemblies.get(element.assembly) if element else None
     own = line.own or line.comparison
     value = value_of(line, system)
+    low, high = _bounds(line, system)
     return Row(
         rule_set=line.ruleset,
         decides=line.decides,
@@ -134,9 +145,10 @@ def _row(line: Line, project: Project, system: str, written: _Written) -> Row:
         amount=amount(element, system),
         value=value,
         compared=_compared(line.comparison),
-        low=_bound(line, system, high=False),
-        high=_bound(line, system, high=True),
+        low=low,
+        high=high,
         limit=said.limit_text(line),
+        against=said.against(line),
         limit_number=_limit_number(line.comparison),
         limit_source=written.source(line),
         room=_room(own, line.metric),
@@ -193,16 +205,20 @@ def value_of(line: Line, system: str) -> Figure:
     return Figure(numbers.fixed(shown, places), unit)
 
 
-def _bound(line: Line, system: str, high: bool) -> Figure:
+def _bounds(line: Line, system: str) -> tuple[Figure, Figure]:
+    """Low and high end of the drawn model."""
     solved = line.solved
-    if solved is None or solved.setting.metric != line.metric:
-        return NO_FIGURE
-    value = solved.high if high else solved.low
-    if value is None:
-        return NO_FIGURE
-    shown = numbers.in_system(value, numbers.quantity(line.metric), system)
+    if solved is None or solved.low is None or solved.high is None:
+        return NO_FIGURE, NO_FIGURE
+    if solved.setting.metric != line.metric:
+        return NO_FIGURE, NO_FIGURE
+    unit = numbers.unit(line.metric, system)
     places = numbers.decimals(line.metric, system)
-    return Figure(numbers.fixed(shown, places), numbers.unit(line.metric, system))
+    factor = numbers.factor(numbers.quantity(line.metric), system)
+    low = Figure(numbers.fixed(solved.low / factor, places), unit)
+    if solved.low == solved.high:
+        return low, low
+    return low, Figure(numbers.fixed(solved.high / factor, places), unit)
 
 
 def _compared(comparison: Comparison | None) -> Figure:
@@ -231,6 +247,7 @@ def _room_share(comparison: Comparison | None) -> str:
     return f"{numbers.signed(100.0 * comparison.margin / comparison.limit, 1)} %"
 
 
+@lru_cache(maxsize=4096)
 def _path(result: PathResult, metric: str) -> PathRow:
     path = wording.path(result.path, numbers.symbol(metric))
     state = wording.STATES.get(result.state, wording.plain(result.state))
@@ -238,5 +255,5 @@ def _path(result: PathResult, metric: str) -> PathRow:
 
 
 def _choice(step: str, chosen: str, why: str) -> Pair:
-    label = wording.TRAIL.get(step, wording.plain(step))
-    return Pair(clean(label), clean(f"{chosen}: {why}" if why else chosen))
+    label, text = said.choice(step, chosen, why)
+    return Pair(clean(label), clean(text))

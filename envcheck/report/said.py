@@ -7,6 +7,9 @@ from envcheck.model.ruleset import Limit
 from envcheck.report import numbers, wording
 from envcheck.report.inert import clean
 
+SOURCES = {"E": "example value"}
+"""Marks in the column ``src`` of a table, in words."""
+
 
 def compared(comparison: Comparison) -> str:
     """The figure that was held against the limit, in the printed unit."""
@@ -35,6 +38,16 @@ def limit_text(line: Line) -> str:
     return f"{_sense(line.limit.sense)}{cell}"
 
 
+def against(line: Line) -> str:
+    """The number that a value is held against; a cell of several numbers or none as printed."""
+    limit = line.limit
+    if line.comparison is not None or limit is None or limit.kind != "number":
+        own = line.comparison
+        return f"{_sense(own.sense)}{limit_number(own)}" if own is not None else limit_text(line)
+    terms = limit.alternatives[0] if len(limit.alternatives) == 1 else ()
+    return f"{_sense(limit.sense)}{terms[0].text}" if len(terms) == 1 else limit_text(line)
+
+
 def _sense(sense: str) -> str:
     return ">= " if sense == "min" else "<= "
 
@@ -46,35 +59,65 @@ def limit_source(limit: Limit | None, ruleset: str) -> str:
     parts = [limit.clause or limit.table, f'"{limit.label or limit.row}"']
     if limit.zone and limit.zone != "*":
         parts.append(limit.zone)
-    parts += [f"{wording.plain(when.dimension)} {when.text}".strip() for when in limit.when]
+    parts += [_condition(when.dimension, when.text) for when in limit.when]
     if limit.ruleset != ruleset:
         parts.append(f"printed in {limit.ruleset}")
     if limit.replaced:
         parts.append(f"in place of {limit.replaced}")
     if limit.src:
-        parts.append(f"source {limit.src}")
+        parts.append(SOURCES.get(limit.src, f"source {limit.src}"))
     return clean(", ".join(filter(None, parts)))
 
 
+def _condition(dimension: str, text: str) -> str:
+    return f"{wording.plain(dimension)} {wording.either(text)}".strip()
+
+
 def verdict_text(line: Line) -> str:
-    """The verdict in words."""
+    """The verdict in words, with what it rests on where a value passes only just or otherwise."""
     text = wording.VERDICTS[line.verdict]
-    comparison = line.comparison
-    if comparison is not None:
-        if line.verdict == "fail" and comparison.sense == "min":
-            text = wording.SHORT_OF
-        if line.verdict == "pass" and comparison.by_rounding:
-            text = wording.AFTER_ROUNDING
-    return f"{text} (mean {clean(line.group)})" if line.group else text
+    own = line.comparison
+    if line.verdict == "fail" and own is not None and own.sense == "min":
+        text = wording.SHORT_OF
+    if line.group:
+        text += f" (mean {clean(line.group)})"
+    return text + _only_just(line) if line.verdict == "pass" else text
+
+
+def _only_just(line: Line) -> str:
+    """How a line passes, where its value alone does not say so."""
+    own = line.comparison
+    if own is None or not own.within:
+        by_labels = any(path.path == "insulation" and path.state == "pass" for path in line.paths)
+        return f", {wording.INSULATION_PATH}" if by_labels and len(line.paths) > 1 else ""
+    if own.by_rounding:
+        return wording.BY_ROUNDING
+    if own.compared != own.limit:
+        return ""
+    return wording.AT_LIMIT if _exactly_at(own) else wording.ROUNDED_TO_LIMIT
+
+
+def _exactly_at(own: Comparison) -> bool:
+    """Whether the unrounded value prints as the limit, at one decimal more."""
+    return not numbers.fixed(own.margin, own.decimals + 1).strip("0.")
+
+
+def choice(step: str, chosen: str, why: str) -> tuple[str, str]:
+    """One step of the trail: its name, and what was chosen with the reason.
+
+    Of a row the reason names table and row; what was chosen is an identifier.
+    """
+    label = wording.TRAIL.get(step, wording.plain(step))
+    if step == "row" and why:
+        return label, why
+    return label, f"{chosen}: {why}" if why else chosen
 
 
 def notes(line: Line) -> tuple[str, ...]:
     """What stands beside a verdict: flags, a group member's own comparison, a claim."""
-    found = [
-        wording.FLAGS.get(flag, wording.plain(flag))
-        for flag in line.flags
-        if flag != "rounding"  # the verdict's own words say it
-    ]
+    found = []
+    if "method" in line.flags:
+        found.append(wording.WITHIN_BY_METHOD if line.verdict == "pass" else wording.ON_METHOD)
     own = line.own
     if own is not None:
         word = "within" if own.within else "over"

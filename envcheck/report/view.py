@@ -43,6 +43,8 @@ class View(NamedTuple):
     """A whole report."""
 
     title: str
+    lead: tuple[str, ...]
+    """Place, rule set, zone and status: one line for each rule set."""
     facts: tuple[Pair, ...]
     units: str
     rule_sets: tuple[RuleSetView, ...]
@@ -76,15 +78,18 @@ def build(
 ) -> View:
     """Make the view of a check.
 
-    ``rulesets`` by id, in the order in which they are judged. Errors: none for judged input.
+    ``rulesets`` by id, in the order in which they are judged; those that decide come first.
+    Errors: none for judged input.
     """
     options = options or ViewOptions()
     system = system_for(project, rulesets, options)
+    rulesets = dict(sorted(rulesets.items(), key=lambda pair: not header.decides(pair[1], project)))
     ordered = in_order(judged.lines, rulesets)
     made = rows.build(ordered, project, system, options.details)
     findings = items.findings(judged.findings)
     return View(
         title=header.title(project),
+        lead=header.lead(project, rulesets.values(), judged.lines),
         facts=header.facts(project, options.date),
         units=system,
         rule_sets=tuple(

@@ -2,10 +2,12 @@
 
 from __future__ import annotations
 
+from functools import lru_cache
+
 VERDICTS = {
-    "pass": "within its limit",
+    "pass": "within",
     "fail": "over its limit",
-    "too_close": "limit lies inside the bounds",
+    "too_close": "limit lies between the bounds",
     "not_decided": "not decided",
     "no_requirement": "no requirement",
     "not_in_table": "no row covers it",
@@ -14,11 +16,11 @@ VERDICTS = {
 }
 SHORT_OF = "short of its limit"
 """``fail`` where the limit is a least value."""
-AFTER_ROUNDING = "within its limit after rounding"
-FLAGS = {
-    "method": "the verdict hangs on the method",
-    "at_limit": "the compared value equals the limit",
-}
+BY_ROUNDING = ", by rounding"
+AT_LIMIT = ", at its limit"
+ROUNDED_TO_LIMIT = ", rounded to its limit"
+ON_METHOD = "the verdict hangs on the method"
+WITHIN_BY_METHOD = "by the method that decides here; another may give another verdict"
 METRICS = {
     "U_assembly": "U-factor of the assembly",
     "U_product": "U-factor of the whole product",
@@ -57,7 +59,7 @@ STATUS = {
     "transcribed": "transcribed from print",
     "example": "example",
 }
-SEVERITIES = {"E": "to be settled", "W": "to be checked", "N": "to be known"}
+SEVERITIES = {"E": "to be settled", "W": "to be checked", "N": "to note"}
 RATIOS = {
     "window_wall_ratio": "fenestration / gross above-grade wall",
     "skylight_roof_ratio": "skylights / gross roof",
@@ -137,6 +139,13 @@ def listed(names: tuple[str, ...] | list[str], most: int = 12) -> str:
     return ", ".join(names[:most]) + more
 
 
+def either(text: str) -> str:
+    """Write alternatives of a printed condition, ``E|S|W``, as words."""
+    *most, last = text.split("|")
+    return f"{', '.join(most)} or {last}" if most else last
+
+
+@lru_cache(maxsize=64)
 def path(name: str, symbol: str) -> str:
     """Name a path: ``assembly`` by the letter of its metric."""
     if name == "insulation":

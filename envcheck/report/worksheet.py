@@ -8,7 +8,7 @@ lines that convert stand before and behind it.
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable
 from typing import NamedTuple
 
 from envcheck import units
@@ -71,28 +71,9 @@ def write(steps: Iterable[Step], system: str, digits: int = OPERAND_DIGITS) -> t
     return tuple(sheet.lines)
 
 
-def shortest(steps: Sequence[Step], system: str, decimals: int, shown: str) -> str:
-    """Give the steps as one line whose result, at ``decimals`` places, is ``shown``.
-
-    Operands get as few digits as that takes. Empty without steps.
-    """
-    lines: tuple[Line, ...] = ()
-    for digits in (4, 6, OPERAND_DIGITS):
-        lines = write(steps, system, digits)
-        if not lines or numbers.fixed(float(lines[-1].result), decimals) == shown:
-            break
-    if not lines:
-        return ""
-    last = lines[-1]
-    middle = f"{last.sum} = " if last.sum else ""
-    source = f" ({last.source})" if not last.sum and last.source else ""
-    parts = [f"{line.symbol} = {line.sum} = {line.result}" for line in lines[:-1] if line.sum]
-    return "; ".join([*parts, f"{last.symbol} = {middle}{shown}{source}"])
-
-
 def _value(sheet: _Sheet, step: Step) -> None:
     """A value from a source: nothing to compute."""
-    text = _text(step.value, step.quantity, sheet.system, sheet.digits)
+    text = printed(step.value, step.quantity, sheet.system, sheet.digits)
     _print(sheet, step, sheet.system, "", (), text)
 
 
@@ -107,7 +88,7 @@ def _formula(sheet: _Sheet, step: Step, system: str) -> None:
             if earlier != name:
                 stated.append(f"{name} = {earlier}")
         else:
-            values[name] = _text(operand.value, operand.quantity, system, sheet.digits)
+            values[name] = printed(operand.value, operand.quantity, system, sheet.digits)
             stated.append(f"{name} = {values[name]} {unit}".rstrip())
     try:
         result = arithmetic.evaluate(step.expression, {k: float(v) for k, v in values.items()})
@@ -159,7 +140,8 @@ def _earlier(sheet: _Sheet, operand: Operand) -> str:
     return next((name for name, value in sheet.given.items() if value == operand.value), "")
 
 
-def _text(value: float, quantity: str, system: str, digits: int) -> str:
+def printed(value: float, quantity: str, system: str, digits: int) -> str:
+    """Write a number given in SI without its unit, to so many significant digits."""
     return numbers.significant(numbers.in_system(value, quantity, system), digits)
 
 

@@ -164,6 +164,8 @@ def draw(assembly: Assembly, setting: Setting, conventions: Conventions) -> tupl
         blocks,
         layers,
     )
+    if film + setting.inside_film == 0 and not any(r.value for b in blocks for r in b.cells[0]):
+        raise NotDecided("a resistance: films and layers are stated as none at all")
     return wall, Notes({}, outer, rows.drawing_assumptions(wall))
 
 

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from envcheck.model.project import (
-    AirSpaceLayer,
     Assembly,
     FramedLayer,
     Layer,
@@ -21,20 +20,38 @@ THICK_OUTSIDE = 0.05
 no source."""
 
 
+MASONRY = ("masonry", "stone")
+"""Classes of material that make a wall of masonry."""
+
+
 def cautions(assembly: Assembly) -> tuple[Caution, ...]:
     """Cautions of one assembly, each with the reason that triggered it."""
     found: list[Caution] = []
-    insulated = [layer for layer in assembly.layers if insulation_of(layer)]
-    if insulated:
-        titles = ", ".join(layer.title for layer in insulated)
-        found.append(Caution("moisture", f"{assembly.id}: insulation in {titles}"))
     vented = ventilated_at(assembly.layers)
-    inner = _inside_of_masonry(assembly.layers[0 if vented is None else vented + 1 :])
-    if inner is not None:
-        reason = f"{assembly.id}: {inner.title} inside solid or hollow masonry"
+    insulated, burning, structural = [], [], [bridge.title for bridge in assembly.bridges]
+    behind_masonry = ""
+    masonry = False
+    for number, layer in enumerate(assembly.layers):
+        if insulation_of(layer):
+            insulated.append(layer.title)
+            if masonry and not behind_masonry:
+                behind_masonry = layer.title
+        if is_combustible(layer):
+            burning.append(layer.title)
+        masonry = masonry or ((vented is None or number > vented) and _is_masonry(layer))
+        words = _attachment(layer, number == len(assembly.layers) - 1)
+        if words:
+            structural.append(words)
+    if insulated:
+        found.append(Caution("moisture", f"{assembly.id}: insulation in {', '.join(insulated)}"))
+    if behind_masonry:
+        reason = f"{assembly.id}: {behind_masonry} inside solid or hollow masonry"
         found.append(Caution("solid_masonry", reason))
-    found += _fire(assembly)
-    found += _structure(assembly)
+    if burning:
+        found.append(Caution("fire", f"{assembly.id}: combustible {', '.join(burning)}"))
+    if vented is not None:
+        found.append(Caution("fire", f"{assembly.id}: ventilated cavity"))
+    found += [Caution("structure", f"{assembly.id}: {words}") for words in structural]
     if assembly.kind in ("slab-on-grade", "below-grade-wall"):
         found.append(Caution("ground", f"{assembly.id}: {assembly.title}"))
     return tuple(found)
@@ -42,12 +59,11 @@ def cautions(assembly: Assembly) -> tuple[Caution, ...]:
 
 def insulation_of(layer: Layer) -> bool:
     """Whether a layer is insulation or holds insulation between its members."""
+    if isinstance(layer, MaterialLayer):
+        return layer.material.material_class.startswith("insulation")
     if isinstance(layer, FramedLayer):
-        fill = layer.fill
-        return fill.label is not None or is_insulation(fill.material)
-    if isinstance(layer, MaterialLayer | TaperedLayer | ResistanceLayer):
-        return is_insulation(layer.material)
-    return False
+        return layer.fill.label is not None or is_insulation(layer.fill.material)
+    return isinstance(layer, TaperedLayer | ResistanceLayer) and is_insulation(layer.material)
 
 
 def is_insulation(material: Material | None) -> bool:
@@ -55,58 +71,29 @@ def is_insulation(material: Material | None) -> bool:
     return material is not None and material.material_class.startswith("insulation")
 
 
-def _inside_of_masonry(layers: tuple[Layer, ...]) -> Layer | None:
-    masonry = [i for i, layer in enumerate(layers) if _is_masonry(layer)]
-    if not masonry:
-        return None
-    inner = [layer for layer in layers[masonry[-1] + 1 :] if insulation_of(layer)]
-    return inner[0] if inner else None
+def is_combustible(layer: Layer) -> bool:
+    """Whether the material of a layer, or of its infill, is marked combustible."""
+    if isinstance(layer, MaterialLayer):
+        return layer.material.combustible
+    if isinstance(layer, FramedLayer):
+        return layer.fill.material is not None and layer.fill.material.combustible
+    if not isinstance(layer, TaperedLayer | ResistanceLayer) or layer.material is None:
+        return False
+    return layer.material.combustible
 
 
 def _is_masonry(layer: Layer) -> bool:
-    if isinstance(layer, MasonryLayer):
-        return True
-    material = layer.material if isinstance(layer, MaterialLayer | ResistanceLayer) else None
-    return material is not None and material.material_class in ("masonry", "stone")
+    if isinstance(layer, MaterialLayer | ResistanceLayer):
+        return layer.material is not None and layer.material.material_class in MASONRY
+    return isinstance(layer, MasonryLayer)
 
 
-def _fire(assembly: Assembly) -> list[Caution]:
-    found = []
-    burning = [layer.title for layer in assembly.layers if is_combustible(layer)]
-    if burning:
-        found.append(Caution("fire", f"{assembly.id}: combustible {', '.join(burning)}"))
-    if any(isinstance(x, AirSpaceLayer) and x.ventilation == "well" for x in assembly.layers):
-        found.append(Caution("fire", f"{assembly.id}: ventilated cavity"))
-    return found
-
-
-def is_combustible(layer: Layer) -> bool:
-    """Whether the insulation of a layer is marked combustible."""
-    if isinstance(layer, FramedLayer):
-        return layer.fill.material is not None and layer.fill.material.combustible
-    material = (
-        layer.material
-        if isinstance(layer, MaterialLayer | TaperedLayer | ResistanceLayer)
-        else None
-    )
-    return material is not None and material.combustible
-
-
-def _structure(assembly: Assembly) -> list[Caution]:
-    found = []
-    for bridge in assembly.bridges:
-        found.append(Caution("structure", f"{assembly.id}: {bridge.title}"))
-    for layer in assembly.layers:
-        if isinstance(layer, TaperedLayer):
-            found.append(Caution("structure", f"{assembly.id}: roof build-up of {layer.title}"))
-        elif isinstance(layer, FramedLayer) and layer.crosses_insulation:
-            found.append(Caution("structure", f"{assembly.id}: {layer.title}"))
-        elif (
-            isinstance(layer, MaterialLayer)
-            and is_insulation(layer.material)
-            and layer.thickness >= THICK_OUTSIDE
-            and layer is not assembly.layers[-1]
-        ):
-            reason = f"{assembly.id}: attachment through {layer.title}"
-            found.append(Caution("structure", reason))
-    return found
+def _attachment(layer: Layer, innermost: bool) -> str:
+    """What a layer loads or must be fixed through, in words, or nothing."""
+    if isinstance(layer, MaterialLayer):
+        thick = layer.thickness >= THICK_OUTSIDE and not innermost
+        return f"attachment through {layer.title}" if thick and insulation_of(layer) else ""
+    if isinstance(layer, TaperedLayer):
+        return f"roof build-up of {layer.title}"
+    crossed = isinstance(layer, FramedLayer) and layer.crosses_insulation
+    return layer.title if crossed else ""

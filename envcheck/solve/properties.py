@@ -30,10 +30,11 @@ def properties(assembly: Assembly, compressed: Sequence[TableRow] = ()) -> Prope
     outside of it count in the heat capacity of the whole, and in nothing else.
     """
     inner = inside_of_vent(assembly.layers)
+    resistances = [insulation_resistance(layer) for layer in inner]
     masses = [mass_of(layer) for layer in assembly.layers]
     whole = together(masses)
-    indoor = together(masses[len(masses) - indoor_count(inner) :])
-    continuous = sum(insulation_resistance(layer) or 0.0 for layer in inner)
+    indoor = together(masses[len(masses) - indoor_count(resistances) :])
+    continuous = sum([resistance or 0.0 for resistance in resistances])
     return Properties(
         heat_capacity=whole.heat_capacity,
         heat_capacity_indoor=indoor.heat_capacity,
@@ -45,8 +46,8 @@ def properties(assembly: Assembly, compressed: Sequence[TableRow] = ()) -> Prope
         continuous_resistance=continuous,
         crossed=_crossed(inner),
         bracketed=_bracketed(assembly) if continuous > 0 else (),
-        label_sum=_label_sum(inner),
-        combustible=tuple(layer.title for layer in assembly.layers if is_combustible(layer)),
+        label_sum=_label_sum(inner, resistances),
+        combustible=tuple([layer.title for layer in assembly.layers if is_combustible(layer)]),
     )
 
 
@@ -56,12 +57,15 @@ def inside_of_vent(layers: tuple[Layer, ...]) -> tuple[Layer, ...]:
     return layers if at is None else layers[at + 1 :]
 
 
-def indoor_count(layers: Sequence[Layer]) -> int:
-    """How many layers lie indoors of the first continuous insulation, from the indoor face."""
-    for count, layer in enumerate(reversed(layers)):
-        if insulation_resistance(layer) is not None:
+def indoor_count(resistances: Sequence[float | None]) -> int:
+    """How many layers lie indoors of the first continuous insulation, from the indoor face.
+
+    resistances: of the continuous insulation, layer by layer; None for other layers.
+    """
+    for count, resistance in enumerate(reversed(resistances)):
+        if resistance is not None:
             return count
-    return len(layers)
+    return len(resistances)
 
 
 def insulation_resistance(layer: Layer) -> float | None:
@@ -88,6 +92,8 @@ def framing(layers: Sequence[Layer]) -> str:
 
 def is_combustible(layer: Layer) -> bool:
     """Whether any material that the layer names is combustible."""
+    if isinstance(layer, MaterialLayer):
+        return layer.material.combustible
     return any(material.combustible for material in _materials(layer))
 
 
@@ -136,15 +142,13 @@ def _bracketed(assembly: Assembly) -> tuple[str, ...]:
     return tuple(bridge.title for bridge in assembly.bridges if bridge.kind == "point")
 
 
-def _label_sum(layers: Sequence[Layer]) -> float | None:
+def _label_sum(layers: Sequence[Layer], resistances: Sequence[float | None]) -> float | None:
     """All insulation as labelled, between members or not."""
-    labels = []
+    labels = [resistance for resistance in resistances if resistance is not None]
     for layer in layers:
-        value = insulation_resistance(layer)
         if isinstance(layer, FramedLayer):
-            value = (
-                layer.fill.label if layer.fill.label is not None else _fill_resistance(layer, ())
-            )
-        if value is not None:
-            labels.append(value)
+            label = layer.fill.label
+            value = label if label is not None else _fill_resistance(layer, ())
+            if value is not None:
+                labels.append(value)
     return sum(labels) if labels else None

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Mapping
-from dataclasses import dataclass
 from functools import cache
 from importlib import import_module
 from pkgutil import iter_modules
@@ -60,8 +59,7 @@ class Decision(NamedTuple):
     by_bracket: bool = False
 
 
-@dataclass(frozen=True, slots=True)
-class Method:
+class Method(NamedTuple):
     """One method: what it is, where it stands, where it holds, and the function that does it."""
 
     name: str

@@ -56,7 +56,8 @@ def plain_row(layer: Layer, note: str = "", counted: float | None = None) -> Lay
             source = _fill_source(layer.fill)
             return LayerRow(layer.title, layer.thickness, None, counted, source, words)
         case MasonryLayer():
-            words = note or f"webs {layer.web_share * 100:.3g} % of the area"
+            webs = f"webs {layer.web_share * 100:.3g} % of the area"
+            words = note or (webs if layer.web_share < 1 else "solid units")
             k, source = layer.material.conductivity, layer.material.source
             return LayerRow(layer.title, layer.thickness, k, counted, source, words)
 

@@ -23,8 +23,8 @@ def profile_pieces(profile: Profile, depth: float, repeat: float) -> list[Piece]
 
     The flange against the inner face is centred in the repeat width. Dimensions of the profile are
     overall; the web reaches over the whole depth of the profile, which stands against the inner
-    face of the layer. C: both flanges to one side, with lips. Z: flanges to opposite sides. hat:
-    a crown of ``flange`` outside, two webs, and two brims of ``lip`` inside.
+    face of the layer. C: both flanges to one side. Z: flanges to opposite sides. Both with lips.
+    hat: a crown of ``flange`` outside, two webs, and two brims of ``lip`` inside.
     """
     sheet, flange, lip = profile.thickness, profile.flange, profile.lip
     top, bottom = max(depth - profile.web, 0.0), depth
@@ -34,7 +34,12 @@ def profile_pieces(profile: Profile, depth: float, repeat: float) -> list[Piece]
     inner = Piece(left, right, bottom - sheet, bottom)
     outer = Piece(left, right, top, top + sheet)
     if profile.shape == "Z":
-        return [web, inner, Piece(left + sheet - flange, left + sheet, top, top + sheet)]
+        far = left + sheet - flange
+        pieces = [web, inner, Piece(far, left + sheet, top, top + sheet)]
+        if lip > sheet:
+            pieces.append(Piece(far, far + sheet, top, top + lip))
+            pieces.append(Piece(right - sheet, right, bottom - lip, bottom))
+        return pieces
     if profile.shape == "hat":
         return [
             outer,

@@ -13,7 +13,7 @@ names "parallel path" and "isothermal planes" are those of ASHRAE Handbook - Fun
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from functools import lru_cache
 from itertools import product
 from math import prod
 from typing import NamedTuple
@@ -58,13 +58,13 @@ def _cut(block: Block, edges: list[float]) -> Block:
         return block
     starts = [0.0, *edges[:-1]]
     widths = [end - start for start, end in zip(starts, edges, strict=True)]
-    column = [next(i for i, end in enumerate(own) if edge <= end) for edge in edges]
+    last = len(own) - 1
+    column = [next((i for i, end in enumerate(own) if edge <= end), last) for edge in edges]
     cells = tuple(tuple(row[i] for i in column) for row in block.cells)
     return block._replace(widths=tuple(widths), cells=cells)
 
 
-@dataclass(frozen=True, slots=True)
-class Wired:
+class Wired(NamedTuple):
     """A wiring's answer: the tree, and the steps from the layers' resistances to the total."""
 
     tree: Node
@@ -102,11 +102,14 @@ def parallel_paths(wall: Wall, symbol: str = "R") -> Wired:
     patterns = _patterns(blocks)
     paths: list[tuple[float, Series]] = []
     for columns in product(*patterns.values()):
-        chosen = dict(zip(patterns, columns, strict=True))
+        chosen = {name: column.first for name, column in zip(patterns, columns, strict=True)}
         parts: list[Node] = [wall.outside]
         for block in blocks:
-            column = chosen[block.pattern].first if block.pattern else 0
-            parts += [row[column] for row in block.cells]
+            column = chosen[block.pattern] if block.pattern else 0
+            if len(block.cells) == 1:
+                parts.append(block.cells[0][column])
+            else:
+                parts += [row[column] for row in block.cells]
         parts.append(wall.inside)
         title = " and ".join(column.title for column in columns)
         paths.append((prod(column.share for column in columns), in_series(title, parts)))
@@ -232,9 +235,14 @@ def _merged_row(block: Block, row: Sequence[Resistor]) -> list[tuple[float, Resi
 def _sum_step(symbol: str, title: str, tree: Series) -> Step:
     """One step that adds the parts of a series; parts of no resistance are left out."""
     counted = [part for part in tree.parts if isinstance(part, Resistor) and part.value != 0]
-    operands = tuple(Operand(part.symbol, part.value, "resistance") for part in counted)
-    expression = " + ".join(f"{{{part.symbol}}}" for part in counted)
+    operands = tuple([Operand(part.symbol, part.value, "resistance") for part in counted])
+    expression = _sum_of(tuple([part.symbol for part in counted]))
     return Step(symbol, title, expression, operands, tree.value, "resistance")
+
+
+@lru_cache(maxsize=1024)
+def _sum_of(symbols: tuple[str, ...]) -> str:
+    return " + ".join([f"{{{symbol}}}" for symbol in symbols])
 
 
 def _beside_step(

@@ -42,6 +42,15 @@ def test_the_verdict_hangs_on_the_method_said_once_for_an_assembly():
     assert "cavity correction factors (Table 5); parallel paths not accepted" in found.suggests
 
 
+def test_a_line_within_its_limit_by_the_prescribed_method_is_no_cause_for_alarm():
+    (found,) = hangs(flagged("N-W1", "pass", 0.0590, 0.0500, 0.0700))
+    assert found.severity == "N"
+    assert found.suggests.startswith(
+        "within its limit by cavity correction factors, the method of Table 5, which decides"
+    )
+    assert found.settles == "nothing, as long as that method stands"
+
+
 @pytest.mark.parametrize(
     ("verdict", "value", "low", "high", "words"),
     [

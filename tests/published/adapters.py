@@ -15,8 +15,10 @@ from pathlib import Path
 from typing import Any
 
 import envcheck
+from envcheck.read.coefficient_tables import built_in
 from envcheck.solve import shells
 from envcheck.solve.methods import air_space as air
+from envcheck.solve.methods.compressed import TABLE, installed_resistance
 from envcheck.solve.methods.fasteners import fastener_correction, penetration_factor
 from envcheck.solve.methods.iso10077_window import window_geometry, window_u
 from envcheck.solve.methods.iso13370_slab import (
@@ -24,6 +26,7 @@ from envcheck.solve.methods.iso13370_slab import (
     equivalent_thickness,
     slab_u,
 )
+from envcheck.solve.methods.steel_framing import effective_resistance
 from envcheck.solve.methods.tapered import (
     tapered_rectangle,
     tapered_triangle_thickest_apex,
@@ -56,6 +59,11 @@ def parallel_path(inputs: Inputs, units: Units) -> Figures:
     plain = [to_si(part, units["R"]) for part in inputs["in_series"]]
     paths = [series(*plain, to_si(path["resistance"], units["R"])) for path in inputs["paths"]]
     return _printed(parallel([path["share"] for path in inputs["paths"]], paths), units)
+
+
+def cavity_factor(inputs: Inputs, units: Units) -> Figures:
+    label = to_si(inputs["label"], units["R"])
+    return {"R": convert(effective_resistance(inputs["factor"], label), units["R"])}
 
 
 def combined(inputs: Inputs, units: Units) -> Figures:
@@ -154,6 +162,13 @@ def materials(inputs: Inputs, units: Units) -> Figures:
     return {"conductivity": float(row["conductivity"])}
 
 
+def compressed(inputs: Inputs, units: Units) -> Figures:
+    inch = to_si(1.0, "in")
+    label, product = to_si(inputs["label"], units["R"]), inputs["product"] * inch
+    found = installed_resistance(label, product, inputs["cavity"] * inch, rows=built_in(TABLE, ""))
+    return {"R": convert(found.resistance, units["R"])}
+
+
 def unit_factor(inputs: Inputs, units: Units) -> Figures:
     return {"value": convert(to_si(inputs["value"], inputs["unit"]), inputs["si_unit"])}
 
@@ -223,6 +238,7 @@ def critical_radius(inputs: Inputs, units: Units) -> Figures:
 ADAPTERS: dict[str, Callable[[Inputs, Units], Figures]] = {
     "series": series_sum,
     "parallel_path": parallel_path,
+    "cavity_factor": cavity_factor,
     "combined": combined,
     "air_space_iso6946": air_space,
     "radiative_coefficient": radiative_coefficient,
@@ -233,6 +249,7 @@ ADAPTERS: dict[str, Callable[[Inputs, Units], Figures]] = {
     "window": window,
     "films": films,
     "materials": materials,
+    "compressed": compressed,
     "units": unit_factor,
     "network": network,
     "contact_as_thickness": contact_as_thickness,

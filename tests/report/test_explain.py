@@ -62,4 +62,4 @@ def test_a_bracket_that_holds_the_limit_shows_both_ends() -> None:
     text = written("N-4")
     assert "low bound: 0.038 <= 0.060 Btu/(h ft2 F) holds" in text
     assert "high bound: 0.067 <= 0.060 Btu/(h ft2 F) does not hold" in text
-    assert "Verdict: limit lies inside the bounds" in text
+    assert "Verdict: limit lies between the bounds" in text

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 import re
+from decimal import ROUND_HALF_UP, Decimal
 from pathlib import Path
 
 import pytest
@@ -11,7 +12,8 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from envcheck.model.solved import Operand, Step
-from envcheck.report import arithmetic, numbers, worksheet
+from envcheck.report import arithmetic, explain, hand_check, numbers, parts, worksheet
+from envcheck.report.view import ViewOptions
 from envcheck.units import to_si
 from tests.report.fixture import STEEL, WOOD
 
@@ -63,6 +65,68 @@ def test_every_step_of_the_example_projects_can_be_repeated(file: Path, system: 
             assert float(lines[-1].result) == pytest.approx(expected, rel=2e-5)
 
 
+def sums_of(page: parts.Page) -> list[str]:
+    """Every line of arithmetic of a page."""
+    blocks = [block for section in page.sections for block in section.blocks]
+    items = [block for block in blocks if isinstance(block, parts.Items)]
+    return [line for block in items for entry in block.entries for line in entry.sums]
+
+
+def assert_comparison(line: str) -> None:
+    """A line of the comparison: rounding, order, difference."""
+    if found := re.search(r"(\S+) rounded half-up to (\d+) decimals?: (\S+)", line):
+        value, places, result = found.groups()
+        quantum = Decimal(1).scaleb(-int(places))
+        assert str(Decimal(value).quantize(quantum, ROUND_HALF_UP)) == result, line
+    elif found := re.search(r"(\S+) (<=|>=) (\S+) .*(holds|does not hold)", line):
+        first, sign, second, state = found.groups()
+        within = float(first) <= float(second) if sign == "<=" else float(first) >= float(second)
+        assert within == (state == "holds"), line
+    elif found := re.search(r"unrounded: (\S+) - (\S+) = (\S+)", line):
+        first, second, result = found.groups()
+        assert six(float(Decimal(first) - Decimal(second))) == result, line
+    else:
+        assert "compared unrounded" in line or "with all digits carried" in line, line
+
+
+@pytest.mark.parametrize("system", ["SI", "IP"])
+@pytest.mark.parametrize("file", sorted(PROJECTS.glob("*/*.yaml")), ids=lambda path: path.stem)
+def test_every_number_that_explain_prints_can_be_repeated(file: Path, system: str) -> None:
+    """Each subject's page as printed: sums from printed operands to the last printed digit."""
+    from envcheck import pipeline
+
+    run = pipeline.run(str(file))
+    counted = 0
+    for subject in explain.subjects(run.project):
+        options = ViewOptions(units=system)
+        page = explain.build(run.project, run.rulesets, run.judged, subject, options).page
+        for line in sums_of(page):
+            if found := re.fullmatch(r"\w+ = (.+) = (-?[\d.]+)( \S.*)?", line):
+                assert calculated(found[1]) == found[2], f"{subject}: {line}"
+                counted += 1
+            elif not re.fullmatch(r"\w+ = -?[\d.]+( .*)?", line):
+                assert_comparison(line)
+                counted += 1
+    assert counted > 10
+
+
+def test_a_result_of_an_earlier_step_is_named_by_that_step() -> None:
+    """Of several wirings the total names the step that it rests on, and prints its result."""
+    from envcheck import pipeline
+
+    run = pipeline.run(str(PROJECTS / "brannvik-warehouse" / "renovation.yaml"))
+    totals = 0
+    for line in run.judged.lines:
+        steps = line.solved.steps if line.solved else ()
+        written = {each.symbol: each for each in worksheet.write(steps, "SI")}
+        total = written.get("U_total")
+        if total is not None:
+            totals += 1
+            first = total.formula.split(" + ")[0]
+            assert total.sum.split(" + ")[0] == written[first].result
+    assert totals
+
+
 def test_ip_steps_use_inches_and_btu_inches() -> None:
     foam = worksheet.write(STEEL.steps, "IP")[1]
     assert foam.text == "R1 = 1.5 / 0.2 = 7.5 h ft2 F/Btu"
@@ -97,13 +161,13 @@ def test_a_formula_with_si_constants_stays_in_si_between_two_conversions() -> No
 
 
 def test_the_hand_check_takes_the_fewest_digits_that_give_the_value() -> None:
-    line = worksheet.shortest(STEEL.hand_check, "IP", 4, "0.0647")
+    line = hand_check.shortest(STEEL.hand_check, "IP", 4, "0.0647")
     assert line == "U = 1 / (0.17 + 7.5 + 0.56 + 5.98 + 0.56 + 0.68) = 0.0647"
-    si = worksheet.shortest(STEEL.hand_check, "SI", 3, "0.368")
+    si = hand_check.shortest(STEEL.hand_check, "SI", 3, "0.368")
     written = re.fullmatch(r"U = (.*) = 0\.368", si)
     assert written
     assert f"{eval(written[1]):.3f}" == "0.368"
-    assert worksheet.shortest((), "SI", 3, "1.000") == ""
+    assert hand_check.shortest((), "SI", 3, "1.000") == ""
 
 
 def test_negative_operands_get_parentheses() -> None:

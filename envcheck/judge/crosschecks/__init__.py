@@ -54,8 +54,10 @@ def checks() -> tuple[Check, ...]:
 def findings(facts: Facts) -> tuple[Finding, ...]:
     """Run every check; findings that the project answers carry the answer."""
     answers = dict(facts.project.accepted)
-    found = [finding for check in checks() for finding in check.run(facts)]
+    found = [(check, finding) for check in checks() for finding in check.run(facts)]
     return tuple(
-        finding._replace(answered=answers.get(f"{finding.check} {finding.subject}", ""))
-        for finding in found
+        finding._replace(
+            answered=answers.get(f"{finding.check} {finding.subject}", ""), title=check.title
+        )
+        for check, finding in found
     )

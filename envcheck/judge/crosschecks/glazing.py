@@ -8,6 +8,7 @@ from envcheck.judge.compare import compare, rounded
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.words import listed, system, trimmed
 from envcheck.model.judged import Finding, Line
+from envcheck.model.patterns import in_words
 from envcheck.model.project import Assembly, Element
 from envcheck.units import in_system, label
 
@@ -28,7 +29,7 @@ def opaque_as_glazing(facts: Facts) -> Iterator[Finding]:
                 severity,
                 element.tag,
                 element.sheet,
-                f"entered as {element.category}; {element.assembly} {why}",
+                f"entered as {in_words(element.category)}; {element.assembly} {why}",
                 "a spandrel or another opaque panel counts as opaque wall, in no area of glass"
                 + _as_host(facts, element),
                 "its category as an opaque wall, or its SHGC and visible transmittance",

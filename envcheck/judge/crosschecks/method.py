@@ -36,17 +36,26 @@ def _finding(facts: Facts, assembly: str, lines: list[Line]) -> Iterator[Finding
     setting = solved.setting
     how = method(setting.method)
     refused = " or ".join(method(name) for name in setting.refused)
+    calm = first.verdict == "pass"
     yield Finding(
         "hangs-on-method",
-        "W",
+        "N" if calm else "W",
         assembly,
         facts.project.assemblies[assembly].sheet,
         f"{tags(lines)}: {_shown(own, own)} by {how}, {_state(own)} {_limit(first, own)}; "
         f"the drawn pieces lie between {_shown(low, own)} and {_shown(high, own)}, "
         f"{_side(low, high)}",
-        f"the verdict hangs on the method, here {how} ({setting.method_from})"
+        (
+            f"within its limit by {how}, the method of {setting.method_from}, which decides; "
+            "another method may give another verdict"
+            if calm
+            else f"the verdict hangs on the method, here {how} ({setting.method_from})"
+        )
         + (f"; {refused} not accepted" if refused else ""),
-        "the official's word on the method, or a construction that is within its limit by either",
+        "nothing, as long as that method stands"
+        if calm
+        else "the official's word on the method, or a construction that is within its limit by "
+        "either",
     )
 
 

@@ -12,8 +12,8 @@ TITLE = "JSON, versioned, with a schema"
 EXTENSION = "json"
 DETAILS = True
 SCHEMA_VERSION = 1
-LAYOUT = ("colour", "width", "bounds")
-"""Fields of a view that say how to print, not what."""
+LAYOUT = ("lead", "colour", "width", "bounds")
+"""Fields of a view that say how to print, or again what others say."""
 
 
 def render(view: View) -> str:

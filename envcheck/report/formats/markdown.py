@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable
 from typing import TYPE_CHECKING
 
-from envcheck.report import outline
+from envcheck.report import outline, tabular
 from envcheck.report.inert import as_code, for_markdown
 from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Paragraph
 from envcheck.report.view import View
@@ -63,13 +63,6 @@ def _items(entries: Iterable[Entry], numbered: bool) -> list[str]:
 
 
 def _grid(block: Grid) -> list[str]:
-    rules = ["---:" if column in block.right else "---" for column in range(len(block.heads))]
-    return [
-        _row(map(for_markdown, block.heads)),
-        _row(rules),
-        *(_row(map(for_markdown, row)) for row in block.rows),
-    ]
-
-
-def _row(cells: Iterable[str]) -> str:
-    return f"| {' | '.join(cells)} |"
+    rows = [[for_markdown(cell) for cell in row] for row in block.rows]
+    heads = [for_markdown(head) for head in block.heads]
+    return tabular.lines(rows, block.right, "pipe", heads)

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from envcheck.model.project import FramedLayer
 from envcheck.model.solved import Block, Resistor
@@ -12,8 +12,7 @@ from envcheck.solve.registry import Context, Method
 from envcheck.solve.section import grid, profile_pieces
 
 
-@dataclass(frozen=True, slots=True)
-class Shares:
+class Shares(NamedTuple):
     """Shares of the wall area, 0..1; they sum to 1."""
 
     cavity: float
@@ -43,12 +42,13 @@ def draw_framed(layer: FramedLayer, context: Context) -> Block:
         return _draw_profile(layer, fill, context)
     shares = area_shares(layer)
     repeat = layer.member.spacing or 1.0
-    half = shares.cavity * repeat / 2
+    left = (1.0 - shares.member) / 2  # centred, as the members of every other layer
+    left = left if left < shares.cavity else shares.cavity / 2
     title = f"members of {layer.title}"
     member = material_cell(
         f"{context.symbol}_member", title, layer.thickness, layer.member.material
     )
-    widths = [half, shares.member * repeat, half]
+    widths = [left * repeat, shares.member * repeat, (shares.cavity - left) * repeat]
     cells = [fill, member, fill]
     for number, (extra, share) in enumerate(zip(layer.extras, shares.extras, strict=True), 1):
         widths.append(share * repeat)

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from envcheck.model.project import MasonryLayer
 from envcheck.model.solved import Block, Resistor
-from envcheck.solve.cells import material_cell, stated_cell
+from envcheck.solve.cells import homogeneous, material_cell, stated_cell
 from envcheck.solve.methods.fills import fill_resistor
 from envcheck.solve.registry import Context, Method
 
@@ -22,7 +22,9 @@ def column_shares(layer: MasonryLayer) -> dict[str, float]:
 
 
 def draw_masonry(layer: MasonryLayer, context: Context) -> Block:
-    """Draw two shells and the plane of webs and cells between them."""
+    """Draw two shells and the plane of webs and cells between them; solid units as one plane."""
+    if layer.web_share == 1:
+        return _draw_solid(layer, context)
     core = layer.thickness - 2.0 * layer.shell
     symbol, unit = context.symbol, layer.material
     shell = material_cell(f"{symbol}_shell", "face shell", layer.shell, unit)
@@ -50,6 +52,15 @@ def draw_masonry(layer: MasonryLayer, context: Context) -> Block:
         (faces, tuple(middle[name] for name in columns), faces),
         symbol,
     )
+
+
+def _draw_solid(layer: MasonryLayer, context: Context) -> Block:
+    symbol, depth, joints = context.symbol, layer.thickness, layer.joint_share
+    if layer.mortar is None or joints == 0:
+        return homogeneous(material_cell(symbol, layer.title, depth, layer.material), depth)
+    unit = material_cell(f"{symbol}_unit", "solid units", depth, layer.material)
+    joint = material_cell(f"{symbol}_joint", "joints", depth, layer.mortar)
+    return Block(symbol, layer.title, (1.0 - joints, joints), (depth,), ((unit, joint),), symbol)
 
 
 def _cell_resistor(layer: MasonryLayer, core: float, context: Context) -> Resistor:

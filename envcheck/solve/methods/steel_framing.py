@@ -62,7 +62,8 @@ def decide_effective_layer(wall: Wall) -> Decision:
 
     def cell(layer: FramedLayer, context: Context) -> Resistor:
         fill = fill_resistor(layer.fill, layer.thickness, context)
-        row = find_row(wall, "effective_layers", layer, fill.value)
+        label = 0.0 if layer.fill.air is not None else fill.value
+        row = find_row(wall, "effective_layers", layer, label)
         return stated_cell(context.symbol, f"{layer.title}, effective", row.value, row.source)
 
     return _decide(wall, cell)

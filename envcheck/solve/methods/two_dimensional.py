@@ -2,12 +2,16 @@
 
 from __future__ import annotations
 
+from envcheck.model.project import TaperedLayer
 from envcheck.solve.methods.wirings import decide_isothermal_planes
-from envcheck.solve.registry import Decision, Method, Wall
+from envcheck.solve.registry import Decision, Method, NotDecided, Wall
 
 
 def decide_two_dimensional(wall: Wall) -> Decision:
     """Bracket the drawn section; its high end stands for the value in sums and means."""
+    for layer in wall.layers:
+        if isinstance(layer, TaperedLayer):
+            raise NotDecided(f"one thickness for {layer.title!r}: a taper has no drawn section")
     return decide_isothermal_planes(wall)._replace(by_bracket=True)
 
 

@@ -24,7 +24,7 @@ def decide_parallel_path(wall: Wall) -> Decision:
     for layer in wall.layers:
         if isinstance(layer, FramedLayer) and is_metal(layer):
             raise NotDecided(f"{REFUSED} steel framing ({layer.title!r})")
-        if isinstance(layer, MasonryLayer) and layer.web_share > 0:
+        if isinstance(layer, MasonryLayer) and 0 < layer.web_share < 1:
             raise NotDecided(f"{REFUSED} masonry units with cells ({layer.title!r})")
     return decided(wall, parallel_paths(wall))
 

@@ -1,0 +1,161 @@
+"""Steel framing by the rule set's coefficients: rows found, rows missing, sums by hand.
+
+Coefficients are numbers of North American codes from memory: cavity factor .46 for R-13 at 16 in
+(steel-stud table of the model codes), R-0.79 for an empty cavity (ANSI/ASHRAE/IES 90.1 Appendix A).
+The walls are invented.
+"""
+
+from __future__ import annotations
+
+import pytest
+
+from envcheck.model.project import AirSpaceLayer, Fill, FramedLayer, Layer, Member, Profile
+from envcheck.model.ruleset import Conventions, TableRow
+from tests.solve.drawn import solved
+from tests.solve.samples import (
+    INCH,
+    R_IP,
+    STEEL,
+    U_IP,
+    WOOD,
+    XPS,
+    assert_recomputes,
+    framed,
+    plane,
+    stated,
+)
+
+DEPTH, SPACING = 3.625 * INCH, 16 * INCH
+C_STUD = Profile("C 3-5/8 in, 43 mil", DEPTH, 1.625 * INCH, 0.0451 * INCH, 0.5 * INCH)
+MEMBER = Member(STEEL, 1.625 * INCH, SPACING, C_STUD)
+LABELLED = Fill(label=13 * R_IP, source="label", evidence="label")
+STUDS = framed("steel studs", DEPTH, MEMBER, LABELLED)
+GYPSUM = stated("gypsum", 0.56 * R_IP)
+FILMS = {"outside_film": 0.17 * R_IP, "inside_film": 0.68 * R_IP}
+
+
+def row(table: str, value: float, **keys: float | str) -> TableRow:
+    return TableRow(table, dict(keys), value, "", "Table 7")
+
+
+FACTORS = Conventions(
+    tables={
+        "cavity_factors": (
+            row("cavity_factors", 0.55, label=13 * R_IP, depth=DEPTH, spacing=24 * INCH),
+            row("cavity_factors", 0.46, label=13 * R_IP, depth=DEPTH, spacing=SPACING),
+        ),
+        "effective_layers": (
+            row("effective_layers", 0.79 * R_IP, label=0.0, depth=DEPTH, spacing=SPACING),
+            row("effective_layers", 6.0 * R_IP, label=13 * R_IP, depth="", spacing=SPACING),
+        ),
+    }
+)
+
+
+# Hand sums: .17 + .56 + .46 x 13 + .56 + .68 = 7.95, and XPS of R-5 per inch.
+@pytest.mark.parametrize(("xps", "printed"), [(0.0, 0.1258), (1.5, 0.0647), (2.5, 0.0489)])
+def test_cavity_factor_by_hand(xps: float, printed: float) -> None:
+    layers: list[Layer] = [GYPSUM, STUDS, GYPSUM]
+    if xps:
+        layers.insert(0, plane("XPS", XPS, xps * INCH))
+    found = solved(layers, "cavity_factor", FACTORS, **FILMS)
+    assert found.value is not None
+    assert found.value / U_IP == pytest.approx(1 / (7.95 + 5 * xps))
+    assert found.value / U_IP == pytest.approx(printed, abs=5e-5)
+    assert_recomputes(found.steps)
+    (step,) = (step for step in found.steps if "corrected for the steel" in step.title)
+    assert step.source == "Table 7"
+    (listed,) = (line for line in found.layers if line.title == "steel studs")
+    assert "steel framing counted by the rule set's coefficient" in listed.note
+
+
+def test_bracket_is_that_of_the_drawn_studs() -> None:
+    found = solved([GYPSUM, STUDS, GYPSUM], "cavity_factor", FACTORS, **FILMS)
+    drawn = solved([GYPSUM, STUDS, GYPSUM], "two_dimensional", **FILMS)  # type: ignore[arg-type]
+    assert (found.low, found.high) == (drawn.low, drawn.high)
+    assert found.low is not None
+    assert found.high is not None
+    assert found.low < found.high
+    assert not found.decided_by_bracket
+
+
+def test_effective_layer_by_hand() -> None:
+    found = solved([GYPSUM, STUDS, GYPSUM], "effective_layer", FACTORS, **FILMS)
+    assert found.value is not None
+    assert found.value / U_IP == pytest.approx(1 / (0.17 + 0.56 + 6.0 + 0.56 + 0.68))
+    assert_recomputes(found.steps)
+
+
+def test_empty_cavity_is_the_row_of_label_0() -> None:
+    # Hand sum: .17 + .56 + .79 + .56 + .68 = 2.76.
+    air = AirSpaceLayer("air-space", "air", 1, DEPTH, "unventilated", (0.9, 0.9))
+    empty = framed("steel studs", DEPTH, MEMBER, Fill(air=air))
+    found = solved([GYPSUM, empty, GYPSUM], "effective_layer", FACTORS, **FILMS)
+    assert found.value is not None
+    assert found.value / U_IP == pytest.approx(1 / 2.76)
+
+
+@pytest.mark.parametrize("method", ["cavity_factor", "effective_layer"])
+@pytest.mark.parametrize(
+    ("layer", "words"),
+    [
+        (framed("studs", DEPTH, MEMBER, Fill(label=15 * R_IP)), ("label R-15", "spacing 16 in")),
+        (framed("studs", DEPTH, MEMBER._replace(spacing=12 * INCH), LABELLED),
+         ("label R-13", "2.29 m2 K/W", "spacing 12 in", "0.305 m")),
+    ],
+)  # fmt: skip
+def test_missing_row_names_label_and_spacing(
+    method: str, layer: FramedLayer, words: tuple[str, ...]
+) -> None:
+    found = solved([layer], method, FACTORS)
+    assert found.value is None
+    (missing,) = found.missing
+    table = "cavity factors" if method == "cavity_factor" else "effective layers"
+    assert table in missing
+    assert "'studs'" in missing
+    assert all(word in missing for word in words)
+    assert found.low is not None
+
+
+@pytest.mark.parametrize(
+    ("changes", "found"),
+    [
+        ({"thickness": 3.5 * INCH}, True),  # nominal sizes: within 4 mm
+        ({"thickness": 3.4 * INCH}, False),
+        ({"fill": Fill(label=13.1 * R_IP)}, True),  # within 1 %
+        ({"fill": Fill(label=13.2 * R_IP)}, False),
+        ({"member": MEMBER._replace(spacing=0.408)}, True),  # within 2 mm
+        ({"member": MEMBER._replace(spacing=0.409)}, False),
+    ],
+)
+def test_how_near_a_row_must_be(changes: dict[str, object], found: bool) -> None:
+    thin = C_STUD._replace(web=3.3 * INCH)
+    layer = STUDS._replace(**{"member": MEMBER, **changes})  # type: ignore[arg-type]
+    layer = layer._replace(member=layer.member._replace(profile=thin))
+    missing = solved([layer], "cavity_factor", FACTORS).missing
+    assert bool(missing) is not found
+
+
+def test_no_table_at_all() -> None:
+    (missing,) = solved([STUDS], "cavity_factor").missing
+    assert missing.startswith("a row of the rule set's cavity factors for 'steel studs'")
+
+
+def test_without_steel_the_paths_decide_and_it_is_said() -> None:
+    wood = framed("wood studs", 0.1, Member(WOOD, 0.045, 0.6), LABELLED)
+    found = solved([wood], "cavity_factor", FACTORS)
+    assert found.value == pytest.approx(found.low)
+    assert "no steel framing found in this assembly: layers wired as parallel paths" in (
+        found.assumptions
+    )
+
+
+def test_parallel_paths_are_no_result_for_steel() -> None:
+    found = solved([GYPSUM, STUDS], "parallel_path")
+    assert found.value is None
+    assert found.missing == (
+        "a method other than parallel paths, which are not accepted as a result for steel framing "
+        "('steel studs')",
+    )
+    assert found.steps == ()
+    assert found.low is not None
