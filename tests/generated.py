@@ -44,7 +44,7 @@ def errors_page() -> str:
         "",
         "Written from the code by `python -m tests.generated`; a test holds it current.",
         "",
-        "An error stops a run: `file:line: what is wrong (found ...; expected ...). Fix: ... [id]`,",
+        "An error stops a run: `file:line: what is wrong (found ...; expected ...). Fix: ... [id]`",
         "all of them at once, exit status 2, nothing written.",
     ]
     for name in sorted(KINDS):

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from envcheck.judge.compare import compare
 from envcheck.model.judged import PathResult
@@ -14,9 +14,11 @@ from envcheck.units import convert
 EXTENT_TOLERANCE = 0.005
 """m by which a printed extent (24 in) may be missed by a metric dimension."""
 
+CLEARLY = 1e-6
+"""Printed units above a number from which no rounding can matter."""
 
-@dataclass(frozen=True, slots=True)
-class Insulation:
+
+class Insulation(NamedTuple):
     """What an element brings to the R-value path, m2 K/W and m."""
 
     cavity: float | None
@@ -68,8 +70,8 @@ def insulation_path(limit: Limit, brought: Insulation, ruleset: RuleSet) -> Path
 def _short_of(term: Term, limit: Limit, brought: Insulation, ruleset: RuleSet) -> str | None:
     """Why one term does not hold, or None where it does."""
     has = _part(term, brought)
-    comparison = compare(has, term, limit, ruleset)
-    if not comparison.within:
+    enough = convert(has, limit.unit) >= term.number + CLEARLY
+    if not enough and not (comparison := compare(has, term, limit, ruleset)).within:
         what = {"ci": "continuous", "cavity": "cavity"}.get(term.role, "labelled")
         if not has:
             return f"no {what} insulation, R-{term.text} is asked for"

@@ -181,12 +181,12 @@ def _unbridged(assembly: Assembly, solved: Solved, films: float) -> float | None
     total = films
     if not any(isinstance(layer, FramedLayer) for layer in layers):
         return None
-    for layer, row in zip(layers, solved.layers[start:], strict=False):
+    for layer, counted in zip(layers, solved.counted[start:], strict=False):
         value = plain_resistance(layer)
         if isinstance(layer, FramedLayer):
             value = fill_resistance(layer.fill, layer.thickness)
         elif value is None:
-            value = row.resistance
+            value = counted.resistance
         if value is None:
             return None
         total += value

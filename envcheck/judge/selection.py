@@ -3,7 +3,8 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass, field
+from types import MappingProxyType
+from typing import NamedTuple
 
 from envcheck.model.judged import Choice
 from envcheck.model.patterns import in_words
@@ -22,8 +23,7 @@ INSULATION = "insulation"
 """Path of labelled R-values, printed beside the value of the whole."""
 
 
-@dataclass(frozen=True, slots=True)
-class MissingFact:
+class MissingFact(NamedTuple):
     """A fact that a condition asks for and that nobody states, or states in no known word."""
 
     name: str
@@ -46,8 +46,7 @@ class MissingFact:
         return f"{what} is not stated{fact}{sheet}"
 
 
-@dataclass(frozen=True, slots=True)
-class Outcome:
+class Outcome(NamedTuple):
     """What the tables say for one metric and path."""
 
     metric: str
@@ -63,8 +62,7 @@ class Outcome:
     """Why there is no limit, in words."""
 
 
-@dataclass(frozen=True, slots=True)
-class Selection:
+class Selection(NamedTuple):
     """The limits for one category of element in one place, with the trail that led to them."""
 
     ruleset: str
@@ -77,7 +75,7 @@ class Selection:
     why: str
     outcomes: tuple[Outcome, ...]
     trail: tuple[Choice, ...]
-    by: Mapping[tuple[str, str], Outcome] = field(default_factory=dict, compare=False, repr=False)
+    by: Mapping[tuple[str, str], Outcome] = MappingProxyType({})
     """Outcomes by metric and path."""
 
     @property

@@ -95,17 +95,13 @@ class Beside(NamedTuple):
     note: str
 
 
-class LayerRow(NamedTuple):
-    """One layer as the report lists it."""
+class Counted(NamedTuple):
+    """What a layer of the assembly counts in the value."""
 
-    title: str
-    thickness: float
-    """m; 0 where it does not matter"""
-    conductivity: float | None
     resistance: float | None
-    """None where the layer is bridged or not counted: ``note`` says which."""
-    source: str
-    note: str
+    """m2 K/W; None where the layer is bridged or not resolved by itself."""
+    note: str = ""
+    """What was done to it, in words."""
 
 
 class Caution(NamedTuple):
@@ -166,7 +162,8 @@ class Solved(NamedTuple):
     tree: Node | None
     steps: tuple[Step, ...]
     """The whole worksheet from layers to value."""
-    layers: tuple[LayerRow, ...]
+    counted: tuple[Counted, ...]
+    """One for each layer of the assembly, outside first."""
     assumptions: tuple[str, ...]
     cautions: tuple[Caution, ...]
     hand_check: tuple[Step, ...] = ()

@@ -4,11 +4,10 @@ from __future__ import annotations
 
 import re
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass
 from datetime import date
 from hashlib import sha256
 from pathlib import Path
-from typing import Any
+from typing import Any, NamedTuple
 
 from envcheck.errors import Problem, did_you_mean, one_of, problem
 from envcheck.read.schema import check
@@ -21,8 +20,7 @@ _DATE = re.compile(r"\d{4}-\d\d-\d\d")
 _NOTHING = ("", "null", "~")
 
 
-@dataclass(frozen=True, slots=True)
-class Document:
+class Document(NamedTuple):
     """One ``ruleset.yaml`` with the lines of its keys."""
 
     id: str

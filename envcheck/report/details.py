@@ -8,20 +8,10 @@ from typing import NamedTuple
 from envcheck import units
 from envcheck.model.judged import Line
 from envcheck.model.project import Assembly, Project
-from envcheck.model.solved import Beside, LayerRow, Solved
-from envcheck.report import numbers, wording
+from envcheck.model.solved import Beside, Solved
+from envcheck.report import layers, numbers, wording
 from envcheck.report.inert import clean
-
-
-class LayerView(NamedTuple):
-    """One layer as listed."""
-
-    title: str
-    thickness: str
-    conductivity: str
-    resistance: str
-    source: str
-    note: str
+from envcheck.report.layers import LayerView
 
 
 class BesideView(NamedTuple):
@@ -96,8 +86,11 @@ def assembly_view(
         missing=tuple(map(clean, solved.missing)),
         bracket=bracket(solved, system),
         beside=tuple(_beside(beside, solved, system) for beside in solved.beside),
-        films=_films(solved, system) if solved.layers else (),
-        layers=tuple(_layer(layer, system) for layer in solved.layers),
+        films=_films(solved, system) if assembly.layers else (),
+        layers=tuple(
+            layers.view(layer, counted, system)
+            for layer, counted in zip(assembly.layers, solved.counted, strict=True)
+        ),
         conductivity_unit=units.label("conductivity", system),
         resistance_unit=units.label("resistance", system),
         assumptions=tuple(map(clean, solved.assumptions)),
@@ -149,15 +142,4 @@ def _films(solved: Solved, system: str) -> tuple[str, ...]:
     return tuple(
         clean(f"{side} film {numbers.resistance(value, system)} {unit} ({where})")
         for side, value, where in pairs
-    )
-
-
-def _layer(layer: LayerRow, system: str) -> LayerView:
-    return LayerView(
-        title=clean(layer.title),
-        thickness=numbers.length(layer.thickness, system),
-        conductivity=numbers.conductivity(layer.conductivity, system),
-        resistance=numbers.resistance(layer.resistance, system),
-        source=clean(layer.source) or "no source",
-        note=clean(layer.note),
     )

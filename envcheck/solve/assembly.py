@@ -7,11 +7,11 @@ from typing import NamedTuple
 
 from envcheck.model.project import Assembly, Bridge, Layer, TaperedLayer
 from envcheck.model.ruleset import Conventions
-from envcheck.model.solved import Beside, LayerRow, Operand, Setting, Solved, Step
-from envcheck.solve import rows
+from envcheck.model.solved import Beside, Counted, Operand, Setting, Solved, Step
 from envcheck.solve.cautions import cautions
 from envcheck.solve.cells import stated_cell
 from envcheck.solve.conventions import ventilated_at
+from envcheck.solve.counted import counted_layers, drawing_assumptions
 from envcheck.solve.methods.bridges import correct_for_bridges, total_step
 from envcheck.solve.methods.crossed import count_crossed
 from envcheck.solve.methods.fasteners import Correction, correct_for_fasteners
@@ -81,7 +81,7 @@ def _solve_layers(
         beside=(*beside, *decision.beside),
         tree=decision.tree,
         steps=steps,
-        layers=rows.layer_rows(wall, {**notes.layers, **decision.replaced}, notes.outer),
+        counted=counted_layers(wall, decision.replaced, notes.outside),
         assumptions=(*notes.assumptions, *decision.assumptions, *assumptions),
         cautions=(*cautions(assembly), *decision.cautions),
         hand_check=steps[decision.layer_steps :],
@@ -122,7 +122,7 @@ def _solve_whole(
         beside=decision.beside,
         tree=decision.tree,
         steps=closed,
-        layers=tuple(rows.plain_row(layer) for layer in assembly.layers),
+        counted=tuple([Counted(None)] * len(assembly.layers)),
         assumptions=decision.assumptions,
         cautions=(*cautions(assembly), *decision.cautions),
         hand_check=closed[decision.layer_steps :],
@@ -132,10 +132,8 @@ def _solve_whole(
 class Notes(NamedTuple):
     """What was done to the layers before they were wired."""
 
-    layers: dict[int, str]
-    """Index of a layer of the wall -> what is counted."""
-    outer: tuple[LayerRow, ...]
-    """Rows of layers that are not part of the wall."""
+    outside: int
+    """How many layers lie outside a well-ventilated cavity and are no part of the wall."""
     assumptions: tuple[str, ...]
 
 
@@ -146,10 +144,6 @@ def draw(assembly: Assembly, setting: Setting, conventions: Conventions) -> tupl
     set's convention puts there. Errors: NotDecided where a layer cannot be drawn.
     """
     first, film, film_from = _outer_side(assembly.layers, setting, conventions)
-    outer = tuple(
-        rows.plain_row(layer, "outside a well-ventilated cavity: counts 0")
-        for layer in assembly.layers[:first]
-    )
     layers = assembly.layers[first:]
     blocks = tuple(
         drawers()[layer.kind](layer, Context(f"R{number}", setting, conventions))
@@ -166,7 +160,7 @@ def draw(assembly: Assembly, setting: Setting, conventions: Conventions) -> tupl
     )
     if film + setting.inside_film == 0 and not any(r.value for b in blocks for r in b.cells[0]):
         raise NotDecided("a resistance: films and layers are stated as none at all")
-    return wall, Notes({}, outer, rows.drawing_assumptions(wall))
+    return wall, Notes(first, drawing_assumptions(wall))
 
 
 def _outer_side(
@@ -252,7 +246,7 @@ def _missing(assembly: Assembly, setting: Setting, words: str) -> Solved:
         beside=(),
         tree=None,
         steps=(),
-        layers=tuple(rows.plain_row(layer) for layer in assembly.layers),
+        counted=tuple([Counted(None)] * len(assembly.layers)),
         assumptions=(),
         cautions=cautions(assembly),
     )

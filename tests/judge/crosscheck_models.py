@@ -29,7 +29,7 @@ from envcheck.model.project import (
 from envcheck.model.ruleset import Conventions, Edition, Limit, RuleSet, Term, Zones
 from envcheck.model.solved import (
     Beside,
-    LayerRow,
+    Counted,
     Node,
     Parallel,
     Properties,
@@ -184,7 +184,7 @@ def solved(value: float | None, name: str = "W1", **more: Any) -> Solved:
         "beside": (),
         "tree": None,
         "steps": (),
-        "layers": (),
+        "counted": (),
         "assumptions": (),
         "cautions": (),
     }
@@ -374,7 +374,7 @@ def beside_each_other(*branches: tuple[float, Series]) -> Parallel:
 
 
 __all__ = [
-    "STEEL", "WOOD", "WOOL", "XPS", "Beside", "LayerRow", "Node", "Opening", "RuleSetChoice",
+    "STEEL", "WOOD", "WOOL", "XPS", "Beside", "Counted", "Node", "Opening", "RuleSetChoice",
     "assembly", "beside_each_other", "board", "check", "comparison", "edition", "element", "facts",
     "insulation", "limit", "line", "path", "properties", "r", "rated", "ruleset", "run",
     "setting", "solved", "stud", "surface", "u",

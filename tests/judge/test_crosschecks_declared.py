@@ -97,9 +97,9 @@ def test_crossed_insulation_counted_in_full_explains():
 def test_framing_left_out_explains_a_resistance():
     # 0.85 films + 0.56 + 13 = 14.41
     layers = (m.board("R-0.56"), m.stud())
-    rows = (m.LayerRow("b", 0, None, m.r("R-0.56"), "", ""), m.LayerRow("s", 0, None, None, "", ""))
+    rows = (m.Counted(m.r("R-0.56")), m.Counted(None))
     wall = m.assembly("W1", "R-14.4", "resistance", layers=layers)
-    answer = m.solved(m.u(0.09), layers=rows)
+    answer = m.solved(m.u(0.09), counted=rows)
     found = disagreement(wall, [answer])
     assert found is not None and found.computed == "R-11.11"
     reading = explain(found, wall, m.properties())

@@ -17,6 +17,15 @@ from envcheck.model.judged import (
     PathResult,
     Ratio,
 )
+from envcheck.model.layers import (
+    Fill,
+    FramedLayer,
+    Material,
+    MaterialLayer,
+    Member,
+    Profile,
+    ResistanceLayer,
+)
 from envcheck.model.project import (
     Assembly,
     Declared,
@@ -43,7 +52,7 @@ from envcheck.model.ruleset import (
 from envcheck.model.solved import (
     Beside,
     Caution,
-    LayerRow,
+    Counted,
     Operand,
     Parallel,
     Resistor,
@@ -89,6 +98,27 @@ def assembly(name: str, title: str, sheet: str, declared: float | None = None) -
     return Assembly(name, "layers", title, sheet, 1, declared=stated)
 
 
+def brick_wall() -> Assembly:
+    """XPS, steel studs, gypsum board."""
+    xps = Material("xps", "XPS", 0.0288, source="label")
+    steel = Material("steel", "Steel", 50.0)
+    stud = Profile("c_stud", to_si(3.625, "in"), to_si(1.625, "in"), to_si(0.0451, "in"))
+    member = Member(steel, stud.flange, to_si(16, "in"), stud)
+    fill = Fill(label=r(13.0), source="label")
+    layers = (
+        MaterialLayer("material", "XPS", 2, xps, to_si(1.5, "in")),
+        FramedLayer(
+            "framed", "steel studs with R-13", 3, stud.web, member, fill, None, "", (), "vertical",
+            False,
+        ),
+        ResistanceLayer(
+            "resistance", "gypsum board", 4, r(0.56), to_si(0.625, "in"), None, "", ""
+        ),
+    )  # fmt: skip
+    made = assembly("W1", "Brick veneer on steel studs", "A-501", 0.049)
+    return changed(made, layers=layers)
+
+
 def element(tag: str, name: str, category: str, area: float, **more: object) -> Element:
     made = Element(
         tag=tag, assembly=name, category=category, sheet="A-201", surface="North", line=1,
@@ -100,7 +130,7 @@ def element(tag: str, name: str, category: str, area: float, **more: object) -> 
 
 
 ASSEMBLIES = (
-    assembly("W1", "Brick veneer on steel studs", "A-501", 0.049),
+    brick_wall(),
     assembly("W2", "Wood 2x6 wall", "A-502"),
     assembly("W3", "Basement wall", "A-503"),
     assembly("W4", "Dormer cheek, steel studs", "A-504"),
@@ -235,7 +265,7 @@ def solved(name: str, metric: str, method: str, value: float | None, **more: obj
     made = Solved(
         assembly=name, setting=setting(metric, method), value=value, clear=value, missing=(),
         low=None, high=None, bracket_note="", decided_by_bracket=False, ratio=None, beside=(),
-        tree=None, steps=(), layers=(), assumptions=(), cautions=(),
+        tree=None, steps=(), counted=(), assumptions=(), cautions=(),
     )  # fmt: skip
     return changed(made, **more)
 
@@ -285,11 +315,7 @@ def _steel() -> Solved:
             Beside("sum_of_labels", u(1 / 20.5), "labels added up"),
         ),
         steps=steps, hand_check=(hand,),
-        layers=(
-            LayerRow("XPS", to_si(1.5, "in"), 0.0288, r(7.5), "label", ""),
-            LayerRow("steel studs with R-13", to_si(3.625, "in"), None, None, "label", "bridged"),
-            LayerRow("gypsum board", to_si(0.625, "in"), None, r(0.56), "", ""),
-        ),
+        counted=(Counted(r(7.5)), Counted(None, "bridged"), Counted(r(0.56))),
         cautions=(
             Caution("moisture", "W1: insulation outside the studs"),
             Caution("fire", "W1: combustible XPS"),

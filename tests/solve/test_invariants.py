@@ -8,8 +8,6 @@ nanometre, hence the tolerances of 1e-5 where sheets of half a millimetre are co
 
 from __future__ import annotations
 
-from collections.abc import Callable
-
 import numpy as np
 import pytest
 from hypothesis import HealthCheck, given, settings
@@ -17,18 +15,8 @@ from hypothesis import strategies as st
 
 from envcheck.model.project import FramedLayer, Layer, MaterialLayer, Profile
 from envcheck.model.solved import Block, Resistor
-from envcheck.solve import network
-from envcheck.solve.methods.bridges import added_by_bridge
-from envcheck.solve.methods.compressed import in_proportion
-from envcheck.solve.methods.fasteners import (
-    fastener_area,
-    fastener_correction,
-    penetration_factor,
-)
 from envcheck.solve.methods.framed import area_shares
 from envcheck.solve.methods.masonry import column_shares
-from envcheck.solve.methods.steel_framing import effective_resistance
-from envcheck.solve.methods.weighted import weighted
 from envcheck.solve.registry import Wall
 from envcheck.solve.section import grid, profile_pieces
 from envcheck.solve.wiring import align, bounds, isothermal_planes, parallel_paths
@@ -281,49 +269,3 @@ def test_sheet_of_the_drawn_profile(profile: Profile, depth: float) -> None:
     assert sum(widths) == pytest.approx(repeat)
     assert sum(depths) == pytest.approx(depth)
     assert area == pytest.approx(sheet * sum(parts), rel=1e-6)
-
-
-# --------------------------------------------------------------------------- numpy arrays
-
-
-FUNCTIONS: list[tuple[Callable[..., object], int]] = [
-    (network.series, 3),
-    (lambda a, b, c: network.parallel([0.25, 0.75], [a + c, b]), 3),
-    (network.plane_wall, 2),
-    (lambda p, a, b: weighted(p / 6.0, a, b), 3),
-    (effective_resistance, 2),
-    (added_by_bridge, 3),
-    (penetration_factor, 2),
-    (fastener_area, 1),
-    (fastener_correction, 7),
-    (in_proportion, 3),
-]
-
-
-@pytest.mark.parametrize(("function", "arguments"), FUNCTIONS)
-@few
-@given(data=st.data())
-def test_arrays_give_what_floats_give(
-    function: Callable[..., object], arguments: int, data: st.DataObject
-) -> None:
-    # One argument along each of two axes, so that they broadcast against each other.
-    numbers = st.lists(st.floats(0.1, 5.0), min_size=2, max_size=2)
-    given_ = [np.array(data.draw(numbers)) for _ in range(arguments)]
-    shaped = [array.reshape(2, 1) if i % 2 else array for i, array in enumerate(given_)]
-    found = np.asarray(function(*shaped))
-    assert found.shape == ((2, 2) if arguments > 1 else (2,))
-    for index in np.ndindex(*found.shape):
-        picked = [float(array[index[0] if i % 2 else index[-1]]) for i, array in enumerate(given_)]
-        assert found[index] == pytest.approx(function(*picked), rel=1e-12)
-
-
-@few
-@given(st.lists(st.floats(0.01, 1.0), min_size=1, max_size=5), st.data())
-def test_series_and_parallel_by_definition(raw: list[float], data: st.DataObject) -> None:
-    values = data.draw(st.lists(st.floats(0.01, 20.0), min_size=len(raw), max_size=len(raw)))
-    shares = [one / sum(raw) for one in raw]
-    assert network.series(*values) == pytest.approx(sum(values))
-    beside = network.parallel(shares, values)
-    assert 1 / beside == pytest.approx(sum(f / r for f, r in zip(shares, values, strict=True)))
-    assert min(values) * (1 - 1e-12) <= beside <= max(values) * (1 + 1e-12)
-    assert beside <= sum(f * r for f, r in zip(shares, values, strict=True)) * (1 + 1e-12)

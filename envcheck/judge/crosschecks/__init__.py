@@ -7,10 +7,10 @@ was seen, what it suggests, and what would settle it; it never changes a verdict
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Mapping
-from dataclasses import dataclass
 from functools import cache
 from importlib import import_module
 from pkgutil import iter_modules
+from typing import NamedTuple
 
 from envcheck.model.judged import Closing, Finding, Line, Mean, Ratio
 from envcheck.model.project import Project
@@ -18,8 +18,7 @@ from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Properties, Solved
 
 
-@dataclass(frozen=True, slots=True)
-class Facts:
+class Facts(NamedTuple):
     """What a check may look at."""
 
     project: Project
@@ -35,8 +34,7 @@ class Facts:
     means: tuple[Mean, ...]
 
 
-@dataclass(frozen=True, slots=True)
-class Check:
+class Check(NamedTuple):
     """One cross-check."""
 
     id: str

@@ -1,0 +1,67 @@
+"""How the page lists the layers of an assembly."""
+
+from __future__ import annotations
+
+from typing import NamedTuple
+
+from envcheck.model.layers import (
+    AirSpaceLayer,
+    ContactLayer,
+    FramedLayer,
+    Layer,
+    MaterialLayer,
+    ResistanceLayer,
+    TaperedLayer,
+)
+from envcheck.model.solved import Counted
+from envcheck.report import numbers
+from envcheck.report.inert import clean
+
+
+class LayerView(NamedTuple):
+    """One layer, ready to print."""
+
+    title: str
+    thickness: str
+    conductivity: str
+    resistance: str
+    source: str
+    note: str
+
+
+VENTILATION = {
+    "unventilated": "unventilated air space",
+    "slightly": "slightly ventilated air space",
+    "well": "well-ventilated air space",
+}
+
+
+def view(layer: Layer, counted: Counted, system: str) -> LayerView:
+    """One layer in the units of a system; bridged layers have no resistance of their own."""
+    conductivity, source = None, ""
+    thickness = 0.0 if isinstance(layer, ContactLayer | TaperedLayer) else layer.thickness
+    words = [counted.note]
+    if isinstance(layer, MaterialLayer):
+        conductivity, source = layer.material.conductivity, layer.material.source
+    elif isinstance(layer, ResistanceLayer | ContactLayer):
+        source = layer.source
+    elif isinstance(layer, AirSpaceLayer):
+        words.insert(0, VENTILATION[layer.ventilation])
+    elif isinstance(layer, TaperedLayer):
+        thickness = layer.least
+        conductivity, source = layer.material.conductivity, layer.material.source
+        most = numbers.length(layer.greatest, system)
+        words.insert(0, f"tapered up to {most}, at its least here")
+    elif isinstance(layer, FramedLayer):
+        fill = layer.fill
+        source = fill.material.source if fill.material is not None else fill.source
+    else:
+        source = layer.material.source
+    return LayerView(
+        title=clean(layer.title),
+        thickness=numbers.length(thickness, system),
+        conductivity=numbers.conductivity(conductivity, system),
+        resistance=numbers.resistance(counted.resistance, system),
+        source=clean(source) or "no source",
+        note=clean("; ".join(part for part in words if part)),
+    )

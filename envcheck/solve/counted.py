@@ -1,0 +1,61 @@
+"""What each layer counts in the value, and what was assumed while drawing the wall."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+
+from envcheck.model.layers import FramedLayer, Layer, MasonryLayer
+from envcheck.model.solved import Counted
+from envcheck.solve.methods.framed import area_shares
+from envcheck.solve.registry import Wall
+
+OUTSIDE_OF_VENT = Counted(None, "outside a well-ventilated cavity: counts 0")
+
+
+def counted_layers(wall: Wall, notes: Mapping[int, str], outside: int) -> tuple[Counted, ...]:
+    """One entry for each layer of the assembly, outside first.
+
+    notes: index of a layer of the wall -> what the method counts in its place. outside: how many
+    layers lie outside a well-ventilated cavity.
+    """
+    found = [OUTSIDE_OF_VENT] * outside
+    for index, (layer, block) in enumerate(zip(wall.layers, wall.blocks, strict=True)):
+        note = notes.get(index, "")
+        if block.pattern:
+            words = (described(layer), note)
+            found.append(Counted(None, "; ".join(part for part in words if part)))
+        else:
+            found.append(Counted(sum([row[0].value for row in block.cells]), note))
+    return tuple(found)
+
+
+def described(layer: Layer) -> str:
+    """How a bridged layer is made up, in words without units that a report would convert."""
+    if isinstance(layer, MasonryLayer):
+        return f"webs {layer.web_share * 100:.3g} % of the area"
+    if not isinstance(layer, FramedLayer):
+        return ""
+    if layer.member.profile is not None:
+        return f"steel profile {layer.member.profile.id}"
+    shares = area_shares(layer)
+    words = f"members {shares.member * 100:.3g} % of the area"
+    for extra, share in zip(layer.extras, shares.extras, strict=True):
+        words += f", {extra.title} {share * 100:.3g} %"
+    return words
+
+
+def drawing_assumptions(wall: Wall) -> tuple[str, ...]:
+    """What was assumed to draw the wall as rectangles."""
+    found = []
+    for layer in wall.layers:
+        if not isinstance(layer, FramedLayer) or layer.share is None or layer.member.profile:
+            continue
+        whose = layer.share_from or "the project"
+        words = f"{layer.title}: framing share {layer.share * 100:.3g} % (from {whose})"
+        if layer.member.spacing is not None:
+            words += ", drawn as one member of share x spacing"
+        found.append(words)
+    patterns = {block.pattern for block in wall.blocks if block.pattern}
+    if len(patterns) > 1:
+        found.append("layers of members that run differently are taken to cross each other")
+    return tuple(found)
