@@ -199,7 +199,9 @@ def _decide(wall: Wall) -> tuple[Decision, tuple[Correction, ...]]:
                 decision = taper(decision, layer, conventions)
     except NotDecided as missing:
         return Decision(None, missing=(str(missing),)), ()
-    return decision._replace(replaced={**changed, **decision.replaced}), (fasteners,)
+    if changed:
+        decision = decision._replace(replaced={**changed, **decision.replaced})
+    return decision, (fasteners,)
 
 
 def _closed(decision: Decision, corrections: Sequence[Correction]) -> tuple[Step, ...]:

@@ -25,7 +25,10 @@ def counted_layers(wall: Wall, notes: Mapping[int, str], outside: int) -> tuple[
             words = (described(layer), note)
             found.append(Counted(None, "; ".join(part for part in words if part)))
         else:
-            found.append(Counted(sum([row[0].value for row in block.cells]), note))
+            value = block.cells[0][0].value
+            for row in block.cells[1:]:
+                value += row[0].value
+            found.append(Counted(value, note))
     return tuple(found)
 
 

@@ -1,7 +1,7 @@
-"""Blocks of the docs that the program printed: ``python -m tests.docs.excerpts`` writes them anew.
+"""Blocks of the docs that the program printed: ``python -m tests.docs.excerpts`` renews them.
 
-``<!-- printed: COMMAND; from: A; to: B -->`` holds the lines from the first that begins with A up to
-the one that begins with B; ``<!-- printed: COMMAND; lines: A -->`` the lines that begin with A.
+``<!-- printed: COMMAND; from: A; to: B -->`` holds the lines from the first that begins with A up
+to the one that begins with B; ``<!-- printed: COMMAND; lines: A -->`` those that begin with A.
 Runs of spaces count as one. ``<!-- printed broken.yaml -->`` holds the messages about that file.
 """
 
@@ -52,7 +52,7 @@ def _begins(line: str, words: str) -> bool:
 
 def messages() -> str:
     """Every message about the broken project of the format page."""
-    ((_, text),) = blocks(PROJECT, r"project broken.yaml|broken project broken.yaml")
+    ((_, text),) = blocks(PROJECT, "broken project broken.yaml")
     here = Path.cwd()
     with TemporaryDirectory() as folder:
         os.chdir(folder)
