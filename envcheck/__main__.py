@@ -53,8 +53,10 @@ def _run(arguments: list[str]) -> int:
     except click.ClickException as error:
         error.show(sys.stderr)
         return INPUT
-    except SystemExit:
-        # click ends so, and only so, where the pipe it writes to is closed
+    except SystemExit as done:
+        # click ends so where a shell asked for completions, or where its pipe is closed
+        if "_ENVCHECK_COMPLETE" in os.environ:
+            return INPUT if done.code else 0
         return _closed_pipe()
 
 

@@ -114,6 +114,18 @@ KINDS = (
         "Shares of framing and headers, or of webs and joints, that take up all of the area.",
     ),
     Kind(
+        "air-not-cavity",
+        "the air space is not as deep as its cavity",
+        "give it the thickness of the framed layer; what else lies there is a layer of its own",
+        "A thinner space would leave a part of the cavity that nobody describes.",
+    ),
+    Kind(
+        "ventilated-fill",
+        "air between members cannot be well ventilated",
+        "use an air-space layer of its own, so that what lies outside of it is left out",
+        "What lies outside a well-ventilated space counts nothing; between members it cannot be.",
+    ),
+    Kind(
         "too-thick",
         "{key!r} is larger than {limit}",
         "check both sizes",

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
 
-from envcheck.judge.compare import compare
+from envcheck.judge.compare import compare, own_term
 from envcheck.model.judged import Closing, Line, Mean, Ratio
 from envcheck.model.patterns import matches
 from envcheck.model.project import Element, Project, Surface
@@ -127,7 +127,7 @@ def _take_mean(
     limit = members[0].limit
     assert limit is not None
     cap, over_cap = _individual_cap(members, elements, limit, rule, ruleset)
-    comparison = compare(value, limit.alternatives[0][0], limit, ruleset)
+    comparison = compare(value, own_term(limit), limit, ruleset)
     within = comparison.within and not over_cap
     worst = members[values.index(max(values))]
     mean = Mean(
@@ -181,7 +181,7 @@ def _individual_cap(
     """What the individual cap says, and whether a member is over it."""
     if rule.individual_cap is None:
         return "no individual cap", False
-    bound = rule.individual_cap * limit.alternatives[0][0].number
+    bound = rule.individual_cap * own_term(limit).number
     over = []
     for line, element in zip(members, elements, strict=True):
         exempt = (

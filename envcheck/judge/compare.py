@@ -40,6 +40,29 @@ def compare(value: float, term: Term, limit: Limit, ruleset: RuleSet) -> Compari
     )
 
 
+def own_term(limit: Limit) -> Term:
+    """The number of a cell that speaks of the row's own metric.
+
+    A cell may offer others beside it (``0.30 or ER 34``): those are never compared with it. The
+    reader makes sure that there is one.
+    """
+    for alternative in limit.alternatives:
+        term = alternative[0]
+        if len(alternative) == 1 and term.metric in ("", limit.metric):
+            return term
+    raise ValueError(f"{limit.id}: {limit.cell!r} holds no number of its own metric")
+
+
+def other_ways(limit: Limit) -> str:
+    """What a cell offers beside its own metric, as printed; empty where nothing."""
+    return " or ".join(
+        term.metric + " " + term.text
+        for alternative in limit.alternatives
+        for term in alternative
+        if term.metric not in ("", limit.metric)
+    )
+
+
 @cache
 def _printed(text: str) -> Decimal:
     return Decimal(text)

@@ -14,6 +14,8 @@ from envcheck.units import convert
 EXTENT_TOLERANCE = 0.005
 """m by which a printed extent (24 in) may be missed by a metric dimension."""
 
+COUNTED = ("", "cavity", "ci")
+"""Roles of a term that an element's insulation can answer to."""
 CLEARLY = 1e-6
 """Printed units above a number from which no rounding can matter."""
 
@@ -53,12 +55,16 @@ def insulation_path(limit: Limit, brought: Insulation, ruleset: RuleSet) -> Path
     if brought.why_not and any(term.role == "ci" for alt in limit.alternatives for term in alt):
         return PathResult("insulation", "not_available", "", limit.cell, brought.why_not)
     value = describe(brought, limit)
+    strange = [t.role for alt in limit.alternatives for t in alt if t.role not in COUNTED]
+    if strange:
+        why = f"insulation {strange[0]!r} is not told apart in the project"
+        return PathResult("insulation", "not_available", value, limit.cell, why)
     shortest = ""
     for alternative in limit.alternatives:
         short = [
-            why
+            why_short
             for term in alternative
-            if (why := _short_of(term, limit, brought, ruleset)) is not None
+            if (why_short := _short_of(term, limit, brought, ruleset)) is not None
         ]
         if not short:
             words = " + ".join(term.text + term.role.replace("cavity", "") for term in alternative)

@@ -6,7 +6,7 @@ from collections.abc import Mapping
 from typing import NamedTuple
 
 from envcheck.judge.classes import Class
-from envcheck.judge.compare import compare
+from envcheck.judge.compare import compare, other_ways, own_term
 from envcheck.judge.paths import insulation_of, insulation_path, reach
 from envcheck.judge.selection import INSULATION, Selection
 from envcheck.model.judged import Choice, Comparison, Line, PathResult, Ratio
@@ -205,7 +205,7 @@ def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Lin
         return _by_labels(line, labels)
     if missing is not None or value is None:
         return _without_value(line, missing or "", limit, labels)
-    comparison = compare(value, limit.alternatives[0][0], limit, case.ruleset)
+    comparison = compare(value, own_term(limit), limit, case.ruleset)
     own = PathResult(
         "assembly",
         "pass" if comparison.within else "fail",
@@ -213,14 +213,29 @@ def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Lin
         limit.cell,
         "",
     )
-    passed = comparison.within or (labels is not None and labels.state == "pass")
+    verdict, reasons = _outcome(comparison, labels, other_ways(limit))
     line = line._replace(
-        verdict="pass" if passed else "fail",
+        verdict=verdict,
         comparison=comparison,
         paths=(own, labels) if labels is not None else (),
-        reasons=_reasons(comparison, labels),
+        reasons=reasons,
     )
     return _with_bracket(case, line, limit, solved)
+
+
+def _outcome(
+    comparison: Comparison, labels: PathResult | None, others: str
+) -> tuple[str, tuple[str, ...]]:
+    """Any one path may pass; what only a person can decide is never a failure."""
+    reasons = _reasons(comparison, labels)
+    if comparison.within or (labels is not None and labels.state == "pass"):
+        return "pass", reasons
+    if labels is not None and labels.state == "not_decided":
+        return "official_decides", reasons
+    if others:
+        why = f"over by its own metric; the cell also offers {others}, which is not judged here"
+        return "not_decided", (why, *reasons)
+    return "fail", reasons
 
 
 def _value(case: Case, limit: Limit, solved: Solved | None) -> float | None:
@@ -262,11 +277,18 @@ def _labels(case: Case, limit: Limit) -> PathResult | None:
     if other is None or other.kind != "number" or case.assembly.kind in ("rated", "window"):
         return None
     brought = insulation_of(case.assembly, case.element, case.properties)
-    return insulation_path(other, brought, case.ruleset)
+    result = insulation_path(other, brought, case.ruleset)
+    notes = [note for note in other.notes if note.by_official]
+    if notes and result.state == "pass":
+        why = f"footnote {notes[0].mark}: {notes[0].text}"
+        return result._replace(state="not_decided", why=why)
+    return result
 
 
 def _by_labels(line: Line, labels: PathResult | None) -> Line:
     """A table that limits labelled insulation only."""
+    if labels is not None and labels.state == "not_decided":
+        return line._replace(verdict="official_decides", reasons=(labels.why,), paths=(labels,))
     if labels is None or labels.state == "not_available":
         why = labels.why if labels is not None else "labelled insulation"
         return line._replace(verdict="not_decided", reasons=(f"missing: {why}",))
@@ -303,7 +325,7 @@ def _reasons(comparison: Comparison, labels: PathResult | None) -> tuple[str, ..
 def _by_bracket(case: Case, line: Line, limit: Limit, solved: Solved) -> Line:
     """The method is the two-dimensional solution: the bracket decides."""
     assert solved.low is not None and solved.high is not None
-    term = limit.alternatives[0][0]
+    term = own_term(limit)
     low = compare(solved.low, term, limit, case.ruleset)
     high = compare(solved.high, term, limit, case.ruleset)
     if high.within:
@@ -326,7 +348,7 @@ def _with_bracket(case: Case, line: Line, limit: Limit, solved: Solved | None) -
         flags.append("at_limit")
     if solved is None or solved.low is None or solved.high is None or limit.metric == "SHGC":
         return line._replace(flags=tuple(flags))
-    term = limit.alternatives[0][0]
+    term = own_term(limit)
     low = compare(solved.low, term, limit, case.ruleset)
     high = compare(solved.high, term, limit, case.ruleset)
     if {low.within, high.within, comparison.within} == {True, False}:

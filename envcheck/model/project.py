@@ -104,6 +104,8 @@ class Rated(NamedTuple):
     """The standard that the rating follows, as printed on it."""
     document: str
     """File in the project's folder, or a reference; may be empty."""
+    document_found: bool = True
+    """False where ``document`` reads like a file that is not there."""
 
 
 class Slab(NamedTuple):

@@ -137,6 +137,9 @@ class Setting(NamedTuple):
     """Film outside a well-ventilated cavity, where the convention drops the layers beyond it."""
     conventions: str
     """Key of the rule set whose Conventions apply."""
+    framing_share: float | None = None
+    """Of wood framing whose share the project does not state, 0..1."""
+    framing_share_from: str = ""
 
 
 class Solved(NamedTuple):

@@ -172,8 +172,10 @@ def _window(context: Context, entry: Entry) -> Window:
 def _rated(context: Context, entry: Entry) -> Rated:
     stated = entry.get("evidence", "assumed")
     evidence = {"kind": stated} if isinstance(stated, str) else stated
+    found = True
     if isinstance(evidence, Entry) and "document" in evidence:
-        context.inside_folder(evidence, "document")
+        is_file = "/" in evidence["document"] or "." in evidence["document"]
+        found = context.inside_folder(evidence, "document") or not is_file
     return Rated(
         u_factor=context.optional(entry, "u_factor", "u_factor"),
         shgc=_plain(entry, "shgc"),
@@ -182,6 +184,7 @@ def _rated(context: Context, entry: Entry) -> Rated:
         evidence=evidence["kind"],
         standard=evidence.get("standard", ""),
         document=evidence.get("document", ""),
+        document_found=found,
     )
 
 

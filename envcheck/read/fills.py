@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from envcheck.model.project import AirSpaceLayer, Fill
-from envcheck.read.context import Context
+from envcheck.read.context import MATCHES, Context
 from envcheck.read.yaml_reader import Entry
 
 ORDINARY_EMITTANCE = 0.9
@@ -26,8 +26,8 @@ def read_air_space(context: Context, entry: Entry) -> AirSpaceLayer:
     )
 
 
-def read_fill(context: Context, entry: Entry, where: str) -> Fill:
-    """Read what fills a cavity: exactly one of material, label, resistance and air space."""
+def read_fill(context: Context, entry: Entry, where: str, depth: float) -> Fill:
+    """Read what fills a cavity of this depth, m: one of material, label, resistance, air space."""
     kind = context.exactly_one(entry, ("material", "label", "resistance", "air_space"), where)
     source, evidence = entry.get("source", ""), context.evidence(entry)
     if kind not in ("label", ""):
@@ -36,7 +36,7 @@ def read_fill(context: Context, entry: Entry, where: str) -> Fill:
     if kind == "material":
         return Fill(material=context.material(entry), source=source, evidence=evidence)
     if kind == "air_space":
-        return Fill(air=read_air_space(context, entry["air_space"]), source=source)
+        return Fill(air=_air_in_cavity(context, entry["air_space"], depth), source=source)
     if kind == "resistance":
         value = context.positive(entry, "resistance", "resistance")
         return Fill(label=value, installed_label=value, source=source, evidence=evidence)
@@ -49,6 +49,17 @@ def read_fill(context: Context, entry: Entry, where: str) -> Fill:
             evidence=evidence,
         )
     return Fill()
+
+
+def _air_in_cavity(context: Context, entry: Entry, depth: float) -> AirSpaceLayer:
+    """Air that fills a cavity: as deep as the cavity, and not open to the outside."""
+    space = read_air_space(context, entry)
+    if abs(space.thickness - depth) > MATCHES:
+        found = f"{space.thickness * 1000:.4g} mm in a cavity of {depth * 1000:.4g} mm"
+        context.add("air-not-cavity", entry.lines["thickness"], found=found)
+    if space.ventilation == "well":
+        context.add("ventilated-fill", entry.lines["ventilation"], found="ventilation: well")
+    return space
 
 
 def read_cell(context: Context, entry: Entry) -> tuple[Fill, float | None]:

@@ -31,7 +31,7 @@ def read_framed(context: Context, entry: Entry) -> Layer:
         entry.line,
         thickness,
         member,
-        read_fill(context, entry["fill"], "the fill of the framed layer"),
+        read_fill(context, entry["fill"], "the fill of the framed layer", thickness),
         share,
         entry.get("share_from", ""),
         extras,
@@ -62,6 +62,11 @@ def _member(context: Context, entry: Entry, thickness: float, share: float | Non
         found = f"{entry.get('width', 'the flange')} at {entry['spacing']}"
         context.add("framing-too-wide", entry.lines["spacing"], found=found)
         spacing = NAN
+    elif profile is not None and spacing is not None and profile.shape == "Z":
+        reach = 3 * profile.flange - 2 * profile.thickness
+        if reach > spacing:
+            found = f"flanges of {profile.flange * 1000:.4g} mm to both sides at {entry['spacing']}"
+            context.add("framing-too-wide", entry.lines["spacing"], found=found)
     if "material" in entry:
         material = context.material(entry)
     elif profile is not None:

@@ -159,7 +159,18 @@ def _cell(
     if cell.refers == "unchanged" and not table.unchanged:
         problems.append(at(table, row, head, "unchanged-without-base", text))
         return None
+    if spot.metric != "R_insulation" and not all(map(_has_own_number, cell.branches)):
+        expected = f"one number of the row's own metric, {spot.metric}"
+        problems.append(at(table, row, head, "cell-not-executed", text, expected))
+        return None
     return cell
+
+
+def _has_own_number(branch: Branch) -> bool:
+    """Whether a branch names no figure, or one of the row's own metric."""
+    return branch.kind != "number" or any(
+        len(alternative) == 1 and not alternative[0].metric for alternative in branch.alternatives
+    )
 
 
 def _limits(

@@ -99,12 +99,18 @@ def lead(project: Project, rulesets: Iterable[RuleSet], lines: Iterable[Line]) -
         parts = (
             project.site.place,
             ruleset.title,
-            f"zone {zone}" if zone else "zone not found",
+            _in_zone(zone, ruleset),
             f"invented {word}" if ruleset.invented else word,
             "" if decides(ruleset, project) else "information only",
         )
         found.append(clean("; ".join(filter(None, parts))))
     return tuple(found)
+
+
+def _in_zone(zone: str, ruleset: RuleSet) -> str:
+    if zone:
+        return f"zone {zone}"
+    return "zone not found" if len(ruleset.zones.order) > 1 else ""
 
 
 def status(ruleset: RuleSet) -> str:

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from typing import NamedTuple
 
-from envcheck.model.project import Assembly, Bridge, Layer, TaperedLayer
+from envcheck.model.project import Assembly, Bridge, FramedLayer, Layer, TaperedLayer
 from envcheck.model.ruleset import Conventions
 from envcheck.model.solved import Beside, Counted, Operand, Setting, Solved, Step
 from envcheck.solve.cautions import cautions
@@ -15,6 +15,7 @@ from envcheck.solve.counted import counted_layers, drawing_assumptions
 from envcheck.solve.methods.bridges import correct_for_bridges, total_step
 from envcheck.solve.methods.crossed import count_crossed
 from envcheck.solve.methods.fasteners import Correction, correct_for_fasteners
+from envcheck.solve.methods.framed import is_metal
 from envcheck.solve.methods.tapered import taper
 from envcheck.solve.methods.weighted import weighted
 from envcheck.solve.registry import (
@@ -78,7 +79,7 @@ def _solve_layers(
         bracket_note=note,
         decided_by_bracket=decision.by_bracket,
         ratio=high / low if low and high else None,
-        beside=(*beside, *decision.beside),
+        beside=(*beside, *(b._replace(value=b.value + added) for b in decision.beside)),
         tree=decision.tree,
         steps=steps,
         counted=counted_layers(wall, decision.replaced, notes.outside),
@@ -143,8 +144,10 @@ def draw(assembly: Assembly, setting: Setting, conventions: Conventions) -> tupl
     Layers outside a well-ventilated air space are left out, with the outer film that the rule
     set's convention puts there. Errors: NotDecided where a layer cannot be drawn.
     """
-    first, film, film_from = _outer_side(assembly.layers, setting, conventions)
+    first, film, film_from = _outer_side(assembly, setting, conventions)
     layers = assembly.layers[first:]
+    if setting.framing_share is not None:
+        layers = tuple(with_share(layer, setting) for layer in layers)
     blocks = tuple(
         drawers()[layer.kind](layer, Context(f"R{number}", setting, conventions))
         for number, layer in enumerate(layers, first + 1)
@@ -163,16 +166,29 @@ def draw(assembly: Assembly, setting: Setting, conventions: Conventions) -> tupl
     return wall, Notes(first, drawing_assumptions(wall))
 
 
+def with_share(layer: Layer, setting: Setting) -> Layer:
+    """Give wood framing whose share nobody states the share of the rule set."""
+    if (
+        isinstance(layer, FramedLayer)
+        and layer.share is None
+        and not layer.crosses_insulation
+        and not is_metal(layer)
+    ):
+        return layer._replace(share=setting.framing_share, share_from=setting.framing_share_from)
+    return layer
+
+
 def _outer_side(
-    layers: tuple[Layer, ...], setting: Setting, conventions: Conventions
+    assembly: Assembly, setting: Setting, conventions: Conventions
 ) -> tuple[int, float, str]:
     """First layer that counts, and the film outside of it."""
-    at = ventilated_at(layers)
+    at = ventilated_at(assembly.layers)
     if at is None:
         return 0, setting.outside_film, setting.outside_film_from
     if conventions.cladding == "iso6946":
         said = "still-air film outside a well-ventilated cavity (ISO 6946:2017, 6.9.4)"
-        return at + 1, setting.cladding_film, said
+        stated = assembly.outside_film is not None
+        return at + 1, setting.cladding_film, setting.outside_film_from if stated else said
     return at + 1, setting.outside_film, setting.outside_film_from
 
 

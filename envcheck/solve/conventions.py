@@ -44,6 +44,7 @@ class Resolver:
             refused, weight = (), None
         direction = direction_of_flow(element.tilt)
         outside, inside, cladding = self._three_films(element.adjoins, direction)
+        share = self._share(category)
         stated = "stated in the project"
         outer, inner = assembly.outside_film, assembly.inside_film
         return Setting(
@@ -57,8 +58,10 @@ class Resolver:
             outside_film_from=outside.source if outer is None else stated,
             inside_film=inside.resistance if inner is None else inner,
             inside_film_from=inside.source if inner is None else stated,
-            cladding_film=cladding.resistance,
+            cladding_film=cladding.resistance if outer is None else outer,
             conventions=self._key,
+            framing_share=share[0],
+            framing_share_from=share[1],
         )
 
     def _rule(self, category: str, kind: str, metric: str) -> MethodRule | None:
@@ -66,6 +69,13 @@ class Resolver:
         if asked not in self._rules:
             self._rules[asked] = method_rule(self._conventions, *asked)
         return self._rules[asked]
+
+    def _share(self, category: str) -> tuple[float | None, str]:
+        """The framing share that the code gives for a class; the first pattern that fits."""
+        for pattern, share, clause in self._conventions.framing_shares:
+            if matches(pattern, category):
+                return share, clause or "the rule set"
+        return None, ""
 
     def _three_films(self, adjoins: str, direction: str) -> tuple[FilmRow, FilmRow, FilmRow]:
         """Outside, inside, and outside a well-ventilated cavity."""

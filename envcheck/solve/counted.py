@@ -35,7 +35,9 @@ def counted_layers(wall: Wall, notes: Mapping[int, str], outside: int) -> tuple[
 def described(layer: Layer) -> str:
     """How a bridged layer is made up, in words without units that a report would convert."""
     if isinstance(layer, MasonryLayer):
-        return f"webs {layer.web_share * 100:.3g} % of the area"
+        solid = layer.web_share == 1
+        what, share = ("joints", layer.joint_share) if solid else ("webs", layer.web_share)
+        return f"{what} {share * 100:.3g} % of the area"
     if not isinstance(layer, FramedLayer):
         return ""
     if layer.member.profile is not None:

@@ -28,7 +28,7 @@ from tests.read.names import NAMES
 SOUND = Path(__file__).parent.parent / "cases" / "sound"
 R_IP = 0.1761101838  # m2 K/W in one h ft2 F/Btu (SI 10, from memory: 0.176110)
 
-HEAD = "envcheck: 1\nproject: {title: T}\nassemblies:\n"
+HEAD = "envcheck: 1\nproject: {title: T}\nrule_sets: [any]\nassemblies:\n"
 
 
 def read(text: str, folder: Path = SOUND) -> Project:

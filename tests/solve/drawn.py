@@ -37,7 +37,8 @@ def solved(
 ) -> Solved:
     """Solve an assembly, or layers from outside to inside, by one method."""
     whole = of if isinstance(of, Assembly) else assembly(*of)
-    by: Setting = setting(method=method)._replace(**more)  # type: ignore[arg-type]
+    weight = 0.5 if method == "weighted" else None  # stated, so that metal members are accepted
+    by: Setting = setting(method=method)._replace(weight=weight)._replace(**more)  # type: ignore[arg-type]
     return solve(whole, by, under)
 
 

@@ -173,7 +173,7 @@ def test_plates_take_their_share_first_and_members_the_rest() -> None:
     by_hand = 0.21 / r[0] + 0.04 / r[1] + 0.75 / r[2]
     found = solved(wall, "parallel_path")
     assert found.value == pytest.approx(by_hand)
-    assert found.layers[0].note == "members 21 % of the area, headers 4 %"
+    assert found.counted[0].note == "members 21 % of the area, headers 4 %"
     assert_recomputes(found.steps)
 
 
@@ -239,12 +239,16 @@ def test_the_mean_of_both_says_where_iso_6946_excludes_it() -> None:
     assert any("1.77" in said and "ISO 6946 excludes" in said for said in found.assumptions)
     assert found.ratio is not None
     assert found.ratio == pytest.approx(1.77, abs=0.005)
+    # Without a weight of the rule set's own the rule is that of ISO 6946, which excludes metal.
+    unstated = solved(CHEEK, "weighted", outside_film=0.13, weight=None)
+    assert unstated.value is None
+    assert "ISO 6946 excludes" in unstated.missing[0]
 
 
 def test_profile_is_named_in_the_layer_list() -> None:
-    (row,) = (row for row in solved(CHEEK, "two_dimensional").layers if row.title == "studs")
-    assert row.note == "steel profile C 100x50x1.0"
-    assert row.resistance is None
+    found = solved(CHEEK, "two_dimensional").counted[2]
+    assert found.note == "steel profile C 100x50x1.0"
+    assert found.resistance is None
 
 
 def test_pieces_of_each_shape() -> None:

@@ -91,8 +91,7 @@ def test_grouted_cells_and_joints_take_their_share() -> None:
     found = solved([partly], "isothermal_planes")
     assert found.value == pytest.approx(1 / (0.17 + 2 * shells + 0.14 / units))
     assert_recomputes(found.steps)
-    (row,) = found.layers
-    assert row.note == "webs 20 % of the area"
+    assert found.counted[0].note == "webs 20 % of the area"
 
 
 def solid(mortar: bool) -> MasonryLayer:
@@ -109,7 +108,7 @@ def test_solid_units_are_a_plane_layer(method: str) -> None:
     found = solved([solid(mortar=False)], method)
     assert found.value == pytest.approx(1 / (0.17 + 0.2 / 0.77))
     assert found.low == pytest.approx(found.high)
-    assert found.layers[0].resistance == pytest.approx(0.2 / 0.77)
+    assert found.counted[0].resistance == pytest.approx(0.2 / 0.77)
     assert_recomputes(found.steps)
 
 
@@ -120,6 +119,7 @@ def test_solid_units_with_joints() -> None:
     assert value(walls, "isothermal_planes") == pytest.approx(1 / (0.17 + 0.2 / mean_k))
     assert value(walls, "parallel_path") == pytest.approx(by_paths)
     assert "bridged layer 'brickwork'" in solved(walls, "series").missing[0]
+    assert solved(walls, "weighted").counted[0].note == "joints 20 % of the area"
 
 
 def test_solid_units_in_the_ground_count_as_a_plane_layer() -> None:

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping, Sequence
 
 from envcheck.judge.building import area_weighted_mean
-from envcheck.judge.compare import compare, rounded
+from envcheck.judge.compare import compare, own_term, rounded
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.crosschecks.surfaces import surface_of
 from envcheck.judge.readings import plain_resistance
@@ -89,7 +89,7 @@ def _effect(facts: Facts, surface: Surface, mark: Opening, size: float) -> str:
     if value is None or own is None or own.value is None or field.limit is None:
         return ""
     mean = area_weighted_mean([element.net_area or 0.0, size], [own.value, value])
-    term = field.limit.alternatives[0][0]
+    term = own_term(field.limit)
     ruleset = facts.rulesets[field.ruleset]
     together = compare(mean, term, field.limit, ruleset)
     alone = compare(own.value, term, field.limit, ruleset)

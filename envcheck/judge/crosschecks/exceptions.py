@@ -1,4 +1,4 @@
-"""Exceptions that are claimed on no paper."""
+"""Papers that are named and not there."""
 
 from __future__ import annotations
 
@@ -27,6 +27,24 @@ def without_evidence(facts: Facts) -> Iterator[Finding]:
         )
 
 
+def document_missing(facts: Facts) -> Iterator[Finding]:
+    """A rating whose document is named like a file that is not in the project's folder."""
+    for assembly in facts.project.assemblies.values():
+        rated = assembly.rated
+        if rated is None or rated.document_found:
+            continue
+        yield Finding(
+            "document-not-found",
+            "W",
+            assembly.id,
+            assembly.sheet,
+            f"{rated.document} is named as evidence and is not in the project's folder",
+            "the value cannot be traced to its paper",
+            "the file, or the name of the paper as it is filed",
+        )
+
+
 CHECKS = (
     Check("exception-without-evidence", "Exception claimed without evidence", without_evidence),
+    Check("document-not-found", "Evidence that is not in the folder", document_missing),
 )

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from envcheck.judge.compare import compare, rounded
+from envcheck.judge.compare import compare, own_term, rounded
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.words import listed, system, trimmed
 from envcheck.model.judged import Finding, Line
@@ -60,7 +60,7 @@ def _as_host(facts: Facts, element: Element) -> str:
     limit, value = host.limit, own.solved.value
     if limit.kind != "number" or not limit.metric.startswith("U_") or value is None:
         return ""
-    term = limit.alternatives[0][0]
+    term = own_term(limit)
     comparison = compare(value, term, limit, facts.rulesets[host.ruleset])
     state = "within" if comparison.within else "over"
     return (

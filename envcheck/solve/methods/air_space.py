@@ -237,12 +237,16 @@ def _across(
     return (step._replace(source=first.source),)
 
 
+PRINTED = 0.005
+"""Share by which a value may miss a printed one: 0.82 stands for two faces of 0.9 (0.818)."""
+
+
 def _around(
     what: str, value: float, printed: Sequence[float], direction: str
 ) -> tuple[float, float]:
     """The printed values on both sides of a value, twice the same where it is printed."""
     for number in printed:
-        if isclose(number, value, rel_tol=1e-6):
+        if isclose(number, value, rel_tol=PRINTED):
             return number, number
     if not printed[0] < value < printed[-1]:
         raise NotDecided(

@@ -23,7 +23,7 @@ def count_crossed(wall: Wall) -> tuple[Wall, dict[int, str]]:
     The bracket is that of the wall as drawn. Errors: NotDecided where the convention accepts a
     two-dimensional solution or a test only.
     """
-    if not any([is_crossed(layer) for layer in wall.layers]):
+    if not any(is_crossed(layer) for layer in wall.layers):
         return wall, {}
     blocks, changed = list(wall.blocks), {}
     for index, layer in enumerate(wall.layers):

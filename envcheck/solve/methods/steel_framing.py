@@ -9,7 +9,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 
-from envcheck.model.project import FramedLayer
+from envcheck.model.project import FramedLayer, MasonryLayer
 from envcheck.model.ruleset import TableRow
 from envcheck.model.solved import Block, Operand, Resistor, Step
 from envcheck.solve.cells import homogeneous, stated_cell
@@ -17,7 +17,7 @@ from envcheck.solve.methods.fills import fill_resistor
 from envcheck.solve.methods.framed import is_metal
 from envcheck.solve.methods.wirings import decided
 from envcheck.solve.registry import Context, Decision, Method, NotDecided, Wall
-from envcheck.solve.wiring import parallel_paths
+from envcheck.solve.wiring import isothermal_planes, parallel_paths
 from envcheck.units import convert
 
 
@@ -37,7 +37,7 @@ def decide_cavity_factor(wall: Wall) -> Decision:
 
     def cell(layer: FramedLayer, context: Context) -> Resistor:
         fill = fill_resistor(layer.fill, layer.thickness, context)
-        row = find_row(wall, "cavity_factors", layer, fill.value)
+        row = find_row(wall, "cavity_factors", layer, fill.value, layer.fill.label)
         operands = (
             Operand("Fc", row.value, "number"),
             Operand(fill.symbol, fill.value, "resistance"),
@@ -63,33 +63,36 @@ def decide_effective_layer(wall: Wall) -> Decision:
     def cell(layer: FramedLayer, context: Context) -> Resistor:
         fill = fill_resistor(layer.fill, layer.thickness, context)
         label = 0.0 if layer.fill.air is not None else fill.value
-        row = find_row(wall, "effective_layers", layer, label)
+        row = find_row(wall, "effective_layers", layer, label, layer.fill.label)
         return stated_cell(context.symbol, f"{layer.title}, effective", row.value, row.source)
 
     return _decide(wall, cell)
 
 
-def find_row(wall: Wall, table: str, layer: FramedLayer, label: float) -> TableRow:
+def find_row(
+    wall: Wall, table: str, layer: FramedLayer, in_place: float, label: float | None
+) -> TableRow:
     """The row of a coefficient table for this label, depth and spacing; nothing is interpolated.
 
-    Rows carry ``label`` (m2 K/W), and may carry ``depth`` and ``spacing`` (m). Tolerances: 1 % of
-    the label, 4 mm of depth (nominal sizes), 2 mm of spacing.
+    Rows carry ``label`` (m2 K/W), and may carry ``depth`` and ``spacing`` (m). The resistance in
+    place is looked up first, then the label on the product. Tolerances: 1 % of the label, 4 mm of
+    depth (nominal sizes), 2 mm of spacing.
     Errors: NotDecided where no row fits.
     """
-    rows = wall.conventions.tables.get(table, ())
-    for row in rows:
-        fits = (
-            _near(row, "label", label, 0.01 * label + 1e-9)
-            and _near(row, "depth", layer.thickness, 0.004)
-            and _near(row, "spacing", layer.member.spacing, 0.002)
-        )
-        if fits:
-            return row
-    in_ip = convert(label, "h*ft2*degF/Btu")
+    for value in (in_place, in_place if label is None else label):
+        for row in wall.conventions.tables.get(table, ()):
+            fits = (
+                _near(row, "label", value, 0.01 * value + 1e-9)
+                and _near(row, "depth", layer.thickness, 0.004)
+                and _near(row, "spacing", layer.member.spacing, 0.002)
+            )
+            if fits:
+                return row
+    in_ip = convert(in_place, "h*ft2*degF/Btu")
     spacing = convert(layer.member.spacing or 0.0, "in")
     raise NotDecided(
         f"a row of the rule set's {table.replace('_', ' ')} for {layer.title!r} "
-        f"(label R-{in_ip:.3g} = {label:.3g} m2 K/W, spacing {spacing:.3g} in = "
+        f"(label R-{in_ip:.3g} = {in_place:.3g} m2 K/W, spacing {spacing:.3g} in = "
         f"{layer.member.spacing or 0.0:.3g} m)"
     )
 
@@ -113,10 +116,12 @@ def _decide(wall: Wall, cell: Callable[[FramedLayer, Context], Resistor]) -> Dec
         else:
             blocks.append(block)
     counted = wall._replace(blocks=tuple(blocks))
-    decision = decided(counted, parallel_paths(counted))
+    hollow = any(isinstance(layer, MasonryLayer) for layer in wall.layers)
+    decision = decided(counted, isothermal_planes(counted) if hollow else parallel_paths(counted))
     if replaced:
         return decision._replace(replaced=replaced)
-    note = "no steel framing found in this assembly: layers wired as parallel paths"
+    way = "isothermal planes (masonry)" if hollow else "parallel paths"
+    note = f"no steel framing found in this assembly: layers wired as {way}"
     return decision._replace(assumptions=(note,))
 
 

@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
+from envcheck.model.layers import FramedLayer
 from envcheck.model.solved import Operand, Step
-from envcheck.solve.registry import Decision, Method, Wall
+from envcheck.solve.methods.framed import is_metal
+from envcheck.solve.registry import Decision, Method, NotDecided, Wall
 from envcheck.solve.wiring import isothermal_planes, layer_steps, parallel_paths, u_step
 
 HIGHEST_RATIO = 1.5
@@ -21,7 +23,18 @@ def weighted(weight: float, upper: float, lower: float) -> float:
 
 
 def decide_weighted(wall: Wall) -> Decision:
-    """Wire both ways and weight the two resistances."""
+    """Wire both ways and weight the two resistances.
+
+    Errors: NotDecided for metal members where the rule set states no weight of its own, since
+    ISO 6946 excludes insulation bridged by metal.
+    """
+    for layer in wall.layers:
+        metal = isinstance(layer, FramedLayer) and is_metal(layer)
+        if metal and wall.setting.weight is None:
+            raise NotDecided(
+                f"a method for metal members ({layer.title!r}): ISO 6946 excludes them from the "
+                "combined method, and the rule set states no weight of its own"
+            )
     upper, lower = parallel_paths(wall, "R_upper"), isothermal_planes(wall, "R_lower")
     weight = 0.5 if wall.setting.weight is None else wall.setting.weight
     resistance = weighted(weight, upper.resistance, lower.resistance)
