@@ -109,7 +109,9 @@ def _methods(source: Source, problems: list[Problem]) -> tuple[MethodRule, ...]:
 def _class_tests(source: Source, problems: list[Problem]) -> tuple[ClassTest, ...]:
     tests = []
     for i, test in enumerate(source.stated.get("class_tests") or ()):
-        quantity = MEASURED[test["measure"]]
+        quantity = MEASURED.get(str(test["measure"]))
+        if quantity is None:  # refused by the schema already
+            continue
         value = _parse(source, test["at_least"], quantity, ("class_tests", i, "at_least"), problems)
         if value is None or not _pattern(source, "class_tests", test["category"], problems, i):
             continue

@@ -144,7 +144,7 @@ def test_splitting_a_plane_layer_changes_nothing(
     for method in METHODS:
         one = value([*layers[:at], whole, *layers[at:]], method)
         two = value([*layers[:at], first, rest, *layers[at:]], method)
-        assert two == pytest.approx(one, rel=1e-12)
+        assert two == pytest.approx(one, rel=NANOMETRES)
 
 
 def mirrored(wall: Wall) -> Wall:
@@ -162,7 +162,7 @@ def mirrored(wall: Wall) -> Wall:
 @given(layers=walls())
 def test_seen_from_the_other_side_nothing_changes(layers: list[Layer]) -> None:
     wall = wall_of(*layers)
-    assert bounds(mirrored(wall)) == pytest.approx(bounds(wall), rel=1e-12)
+    assert bounds(mirrored(wall)) == pytest.approx(bounds(wall), rel=NANOMETRES)
 
 
 @few
