@@ -89,7 +89,12 @@ class Plan:
         keys = plan.keys
         for key, inner in value.items():
             sub = keys.get(key) or plan._other(key)
-            if sub is None or not sub.holds(inner):
+            if sub is None:
+                return False
+            if inner.__class__ is str and not sub.words and str in sub.types:
+                if not sub.shortest <= len(inner) <= sub.longest or sub.never:
+                    return False
+            elif not sub.holds(inner):
                 return False
         return True
 

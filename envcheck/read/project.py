@@ -5,7 +5,6 @@ from __future__ import annotations
 import gc
 from collections.abc import Callable, Iterator
 from contextlib import contextmanager
-from difflib import get_close_matches
 from hashlib import sha256
 from pathlib import Path as FilePath
 from typing import Any, TypeVar
@@ -100,7 +99,11 @@ class _Sections:
 
     def names(self, name: str) -> dict[str, Any]:
         """All entries that may be referred to; those of a misspelt section count as well."""
-        meant = [name] if name in self.data else get_close_matches(name, self.data, n=1)
+        if name in self.data:
+            return self.mapping(name)
+        from difflib import get_close_matches  # only where something is wrong
+
+        meant = get_close_matches(name, self.data, n=1)
         return self.mapping(meant[0]) if meant and meant[0] not in _NAMED - {name} else {}
 
     def each(self, name: str, make: Callable[[str, Entry], _Thing]) -> dict[str, _Thing]:

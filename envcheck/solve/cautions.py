@@ -31,17 +31,21 @@ def cautions(assembly: Assembly) -> tuple[Caution, ...]:
     insulated, burning, structural = [], [], [bridge.title for bridge in assembly.bridges]
     behind_masonry = ""
     masonry = False
+    innermost = len(assembly.layers) - 1
     for number, layer in enumerate(assembly.layers):
-        if insulation_of(layer):
+        insulation = insulation_of(layer)
+        if insulation:
             insulated.append(layer.title)
             if masonry and not behind_masonry:
                 behind_masonry = layer.title
         if is_combustible(layer):
             burning.append(layer.title)
-        masonry = masonry or ((vented is None or number > vented) and _is_masonry(layer))
-        words = _attachment(layer, number == len(assembly.layers) - 1)
-        if words:
-            structural.append(words)
+        if not masonry and (vented is None or number > vented):
+            masonry = _is_masonry(layer)
+        if insulation or layer.kind != "material":
+            words = _attachment(layer, number == innermost)
+            if words:
+                structural.append(words)
     if insulated:
         found.append(Caution("moisture", f"{assembly.id}: insulation in {', '.join(insulated)}"))
     if behind_masonry:

@@ -116,8 +116,9 @@ def parallel_paths(wall: Wall, symbol: str = "R") -> Wired:
     if len(paths) == 1:
         return Wired(paths[0][1], (_sum_step(symbol, FILM_TO_FILM, paths[0][1]),))
     tree = in_parallel("parallel paths", paths)
+    known: dict[str, Operand] = {}
     steps = [
-        _sum_step(f"{symbol}_path{n}", f"path {n}: {path.title}", path)
+        _sum_step(f"{symbol}_path{n}", f"path {n}: {path.title}", path, known)
         for n, (_, path) in enumerate(paths, 1)
     ]
     named = [(f"{symbol}_path{n}", share, path.value) for n, (share, path) in enumerate(paths, 1)]
@@ -232,12 +233,23 @@ def _merged_row(block: Block, row: Sequence[Resistor]) -> list[tuple[float, Resi
     return list(found.values())
 
 
-def _sum_step(symbol: str, title: str, tree: Series) -> Step:
-    """One step that adds the parts of a series; parts of no resistance are left out."""
-    counted = [part for part in tree.parts if isinstance(part, Resistor) and part.value != 0]
-    operands = tuple([Operand(part.symbol, part.value, "resistance") for part in counted])
-    expression = _sum_of(tuple([part.symbol for part in counted]))
-    return Step(symbol, title, expression, operands, tree.value, "resistance")
+def _sum_step(
+    symbol: str, title: str, tree: Series, known: dict[str, Operand] | None = None
+) -> Step:
+    """One step that adds the parts of a series; parts of no resistance are left out.
+
+    known: operands by symbol, shared by the paths of one wall.
+    """
+    known = {} if known is None else known
+    operands = []
+    for part in tree.parts:
+        if isinstance(part, Resistor) and part.value != 0:
+            operand = known.get(part.symbol)
+            if operand is None:
+                operand = known[part.symbol] = Operand(part.symbol, part.value, "resistance")
+            operands.append(operand)
+    expression = _sum_of(tuple([operand[0] for operand in operands]))
+    return Step(symbol, title, expression, tuple(operands), tree.value, "resistance")
 
 
 @lru_cache(maxsize=1024)

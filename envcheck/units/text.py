@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import re
-from difflib import get_close_matches
 from functools import lru_cache
 
 from envcheck.units.spelling import CHARACTERS, known_unit, unit_key
@@ -129,6 +128,8 @@ def _wrong_unit(text: str, unit: str, quantity: str, expected: str) -> UnitError
     if unit[0] in "\"'":
         unit = "in" if unit[0] == '"' else "ft"
     spellings = UNITS[quantity].spellings
+    from difflib import get_close_matches  # only where something is wrong
+
     close = get_close_matches(unit, spellings, n=1, cutoff=0.5)
     fix = f"did you mean {close[0]!r}?" if close else f"write {example}"
     return UnitError("unknown-unit", text, expected, fix)
