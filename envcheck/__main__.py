@@ -21,7 +21,6 @@ CLOSED_PIPE = 141
 
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run the command line and give the exit status; never raises, whatever the input."""
-    gc.disable()
     try:
         return _run(list(sys.argv[1:] if arguments is None else arguments))
     except KeyboardInterrupt:
@@ -30,6 +29,18 @@ def main(arguments: Sequence[str] | None = None) -> int:
         return _closed_pipe()
     except Exception as error:
         return _fault(error)
+
+
+def program() -> int:
+    """Run the command line as a program of its own.
+
+    A run is short and makes hardly any cycle of references, so that looking for some, while it
+    goes on and when it ends, would only cost time.
+    """
+    gc.disable()
+    status = main()
+    gc.freeze()
+    return status
 
 
 def _run(arguments: list[str]) -> int:
@@ -86,4 +97,4 @@ def _fault(error: Exception) -> int:
 
 
 if __name__ == "__main__":
-    sys.exit(main())
+    sys.exit(program())

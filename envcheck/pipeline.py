@@ -18,6 +18,7 @@ from envcheck.judge.select import select
 from envcheck.judge.verdict import Case, judge
 from envcheck.model.judged import Finding, Judged, Line, Mean, Ratio
 from envcheck.model.names import Names
+from envcheck.model.patterns import matches
 from envcheck.model.project import Assembly, Bridge, Element, Project
 from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Properties, Setting, Solved
@@ -119,7 +120,11 @@ def _run(path: str, folders: Sequence[str]) -> Run:
     project = read_project(path, names())
     rulesets = _read_rulesets(project, default_folders(path, folders))
     compressed = rulesets[project.rule_sets[0].id].conventions.tables.get("compressed_batts", ())
-    made_of = {name: properties(a, compressed) for name, a in project.assemblies.items()}
+    weighed = _weighed(project, rulesets)
+    made_of = {
+        name: properties(assembly, compressed, name in weighed)
+        for name, assembly in project.assemblies.items()
+    }
     solver = _Solver(project)
     lines: list[Line] = []
     all_ratios: list[Ratio] = []
@@ -192,6 +197,21 @@ def _read_rulesets(project: Project, folders: Sequence[Path]) -> dict[str, RuleS
     if problems:
         raise InputError(problems)
     return found
+
+
+def _weighed(project: Project, rulesets: Mapping[str, RuleSet]) -> set[str]:
+    """Assemblies whose class some rule set tests by weight or heat capacity."""
+    patterns = {
+        test.category
+        for ruleset in rulesets.values()
+        for test in ruleset.conventions.class_tests
+        if test.measure in ("heat_capacity", "weight")
+    }
+    return {
+        element.assembly
+        for element in project.elements.values()
+        if any(matches(pattern, element.category) for pattern in patterns)
+    }
 
 
 def _merged(findings: Iterable[Finding]) -> list[Finding]:

@@ -18,22 +18,29 @@ from envcheck.model.ruleset import TableRow
 from envcheck.model.solved import Properties
 from envcheck.solve.cautions import is_insulation
 from envcheck.solve.conventions import ventilated_at
-from envcheck.solve.mass import mass_of, together
+from envcheck.solve.mass import Mass, mass_of, together
 from envcheck.solve.methods.compressed import fill_in_place
 from envcheck.solve.methods.framed import is_metal
 
+NOT_WEIGHED = Mass(None, None)
 
-def properties(assembly: Assembly, compressed: Sequence[TableRow] = ()) -> Properties:
+
+def properties(
+    assembly: Assembly, compressed: Sequence[TableRow] = (), weighed: bool = True
+) -> Properties:
     """Collect the properties of a layered assembly.
 
-    compressed: rows of the table of compressed batts. A well-ventilated air space and what lies
-    outside of it count in the heat capacity of the whole, and in nothing else.
+    compressed: rows of the table of compressed batts. weighed: whether weight and heat capacity
+    are asked for; without, they are None and nothing is missing. A well-ventilated air space and
+    what lies outside of it count in the heat capacity of the whole, and in nothing else.
     """
     inner = inside_of_vent(assembly.layers)
     resistances = [insulation_resistance(layer) for layer in inner]
-    masses = [mass_of(layer) for layer in assembly.layers]
-    whole = together(masses)
-    indoor = together(masses[len(masses) - indoor_count(resistances) :])
+    whole = indoor = NOT_WEIGHED
+    if weighed:
+        masses = [mass_of(layer) for layer in assembly.layers]
+        whole = together(masses)
+        indoor = together(masses[len(masses) - indoor_count(resistances) :])
     continuous = sum([resistance or 0.0 for resistance in resistances])
     return Properties(
         heat_capacity=whole.heat_capacity,
