@@ -22,7 +22,7 @@ from envcheck.read.elements import (
     with_openings,
 )
 from envcheck.read.files import read_bytes
-from envcheck.read.schema import check_paths
+from envcheck.read.schema import check_paths, quantities
 from envcheck.read.schema_words import Path
 from envcheck.read.site import read_answers, read_options, read_site
 from envcheck.read.yaml_reader import Entry, read_yaml
@@ -63,11 +63,29 @@ def project_from_bytes(raw: bytes, shown: str, folder: FilePath, names: Names) -
     wrong = check_paths(data, "project", shown)
     told = {made.line for made in problems}
     context.problems += [made for _, made in wrong if made.line not in told]
+    _check_refused(context, data, {path for path, _ in wrong})
     sections = _Sections(data, [path for path, _ in wrong])
     project = _build(context, sections, sha256(raw).hexdigest())
     if context.problems:
         raise InputError(context.problems)
     return project
+
+
+def _check_refused(context: Context, data: Entry, wrong: set[Path]) -> None:
+    """Read at least the quantities of what the schema refused, so that one round mends them."""
+    known = quantities("project")
+    told = {made.line for made in context.problems if made.kind.id != "unknown-key"}
+    for path in sorted(wrong, key=str):
+        node: Any = data
+        for step in path:
+            try:
+                node = node[step]
+            except (LookupError, TypeError):
+                node = None
+        if isinstance(node, Entry):
+            for key, value in node.items():
+                if known.get(key) and isinstance(value, str) and node.lines[key] not in told:
+                    context.number(node, key, known[key])
 
 
 def _prune_layer(data: Entry, path: Path) -> Path:

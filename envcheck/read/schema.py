@@ -96,6 +96,24 @@ def _validator(name: str) -> Any:
     return make(Draft202012Validator, own)(schema)
 
 
+@lru_cache(maxsize=4)
+def quantities(name: str) -> dict[str, str]:
+    """Keys that hold one quantity wherever they stand, with that quantity."""
+    found: dict[str, set[str]] = {}
+
+    def collect(node: Any) -> None:
+        if isinstance(node, dict):
+            for key, sub in node.get("properties", {}).items():
+                if isinstance(sub, dict):
+                    found.setdefault(key, set()).add(sub.get("x-quantity", ""))
+            node = list(node.values())
+        for inner in node if isinstance(node, list) else ():
+            collect(inner)
+
+    collect(_schema(name)[0])
+    return {key: next(iter(kinds)) for key, kinds in found.items() if len(kinds) == 1}
+
+
 def _without_echoes(found: list[tuple[str, Path, Problem]]) -> list[tuple[Path, Problem]]:
     """Drop "lacks the key" where a misspelling of that very key is reported already."""
     meant = {
