@@ -16,6 +16,7 @@ from envcheck.judge.building import closed_rows, closings, ratios, take_means
 from envcheck.judge.classes import Class, classify
 from envcheck.judge.select import select
 from envcheck.judge.verdict import Case, judge
+from envcheck.judge.zones import zone_problems
 from envcheck.model.judged import Finding, Judged, Line, Mean, Ratio
 from envcheck.model.names import Names
 from envcheck.model.patterns import matches
@@ -194,6 +195,7 @@ def _read_rulesets(project: Project, folders: Sequence[Path]) -> dict[str, RuleS
             )
         except InputError as error:
             problems += error.problems
+    problems = problems or zone_problems(project, found.values())
     if problems:
         raise InputError(problems)
     return found

@@ -120,6 +120,12 @@ KINDS = (
         "A thinner space would leave a part of the cavity that nobody describes.",
     ),
     Kind(
+        "unknown-zone",
+        "the {what} of the site is not known to the rule sets",
+        "check the spelling",
+        "A stated zone must be printed in a rule set of the project, or fall back to one that is.",
+    ),
+    Kind(
         "ventilated-fill",
         "air between members cannot be well ventilated",
         "use an air-space layer of its own, so that what lies outside of it is left out",

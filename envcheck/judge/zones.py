@@ -2,12 +2,13 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable, Sequence
 from math import isclose
 from typing import NamedTuple
 
-from envcheck.errors import did_you_mean, one_of
+from envcheck.errors import Problem, did_you_mean, one_of, problem
 from envcheck.model.judged import Choice
-from envcheck.model.project import Site
+from envcheck.model.project import Project, Site, ZoneStated
 from envcheck.model.ruleset import Condition, RuleSet, Zones
 
 FALLEN = 3
@@ -54,6 +55,39 @@ def find_zone(ruleset: RuleSet, site: Site) -> ZoneFound:
     ways = f" or its {measures}" if measures else ""
     why = f"the project states neither the zone of the site{ways} ({zones.chosen_by})"
     return ZoneFound("zone_missing", (), "", why, ())
+
+
+def zone_problems(project: Project, rulesets: Iterable[RuleSet]) -> list[Problem]:
+    """Zones that the project states and no rule set knows: a slip of the file, not an open line."""
+    problems = []
+    sets = list(rulesets)
+    ids = {edition.id for ruleset in sets for edition in ruleset.chain}
+    for stated in project.site.zones:
+        known: list[str] = []
+        if stated.ruleset and stated.ruleset not in ids:
+            problems.append(_unknown(project, stated, stated.ruleset, sorted(ids), "rule set"))
+            continue
+        for ruleset in sets:
+            own = {edition.id for edition in ruleset.chain}
+            if ruleset.zones.order and (not stated.ruleset or stated.ruleset in own):
+                members = ruleset.zones.members.values()
+                known += [*ruleset.zones.order, *(name for names in members for name in names)]
+                if find_zone(ruleset, Site("", (stated,))).state != "zone_unknown":
+                    break
+        else:
+            if known:
+                problems.append(_unknown(project, stated, stated.zone, known, "zone"))
+    return problems
+
+
+def _unknown(
+    project: Project, stated: ZoneStated, name: str, known: Sequence[str], what: str
+) -> Problem:
+    hint = did_you_mean(name, known) or f"write a {what} that is printed there"
+    return problem(
+        "unknown-zone", project.file, stated.line, found=name, expected=one_of(known), fix=hint,
+        what=what,
+    )  # fmt: skip
 
 
 def _found(heads: tuple[str, ...], printed: str, why: str) -> ZoneFound:

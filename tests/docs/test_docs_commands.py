@@ -46,7 +46,9 @@ def test_script_names_every_status(folder: Path) -> None:
     permits.mkdir()
     (permits / "a.yaml").write_text(within, encoding="utf-8")
     (permits / "b.yaml").write_text(within.replace("R-21", "R-11"), encoding="utf-8")
-    (permits / "c.yaml").write_text(within.replace("zone: C2", "zone: C9"), encoding="utf-8")
+    (permits / "c.yaml").write_text(
+        within.replace(", zones: [{zone: C2, source: county map}]", ""), encoding="utf-8"
+    )
     (permits / "d.yaml").write_text("envcheck: 2\n", encoding="utf-8")
     program_file = folder / "envcheck"
     program_file.write_text(
