@@ -2,18 +2,23 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
-from typing import NamedTuple
-
-from envcheck.judge.classes import Class
+from envcheck.judge.before import (
+    Case,
+    by_area_cap,
+    by_class,
+    by_limit,
+    by_renewal,
+    claim_of,
+    lacks_depth,
+    lacks_evidence,
+)
 from envcheck.judge.compare import compare, other_ways, own_term
-from envcheck.judge.paths import insulation_of, insulation_path, reach
-from envcheck.judge.selection import INSULATION, Selection
-from envcheck.model.judged import Choice, Comparison, Line, PathResult, Ratio
-from envcheck.model.patterns import matches
-from envcheck.model.project import Assembly, Element, ExceptionClaim, Project
-from envcheck.model.ruleset import Limit, RuleSet
-from envcheck.model.solved import Properties, Solved
+from envcheck.judge.paths import insulation_of, insulation_path
+from envcheck.judge.selection import INSULATION
+from envcheck.model.judged import Choice, Comparison, Line, PathResult
+from envcheck.model.project import ExceptionClaim
+from envcheck.model.ruleset import Limit
+from envcheck.model.solved import Solved
 
 R_INSULATION = "R_insulation"
 OUTCOMES = {"pass": "within its limit", "fail": "over its limit"}
@@ -27,21 +32,6 @@ METRICS = {
     "VT": "the visible transmittance",
 }
 PATH_STATES = {"not_available": " not available", "not_decided": " not decided"}
-
-
-class Case(NamedTuple):
-    """Everything that one line is judged from."""
-
-    project: Project
-    ruleset: RuleSet
-    decides: bool
-    element: Element
-    assembly: Assembly
-    properties: Properties
-    found_class: Class
-    selection: Selection
-    closed: Mapping[str, Ratio]
-    """Category patterns whose rows an area cap closes."""
 
 
 def judge(case: Case, metric: str, solved: Solved | None) -> Line:
@@ -65,108 +55,18 @@ def judge(case: Case, metric: str, solved: Solved | None) -> Line:
         comparison=None,
         trail=_trail(case),
     )
-    for answer in (_class(case), _limit(case, metric, limit), _renewed(case)):
+    for answer in (by_class(case), by_limit(case, metric, limit), by_renewal(case)):
         if answer is not None:
             return line._replace(verdict=answer[0], reasons=(answer[1],))
     assert limit is not None
     compared = _compare(case, line, limit, solved)
-    closing = _area_cap(case)
+    closing = by_area_cap(case)
     if closing is not None:
         return compared._replace(verdict="path_closed", reasons=(closing, *compared.reasons))
-    claim = _claim(case)
+    claim = claim_of(case)
     if claim is not None:
         return _claimed(compared, claim)
     return compared
-
-
-# ------------------------------------------------------------------- what stands in the way
-
-
-def _class(case: Case) -> tuple[str, str] | None:
-    if case.found_class.official:
-        return "official_decides", case.found_class.official
-    if case.found_class.missing:
-        return "not_decided", f"missing: {case.found_class.missing}"
-    return None
-
-
-def _limit(case: Case, metric: str, limit: Limit | None) -> tuple[str, str] | None:
-    if limit is None:
-        outcome = case.selection.outcome(metric)
-        missing = outcome is not None and outcome.state == "missing_fact"
-        why = case.selection.reason_of(metric)
-        return case.selection.verdict_of(metric), f"missing: {why}" if missing else why
-    if limit.kind == "not_covered":
-        return "not_in_table", f"the table prints {limit.cell!r} here: the code has no such case"
-    if limit.kind == "no_requirement":
-        return "no_requirement", f"the table prints {limit.cell}"
-    by_official = [note for note in limit.notes if note.by_official]
-    if by_official:
-        return "official_decides", f"footnote {by_official[0].mark}: {by_official[0].text}"
-    return None
-
-
-def _renewed(case: Case) -> tuple[str, str] | None:
-    trigger = case.ruleset.trigger
-    if trigger is None or case.project.scope != "alteration":
-        return None
-    share = case.element.renewed
-    if share is None:
-        return "not_decided", (
-            f"missing: the share of {case.element.tag} that is renewed ({trigger.clause}), "
-            f"on {case.element.sheet or 'its drawing'}"
-        )
-    if share <= trigger.share:
-        return "no_requirement", (
-            f"{share * 100:.3g} % renewed, not more than {trigger.share * 100:.3g} % "
-            f"({trigger.clause}): reported only"
-        )
-    return None
-
-
-def _area_cap(case: Case) -> str | None:
-    for pattern, ratio in case.closed.items():
-        if matches(pattern, case.found_class.category):
-            most = (ratio.most or 0.0) * 100
-            return (
-                f"{ratio.clause}: {ratio.value * 100:.3g} % is above {most:.3g} %; "
-                "this row does not apply until the area is brought down"
-            )
-    return None
-
-
-def _evidence(case: Case) -> str | None:
-    """Why the evidence of a rated product is not accepted, or None."""
-    rated = case.assembly.rated
-    if rated is None:
-        return None
-    if rated.basis == "centre_of_glass":
-        return (
-            f"missing: values of the whole product for {case.assembly.id}, frame included; only "
-            f"those of the centre of glass are stated, on {case.assembly.sheet or 'its schedule'}"
-        )
-    accepted = next(
-        (
-            kinds
-            for pattern, kinds in case.ruleset.conventions.accepted_evidence.items()
-            if matches(pattern, case.found_class.category)
-        ),
-        (),
-    )
-    kinds = [kind for kind in accepted if not kind.startswith("standard:")]
-    standards = [kind.partition(":")[2] for kind in accepted if kind.startswith("standard:")]
-    if kinds and rated.evidence not in kinds:
-        return (
-            f"missing: evidence that the rule set accepts ({', '.join(kinds)}); "
-            f"{case.assembly.id} has {rated.evidence or 'none'}"
-        )
-    if standards and rated.standard not in standards:
-        return f"missing: a rating to {' or '.join(standards)} for {case.assembly.id}"
-    return None
-
-
-def _claim(case: Case) -> ExceptionClaim | None:
-    return next((c for c in case.project.exceptions if c.element == case.element.tag), None)
 
 
 def _claimed(line: Line, claim: ExceptionClaim) -> Line:
@@ -192,7 +92,7 @@ def _claimed(line: Line, claim: ExceptionClaim) -> Line:
 
 
 def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Line:
-    missing = _evidence(case) or _depth(case, limit)
+    missing = lacks_evidence(case) or lacks_depth(case, limit)
     if missing is None and solved is not None and solved.missing:
         missing = f"missing: {solved.missing[0]}"
     if missing is None and solved is not None and solved.decided_by_bracket:
@@ -248,27 +148,6 @@ def _value(case: Case, limit: Limit, solved: Solved | None) -> float | None:
     if solved is None or solved.value is None:
         return None
     return 1.0 / solved.value if limit.metric == "R_total" else solved.value
-
-
-def _depth(case: Case, limit: Limit) -> str | None:
-    """A below-grade wall needs the depth to which its insulation reaches."""
-    element = case.element
-    if limit.metric != "C_factor" or not case.properties.continuous_resistance:
-        return None
-    if element.insulated_depth is None:
-        sheet = case.assembly.sheet or element.sheet or "its section"
-        return f"missing: the depth to which {element.tag} is insulated, on {sheet}"
-    if (
-        element.depth_below_grade is not None
-        and element.insulated_depth + 1e-3 < element.depth_below_grade
-    ):
-        return (
-            f"missing: a value for the part of {element.tag} below its insulation "
-            f"({reach(element.insulated_depth, limit)} of "
-            f"{reach(element.depth_below_grade, limit)} insulated): "
-            "enter two elements, split at that depth"
-        )
-    return None
 
 
 def _labels(case: Case, limit: Limit) -> PathResult | None:

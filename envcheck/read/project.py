@@ -2,9 +2,7 @@
 
 from __future__ import annotations
 
-import gc
-from collections.abc import Callable, Iterator
-from contextlib import contextmanager
+from collections.abc import Callable
 from hashlib import sha256
 from pathlib import Path as FilePath
 from typing import Any, TypeVar
@@ -37,20 +35,7 @@ def read_project(path: str, names: Names) -> Project:
     Errors: InputError with every problem found, in order of line.
     """
     raw, shown, folder = read_bytes(path)
-    with _no_cycles_to_collect():
-        return project_from_bytes(raw, shown, folder, names)
-
-
-@contextmanager
-def _no_cycles_to_collect() -> Iterator[None]:
-    """Pause the cycle collector: reading makes 10^5 objects and not one cycle."""
-    enabled = gc.isenabled()
-    gc.disable()
-    try:
-        yield
-    finally:
-        if enabled:
-            gc.enable()
+    return project_from_bytes(raw, shown, folder, names)
 
 
 def project_from_bytes(raw: bytes, shown: str, folder: FilePath, names: Names) -> Project:

@@ -1,0 +1,122 @@
+"""All elements of a project judged by one rule set."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable, Mapping, Sequence
+
+from envcheck.judge.before import Case
+from envcheck.judge.building import closed_rows
+from envcheck.judge.classes import Class, classify
+from envcheck.judge.select import select
+from envcheck.judge.verdict import judge
+from envcheck.model.judged import Finding, Judged, Line, Ratio
+from envcheck.model.patterns import matches
+from envcheck.model.project import Assembly, Element, Project
+from envcheck.model.ruleset import RuleSet
+from envcheck.model.solved import Properties, Solved
+
+SOLVED_METRICS = ("U_assembly", "U_product", "C_factor", "F_factor", "R_total")
+"""Metrics that need a solution; the others are read off the product."""
+COMPLIES, OVER, OPEN = 0, 1, 3
+"""Exit status of a run: none over and none open; at least one over; none over, some open."""
+SolveOne = Callable[[Element, Assembly, str, str, RuleSet], Solved]
+"""(element, assembly, category, metric, rule set) -> its solution."""
+
+
+def weighed(project: Project, rulesets: Mapping[str, RuleSet]) -> set[str]:
+    """Assemblies whose class some rule set tests by weight or heat capacity."""
+    patterns = {
+        test.category
+        for ruleset in rulesets.values()
+        for test in ruleset.conventions.class_tests
+        if test.measure in ("heat_capacity", "weight")
+    }
+    return {
+        element.assembly
+        for element in project.elements.values()
+        if any(matches(pattern, element.category) for pattern in patterns)
+    }
+
+
+def classes_of(
+    project: Project, ruleset: RuleSet, made_of: Mapping[str, Properties]
+) -> dict[str, Class]:
+    """By tag, the class in which each element is judged."""
+    return {
+        tag: classify(
+            element, project.assemblies[element.assembly], made_of[element.assembly], ruleset
+        )
+        for tag, element in project.elements.items()
+    }
+
+
+def merged(findings: Iterable[Finding]) -> list[Finding]:
+    """Say once what was seen the same way of several elements."""
+    found: dict[tuple[str, str], Finding] = {}
+    for finding in findings:
+        key = (finding.check, finding.seen)
+        known = found.get(key)
+        subject = finding.subject if known is None else f"{known.subject}, {finding.subject}"
+        found[key] = (known or finding)._replace(subject=subject)
+    return list(found.values())
+
+
+def judge_lines(
+    project: Project,
+    ruleset: RuleSet,
+    decides: bool,
+    made_of: Mapping[str, Properties],
+    classes: Mapping[str, Class],
+    measured: Sequence[Ratio],
+    metrics: Mapping[str, str],
+    solve: SolveOne,
+) -> list[Line]:
+    """Judge every element, a line for each metric that its row speaks of.
+
+    metrics: by category, the metric of an element whose class no row covers.
+    """
+    closed = closed_rows(ruleset, measured)
+    derived = {ratio.name: ratio.value for ratio in measured if not ratio.missing}
+    lines = []
+    for tag, element in project.elements.items():
+        assembly, found = project.assemblies[element.assembly], classes[tag]
+        selection = select(element, found.category, ruleset, project, derived)
+        case = Case(
+            project,
+            ruleset,
+            decides,
+            element,
+            assembly,
+            made_of[assembly.id],
+            found,
+            selection,
+            closed,
+        )
+        for metric in selection.metrics or (metrics[found.category],):
+            solved = None
+            if metric in SOLVED_METRICS:
+                solved = solve(element, assembly, found.category, metric, ruleset)
+            lines.append(judge(case, metric, solved))
+    return lines
+
+
+def exit_status(judged: Judged) -> int:
+    """1 where a deciding line is over its limit, 3 where something is open, else 0."""
+    deciding = [line for line in judged.lines if line.decides]
+    if any(line.verdict == "fail" for line in deciding):
+        return OVER
+    unsettled = any(f.severity == "E" and not f.answered for f in judged.findings)
+    return OPEN if unsettled or any(line.open for line in deciding) else COMPLIES
+
+
+def remarks(project: Project, rulesets: Mapping[str, RuleSet]) -> tuple[str, ...]:
+    """What the rule sets offer or hold that is not judged here."""
+    found = []
+    for choice in project.rule_sets:
+        ruleset = rulesets[choice.id]
+        if ruleset.tradeoff:
+            found.append(f"{ruleset.title}: {ruleset.tradeoff}")
+        found += [f"{ruleset.title}: {remark}" for remark in ruleset.remarks]
+        if not choice.decides:
+            found.append(f"{ruleset.title} is for information: it sets no exit status")
+    return tuple(found)

@@ -1,0 +1,53 @@
+"""Solves each assembly once per distinct setting, and once per element with bridges of its own."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+
+from envcheck.model.project import Assembly, Bridge, Element, Project
+from envcheck.model.ruleset import RuleSet
+from envcheck.model.solved import Setting, Solved
+from envcheck.solve.assembly import solve
+from envcheck.solve.conventions import Resolver
+
+
+class Solver:
+    """Remembers what it solved in one run.
+
+    metrics: by category, what an element of that class is measured in where no row says.
+    """
+
+    def __init__(self, project: Project, metrics: Mapping[str, str]) -> None:
+        self._project = project
+        self._metrics = metrics
+        self._found: dict[tuple[str, Setting, tuple[Bridge, ...], float | None], Solved] = {}
+        self._resolvers: dict[str, Resolver] = {}
+        self.first: dict[str, Solved] = {}
+        """By assembly id: its first solution, for what the report lists."""
+
+    def solve(
+        self, element: Element, assembly: Assembly, category: str, metric: str, ruleset: RuleSet
+    ) -> Solved:
+        """Solve the assembly of one element by one rule set's conventions."""
+        resolver = self._resolvers.get(ruleset.id)
+        if resolver is None:
+            resolver = self._resolvers[ruleset.id] = Resolver(ruleset.conventions, ruleset.id)
+        setting = resolver.resolve(element, assembly, category, metric)
+        area = element.net_area if element.bridges else None
+        key = (assembly.id, setting, element.bridges, area)
+        if key not in self._found:
+            self._found[key] = solve(assembly, setting, ruleset.conventions, element.bridges, area)
+        self.first.setdefault(assembly.id, self._found[key])
+        return self._found[key]
+
+    def drawn_only(self, ruleset: RuleSet) -> None:
+        """Solve what a surface shows with its host but no element was entered for."""
+        for surface in self._project.surfaces.values():
+            for mark in surface.shows:
+                host = self._project.elements.get(mark.host)
+                assembly = self._project.assemblies.get(mark.tag)
+                if host is None or assembly is None or assembly.id in self.first:
+                    continue
+                metric = self._metrics[host.category]
+                element = host._replace(tag=mark.tag, assembly=mark.tag)
+                self.solve(element, assembly, host.category, metric, ruleset)
