@@ -3,10 +3,10 @@
 from __future__ import annotations
 
 import gc
-from collections.abc import Iterator, Sequence
+from collections.abc import Callable, Iterator, Sequence
 from contextlib import contextmanager
 from dataclasses import dataclass
-from functools import cache
+from functools import cache, partial
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -16,9 +16,11 @@ from envcheck.judge.building import closings, ratios, take_means
 from envcheck.judge.lines import (
     classes_of,
     exit_status,
+    hangs_on_bracket,
     judge_lines,
     merged,
     remarks,
+    undecided_by_bracket,
     weighed,
 )
 from envcheck.judge.zones import zone_problems
@@ -30,6 +32,7 @@ from envcheck.model.solved import Properties, Solved
 from envcheck.read.materials import categories
 from envcheck.read.project import read_project
 from envcheck.read.rulesets import default_folders, read_ruleset
+from envcheck.solve.bracket import CLOSE, TOLERANCE
 from envcheck.solve.properties import properties
 from envcheck.solve.registry import prescribable
 from envcheck.solve.solver import Solver
@@ -92,15 +95,16 @@ def names() -> Names:
     )
 
 
-def run(path: str, folders: Sequence[str] = ()) -> Run:
+def run(path: str, folders: Sequence[str] = (), bounds: bool = False) -> Run:
     """Check one project file.
 
     path: of the project, ``-`` for standard input. folders: where rule sets are looked up; else
-    the nearest folder ``rules`` at or above the project file.
+    the nearest folder ``rules`` at or above the project file. bounds: solve every drawn section
+    in two dimensions, not only those on which a verdict hangs.
     Errors: InputError with every problem of the project and of its rule sets.
     """
     with _no_cycles_to_collect():
-        return _run(path, folders)
+        return _run(path, folders, bounds)
 
 
 @contextmanager
@@ -115,7 +119,7 @@ def _no_cycles_to_collect() -> Iterator[None]:
             gc.enable()
 
 
-def _run(path: str, folders: Sequence[str]) -> Run:
+def _run(path: str, folders: Sequence[str], bounds: bool) -> Run:
     project = read_project(path, names())
     rulesets = _read_rulesets(project, default_folders(path, folders))
     compressed = rulesets[project.rule_sets[0].id].conventions.tables.get("compressed_batts", ())
@@ -136,9 +140,18 @@ def _run(path: str, folders: Sequence[str]) -> Run:
         if choice.decides:
             found += merged(c.finding for c in classes.values() if c.finding is not None)
         measured = ratios(project, ruleset, {tag: c.category for tag, c in classes.items()})
-        own = judge_lines(
-            project, ruleset, choice.decides, made_of, classes, measured, metrics, solver.solve
+        judge_again = partial(
+            judge_lines,
+            project,
+            ruleset,
+            choice.decides,
+            made_of,
+            classes,
+            measured,
+            metrics,
+            solver.solve,
         )
+        own = _with_narrow_brackets(judge_again, solver, ruleset, bounds)
         own, taken = take_means(own, project, ruleset)
         lines += own
         all_ratios += measured
@@ -165,6 +178,23 @@ def _run(path: str, folders: Sequence[str]) -> Run:
         remarks=remarks(project, rulesets),
     )
     return Run(project, rulesets, judged, made_of, solver.first, exit_status(judged))
+
+
+def _with_narrow_brackets(
+    judge_again: Callable[[], list[Line]], solver: Solver, ruleset: RuleSet, bounds: bool
+) -> list[Line]:
+    """Judge; ask for narrower brackets where a verdict hangs on them; judge again."""
+    lines = judge_again()
+    for tolerance, asked in (
+        (TOLERANCE, (lambda line: True) if bounds else hangs_on_bracket),
+        (CLOSE, undecided_by_bracket),
+    ):
+        wanted = [line.solved for line in lines if line.solved is not None and asked(line)]
+        if wanted:
+            for solved in wanted:
+                solver.narrow(solved, ruleset, tolerance)
+            lines = judge_again()
+    return lines
 
 
 def _read_rulesets(project: Project, folders: Sequence[Path]) -> dict[str, RuleSet]:

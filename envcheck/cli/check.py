@@ -58,7 +58,7 @@ def check(
     from envcheck import pipeline
     from envcheck.report import view
 
-    run = pipeline.run(project, rules)
+    run = pipeline.run(project, rules, bounds)
     form = registry.format_named(format_name)
     asked = view.ViewOptions(
         units=units or "",

@@ -38,7 +38,7 @@ def explain(
     from envcheck.report import explain as explained
     from envcheck.report.view import ViewOptions
 
-    run = pipeline.run(project, rules)
+    run = pipeline.run(project, rules, bounds=True)
     known = explained.subjects(run.project)
     if subject not in known:
         hint = did_you_mean(subject, known) or "name an element or an assembly of the project"

@@ -100,6 +100,16 @@ def judge_lines(
     return lines
 
 
+def undecided_by_bracket(line: Line) -> bool:
+    """Whether the limit lies inside a bracket that decides."""
+    return line.verdict == "too_close"
+
+
+def hangs_on_bracket(line: Line) -> bool:
+    """Whether the limit lies inside the bracket, which decides or flags the choice of method."""
+    return undecided_by_bracket(line) or "method" in line.flags
+
+
 def exit_status(judged: Judged) -> int:
     """1 where a deciding line is over its limit, 3 where something is open, else 0."""
     deciding = [line for line in judged.lines if line.decides]

@@ -8,7 +8,10 @@ from envcheck.model.project import Assembly, Bridge, Element, Project
 from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Setting, Solved
 from envcheck.solve.assembly import solve
+from envcheck.solve.bracket import can_narrow, narrow
 from envcheck.solve.conventions import Resolver
+
+_Key = tuple[str, Setting, tuple[Bridge, ...], float | None]
 
 
 class Solver:
@@ -20,7 +23,9 @@ class Solver:
     def __init__(self, project: Project, metrics: Mapping[str, str]) -> None:
         self._project = project
         self._metrics = metrics
-        self._found: dict[tuple[str, Setting, tuple[Bridge, ...], float | None], Solved] = {}
+        self._found: dict[_Key, Solved] = {}
+        self._keys: dict[int, _Key] = {}
+        """Of each solution, by its identity."""
         self._resolvers: dict[str, Resolver] = {}
         self.first: dict[str, Solved] = {}
         """By assembly id: its first solution, for what the report lists."""
@@ -37,8 +42,21 @@ class Solver:
         key = (assembly.id, setting, element.bridges, area)
         if key not in self._found:
             self._found[key] = solve(assembly, setting, ruleset.conventions, element.bridges, area)
+            self._keys[id(self._found[key])] = key
         self.first.setdefault(assembly.id, self._found[key])
         return self._found[key]
+
+    def narrow(self, solved: Solved, ruleset: RuleSet, tolerance: float) -> None:
+        """Put a narrower bracket in place of a solution's; the next ``solve`` gives it back."""
+        key = self._keys.get(id(solved))
+        if key is None or self._found[key] is not solved or not can_narrow(solved, tolerance):
+            return  # narrowed already for another element, or nothing to narrow
+        assembly = self._project.assemblies[solved.assembly]
+        narrowed = narrow(assembly, solved.setting, ruleset.conventions, solved, tolerance)
+        self._found[key] = narrowed
+        self._keys[id(narrowed)] = key
+        if self.first.get(assembly.id) is solved:
+            self.first[assembly.id] = narrowed
 
     def drawn_only(self, ruleset: RuleSet) -> None:
         """Solve what a surface shows with its host but no element was entered for."""

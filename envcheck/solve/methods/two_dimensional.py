@@ -19,10 +19,12 @@ METHODS = (
     Method(
         name="two_dimensional",
         title="Two-dimensional conduction of the drawn section, bounded from both sides",
-        formula="U(parallel paths) <= U <= U(isothermal planes)",
-        source="ISO 10211:2017 defines the model; the bounds follow from Rayleigh's monotonicity "
-        "law for resistor networks",
-        valid="rectilinear sections; layers that cross each other are bounded as drawn",
+        formula="div(k grad T) = 0 in the drawn section; U(parallel paths) <= U(cell network) <= U <= "
+        "U(node network) <= U(isothermal planes)",
+        source="ISO 10211:2017 defines the model; the bounds are Dirichlet's and Thomson's "
+        "principles for steady conduction, and Rayleigh's law for the two wirings",
+        valid="rectilinear sections, 1e-4 to 1e4 W/(m K); layers that cross each other keep the "
+        "bounds of the two wirings",
         decides=decide_two_dimensional,
     ),
 )

@@ -1,0 +1,69 @@
+"""Walls drawn as sections, and the narrow bracket in a whole run."""
+
+from __future__ import annotations
+
+from pathlib import Path
+
+import pytest
+
+from envcheck.model.layers import Layer
+from envcheck.model.solved import Solved
+from envcheck.pipeline import run
+from envcheck.solve.bracket import narrow
+from envcheck.solve.field.drawing import NotDrawn, section_of
+from tests.solve.drawn import PLAIN, wall_of
+from tests.solve.samples import assembly, setting
+from tests.solve.test_framed import CHEEK
+
+ROOT = Path(__file__).parent.parent.parent.parent
+
+
+def narrowed(*layers: Layer) -> Solved:
+    from envcheck.solve.assembly import solve
+
+    whole = assembly(*layers)
+    by = setting(method="two_dimensional")
+    return narrow(whole, by, PLAIN, solve(whole, by, PLAIN))
+
+
+def test_section_covers_the_bay() -> None:
+    wall = wall_of(*CHEEK)
+    drawn = section_of(wall)
+    assert sum(drawn.widths) == pytest.approx(0.6)
+    assert sum(drawn.depths) == pytest.approx(sum(layer.thickness for layer in wall.layers))
+
+
+def test_homogeneous_walls_are_no_section() -> None:
+    with pytest.raises(NotDrawn, match="homogeneous"):
+        section_of(wall_of(*(layer for layer in CHEEK if layer.kind == "material")))
+
+
+def test_a_decided_bracket_gives_its_high_end() -> None:
+    found = narrowed(*CHEEK)
+    assert found.value == found.high
+    assert found.low is not None
+    assert found.high is not None
+    assert found.high / found.low - 1 < 1e-3
+    assert "in two dimensions" in found.bracket_note
+
+
+def test_demo_lines_that_hang_on_the_method() -> None:
+    """The invented library at review, and the invented warehouse."""
+    review = run(str(ROOT / "projects/quillhaven-library/review.yaml"))
+    lines = {line.element: line for line in review.judged.lines if line.metric == "U_assembly"}
+    brick, girts = lines["N-W1"], lines["S-W2"]
+    # The factor table says .0647, over .060; the drawn section lies within it.
+    assert brick.verdict == "fail"
+    assert brick.high is not None
+    assert brick.high.value == pytest.approx(0.0588, abs=5e-5)
+    assert "method" in brick.flags
+    # Girts through the outer insulation: over by the clause and in two dimensions.
+    assert girts.verdict == "fail"
+    assert girts.low is not None
+    assert girts.low.value > 0.060
+    assert "method" not in girts.flags
+    cheek = run(str(ROOT / "projects/brannvik-warehouse/renovation.yaml")).judged.lines
+    (line,) = [line for line in cheek if line.element == "D-S7"]
+    assert line.verdict == "pass"
+    assert line.comparison is not None
+    assert line.comparison.value == pytest.approx(0.2732, abs=2e-4)
