@@ -19,8 +19,8 @@ METHODS = (
     Method(
         name="two_dimensional",
         title="Two-dimensional conduction of the drawn section, bounded from both sides",
-        formula="div(k grad T) = 0 in the drawn section; U(parallel paths) <= U(cell network) <= U <= "
-        "U(node network) <= U(isothermal planes)",
+        formula="div(k grad T) = 0 in the drawn section; U(parallel paths) <= U(cell network) <= U "
+        "<= U(node network) <= U(isothermal planes)",
         source="ISO 10211:2017 defines the model; the bounds are Dirichlet's and Thomson's "
         "principles for steady conduction, and Rayleigh's law for the two wirings",
         valid="rectilinear sections, 1e-4 to 1e4 W/(m K); layers that cross each other keep the "
