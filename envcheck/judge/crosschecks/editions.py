@@ -53,6 +53,31 @@ def _suggests(base: bool, decides: bool) -> str:
     return "it is information only and decides nothing"
 
 
+def date_missing(facts: Facts) -> Iterator[Finding]:
+    """Without a date nobody knows which edition and which amendments apply."""
+    if facts.project.permit_application_date is not None:
+        return
+    dated = [
+        edition
+        for choice in facts.project.rule_sets
+        if choice.decides and choice.id in facts.rulesets
+        for edition in facts.rulesets[choice.id].chain
+        if edition.effective_from is not None or edition.effective_until is not None
+    ]
+    if dated:
+        yield Finding(
+            "permit-date-missing",
+            "E",
+            "project",
+            "",
+            f"no permit_application_date; {_name(dated[-1])} holds from "
+            f"{dated[-1].effective_from or 'the start'}",
+            "every amendment was taken as in force; another date may give other limits",
+            "permit_application_date under project",
+        )
+
+
 CHECKS = (
+    Check("permit-date-missing", "Date of the permit application missing", date_missing),
     Check("edition-superseded", "Edition or amendment outside its dates", edition_superseded),
 )

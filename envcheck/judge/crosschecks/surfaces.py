@@ -105,7 +105,32 @@ def without_surface(facts: Facts) -> Iterator[Finding]:
         )
 
 
+RATIO_OF = {"window_wall_ratio": "windows to walls", "skylight_roof_ratio": "skylights to roofs"}
+
+
+def area_cap_unknown(facts: Facts) -> Iterator[Finding]:
+    """An area cap that could not be checked while openings of its kind are entered."""
+    categories = {element.category for element in facts.project.elements.values()}
+    skylights = "fenestration.skylight" in categories
+    windows = any(c.startswith("fenestration.") for c in categories - {"fenestration.skylight"})
+    for ratio in facts.ratios:
+        asked = skylights if ratio.name == "skylight_roof_ratio" else windows
+        if not ratio.missing or not asked:
+            continue
+        yield Finding(
+            "area-cap-unknown",
+            "E" if facts.project.surfaces else "W",
+            RATIO_OF.get(ratio.name, ratio.name),
+            "",
+            f"the cap of {ratio.clause} ({ratio.most or 0:.0%}) was not checked: missing "
+            f"{ratio.missing[0]}",
+            "above the cap the rows of these openings would not apply",
+            "the facades and roofs under surfaces, with their gross areas",
+        )
+
+
 CHECKS = (
+    Check("area-cap-unknown", "Area cap that could not be checked", area_cap_unknown),
     Check("surface-does-not-close", "Areas do not add up to the surface", does_not_close),
     Check("surface-without-element", "Surface without elements", without_element),
     Check("element-without-surface", "Element on no surface", without_surface),
