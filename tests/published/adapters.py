@@ -18,15 +18,25 @@ import envcheck
 from envcheck.read.coefficient_tables import built_in
 from envcheck.solve import shells
 from envcheck.solve.methods import air_space as air
+from envcheck.solve.methods.air_voids import void_correction
 from envcheck.solve.methods.compressed import TABLE, installed_resistance
+from envcheck.solve.methods.en673_glazing import Gas, glazing_u, mixture
 from envcheck.solve.methods.fasteners import fastener_correction, penetration_factor
 from envcheck.solve.methods.iso10077_window import window_geometry, window_u
+from envcheck.solve.methods.iso10456_conversion import design_conductivity
+from envcheck.solve.methods.iso13370_basement import (
+    basement_wall_u,
+    edge_psi,
+    edge_thickness,
+    wall_thickness,
+)
 from envcheck.solve.methods.iso13370_slab import (
     characteristic_dimension,
     equivalent_thickness,
     slab_u,
 )
 from envcheck.solve.methods.steel_framing import effective_resistance
+from envcheck.solve.methods.surface_films import convection_by_wind, surface_resistance
 from envcheck.solve.methods.tapered import (
     tapered_rectangle,
     tapered_triangle_thickest_apex,
@@ -235,6 +245,71 @@ def critical_radius(inputs: Inputs, units: Units) -> Figures:
     return {"r_mm": 1000 * shells.critical_radius(inputs["conductivity"], inputs["h"])}
 
 
+# ------------------------------------------------- glazing, ground, films: formulas of standards
+
+
+def glazing(inputs: Inputs, units: Units) -> Figures:
+    gas = mixture(_gases()[inputs["gas"]], _gases()["air"], inputs["gas_share"])
+    gaps = [gap / 1000.0 for gap in inputs["gaps_mm"]]
+    panes = [pane / 1000.0 for pane in inputs["panes_mm"]]
+    value = glazing_u(
+        panes,
+        gaps,
+        [gas] * len(gaps),
+        [tuple(pair) for pair in inputs["emissivities"]],
+        inputs["h_inside"],
+        inputs["h_outside"],
+    )
+    return {"Ug": value}
+
+
+@cache
+def _gases() -> dict[str, Gas]:
+    with (DATA / "gases.csv").open(encoding="utf-8", newline="") as file:
+        return {
+            row["id"]: Gas(
+                float(row["density"]),
+                float(row["viscosity"]),
+                float(row["conductivity"]),
+                float(row["specific_heat"]),
+            )
+            for row in csv.DictReader(file)
+        }
+
+
+def conversion(inputs: Inputs, units: Units) -> Figures:
+    keys = ("declared", "per_kelvin", "kelvins", "per_moisture", "moisture")
+    return {"k": design_conductivity(*(inputs[key] for key in keys))}
+
+
+def basement_wall(inputs: Inputs, units: Units) -> Figures:
+    soil = inputs["soil_conductivity"]
+    wall = wall_thickness(soil, inputs["inside"], inputs["wall_resistance"], inputs["outside"])
+    return {"U": basement_wall_u(inputs["depth"], wall, inputs["floor_thickness"], soil)}
+
+
+def slab_edge(inputs: Inputs, units: Units) -> Figures:
+    soil, size = inputs["soil_conductivity"], inputs["size"]
+    reach = size if inputs["kind"] == "horizontal" else 2.0 * size
+    added = edge_thickness(inputs["resistance"], inputs["thickness"], soil)
+    return {"psi": edge_psi(soil, reach, inputs["floor_thickness"], added)}
+
+
+def film_by_convection(inputs: Inputs, units: Units) -> Figures:
+    keys = ("convective", "emittance", "temperature")
+    return {"Rs": surface_resistance(*(inputs[key] for key in keys))}
+
+
+def film_by_wind(inputs: Inputs, units: Units) -> Figures:
+    convective = convection_by_wind(inputs["speed"])
+    return {"Rs": surface_resistance(convective, inputs["emittance"], inputs["temperature"])}
+
+
+def air_voids(inputs: Inputs, units: Units) -> Figures:
+    keys = ("level_correction", "r1", "r_total")
+    return {"dU": void_correction(*(inputs[key] for key in keys))}
+
+
 ADAPTERS: dict[str, Callable[[Inputs, Units], Figures]] = {
     "series": series_sum,
     "parallel_path": parallel_path,
@@ -255,4 +330,11 @@ ADAPTERS: dict[str, Callable[[Inputs, Units], Figures]] = {
     "contact_as_thickness": contact_as_thickness,
     "chip": chip,
     "critical_radius": critical_radius,
+    "glazing": glazing,
+    "design_conductivity": conversion,
+    "basement_wall": basement_wall,
+    "edge_psi": slab_edge,
+    "film_by_convection": film_by_convection,
+    "film_by_wind": film_by_wind,
+    "air_voids": air_voids,
 }
