@@ -9,7 +9,7 @@ from envcheck.judge.classes import Class
 from envcheck.judge.paths import reach
 from envcheck.judge.selection import Selection
 from envcheck.model.judged import Ratio
-from envcheck.model.patterns import matches
+from envcheck.model.patterns import best_pattern, matches
 from envcheck.model.project import Assembly, Element, ExceptionClaim, Project
 from envcheck.model.ruleset import Limit, RuleSet
 from envcheck.model.solved import Properties
@@ -97,14 +97,9 @@ def lacks_evidence(case: Case) -> str | None:
             f"missing: values of the whole product for {case.assembly.id}, frame included; only "
             f"those of the centre of glass are stated, on {case.assembly.sheet or 'its schedule'}"
         )
-    accepted = next(
-        (
-            kinds
-            for pattern, kinds in case.ruleset.conventions.accepted_evidence.items()
-            if matches(pattern, case.found_class.category)
-        ),
-        (),
-    )
+    stated = case.ruleset.conventions.accepted_evidence
+    pattern = best_pattern(case.found_class.category, stated)
+    accepted = stated[pattern] if pattern is not None else ()
     kinds = [kind for kind in accepted if not kind.startswith("standard:")]
     standards = [kind.partition(":")[2] for kind in accepted if kind.startswith("standard:")]
     if kinds and rated.evidence not in kinds:

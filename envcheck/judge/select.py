@@ -8,13 +8,12 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass, field
-from fnmatch import fnmatchcase
 
 from envcheck.judge.facts import Known, Value, fact_of, shown
 from envcheck.judge.selection import METRICS, MissingFact, Outcome, Selection
 from envcheck.judge.zones import ZoneFound, find_zone, holds
 from envcheck.model.judged import Choice
-from envcheck.model.patterns import in_words
+from envcheck.model.patterns import closeness, in_words
 from envcheck.model.project import Element, Project
 from envcheck.model.ruleset import Limit, RuleSet
 
@@ -97,7 +96,7 @@ def _lay_out(index: _Index, heads: tuple[str, ...], category: str) -> None:
     found: dict[tuple[str, str], dict[int, list[Limit]]] = {}
     for head in (*heads, "*"):
         for limit in index.by_zone.get(head, ()):
-            fit = max((_fit(category, p) for p in limit.categories), default=-1)
+            fit = max((closeness(p, category) for p in limit.categories), default=-1)
             if fit >= 0:
                 levels = found.setdefault((limit.metric, limit.path), {})
                 levels.setdefault(fit, []).append(limit)
@@ -113,13 +112,6 @@ def _lay_out(index: _Index, heads: tuple[str, ...], category: str) -> None:
         for c in limit.when
     )
     index.dimensions[(heads, category)] = tuple(dict.fromkeys(asked))
-
-
-def _fit(category: str, pattern: str) -> int:
-    """How specific a pattern is that covers the category; -1 where it does not."""
-    if pattern == category:
-        return 1000
-    return len(pattern.replace("*", "")) if fnmatchcase(category, pattern) else -1
 
 
 # ----------------------------------------------------------------------------------- selection

@@ -2,12 +2,34 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
+from fnmatch import fnmatchcase
 
-def matches(pattern: str, category: str) -> bool:
-    """Whether a category falls under a pattern such as ``wall.*`` or ``*``."""
-    if pattern.endswith("*"):
-        return category.startswith(pattern[:-1])
-    return pattern == category
+EXACT = 1000
+"""Closeness of a pattern that is the name itself; more than any name is long."""
+
+
+def closeness(pattern: str, name: str) -> int:
+    """How closely a pattern fits a name: the letters that it fixes; -1 where it does not fit."""
+    if pattern == name:
+        return EXACT
+    return len(pattern.replace("*", "")) if fnmatchcase(name, pattern) else -1
+
+
+def matches(pattern: str, name: str) -> bool:
+    """Whether a name falls under a pattern such as ``wall.*`` or ``*``."""
+    return pattern == name or fnmatchcase(name, pattern)
+
+
+def fits_any(pattern: str, names: Iterable[str]) -> bool:
+    """Whether a pattern fits at least one name."""
+    return any(matches(pattern, name) for name in names)
+
+
+def best_pattern(name: str, patterns: Iterable[str]) -> str | None:
+    """Give the most specific pattern that a name fits; None without one."""
+    fitting = [pattern for pattern in patterns if matches(pattern, name)]
+    return max(fitting, key=lambda pattern: (closeness(pattern, name), pattern), default=None)
 
 
 def in_words(pattern: str) -> str:

@@ -8,9 +8,9 @@ from typing import Any, NamedTuple
 from envcheck import units
 from envcheck.errors import Problem, did_you_mean, one_of, problem
 from envcheck.model.names import Names
+from envcheck.model.patterns import fits_any
 from envcheck.model.ruleset import ClassTest, Conventions, FilmRow, MethodRule, TableRow
 from envcheck.read.coefficient_tables import built_in, film_sets, own_table
-from envcheck.read.patterns import fits_any
 from envcheck.read.rule_documents import Document
 
 DEFAULT = "default of envcheck"

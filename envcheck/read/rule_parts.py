@@ -7,6 +7,7 @@ from typing import Any
 
 from envcheck import units
 from envcheck.errors import Problem, did_you_mean, one_of, problem
+from envcheck.model.patterns import fits_any
 from envcheck.model.ruleset import (
     AreaLimit,
     Averaging,
@@ -18,7 +19,6 @@ from envcheck.model.ruleset import (
 )
 from envcheck.read.cells import CellError
 from envcheck.read.condition_text import read_condition
-from envcheck.read.patterns import fits_any
 from envcheck.read.rule_documents import Document
 
 MEASURES = {

@@ -6,10 +6,10 @@ from collections.abc import Mapping
 from typing import Any
 
 from envcheck.errors import Problem, did_you_mean, one_of, problem
+from envcheck.model.patterns import best_pattern, fits_any
 from envcheck.model.ruleset import Condition, Note
 from envcheck.read.cells import CellError
 from envcheck.read.condition_text import read_condition
-from envcheck.read.patterns import best_pattern, fits_any
 from envcheck.read.sheets import Column, Row
 from envcheck.read.table_entry import (
     LATER,

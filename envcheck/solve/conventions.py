@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from envcheck.model.patterns import matches
+from envcheck.model.patterns import best_pattern, closeness, matches
 from envcheck.model.project import (
     AirSpaceLayer,
     Assembly,
@@ -71,11 +71,15 @@ class Resolver:
         return self._rules[asked]
 
     def _share(self, category: str) -> tuple[float | None, str]:
-        """The framing share that the code gives for a class; the first pattern that fits."""
-        for pattern, share, clause in self._conventions.framing_shares:
-            if matches(pattern, category):
-                return share, clause or "the rule set"
-        return None, ""
+        """The framing share that the code gives for a class, by the most specific pattern."""
+        shares = {
+            pattern: (share, clause) for pattern, share, clause in self._conventions.framing_shares
+        }
+        pattern = best_pattern(category, shares)
+        if pattern is None:
+            return None, ""
+        share, clause = shares[pattern]
+        return share, clause or "the rule set"
 
     def _three_films(self, adjoins: str, direction: str) -> tuple[FilmRow, FilmRow, FilmRow]:
         """Outside, inside, and outside a well-ventilated cavity."""
@@ -110,7 +114,7 @@ def method_rule(
         for rule in conventions.methods
         if matches(rule.category, category) and _serves(rule.method, kind, metric)
     ]
-    return max(rules, key=lambda rule: len(rule.category.rstrip("*")), default=None)
+    return max(rules, key=lambda rule: closeness(rule.category, category), default=None)
 
 
 def _serves(name: str, kind: str, metric: str) -> bool:
