@@ -109,7 +109,9 @@ def bracket(solved: Solved, system: str) -> str:
     if solved.low is None or solved.high is None:
         return note
     metric = solved.setting.metric
-    low, high = (shown(value, metric, system) for value in (solved.low, solved.high))
+    quantity = numbers.quantity(metric)
+    ends = [numbers.in_system(end, quantity, system) for end in (solved.low, solved.high)]
+    low, high = numbers.interval(ends[0], ends[1], numbers.decimals(metric, system))
     width = f", {numbers.percent(solved.high / solved.low - 1.0)} apart" if solved.low else ""
     return f"{low} to {high}{width}" + (f"; {note}" if note else "")
 
@@ -135,9 +137,10 @@ def _films(solved: Solved, system: str) -> tuple[str, ...]:
     setting, unit = solved.setting, units.label("resistance", system)
     if setting.metric not in ("U_assembly", "R_total"):
         return ()
+    counted = {step.symbol: (step.value, step.source) for step in solved.steps}
     pairs = (
-        ("outside", setting.outside_film, setting.outside_film_from),
-        ("inside", setting.inside_film, setting.inside_film_from),
+        ("outside", *counted.get("Ro", (setting.outside_film, setting.outside_film_from))),
+        ("inside", *counted.get("Ri", (setting.inside_film, setting.inside_film_from))),
     )
     return tuple(
         clean(f"{side} film {numbers.resistance(value, system)} {unit} ({where})")

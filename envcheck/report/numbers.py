@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable
-from decimal import ROUND_HALF_UP, Decimal
+from decimal import ROUND_CEILING, ROUND_FLOOR, ROUND_HALF_UP, Decimal
 from functools import lru_cache
 
 from envcheck import units
@@ -52,6 +52,24 @@ def fixed(value: float, decimals: int) -> str:
     number = Decimal(f"{value:.{SIGNIFICANT}g}")
     rounded = number.quantize(Decimal(1).scaleb(-decimals), ROUND_HALF_UP)
     return f"{abs(rounded) if rounded.is_zero() else rounded:f}"
+
+
+def interval(low: float, high: float, decimals: int) -> tuple[str, str]:
+    """Write an interval so that it still encloses: the low end down, the high end up.
+
+    A narrow one gets up to three more places, so that its ends can be told apart.
+    """
+    if high - low <= 1e-9 * high:
+        return fixed(low, decimals), fixed(high, decimals)
+    most = decimals + 3
+    while decimals < most and high - low < 2.0 * 10.0**-decimals:
+        decimals += 1
+    place = Decimal(1).scaleb(-decimals)
+    ends = (
+        Decimal(f"{low:.{SIGNIFICANT}g}").quantize(place, ROUND_FLOOR),
+        Decimal(f"{high:.{SIGNIFICANT}g}").quantize(place, ROUND_CEILING),
+    )
+    return f"{ends[0]:f}", f"{ends[1]:f}"
 
 
 def trimmed(value: float, decimals: int) -> str:

@@ -215,10 +215,8 @@ def _bounds(line: Line, system: str) -> tuple[Figure, Figure]:
     unit = numbers.unit(line.metric, system)
     places = numbers.decimals(line.metric, system)
     factor = numbers.factor(numbers.quantity(line.metric), system)
-    low = Figure(numbers.fixed(solved.low / factor, places), unit)
-    if solved.low == solved.high:
-        return low, low
-    return low, Figure(numbers.fixed(solved.high / factor, places), unit)
+    low, high = numbers.interval(solved.low / factor, solved.high / factor, places)
+    return Figure(low, unit), Figure(high, unit)
 
 
 def _compared(comparison: Comparison | None) -> Figure:

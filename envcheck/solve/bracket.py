@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from envcheck.model.project import Assembly
 from envcheck.model.ruleset import Conventions
-from envcheck.model.solved import Setting, Solved
+from envcheck.model.solved import Setting, Solved, Step
 from envcheck.solve.assembly import draw
 
 TOLERANCE = 1e-3
@@ -55,6 +55,12 @@ def narrow(
     if found.stopped_by != "tolerance":
         note += f", stopped by its most {found.stopped_by}"
     by_bracket = solved.decided_by_bracket and solved.value is not None
+    if by_bracket:
+        bound_step = Step("U_high", "upper bound of the drawn section in two dimensions", "", (),
+                          high, "u_factor", note)  # fmt: skip
+        solved = solved._replace(
+            steps=(*solved.steps, bound_step), hand_check=(*solved.hand_check, bound_step)
+        )
     return solved._replace(
         low=low,
         high=high,
