@@ -5,6 +5,7 @@ from __future__ import annotations
 from typing import NamedTuple
 
 import numpy as np
+import numpy.typing as npt
 
 from envcheck.solve.field.networks import indicators, lower, upper
 from envcheck.solve.field.section import Array, Grid, Section, check, first_grid, refined
@@ -17,6 +18,8 @@ MOST_ROUNDS = 20
 MOST_NODES = 150_000
 MARKED = 0.6
 """Share of the gap whose columns and rows are split in one round."""
+STALLED = 0.8
+"""Share of the last round's gap from which a round counts as stalled."""
 ROUNDING = 1e-11
 """Relative widening of both bounds for rounding."""
 
@@ -34,6 +37,9 @@ class Bounds(NamedTuple):
     grid: Grid
     temperatures: Array
     """(n + 1, m + 1) at the nodes, 0 outdoors and 1 indoors; not bounded."""
+    imbalance: float
+    """Share of the heat flow by which what enters misses what leaves, the worse of both networks;
+    from a millionth it is refused."""
 
     @property
     def gap(self) -> float:
@@ -59,29 +65,48 @@ def bound(
     width = sum(section.widths)
     grid = first_grid(section)
     low, high = 0.0, np.inf
-    rounds = 0
+    rounds, before = 0, np.inf
     while True:
         rounds += 1
         k = conductivities[np.ix_(grid.rows, grid.columns)]
         above, below = upper(section, grid, k), lower(section, grid, k)
         low = max(low, below.conductance / width * (1.0 - ROUNDING))
         high = min(high, above.conductance / width * (1.0 + ROUNDING))
-        if high <= low * (1.0 + tolerance):
-            return Bounds(low, high, rounds, grid.nodes, "tolerance", grid, above.temperatures)
-        if rounds >= most_rounds:
-            return Bounds(low, high, rounds, grid.nodes, "rounds", grid, above.temperatures)
-        finer = _marked(grid, *indicators(section, grid, k, above, below))
-        if finer.nodes > most_nodes:
-            return Bounds(low, high, rounds, grid.nodes, "nodes", grid, above.temperatures)
-        grid = finer
+        gap = high / low - 1.0
+        stopped_by = "tolerance" if gap <= tolerance else "rounds" if rounds >= most_rounds else ""
+        if not stopped_by:
+            scores = indicators(section, grid, k, above, below)
+            mark = _marked_each_way if gap > STALLED * before else _marked
+            finer = mark(grid, *scores)
+            stopped_by = "nodes" if finer.nodes > most_nodes else ""
+        if stopped_by:
+            imbalance = max(above.imbalance, below.imbalance)
+            return Bounds(
+                low, high, rounds, grid.nodes, stopped_by, grid, above.temperatures, imbalance
+            )
+        grid, before = finer, gap
 
 
 def _marked(grid: Grid, columns: Array, rows: Array) -> Grid:
     """Split the columns and rows that hold most of the gap for the nodes that they cost."""
-    scores = np.concatenate([columns, rows])
     costs = np.concatenate([np.full(len(columns), len(rows)), np.full(len(rows), len(columns))])
+    marked = _most(np.concatenate([columns, rows]), costs)
+    return refined(grid, marked[: len(columns)], marked[len(columns) :])
+
+
+def _marked_each_way(grid: Grid, columns: Array, rows: Array) -> Grid:
+    """Split most of the columns' share and most of the rows'.
+
+    Where one way is cut far finer than the other, its lines cost so little that the first rule
+    would split them for ever while the gap lies in the other.
+    """
+    return refined(grid, _most(columns, np.ones(len(columns))), _most(rows, np.ones(len(rows))))
+
+
+def _most(scores: Array, costs: Array) -> npt.NDArray[np.bool_]:
+    """The best scores for their costs that hold the share ``MARKED`` of all."""
     order = np.argsort(-scores / costs)
     needed = np.searchsorted(np.cumsum(scores[order]), MARKED * scores.sum()) + 1
     marked = np.zeros(len(scores), dtype=bool)
     marked[order[:needed]] = True
-    return refined(grid, marked[: len(columns)], marked[len(columns) :])
+    return marked
