@@ -21,3 +21,8 @@ def ln_of_one_plus(x: float) -> float:
 def larger(a: float, b: float) -> float:
     """The larger of two numbers, element by element."""
     return a * (a >= b) + b * (a < b)
+
+
+def smaller(a: float, b: float) -> float:
+    """The smaller of two numbers, element by element."""
+    return a * (a <= b) + b * (b < a)

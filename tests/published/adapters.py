@@ -16,20 +16,17 @@ from typing import Any
 
 import envcheck
 from envcheck.read.coefficient_tables import built_in
-from envcheck.solve import shells
+from envcheck.solve import climate_zone, shells
 from envcheck.solve.methods import air_space as air
 from envcheck.solve.methods.air_voids import void_correction
 from envcheck.solve.methods.compressed import TABLE, installed_resistance
 from envcheck.solve.methods.en673_glazing import Gas, glazing_u, mixture
 from envcheck.solve.methods.fasteners import fastener_correction, penetration_factor
+from envcheck.solve.methods.inverted_roof import rain_correction
 from envcheck.solve.methods.iso10077_window import window_geometry, window_u
 from envcheck.solve.methods.iso10456_conversion import design_conductivity
-from envcheck.solve.methods.iso13370_basement import (
-    basement_wall_u,
-    edge_psi,
-    edge_thickness,
-    wall_thickness,
-)
+from envcheck.solve.methods.iso13370_basement import basement_wall_u, wall_thickness
+from envcheck.solve.methods.iso13370_edge import edge_psi, edge_thickness
 from envcheck.solve.methods.iso13370_slab import (
     characteristic_dimension,
     equivalent_thickness,
@@ -42,7 +39,9 @@ from envcheck.solve.methods.tapered import (
     tapered_triangle_thickest_apex,
     tapered_triangle_thinnest_apex,
 )
+from envcheck.solve.methods.tapered_pieces import tapered_triangle
 from envcheck.solve.methods.weighted import weighted
+from envcheck.solve.methods.zone import zone_width
 from envcheck.solve.network import parallel, plane_wall, series
 from envcheck.units import convert, to_si
 
@@ -123,6 +122,8 @@ TAPERS: dict[str, Callable[[float, float], float]] = {
 
 
 def tapered(inputs: Inputs, units: Units) -> Figures:
+    if inputs["shape"] == "tri_general":
+        return {"U": tapered_triangle(inputs["r0"], inputs["r1"], inputs["r2"])}
     return {"U": TAPERS[inputs["shape"]](inputs["r0"], inputs["r1"])}
 
 
@@ -310,6 +311,40 @@ def air_voids(inputs: Inputs, units: Units) -> Figures:
     return {"dU": void_correction(*(inputs[key] for key in keys))}
 
 
+def inverted_roof(inputs: Inputs, units: Units) -> Figures:
+    keys = ("precipitation", "r1", "r_total", "drained")
+    return {"dU": rain_correction(*(inputs[key] for key in keys))}
+
+
+def metal_zone(inputs: Inputs, units: Units) -> Figures:
+    width, distance, spacing = (
+        to_si(inputs[key], units["W"]) for key in ("metal", "distance", "spacing")
+    )
+    zone = zone_width(width, distance)
+    return {"W": convert(zone, units["W"]), "rest": convert(spacing - zone, units["rest"])}
+
+
+# ------------------------------------------------------------------------------- climate zones
+
+
+def degree_day_limit(inputs: Inputs, units: Units) -> Figures:
+    """The limit where a zone begins, found by its own function and printed in both systems."""
+    limit, zone = inputs["dd_si"], inputs["zone"]
+    above = climate_zone.thermal_zone(0.0, limit + 1e-6)
+    begins = above == zone != climate_zone.thermal_zone(0.0, limit)
+    return {"dd_ip": convert(limit if begins else float("nan"), units["dd_ip"])}
+
+
+def thermal_zone(inputs: Inputs, units: Units) -> Figures:
+    heating, cooling = (to_si(inputs[key], "degF*d") for key in ("hdd65", "cdd50"))
+    marine = inputs["marine"]
+    return {"zone": climate_zone.thermal_zone(heating, cooling, marine=marine, hottest=1)}
+
+
+def dryness(inputs: Inputs, units: Units) -> Figures:
+    return {"dry": climate_zone.is_dry(inputs["precipitation_cm"], inputs["mean_temperature"])}
+
+
 ADAPTERS: dict[str, Callable[[Inputs, Units], Figures]] = {
     "series": series_sum,
     "parallel_path": parallel_path,
@@ -337,4 +372,9 @@ ADAPTERS: dict[str, Callable[[Inputs, Units], Figures]] = {
     "film_by_convection": film_by_convection,
     "film_by_wind": film_by_wind,
     "air_voids": air_voids,
+    "inverted_roof": inverted_roof,
+    "metal_zone": metal_zone,
+    "degree_day_limit": degree_day_limit,
+    "thermal_zone": thermal_zone,
+    "dryness": dryness,
 }

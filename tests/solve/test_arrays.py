@@ -10,17 +10,36 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from envcheck.solve import network
+from envcheck.solve.methods.air_voids import void_correction
 from envcheck.solve.methods.bridges import added_by_bridge
 from envcheck.solve.methods.compressed import in_proportion
+from envcheck.solve.methods.en673_glazing import Gas, gas_conductance, glazing_u
 from envcheck.solve.methods.fasteners import (
     fastener_area,
     fastener_correction,
     penetration_factor,
 )
+from envcheck.solve.methods.inverted_roof import rain_correction
+from envcheck.solve.methods.iso10456_conversion import design_conductivity
+from envcheck.solve.methods.iso13370_basement import (
+    UnheatedBasement,
+    basement_floor_u,
+    basement_u,
+    basement_wall_u,
+    unheated_basement_u,
+    wall_thickness,
+)
+from envcheck.solve.methods.iso13370_edge import edge_psi, edge_thickness, slab_with_edge
+from envcheck.solve.methods.iso13370_suspended import SuspendedFloor, suspended_u
 from envcheck.solve.methods.steel_framing import effective_resistance
+from envcheck.solve.methods.surface_films import convection_by_wind, surface_resistance
+from envcheck.solve.methods.tapered_pieces import Piece, drained_roof_u, tapered_triangle
 from envcheck.solve.methods.weighted import weighted
+from envcheck.solve.methods.zone import zone_u, zone_width
 from tests.solve.test_invariants import few
 
+AIR = Gas(1.232, 1.761e-5, 0.02496, 1008.0)
+WEDGE = Piece("triangle_thinnest_apex", 2.0, 3.0)
 FUNCTIONS: list[tuple[Callable[..., object], int]] = [
     (network.series, 3),
     (lambda a, b, c: network.parallel([0.25, 0.75], [a + c, b]), 3),
@@ -32,6 +51,26 @@ FUNCTIONS: list[tuple[Callable[..., object], int]] = [
     (fastener_area, 1),
     (fastener_correction, 7),
     (in_proportion, 3),
+    (void_correction, 3),
+    (rain_correction, 4),
+    (design_conductivity, 5),
+    (surface_resistance, 3),
+    (convection_by_wind, 1),
+    (zone_width, 2),
+    (zone_u, 4),
+    (wall_thickness, 4),
+    (basement_wall_u, 4),
+    (basement_floor_u, 4),
+    (basement_u, 5),
+    (lambda *given: unheated_basement_u(UnheatedBasement(*given)), 9),
+    (edge_thickness, 3),
+    (edge_psi, 4),
+    (slab_with_edge, 3),
+    (lambda *given: suspended_u(SuspendedFloor(*given)), 9),
+    (lambda r0, r1, more: tapered_triangle(r0, r1, r1 + more), 3),
+    (lambda r0, r1, more: drained_roof_u(r0, [Piece("rectangle", more, r1), WEDGE]), 3),
+    (lambda gap, by: gas_conductance(AIR, gap / 100.0, by), 2),
+    (lambda a, b: glazing_u([0.004] * 3, [a / 100.0, b / 100.0], [AIR] * 2, [(0.8, 0.8)] * 2), 2),
 ]
 
 

@@ -16,8 +16,8 @@ DIFFERENCE = 15.0
 GRAVITY = 9.81
 GLASS = 1.0
 """W/(m K) of soda-lime glass."""
-ROUNDS = 50
-"""More than the distribution over several spaces ever needs."""
+ROUNDS = 30
+"""Of sharing the difference between several spaces; each leaves less than a third of the error."""
 
 
 class Gas(NamedTuple):
@@ -69,23 +69,19 @@ def glazing_u(
     """U of the centre of a glazing: 1/U = 1/he + sum 1/hs + sum d/k + 1/hi.
 
     panes: thicknesses, m. gaps, gases, emissivities: of the spaces between them, one fewer. The
-    temperature difference is shared between several spaces by their resistances. Returns
-    W/(m2 K). Source: EN 673:2011, 5.2 and 7.
+    temperature difference is shared between several spaces by their resistances. Numbers of any
+    shape. Returns W/(m2 K). Source: EN 673:2011, 5.2 and 7.
     """
     radiation = [radiation_conductance(*pair) for pair in emissivities]
     shares = [1.0 / len(gaps)] * len(gaps)
     resistances: list[float] = []
-    for _ in range(ROUNDS):
+    for _ in range(ROUNDS if len(gaps) > 1 else 1):
         resistances = [
             1.0 / (gas_conductance(gas, gap, DIFFERENCE * share) + hr)
             for gas, gap, share, hr in zip(gases, gaps, shares, radiation, strict=True)
         ]
         total = sum(resistances)
-        found = [resistance / total for resistance in resistances]
-        settled = max(abs(a - b) for a, b in zip(found, shares, strict=True)) < 1e-9
-        shares = found
-        if settled:
-            break
+        shares = [resistance / total for resistance in resistances]
     glass = sum(panes) / GLASS
     return 1.0 / (1.0 / h_outside + sum(resistances) + glass + 1.0 / h_inside)
 

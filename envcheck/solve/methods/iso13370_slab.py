@@ -19,6 +19,10 @@ FILM_SAID = (
     "the ground's own surface is counted with 0.04 m2 K/W (ISO 13370), the room's with the film of "
     "the rule set"
 )
+EDGE_SAID = (
+    "edge insulation of the slab is not counted, which can only raise U: ISO 13370 asks for its "
+    "thickness, which is not stated"
+)
 
 
 def characteristic_dimension(area: float, perimeter: float) -> float:
@@ -144,7 +148,7 @@ def _closing_step(soil: float, dimension: float, thickness: float, value: float)
 def _assumptions(slab: Slab) -> tuple[str, ...]:
     said = [FILM_SAID]
     if slab.insulation in ("vertical", "horizontal") and slab.resistance > 0:
-        said.append("edge insulation of the slab is not counted, which can only raise U")
+        said.append(EDGE_SAID)
     if slab.insulation == "under":
         said.append("insulation under the slab counts as the layers list it")
     return tuple(said)
