@@ -18,6 +18,7 @@ METHODS = {
     "weighted": "a weighted mean of parallel paths and isothermal planes",
     "cavity_factor": "cavity correction factors",
     "effective_layer": "effective layers",
+    "zone": "the zone method",
     "two_dimensional": "a two-dimensional solution",
 }
 """Methods in words; any other is its own name."""

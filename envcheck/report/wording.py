@@ -38,6 +38,7 @@ METHODS = {
     "weighted": "weighted between parallel paths and isothermal planes",
     "cavity_factor": "cavity correction factors",
     "effective_layer": "effective layer resistance",
+    "zone": "zone method",
     "two_dimensional": "two-dimensional bounds",
     "c_factor": "C-factor from layers",
     "f_factor": "F-factor looked up",

@@ -59,7 +59,8 @@ def narrow(
         bound_step = Step("U_high", "upper bound of the drawn section in two dimensions", "", (),
                           high, "u_factor", note)  # fmt: skip
         solved = solved._replace(
-            steps=(*solved.steps, bound_step), hand_check=(*solved.hand_check, bound_step)
+            steps=_ending_in(bound_step, solved.steps),
+            hand_check=_ending_in(bound_step, solved.hand_check),
         )
     return solved._replace(
         low=low,
@@ -68,3 +69,8 @@ def narrow(
         value=high if by_bracket else solved.value,
         clear=high - added if by_bracket else solved.clear,
     )
+
+
+def _ending_in(step: Step, steps: tuple[Step, ...]) -> tuple[Step, ...]:
+    """Steps with this one last, and none of its name before it: a closer bound replaces one."""
+    return (*(one for one in steps if one.symbol != step.symbol), step)

@@ -9,6 +9,7 @@ import pytest
 from hypothesis import given, settings
 
 from envcheck.model.project import Extra, Fill, FramedLayer, Layer, Member, Profile, TaperedLayer
+from envcheck.model.ruleset import Conventions
 from envcheck.solve.methods.zone import zone_u, zone_width
 from tests.solve.drawn import plain_layers, solved, steel_layers, value
 from tests.solve.samples import (
@@ -83,6 +84,17 @@ def test_solid_bars_by_hand() -> None:
     bars = framed("bars", 0.1, Member(STEEL, 0.01, 0.6), Fill(material=WOOL))
     found = solved([GYPSUM, bars, GYPSUM], "zone")
     assert found.value == pytest.approx(0.48625, abs=2e-4)
+    assert_recomputes(found.steps)
+
+
+def test_crossed_insulation_counts_by_the_rule_set_and_widens_the_zone() -> None:
+    rail = Member(STEEL, 0.05, 0.6)
+    girts = framed("girts", 0.075, rail, Fill(material=WOOL), crosses_insulation=True)
+    under = Conventions(crossed_insulation="zero")
+    found = solved([girts, GYPSUM, STUDS, GYPSUM], "zone", under)
+    named = {step.symbol: step.value for step in found.steps}
+    assert named["R1"] == 0.0
+    assert named["W"] == pytest.approx(STUD.flange + 2 * (0.075 + 0.5 * INCH))
     assert_recomputes(found.steps)
 
 

@@ -237,8 +237,8 @@ METHODS = (
         "most 1",
         source=SOURCE,
         valid="one layer framed with C profiles or solid metal members at a spacing between layers "
-        "of stated thickness; d is the thicker side; neither plates nor metal that crosses outer "
-        "insulation",
+        "of stated thickness, without plates or tracks; d is the thicker side; insulation that "
+        "metal crosses counts as the rule set says, with its whole thickness in d",
         decides=decide_zone,
     ),
 )

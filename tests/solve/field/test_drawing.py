@@ -47,6 +47,17 @@ def test_a_decided_bracket_gives_its_high_end() -> None:
     assert "in two dimensions" in found.bracket_note
 
 
+def test_a_closer_bound_takes_the_place_of_the_first() -> None:
+    by = setting(method="two_dimensional")
+    whole, first = assembly(*CHEEK), narrowed(*CHEEK)
+    closer = narrow(whole, by, PLAIN, first, 1e-4)
+    assert closer.value is not None
+    assert closer.value <= first.high  # type: ignore[operator]
+    for steps in (closer.steps, closer.hand_check):
+        (stated,) = [step for step in steps if step.symbol == "U_high"]
+        assert stated.value == closer.value
+
+
 def test_demo_lines_that_hang_on_the_method() -> None:
     """The invented library at review, and the invented warehouse."""
     review = run(str(ROOT / "projects/quillhaven-library/review.yaml"))
