@@ -90,7 +90,6 @@ def names() -> Names:
     return Names(
         methods=prescribable(),
         categories=tuple(categories()),
-        film_sets=("iso6946", "handbook"),
         findings=(*(check.id for check in crosschecks.checks()), "class-claimed"),
     )
 

@@ -6,10 +6,10 @@ from pathlib import Path
 
 import click
 
+from envcheck.cli.schema import FILES
 from envcheck.cli.writing import write_whole
 
 TEMPLATES = Path(__file__).parent / "templates"
-SCHEMAS = Path(__file__).parent.parent / "read" / "schemas"
 RULE_SET = "example-town"
 
 
@@ -36,10 +36,10 @@ def new(file: str, with_rules: bool) -> int:
         folder = target.parent / "rules" / RULE_SET
         made[folder / "ruleset.yaml"] = _template("rules/ruleset.yaml", "rules")
         made[folder / "table-1.csv"] = _template("rules/table-1.csv", "")
-    for path in made:
-        if path.exists() or path.is_symlink():
-            raise click.ClickException(f"{path}: exists already. Fix: name another file")
     try:
+        for path in made:
+            if path.exists() or path.is_symlink():
+                raise click.ClickException(f"{path}: exists already. Fix: name another file")
         for path, text in made.items():
             if path is not target:
                 path.parent.mkdir(parents=True, exist_ok=True)
@@ -58,5 +58,5 @@ def _template(name: str, schema: str) -> str:
     text = (TEMPLATES / name).read_text(encoding="utf-8")
     if not schema:
         return text
-    place = (SCHEMAS / f"{schema}.schema.json").resolve().as_uri()
+    place = FILES[schema].resolve().as_uri()
     return text.replace("SCHEMA", place, 1)

@@ -20,12 +20,13 @@ def deliver(text: str, output: str | None, inputs: tuple[str, ...] = ()) -> None
         sys.stdout.flush()
         return
     target = Path(os.path.realpath(output))
-    if target.exists() and not target.is_file():
-        raise click.ClickException(f"{output}: is no regular file. Fix: name a file to write")
-    for name in inputs:
-        if name != "-" and target.exists() and Path(name).exists() and target.samefile(name):
-            raise click.ClickException(f"{output}: is the input. Fix: name another file to write")
     try:
+        if target.exists() and not target.is_file():
+            raise click.ClickException(f"{output}: is no regular file. Fix: name a file to write")
+        for name in inputs:
+            if name != "-" and target.exists() and Path(name).exists() and target.samefile(name):
+                what = f"{output}: is the input. Fix: name another file to write"
+                raise click.ClickException(what)
         write_whole(text, target)
     except OSError as error:
         reason = error.strerror or str(error)

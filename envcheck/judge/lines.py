@@ -17,6 +17,8 @@ from envcheck.model.solved import Properties, Solved
 
 SOLVED_METRICS = ("U_assembly", "U_product", "C_factor", "F_factor", "R_total")
 """Metrics that need a solution; the others are read off the product."""
+HEAT_FLOW = (*SOLVED_METRICS, "R_insulation")
+"""Metrics that limit the heat flow: a table that gives none of them leaves the element open."""
 COMPLIES, OVER, OPEN = 0, 1, 3
 """Exit status of a run: none over and none open; at least one over; none over, some open."""
 SolveOne = Callable[[Element, Assembly, str, str, RuleSet], Solved]
@@ -73,7 +75,7 @@ def judge_lines(
 ) -> list[Line]:
     """Judge every element, a line for each metric that its row speaks of.
 
-    metrics: by category, the metric of an element whose class no row covers.
+    metrics: by category, the metric of an element for whose heat flow no row gives a limit.
     """
     closed = closed_rows(ruleset, measured)
     derived = {ratio.name: ratio.value for ratio in measured if not ratio.missing}
@@ -92,7 +94,10 @@ def judge_lines(
             selection,
             closed,
         )
-        for metric in selection.metrics or (metrics[found.category],):
+        asked = selection.metrics
+        if not any(metric in HEAT_FLOW for metric in asked):
+            asked = (metrics[found.category], *asked)
+        for metric in asked:
             solved = None
             if metric in SOLVED_METRICS:
                 solved = solve(element, assembly, found.category, metric, ruleset)

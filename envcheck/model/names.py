@@ -10,5 +10,4 @@ class Names(NamedTuple):
 
     methods: tuple[str, ...]
     categories: tuple[str, ...]
-    film_sets: tuple[str, ...]
     findings: tuple[str, ...]

@@ -55,5 +55,8 @@ def _bound(text: str, unit: str, decimal: str) -> float | None:
         return None
     if ("," if decimal == "." else ".") in text:
         raise CellError("cell-decimal-mark", f"the decimal mark {decimal!r}")
-    number = float(text.replace(",", "."))
+    try:
+        number = float(text.replace(",", "."))
+    except ValueError:
+        raise CellError("unreadable-condition", "one number at each end") from None
     return units.to_si(number, unit) if unit else number

@@ -82,16 +82,14 @@ class Context:
         value = self.number(entry, key, "share")
         if value <= 0 or value > 1 or (value == 1 and not whole):
             most = "at most" if whole else "less than"
-            self.add(
-                "out-of-range",
-                entry.lines[key],
-                found=entry[key],
-                expected=f"more than 0 % and {most} 100 %",
-                key=key,
-                hint="check the share",
-            )
+            self.out_of_range(entry, key, f"more than 0 % and {most} 100 %", "check the share")
             return NAN
         return value
+
+    def out_of_range(self, entry: Entry, key: str, expected: str, hint: str) -> None:
+        """Note a quantity that no such thing has."""
+        line, found = entry.lines[key], entry[key]
+        self.add("out-of-range", line, found=found, expected=expected, key=key, hint=hint)
 
     def date(self, entry: Entry, key: str) -> date | None:
         """Read a date typed as year-month-day."""

@@ -11,7 +11,7 @@ from envcheck.read.assemblies import bridge
 from envcheck.read.context import Context
 from envcheck.read.materials import categories
 from envcheck.read.yaml_reader import Entry
-from envcheck.units import UnitError, quantity_of, to_si
+from envcheck.units import UnitError, parse, quantity_of
 
 TILTS = {
     "wall": 90.0,
@@ -76,11 +76,11 @@ def _fact_value(value: Any) -> str | float:
         return "yes" if value else "no"
     if isinstance(value, (int, float)):
         return float(value)
-    number, _, unit = value.partition(" ")
+    quantity = quantity_of(value.partition(" ")[2])
     try:
-        if quantity_of(unit):
-            return to_si(float(number), unit)
-    except (ValueError, UnitError):
+        if quantity:
+            return parse(value, quantity)
+    except UnitError:
         pass
     return str(value)
 
@@ -150,11 +150,8 @@ def _tilt(context: Context, entry: Entry, category: str) -> float:
         return 0.0 if category == SKYLIGHT else TILTS.get(category.partition(".")[0], 90.0)
     tilt = context.number(entry, "tilt", "angle")
     if not 0 <= tilt <= 180 and tilt == tilt:
-        line, hint = entry.lines["tilt"], "0 deg is a flat roof, 90 deg a wall"
-        expected = "0 deg to 180 deg"
-        context.add(
-            "out-of-range", line, found=entry["tilt"], expected=expected, key="tilt", hint=hint
-        )
+        hint = "0 deg is a flat roof, 90 deg a wall"
+        context.out_of_range(entry, "tilt", "0 deg to 180 deg", hint)
     return tilt
 
 

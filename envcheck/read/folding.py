@@ -49,11 +49,12 @@ def fold(
             problems.append(problem("not-executed", document.name, line, **fill))
             continue
         found: dict[CellKey, tuple[Limit, ...]] = {}
+        own = known
         for i, entry in enumerate(document.get("tables") or ()):
-            settings = _table_settings(document, i, entry, known, amends, problems)
+            settings = _table_settings(document, i, entry, own, amends, problems)
             if settings is not None:
                 found |= _read_table(document, i, settings, chain, setting, amends, problems)
-                known = {**known, str(settings["id"]): settings}
+                own = {**own, str(settings["id"]): settings}
         if amends:
             _check_amended(document, found, cells, problems)
             found = {
@@ -63,6 +64,7 @@ def fold(
             }
         if holds or not amends:
             cells |= found
+            known = own
     return cells
 
 

@@ -4,17 +4,18 @@ from __future__ import annotations
 
 import re
 from collections.abc import Mapping, Sequence
+from contextlib import suppress
 from datetime import date
 from hashlib import sha256
 from pathlib import Path
 from typing import Any, NamedTuple
 
-from envcheck.errors import Problem, did_you_mean, one_of, problem
+from envcheck.errors import InputError, Problem, did_you_mean, one_of, problem
+from envcheck.read.files import read_bytes
 from envcheck.read.schema import check
 from envcheck.read.yaml_reader import Entry, line_of, read_yaml
 
 MEANING = "ruleset.yaml"
-LONGEST_CHAIN = 12
 _ID = re.compile(r"[a-z0-9][a-z0-9-]*")
 _DATE = re.compile(r"\d{4}-\d\d-\d\d")
 _NOTHING = ("", "null", "~")
@@ -104,9 +105,9 @@ def read_document(folder: Path, problems: list[Problem]) -> Document | None:
     path = folder / MEANING
     shown = path.as_posix()
     try:
-        raw = path.read_bytes()
-    except OSError as error:
-        problems.append(problem("file-unreadable", shown, None, found=error.strerror or "?"))
+        raw, *_ = read_bytes(shown)
+    except InputError as error:
+        problems += error.problems
         return None
     data, found = read_yaml(raw, shown, text_only=True)
     problems += found
@@ -118,7 +119,8 @@ def read_document(folder: Path, problems: list[Problem]) -> Document | None:
         return None
     digest = sha256(raw)
     for sheet in sorted(folder.glob("*.csv")):
-        digest.update(sheet.read_bytes())
+        with suppress(OSError):  # one that a table names says so where it is read
+            digest.update(sheet.read_bytes())
     document = Document(folder.name, folder, shown, data, digest.hexdigest())
     stated = document.get("ruleset")
     if stated != folder.name:

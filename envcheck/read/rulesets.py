@@ -65,7 +65,8 @@ def read_ruleset(
         return stating.get(key, chain[0])
 
     zones = read_zones(document("zones"), problems)
-    dimensions = {k: v for d in active for k, v in read_dimensions(d, problems).items()}
+    # the tables of every document are read, so that all dimensions are known; those in force win
+    dimensions = {k: v for d in (*chain, *active) for k, v in read_dimensions(d, problems).items()}
     printed = _units(document("units"), problems)
     setting = Setting(zones.order, dimensions, printed, categories, _table_paths(document("paths")))
     cells = fold(chain, in_force, setting, problems)
@@ -176,18 +177,19 @@ def _units(document: Document, problems: list[Problem]) -> dict[str, str]:
     found: dict[str, str] = {}
     quantities = {m.key: m.quantity for m in METRICS.values() if m.key}
     for key, spelling in (document.get("units") or {}).items():
-        quantity = quantities.get("R" if key == "RSI" else key, "")
+        name = "R" if key == "RSI" else key
+        quantity = quantities.get(name, "")
         factor = units.quantity_of(spelling) and units.to_si(1.0, spelling)
         for system in ("SI", "IP"):
             label = units.label(quantity, system) if quantity else ""
             if label and factor == units.to_si(1.0, label):
-                found["R" if key == "RSI" else key] = label
-        if quantity and not found.get("R" if key == "RSI" else key):
+                found[name] = label
+        if quantity and name not in found:
             line, expected = document.line("units", key), units.label(quantity, "SI")
             expected += f" or {units.label(quantity, 'IP')}"
             fill = {"found": spelling, "expected": expected, "key": key}
             problems.append(problem("wrong-table-unit", document.name, line, **fill))
-            found[key] = units.label(quantity, "SI")
+            found[name] = units.label(quantity, "SI")
     if "U" in found:
         found.setdefault("C", found["U"])
     return found

@@ -15,11 +15,11 @@ from typing import NamedTuple
 
 from envcheck.errors import Problem, problem
 from envcheck.read.cells import CellError, split_marks
+from envcheck.read.yaml_text import check_bytes, control_characters
 
 LARGEST = 2_000_000
 """Bytes; no printed table is larger."""
 WHEN = "when:"
-_CONTROL = re.compile("[\x00-\x08\x0b\x0c\x0e-\x1f\x7f-\x9f\u202a-\u202e\u2066-\u2069]")
 _PLAIN = re.compile(r"[\w-][\w.-]*\.csv")
 
 
@@ -81,20 +81,11 @@ def read_text(path: Path, shown: str, problems: list[Problem]) -> str | None:
     if len(data) > LARGEST:
         problems.append(problem("file-too-large", shown, None, found=f"{len(data)} bytes"))
         return None
-    try:
-        text = data.decode("utf-8-sig")
-    except UnicodeDecodeError as error:
-        line = data[: error.start].count(b"\n") + 1
-        found = f"byte 0x{data[error.start]:02x}"
-        problems.append(problem("wrong-encoding", shown, line, found=found))
-        return None
-    control = _CONTROL.search(text)
-    if control:
-        line = text.count("\n", 0, control.start()) + 1
-        found = f"U+{ord(control[0]):04X}"
-        problems.append(problem("control-character", shown, line, found=found))
-        return None
-    return text
+    wrong = check_bytes(data, shown)
+    text = "" if wrong else data.decode("utf-8-sig")
+    wrong = wrong or control_characters(text, shown)
+    problems += wrong
+    return None if wrong else text
 
 
 def read_lines(

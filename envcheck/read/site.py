@@ -44,14 +44,8 @@ def _temperature(context: Context, entry: Entry, key: str) -> float | None:
         return None
     value = context.number(entry, key, "temperature")
     if not COLDEST <= value <= HOTTEST and value == value:
-        context.add(
-            "out-of-range",
-            entry.lines[key],
-            found=entry[key],
-            expected=f"{COLDEST:.0f} degC to {HOTTEST:.0f} degC",
-            key=key,
-            hint="check the unit",
-        )
+        expected = f"{COLDEST:.0f} degC to {HOTTEST:.0f} degC"
+        context.out_of_range(entry, key, expected, "check the unit")
     return value
 
 

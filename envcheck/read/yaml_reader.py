@@ -16,11 +16,16 @@ from typing import Any
 import yaml
 
 from envcheck.errors import Problem, problem
-from envcheck.read.yaml_text import CONTROLS, check_bytes, control_characters, syntax_problem
+from envcheck.read.yaml_text import (
+    CONTROLS,
+    MOST_PROBLEMS,
+    check_bytes,
+    control_characters,
+    syntax_problem,
+)
 
 _Loader: Any = getattr(yaml, "CSafeLoader", yaml.SafeLoader)
 DEEPEST = 50
-MOST_PROBLEMS = 50
 
 
 class Entry(dict[str, Any]):
@@ -53,19 +58,6 @@ def line_of(data: Any, path: tuple[str | int, ...]) -> int:
         except (AttributeError, LookupError, TypeError):
             break
     return line
-
-
-def line_map(data: Any) -> dict[tuple[str | int, ...], int]:
-    """Give the line of every key and item, by its path."""
-    found: dict[tuple[str | int, ...], int] = {(): data.line}
-    open_: list[tuple[tuple[str | int, ...], Any]] = [((), data)]
-    while open_:
-        path, node = open_.pop()
-        for step in node if isinstance(node, Entry) else range(len(node)):
-            found[(*path, step)] = node.lines[step]
-            if isinstance(node[step], (Entry, Entries)):
-                open_.append(((*path, step), node[step]))
-    return found
 
 
 def read_yaml(

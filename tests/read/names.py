@@ -8,6 +8,5 @@ from envcheck.read.materials import categories
 NAMES = Names(
     methods=("series", "parallel_path", "isothermal_planes"),
     categories=tuple(categories()),
-    film_sets=("iso6946", "handbook"),
     findings=("drawn-not-entered", "declared-differs"),
 )
