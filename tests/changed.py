@@ -11,5 +11,5 @@ Record = TypeVar("Record")
 def changed(record: Record, **fields: Any) -> Record:
     """A copy with these fields; named tuples and dataclasses alike."""
     if hasattr(record, "_replace"):
-        return record._replace(**fields)  # type: ignore[no-any-return]
-    return dataclasses.replace(record, **fields)  # type: ignore[type-var]
+        return record._replace(**fields)
+    return dataclasses.replace(record, **fields)

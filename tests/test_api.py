@@ -18,7 +18,7 @@ def test_check_returns_frozen_lines_and_a_frame() -> None:
     run = envcheck.check(PERMIT, rules=[ROOT / "rules"])
     assert run.exit_status == 0
     with pytest.raises(FrozenInstanceError):
-        run.exit_status = 1  # type: ignore[misc]
+        run.exit_status = 1
     frame = run.to_frame()
     assert len(frame) == len(run.judged.lines)
     row = frame[(frame.element == "N-W1") & (frame.metric == "U_assembly")].iloc[0]

@@ -23,6 +23,8 @@ TABLES = {
     "films.csv": ("resistance",),
     "air_spaces.csv": ("thickness", "emittance", "resistance"),
     "material_classes.csv": ("low", "high"),
+    "gases.csv": ("density", "viscosity", "conductivity", "specific_heat"),
+    "compressed_batts.csv": (),
     "materials.csv": ("conductivity", "low", "high", "density", "specific_heat"),
 }
 DIRECTIONS = ("up", "horizontal", "down")
@@ -36,6 +38,10 @@ def rows(name: str) -> tuple[Row, ...]:
 
 def by_id(name: str) -> dict[str, Row]:
     return {row["id"]: row for row in rows(name)}
+
+
+def test_no_table_is_forgotten() -> None:
+    assert set(TABLES) == {path.name for path in DATA.glob("*.csv")}
 
 
 @pytest.mark.parametrize("name", TABLES)

@@ -39,13 +39,14 @@ def test_first_project_and_rule_set(tmp_path: Path) -> None:
     assert "3 lines: 0 over their limit, 0 open." in output
 
 
-def test_sample_is_what_the_program_prints(monkeypatch: object) -> None:
+def test_sample_is_what_the_program_prints() -> None:
     status, output = checked("check", str(ROOT / "projects/quillhaven-library/review.yaml"))
     assert status == 1
     printed = output.splitlines()
     sample = block("sample").splitlines()
     assert len(sample) > 20
-    missing = [line for line in sample if line.strip() != "..." and line not in printed]
+    rest = iter(printed)  # in its order
+    missing = [line for line in sample if line.strip() != "..." and line not in rest]
     assert not missing
 
 

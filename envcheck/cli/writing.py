@@ -39,7 +39,7 @@ def write_whole(text: str, target: Path) -> None:
 
     handle, name = tempfile.mkstemp(dir=target.parent, prefix=f".{target.name}.")
     try:
-        with open(handle, "w", encoding="utf-8", newline="\n") as file:  # noqa: PTH123
+        with open(handle, "w", encoding="utf-8", newline="\n") as file:  # noqa: PTH123  # Path cannot open a file handle
             file.write(text)
         Path(name).chmod(_mode(target))
         Path(name).replace(target)

@@ -12,6 +12,8 @@ from envcheck.model.ruleset import Averaging, Limit, RuleSet
 
 CLOSES_WITHIN = 0.005
 """Share of the gross area by which parts may miss it; drawings are dimensioned to the inch."""
+COMPARED = ("pass", "fail")
+"""Verdicts that a comparison gives, and that a mean may replace."""
 RATIO_PARTS = {
     "window_wall_ratio": ("wall", "fenestration.*", "fenestration.skylight"),
     "skylight_roof_ratio": ("roof", "fenestration.skylight", ""),
@@ -98,7 +100,8 @@ def take_means(
     groups: dict[str, list[Line]] = {}
     for line in lines:
         element = project.elements[line.element]
-        if element.mean_with and line.limit is not None and line.limit.metric.startswith("U_"):
+        limit = line.limit if element.mean_with else None
+        if limit is not None and limit.kind == "number" and limit.metric.startswith("U_"):
             groups.setdefault(element.mean_with, []).append(line)
     replaced: dict[int, Line] = {}
     means = []
@@ -117,10 +120,12 @@ def _take_mean(
     if isinstance(rule, str):
         return [_undecided(line, name, rule) for line in members], None
     elements = [project.elements[line.element] for line in members]
-    open_members = [line for line in members if line.solved is None or line.solved.value is None]
-    if open_members:
-        why = f"the mean {name!r} waits for the value of {open_members[0].element}"
-        return [_undecided(line, name, why) for line in members], None
+    waits = next((why for line in members if (why := _waits_for(line, project))), "")
+    if waits:
+        why = f"the mean {name!r} waits for {waits}"
+        return [
+            _undecided(line, name, why) if line.verdict in COMPARED else line for line in members
+        ], None
     areas = [element.net_area or 0.0 for element in elements]
     values = [line.solved.value or 0.0 for line in members if line.solved is not None]
     value = area_weighted_mean(areas, values)
@@ -150,6 +155,15 @@ def _take_mean(
         )
         for line in members
     ], mean
+
+
+def _waits_for(line: Line, project: Project) -> str:
+    """What a mean lacks of one member; a line settled before its comparison keeps its verdict."""
+    if line.solved is None or line.solved.value is None:
+        return f"the value of {line.element}"
+    if project.elements[line.element].net_area is None:
+        return f"the area of {line.element}"
+    return "" if line.verdict in COMPARED else f"the decision on {line.element}"
 
 
 def area_weighted_mean(areas: Sequence[float], values: Sequence[float]) -> float:

@@ -171,6 +171,8 @@ class Solved(NamedTuple):
     cautions: tuple[Caution, ...]
     hand_check: tuple[Step, ...] = ()
     """The shortest sum that a reviewer can repeat; usually one step."""
+    added: float = 0.0
+    """What fasteners, points and lines add, as far as it is known, W/(m2 K)."""
 
 
 class Properties(NamedTuple):

@@ -86,6 +86,7 @@ def _solve_layers(
         assumptions=(*notes.assumptions, *decision.assumptions, *assumptions),
         cautions=(*cautions(assembly), *decision.cautions),
         hand_check=steps[decision.layer_steps :],
+        added=added,
     )
 
 
@@ -202,17 +203,21 @@ def _decide(wall: Wall) -> tuple[Decision, tuple[Correction, ...]]:
         words = f"another method: {setting.method_from} does not accept {method.title.lower()}"
         return Decision(None, missing=(words,)), ()
     two_dimensional = setting.method == "two_dimensional"
+    outside = len(wall.assembly.layers) - len(wall.layers)
     try:
         counted, changed = (wall, {}) if two_dimensional else count_crossed(wall)
         decision = method.decides(counted)
         fasteners = (
-            correct_for_fasteners(wall.assembly, 1.0 / decision.value, conventions)
+            correct_for_fasteners(wall.assembly, 1.0 / decision.value, conventions, outside)
             if decision.value is not None
             else Correction(0.0)
         )
-        for layer in wall.layers:
-            if isinstance(layer, TaperedLayer):
-                decision = taper(decision, layer, conventions)
+        tapered = [layer for layer in wall.layers if isinstance(layer, TaperedLayer)]
+        if len(tapered) > 1:
+            titles = " and ".join(repr(layer.title) for layer in tapered)
+            raise NotDecided(f"one tapered layer: {titles} together have no closed formula here")
+        for layer in tapered:
+            decision = taper(decision, layer, conventions)
     except NotDecided as missing:
         return Decision(None, missing=(str(missing),)), ()
     if changed:

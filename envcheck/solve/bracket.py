@@ -45,9 +45,8 @@ def narrow(
     except (NotDrawn, ModelError, SolveError) as why:
         note = solved.bracket_note.partition("; not solved")[0]
         return solved._replace(bracket_note=f"{note}; not solved in two dimensions: {why}")
-    added = (solved.value or 0.0) - (solved.clear or 0.0) if solved.value is not None else 0.0
-    low = max(solved.low, found.low + added)
-    high = min(solved.high, found.high + added)
+    low = max(solved.low, found.low + solved.added)
+    high = min(solved.high, found.high + solved.added)
     note = (
         f"the drawn section in two dimensions: {found.rounds} rounds, {found.nodes} nodes, "
         f"bounds {found.gap * 100:.2g} % apart"
@@ -67,7 +66,7 @@ def narrow(
         high=high,
         bracket_note=note,
         value=high if by_bracket else solved.value,
-        clear=high - added if by_bracket else solved.clear,
+        clear=high - solved.added if by_bracket else solved.clear,
     )
 
 

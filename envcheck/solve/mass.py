@@ -47,11 +47,11 @@ def heat_capacity(density: float, specific_heat: float, thickness: float) -> flo
 def sheet_per_area(profile: Profile, spacing: float) -> float:
     """Thickness that a profile's steel would have, spread over the wall, m.
 
-    The developed width of web, two flanges and two lips (hat: two flanges, two webs, a crown of
-    one flange) times the sheet's thickness, divided by the spacing. Bends are counted square.
+    The developed width of web, two flanges and two lips (hat: a crown of one flange, two webs, two
+    brims of one lip) times the sheet's thickness, divided by the spacing. Bends are counted square.
     """
     if profile.shape == "hat":
-        developed = 2.0 * profile.web + 3.0 * profile.flange
+        developed = 2.0 * profile.web + profile.flange + 2.0 * profile.lip
     else:
         developed = profile.web + 2.0 * profile.flange + 2.0 * profile.lip
     return developed * profile.thickness / spacing

@@ -103,3 +103,18 @@ def test_new_names_the_schema_for_editors(tmp_path: Path) -> None:
     first = project.read_text().splitlines()[0]
     assert first.startswith("# yaml-language-server: $schema=file:")
     assert first.endswith("project.schema.json")
+
+
+@pytest.mark.parametrize("arguments", [["new"], ["check", "p.yaml", "-o"]])
+def test_a_name_that_is_too_long_is_said(
+    arguments: list[str],
+    tmp_path: Path,
+    capsys: pytest.CaptureFixture[str],
+    monkeypatch: pytest.MonkeyPatch,
+) -> None:
+    monkeypatch.chdir(tmp_path)
+    assert main(["new", "p.yaml", "--with-rules"]) == 0
+    before = sorted(tmp_path.rglob("*"))
+    assert main([*arguments, "n" * 300 + ".yaml"]) == 2
+    assert "cannot be written" in capsys.readouterr().err
+    assert sorted(tmp_path.rglob("*")) == before

@@ -117,6 +117,10 @@ def test_colour_follows_the_page(folder: Path) -> None:
 
 
 def test_links_between_pages_lead_somewhere() -> None:
-    for page in DOCS.glob("*.md"):
-        for link in re.findall(r"\]\(([^)#:]+)\)", page.read_text(encoding="utf-8")):
-            assert (page.parent / link).exists(), f"{page.name}: {link}"
+    links = [
+        (page, link)
+        for page in DOCS.glob("*.md")
+        for link in re.findall(r"\]\(([^)#:]+)\)", page.read_text(encoding="utf-8"))
+    ]
+    assert links
+    assert [(page.name, link) for page, link in links if not (page.parent / link).exists()] == []

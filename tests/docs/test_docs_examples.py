@@ -245,11 +245,11 @@ def test_printed_blocks_are_current(page: str) -> None:
 def test_hand_check_can_be_repeated() -> None:
     """Sum and reciprocal done here, from the printed digits alone."""
     page = (DOCS / "hand-check.md").read_text(encoding="utf-8")
-    terms, total = re.search(r" R = ([\d. +]+) = ([\d.]+) h ft2", page).groups()  # type: ignore[union-attr]
+    terms, total = re.search(r" R = ([\d. +]+) = ([\d.]+) h ft2", page).groups()
     assert sum(float(term) for term in terms.split("+")) == pytest.approx(float(total), abs=5e-6)
     value = re.search(rf"U = 1 / {total} = ([\d.]+)", page)
     assert value
     assert f"{1 / float(total):.6g}" == value[1]
-    fc, label, r5 = re.search(r"R5 = ([\d.]+) \* ([\d.]+) = ([\d.]+)", page).groups()  # type: ignore[union-attr]
+    fc, label, r5 = re.search(r"R5 = ([\d.]+) \* ([\d.]+) = ([\d.]+)", page).groups()
     assert float(fc) * float(label) == pytest.approx(float(r5), abs=5e-6)
     assert f"{value[1]} rounded half-up to 3 decimals: {round(float(value[1]), 3):.3f}" in page

@@ -6,6 +6,9 @@ inside of the project files, films and factors from the tables of the rule sets.
 
 from __future__ import annotations
 
+import os
+import subprocess
+import sys
 from functools import cache
 from math import log, pi
 from pathlib import Path
@@ -191,10 +194,8 @@ def test_renovation_verdicts_line_by_line() -> None:
     done = run(RENOVATION)
     found = verdicts(done)
     assert found.pop("S-S9") == "official_decides"
-    # decided by a proven interval: until it is narrow it may still hold the limit, never miss it
-    assert found.pop("D-S7") in ("too_close", PASS)
     assert found == dict.fromkeys(found, PASS)
-    assert len(found) == 7
+    assert len(found) == 8
     assert done.exit_status == 3
 
 
@@ -243,8 +244,24 @@ def test_permit_has_no_finding_that_stops() -> None:
     [(PERMIT, {}), (REVIEW, {"West": 88.0, "Roof": 15.0}), (RENOVATION, {})],
 )
 def test_areas_close(project: str, missing: dict[str, float]) -> None:
-    found = {c.surface: convert(c.missing, "ft2") for c in run(project).judged.closings}
-    assert found == pytest.approx({name: missing.get(name, 0.0) for name in found}, abs=1e-6)
+    done = run(project)
+    found = {c.surface: convert(c.missing, "ft2") for c in done.judged.closings}
+    expected = {name: missing.get(name, 0.0) for name in done.project.surfaces}
+    assert missing.keys() <= expected.keys()
+    assert expected
+    assert found == pytest.approx(expected, abs=1e-6)
+
+
+@pytest.mark.parametrize("form", ["text", "json"])
+def test_a_report_does_not_hang_on_the_order_of_sets(form: str) -> None:
+    command = [sys.executable, "-m", "envcheck", "check", str(PROJECTS / REVIEW), "--format", form]
+    pages = [
+        subprocess.run(
+            command, capture_output=True, env={**os.environ, "PYTHONHASHSEED": seed}
+        ).stdout
+        for seed in ("0", "1")
+    ]
+    assert pages[0] == pages[1] != b""
 
 
 @pytest.mark.parametrize(

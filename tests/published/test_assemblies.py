@@ -77,7 +77,7 @@ def test_wood_wall(figure: Figure) -> None:
     films, outer, inner = around(figure)
     cavity, wood, _ = (path["resistance"] for path in figure.inputs["paths"])
     wall = [*outer, wood_studs(wood / 1.25, cavity), *inner]
-    found = solved(wall, "parallel_path", **films)  # type: ignore[arg-type]
+    found = solved(wall, "parallel_path", **films)
     assert found.value is not None
     assert agrees(figure, found.value / U_IP)
     assert_recomputes(found.steps)

@@ -243,6 +243,8 @@ def test_words_are_the_declared_ones() -> None:
         ("below 3", (), "unreadable-condition"),
         ("(3,2]", (), "unreadable-condition"),
         ("", (), "unreadable-condition"),
+        ("(0.1.2,0.5]", (), "unreadable-condition"),
+        ("[.,3000]", (), "unreadable-condition"),
         ("<=0,3", (), "cell-decimal-mark"),
     ],
 )

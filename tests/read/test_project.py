@@ -162,13 +162,16 @@ def test_solid_masonry_and_tapered() -> None:
 def test_facts_words_numbers_and_quantities() -> None:
     text = (
         HEAD.replace(
-            "assemblies", "facts: {a: true, b: no, c: 3, d: 6 Btu/(h*ft2), e: 5A}\nassemblies"
+            "assemblies",
+            "facts: {a: true, b: no, c: 3, d: 6 Btu/(h*ft2), e: 5A, f: nan m2, g: 1e400 m2}\n"
+            "assemblies",
         )
         + "  W: {title: W, layers: [{kind: contact, resistance: 0.1 m2*K/W}]}\n"
     )
     facts = {f.name: f.value for f in read(text).facts}
     assert facts["a"] == "yes" and facts["b"] == "no" and facts["c"] == 3.0 and facts["e"] == "5A"
     # 1 Btu/(h ft2) = 3.154591 W/m2 (SI 10, from memory)
+    assert facts["f"] == "nan m2" and facts["g"] == "1e400 m2"  # no numbers of the grammar
     assert facts["d"] == pytest.approx(6 * 3.154591, rel=1e-6)
 
 

@@ -12,6 +12,7 @@ from datetime import date
 from pathlib import Path
 
 import pytest
+from jsonschema import Draft202012Validator
 
 from envcheck.errors import InputError
 from envcheck.model.ruleset import Limit, RuleSet
@@ -253,6 +254,31 @@ def test_the_date_decides_what_is_in_force(
     assert roof.cell == cell_then
 
 
+def test_an_amendment_that_is_not_in_force_yet_may_declare_its_own_dimension(
+    tmp_path: Path,
+) -> None:
+    for name in ("merrow-2025", "quillhaven-2025-3"):
+        shutil.copytree(SHIPPED / name, tmp_path / name)
+    path = tmp_path / "quillhaven-2025-3" / "ruleset.yaml"
+    text = path.read_text()
+    old = "tables:\n  - {id: T1, "
+    assert old in text
+    dimension = "dimensions:\n  use: {values: [office, home], meaning: use of the building}\n"
+    path.write_text(text.replace(old, f"{dimension}{old}when: {{use: office}}, ", 1))
+    for on, kinds in ((date(2025, 6, 30), []), (date(2025, 7, 1), ["office"])):
+        ruleset = read_ruleset("quillhaven-2025-3", [tmp_path], on, NAMES)
+        own = [x for x in ruleset.limits if x.ruleset == "quillhaven-2025-3"]
+        words = {w for x in own for c in x.when if c.dimension == "use" for w in c.words}
+        assert sorted(words) == kinds
+
+
+def test_what_lies_beside_a_rule_set_and_cannot_be_read_is_left_alone(tmp_path: Path) -> None:
+    shutil.copytree(SHIPPED / "merrow-2025", tmp_path / "merrow-2025")
+    (tmp_path / "merrow-2025" / "old.csv").symlink_to("nowhere")
+    (tmp_path / "merrow-2025" / "folder.csv").mkdir()
+    assert read_ruleset("merrow-2025", [tmp_path], DAY, NAMES).limits
+
+
 def test_the_last_day_is_not_in_force(tmp_path: Path) -> None:
     shutil.copytree(CASES / "example-2024", tmp_path / "example-2024")
     path = tmp_path / "example-2024" / "ruleset.yaml"
@@ -369,12 +395,11 @@ def test_remarks_say_what_is_not_judged(tmp_path: Path) -> None:
 
 @pytest.mark.parametrize("folder", sorted(SHIPPED.iterdir()), ids=lambda f: f.name)
 def test_shipped_files_fit_the_schema_as_an_editor_reads_them(folder: Path) -> None:
-    jsonschema = pytest.importorskip("jsonschema")
     schema = json.loads(schema_text("rules"))
-    jsonschema.Draft202012Validator.check_schema(schema)
+    Draft202012Validator.check_schema(schema)
     data, problems = read_yaml((folder / "ruleset.yaml").read_bytes(), "ruleset.yaml")
     assert not problems
-    errors = list(jsonschema.Draft202012Validator(schema).iter_errors(data))
+    errors = list(Draft202012Validator(schema).iter_errors(data))
     assert not errors, errors[0].message
 
 

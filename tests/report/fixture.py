@@ -2,9 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
 from datetime import date
-from typing import Any, TypeVar
 
 from envcheck.model.judged import (
     Choice,
@@ -62,15 +60,7 @@ from envcheck.model.solved import (
     Step,
 )
 from envcheck.units import to_si
-
-Record = TypeVar("Record")
-
-
-def changed(record: Record, **more: Any) -> Record:
-    """A copy with other values, of a dataclass or a named tuple."""
-    renew = getattr(record, "_replace", None)
-    return renew(**more) if renew else replace(record, **more)  # type: ignore[type-var]
-
+from tests.changed import changed
 
 R_UNIT = "h*ft2*degF/Btu"
 U_UNIT = "Btu/(h ft2 F)"

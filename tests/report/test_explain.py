@@ -8,7 +8,8 @@ import pytest
 
 from envcheck.report import explain, registry
 from envcheck.report.view import ViewOptions
-from tests.report.fixture import JUDGED, PROJECT, RULESETS, changed
+from tests.changed import changed
+from tests.report.fixture import JUDGED, PROJECT, RULESETS
 
 EXPECTED = Path(__file__).parent / "expected"
 
@@ -36,11 +37,12 @@ def test_exact_text(subject: str, name: str, units: str, file: str) -> None:
 def test_an_assembly_that_nothing_uses_says_so() -> None:
     judged = changed(JUDGED, lines=())
     made = explain.build(PROJECT, RULESETS, judged, "W1")
-    text = registry.format_named("text").explain(made)  # type: ignore[misc]
+    text = registry.format_named("text").explain(made)
     assert "nothing is solved" in text
 
 
 def test_every_tag_and_assembly_can_be_explained() -> None:
+    assert set(explain.subjects(PROJECT)) == {*PROJECT.elements, *PROJECT.assemblies}
     for subject in explain.subjects(PROJECT):
         assert subject in written(subject)
 

@@ -21,7 +21,7 @@ SCHEMA = Path(view.__file__).parent / "schemas" / "report.schema.json"
 
 def made(name: str = "text", **options: object) -> View:
     details = registry.format_named(name).details
-    asked = ViewOptions(**{"details": details, **options})  # type: ignore[arg-type]
+    asked = ViewOptions(**{"details": details, **options})
     return view.build(PROJECT, RULESETS, JUDGED, asked)
 
 
@@ -45,11 +45,10 @@ def test_exact_text(name: str, file: str, options: dict[str, object]) -> None:
 
 
 @pytest.mark.parametrize("name", registry.names())
-def test_every_format_says_what_it_is_and_gives_the_same_bytes_twice(name: str) -> None:
+def test_every_format_says_what_it_is(name: str) -> None:
     form = registry.format_named(name)
     assert form.name == name
     assert form.title and form.extension
-    assert written(name) == written(name)
 
 
 def test_an_unknown_format_is_refused() -> None:
@@ -63,6 +62,7 @@ def test_all_formats_carry_the_same_figures(units: str) -> None:
     from_csv = list(csv.DictReader(io.StringIO(written("csv", units=units))))
     text, markdown = written("text", units=units), written("markdown", units=units)
     assert len(from_json) == len(from_csv) == len(JUDGED.lines)
+    table = markdown.replace("\\", "")
     for row, cells in zip(from_json, from_csv, strict=True):
         assert row["tag"] == cells["tag"]
         assert row["verdict"] == cells["verdict"]
@@ -70,13 +70,15 @@ def test_all_formats_carry_the_same_figures(units: str) -> None:
         assert values == ([row["value"]["text"]] if row["value"]["text"] else [])
         assert cells["room left [printed unit]"] == row["room"]["text"].removeprefix("+")
         assert cells["compared [printed unit]"] == row["compared"]["text"]
-        for page in (text, markdown.replace("\\", "")):
+        for page in (text, table):
             if row["verdict"] != "too_close" and row["value"]["text"]:
                 assert re.search(
                     rf"{row['tag']}\b.*{row['symbol']} {re.escape(row['value']['text'])}\b", page
                 )
             assert row["room"]["text"] in page
             assert row["limit"] in page
+        (own,) = re.findall(rf"^\| {row['tag']} .*\| +{row['symbol']} .*$", table, re.M)
+        assert row["room"]["text"] in own and row["limit"] in own
 
 
 def test_json_is_what_the_schema_says() -> None:

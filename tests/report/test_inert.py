@@ -6,7 +6,8 @@ import pytest
 
 from envcheck.report import registry, view
 from envcheck.report.inert import as_code, clean, for_csv, for_markdown
-from tests.report.fixture import JUDGED, PROJECT, RULESETS, changed
+from tests.changed import changed
+from tests.report.fixture import JUDGED, PROJECT, RULESETS
 
 HOSTILE = "=cmd|' /C calc'!A0 \x1b[31mred\x07 \u202egnp.exe <script>alert(1)</script> | **x** `y`"
 
@@ -23,7 +24,9 @@ def hostile(name: str) -> str:
 
 @pytest.mark.parametrize("name", registry.names())
 def test_no_control_or_direction_character_comes_through(name: str) -> None:
-    for char in hostile(name):
+    page = hostile(name)
+    assert "red" in page and "gnp.exe" in page
+    for char in page:
         assert char == "\n" or char.isprintable(), repr(char)
 
 

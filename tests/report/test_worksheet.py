@@ -42,9 +42,9 @@ def assert_repeatable(lines: tuple[worksheet.Line, ...]) -> None:
 @pytest.mark.parametrize("system", ["SI", "IP"])
 @pytest.mark.parametrize("solved", [STEEL, WOOD])
 def test_every_step_of_the_fixture_can_be_repeated(solved: object, system: str) -> None:
-    lines = worksheet.write(solved.steps, system)  # type: ignore[attr-defined]
+    lines = worksheet.write(solved.steps, system)
     assert_repeatable(lines)
-    value = numbers.in_system(solved.value, "u_factor", system)  # type: ignore[attr-defined]
+    value = numbers.in_system(solved.value, "u_factor", system)
     assert float(lines[-1].result) == pytest.approx(value, rel=1e-5)
 
 

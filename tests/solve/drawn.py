@@ -38,12 +38,12 @@ def solved(
     """Solve an assembly, or layers from outside to inside, by one method."""
     whole = of if isinstance(of, Assembly) else assembly(*of)
     weight = 0.5 if method == "weighted" else None  # stated, so that metal members are accepted
-    by: Setting = setting(method=method)._replace(weight=weight)._replace(**more)  # type: ignore[arg-type]
+    by: Setting = setting(method=method)._replace(weight=weight)._replace(**more)
     return solve(whole, by, under)
 
 
 def value(of: Assembly | Sequence[Layer], method: str, **more: object) -> float:
-    found = solved(of, method, **more).value  # type: ignore[arg-type]
+    found = solved(of, method, **more).value
     assert found is not None
     return found
 

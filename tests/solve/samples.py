@@ -102,7 +102,7 @@ def framed(
 
 
 def assembly(*layers: Layer, kind: str = "layers", **more: object) -> Assembly:
-    return Assembly("T1", kind, "test", "A-1", 1, layers=layers, **more)  # type: ignore[arg-type]
+    return Assembly("T1", kind, "test", "A-1", 1, layers=layers, **more)
 
 
 def assert_recomputes(steps: Iterable[Step]) -> None:

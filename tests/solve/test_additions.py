@@ -27,7 +27,7 @@ ROOF = TaperedLayer("tapered", "PIR", 1, PIR, 0.1, 0.2, "rectangle")
 
 
 def through(layer: str, penetration: float | None = None, of: object = STEEL) -> Fasteners:
-    return Fasteners(layer, of, 0.0048, 5.0, penetration, 1)  # type: ignore[arg-type]
+    return Fasteners(layer, of, 0.0048, 5.0, penetration, 1)
 
 
 def test_tapered_roof_by_hand() -> None:

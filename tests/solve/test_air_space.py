@@ -78,9 +78,9 @@ def test_still_air_rules_thin_spaces_and_convection_thick_ones() -> None:
 def test_numpy_arrays_give_what_floats_give() -> None:
     depths = np.array([0.005, 0.02, 0.3])
     for direction in ("up", "horizontal", "down"):
-        found = air_space_iso6946(depths, direction, 0.9, 0.05)  # type: ignore[arg-type]
+        found = air_space_iso6946(depths, direction, 0.9, 0.05)
         each = [air_space_iso6946(float(d), direction, 0.9, 0.05) for d in depths]
-        assert list(found) == pytest.approx(each)  # type: ignore[call-overload]
+        assert list(found) == pytest.approx(each)
 
 
 @given(st.floats(0.002, 0.3), st.floats(0.03, 1.0), st.floats(0.03, 1.0))

@@ -11,6 +11,7 @@ from hypothesis import strategies as st
 from envcheck.model.project import (
     AirSpaceLayer,
     Bridge,
+    Extra,
     Fasteners,
     Fill,
     Layer,
@@ -68,6 +69,40 @@ def test_well_ventilated_space_by_both_conventions(cladding: str, film: float) -
     assert_recomputes(found.steps)
 
 
+def test_fasteners_outside_a_ventilated_space_add_nothing() -> None:
+    foam = plane("foam", PIR, 0.1)
+    layers = (foam, VENTED, plane("PIR", PIR, 0.04))
+    by = Conventions(fasteners="iso6946")
+    screws = SCREWS._replace(layer="foam")
+    bare = solve(assembly(*layers), setting(), by)
+    found = solve(assembly(*layers, fasteners=(screws,)), setting(), by)
+    assert found.value == bare.value
+    assert any("outside of what counts" in said for said in found.assumptions)
+
+
+def test_two_tapered_layers_are_not_decided() -> None:
+    found = solved([ROOF, ROOF._replace(title="second")], "series")
+    assert found.value is None
+    assert "one tapered layer: 'PIR' and 'second'" in found.missing[0]
+
+
+def test_a_profile_takes_no_shares() -> None:
+    """Tracks as a share beside drawn steel would count nothing: said, not dropped."""
+    track = Extra("track", 0.1, STEEL, 0.003)
+    found = solved([BOARD, STEEL_STUDS._replace(extras=(track,))], "isothermal_planes")
+    assert found.value is None
+    assert "linear bridges" in found.missing[0]
+
+
+@pytest.mark.parametrize("method", ["parallel_path", "weighted"])
+def test_metal_that_the_rule_set_counts_zero_stands_in_no_way(method: str) -> None:
+    girts = STEEL_STUDS._replace(title="girts", crosses_insulation=True, orientation="horizontal")
+    zero = Conventions(crossed_insulation="zero")
+    found = solved([girts, BOARD, STUDS], method, zero, weight=None)
+    alone = solved([BOARD, STUDS], method, weight=None)
+    assert found.value == pytest.approx(alone.value)
+
+
 def test_the_innermost_of_two_ventilated_spaces_counts() -> None:
     found = value([TILES, VENTED, BOARD, VENTED, BOARD], "series")
     assert found == pytest.approx(1 / (0.13 + 0.018 / 0.13 + 0.13))
@@ -92,7 +127,7 @@ ISO = Conventions(fasteners="iso6946")
 
 
 def porch(**more: object) -> Solved:
-    roof = assembly(ROOF, SLAB, **more)  # type: ignore[arg-type]
+    roof = assembly(ROOF, SLAB, **more)
     return solve(roof, setting("up", inside_film=0.10), ISO, (FEET,), 20.0)
 
 
@@ -153,7 +188,7 @@ def test_two_dimensional_decides_by_the_bracket() -> None:
     found = solved([BOARD, STEEL_STUDS], "two_dimensional")
     assert found.decided_by_bracket
     assert found.low is not None
-    assert found.low < found.high == pytest.approx(found.value)  # type: ignore[operator]
+    assert found.low < found.high == pytest.approx(found.value)
     assert "parallel paths to isothermal planes" in found.bracket_note
 
 
@@ -223,7 +258,7 @@ def test_value_or_missing_by_every_method(
     method: str, layers: tuple[Layer, ...], films: float
 ) -> None:
     under = {"outside_film": films, "inside_film": films, "cladding_film": films}
-    found = solved(layers, method, **under)  # type: ignore[arg-type]
+    found = solved(layers, method, **under)
     assert (found.value is None) == bool(found.missing)
     assert all(found.missing)
     if found.decided_by_bracket and found.value is not None:

@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
-
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
@@ -224,7 +222,10 @@ def test_every_prescribable_method_is_known_to_the_rules() -> None:
 
 
 def test_innermost_well_ventilated_space() -> None:
-    closed: Callable[[str], AirSpaceLayer] = lambda how: VENTED._replace(ventilation=how)  # noqa: E731
+
+    def closed(how: str) -> AirSpaceLayer:
+        return VENTED._replace(ventilation=how)
+
     assert ventilated_at((TILES, BOARD)) is None
     assert ventilated_at((TILES, closed("slightly"), BOARD, closed("unventilated"))) is None
     assert ventilated_at((TILES, VENTED, BOARD)) == 1

@@ -82,7 +82,7 @@ def test_bracket_is_that_of_the_wall_as_drawn(convention: str) -> None:
     ],
 )
 def test_what_is_crossed(layer: object, crossed: bool) -> None:
-    assert is_crossed(layer) is crossed  # type: ignore[arg-type]
+    assert is_crossed(layer) is crossed
 
 
 def test_wood_battens_through_insulation_are_drawn() -> None:

@@ -69,7 +69,7 @@ def clerestory(polyiso: float, fill: Fill) -> list[Layer]:
 )  # fmt: skip
 def test_wood_2x6(polyiso: float, fill: Fill, by_paths: float, by_planes: float) -> None:
     layers = clerestory(polyiso, fill)
-    found = solved(layers, "parallel_path", **HANDBOOK)  # type: ignore[arg-type]
+    found = solved(layers, "parallel_path", **HANDBOOK)
     assert found.value is not None
     assert found.value / U_IP == pytest.approx(by_paths, rel=1e-6)
     assert found.low == pytest.approx(found.value)

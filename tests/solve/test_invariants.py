@@ -139,7 +139,7 @@ def test_the_worksheet_gives_the_value(layers: list[Layer], method: str) -> None
 def test_splitting_a_plane_layer_changes_nothing(
     layers: list[Layer], at: int, part: float, of: object
 ) -> None:
-    whole = plane("board", of, 0.1)  # type: ignore[arg-type]
+    whole = plane("board", of, 0.1)
     first, rest = (whole._replace(thickness=0.1 * p) for p in (part, 1 - part))
     for method in METHODS:
         one = value([*layers[:at], whole, *layers[at:]], method)
@@ -214,7 +214,7 @@ def test_shares_sum_to_one(wood: FramedLayer, units: object) -> None:
     shares = area_shares(wood)
     assert shares.cavity + shares.member + sum(shares.extras) == pytest.approx(1.0)
     assert min(shares.cavity, shares.member) > 0
-    assert sum(column_shares(units).values()) == pytest.approx(1.0)  # type: ignore[arg-type]
+    assert sum(column_shares(units).values()) == pytest.approx(1.0)
 
 
 @few
@@ -224,7 +224,7 @@ def test_cells_cover_their_layer(layers: list[Layer]) -> None:
         assert len(block.cells) == len(block.depths)
         assert {len(row) for row in block.cells} == {len(block.widths)}
         assert min(*block.widths, *block.depths) > 0
-        assert sum(block.depths) == pytest.approx(layer.thickness)  # type: ignore[union-attr]
+        assert sum(block.depths) == pytest.approx(layer.thickness)
         if block.repeat:
             assert isinstance(layer, FramedLayer)
             assert sum(block.widths) == pytest.approx(layer.member.spacing)

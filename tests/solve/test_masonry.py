@@ -51,7 +51,7 @@ SHELL, WEB, CORE = 1.25 / K, 5.125 / K, 5.125 / 0.31
 )
 def test_block_by_planes(block: MasonryLayer, outside: float, cell: float, printed: float) -> None:
     layers = [plane("XPS", XPS, outside * INCH), block] if outside else [block]
-    found = solved(layers, "isothermal_planes", **FILMS)  # type: ignore[arg-type]
+    found = solved(layers, "isothermal_planes", **FILMS)
     by_hand = 1 / (0.85 + 5 * outside + 2 * SHELL + 1 / (0.2 / WEB + 0.8 / cell))
     assert found.value is not None
     assert found.value / U_IP == pytest.approx(by_hand, rel=1e-9)
@@ -61,7 +61,7 @@ def test_block_by_planes(block: MasonryLayer, outside: float, cell: float, print
 
 
 def test_parallel_paths_flatter_and_are_refused() -> None:
-    found = solved([FILLED], "parallel_path", **FILMS)  # type: ignore[arg-type]
+    found = solved([FILLED], "parallel_path", **FILMS)
     assert found.value is None
     assert found.missing == (
         "a method other than parallel paths, which are not accepted as a result for masonry units "

@@ -139,7 +139,7 @@ def block(**changes: object) -> MasonryLayer:
     layer = MasonryLayer(
         "masonry", "block", 1, 0.19, unit, 0.03, 0.2, Fill(), None, 0.0, 0.0, None, 0.17
     )
-    return changed(layer, **changes)  # type: ignore[arg-type]
+    return changed(layer, **changes)
 
 
 def test_masonry_counts_its_solid_share() -> None:
@@ -176,6 +176,12 @@ def test_developed_width_of_a_stud() -> None:
     found = sheet_per_area(STUD, 16 * INCH)
     expected = (0.092075 + 2 * 0.041275 + 2 * 0.0127) * 0.00114554 / 0.4064
     assert found == pytest.approx(expected)
+
+
+def test_developed_width_of_a_hat() -> None:
+    # Crown 65, webs 2 x 50, brims 2 x 12 mm of 1 mm sheet at 600 mm: 189 mm / 600.
+    hat = Profile("hat", 0.05, 0.065, 0.001, 0.012, "hat")
+    assert sheet_per_area(hat, 0.6) == pytest.approx(0.189 * 0.001 / 0.6)
 
 
 def test_stated_resistance_without_a_material_has_no_known_weight() -> None:

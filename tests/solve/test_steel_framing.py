@@ -74,7 +74,7 @@ def test_cavity_factor_by_hand(xps: float, printed: float) -> None:
 
 def test_bracket_is_that_of_the_drawn_studs() -> None:
     found = solved([GYPSUM, STUDS, GYPSUM], "cavity_factor", FACTORS, **FILMS)
-    drawn = solved([GYPSUM, STUDS, GYPSUM], "two_dimensional", **FILMS)  # type: ignore[arg-type]
+    drawn = solved([GYPSUM, STUDS, GYPSUM], "two_dimensional", **FILMS)
     assert (found.low, found.high) == (drawn.low, drawn.high)
     assert found.low is not None
     assert found.high is not None
@@ -133,7 +133,7 @@ def test_missing_row_names_label_and_spacing(
 )
 def test_how_near_a_row_must_be(changes: dict[str, object], found: bool) -> None:
     thin = C_STUD._replace(web=3.3 * INCH)
-    layer = STUDS._replace(**{"member": MEMBER, **changes})  # type: ignore[arg-type]
+    layer = STUDS._replace(**{"member": MEMBER, **changes})
     layer = layer._replace(member=layer.member._replace(profile=thin))
     missing = solved([layer], "cavity_factor", FACTORS).missing
     assert bool(missing) is not found

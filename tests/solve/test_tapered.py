@@ -22,7 +22,7 @@ PIR = material("PIR", 0.023, "insulation")
 
 
 def layer(of: object, least: float, greatest: float, shape: str = "rectangle") -> TaperedLayer:
-    return TaperedLayer("tapered", "insulation", 1, of, least, greatest, shape)  # type: ignore[arg-type]
+    return TaperedLayer("tapered", "insulation", 1, of, least, greatest, shape)
 
 
 def at_least(resistance: float) -> Decision:
@@ -63,7 +63,7 @@ def test_mean_thickness_is_the_mean_of_the_shape(shape: str) -> None:
 def test_arrays_give_what_floats_give(shape: str) -> None:
     function: Callable[..., object] = SHAPES[shape].u_factor
     found = function(np.array([0.5, 1.0]), np.array([4.0, 2.0]))
-    assert list(found) == pytest.approx([function(0.5, 4.0), function(1.0, 2.0)])  # type: ignore[call-overload]
+    assert list(found) == pytest.approx([function(0.5, 4.0), function(1.0, 2.0)])
 
 
 # Hand sums: U = ln(1 + R1/R0) / R1 with per inch over R0 = .78 h ft2 F/Btu.

@@ -38,7 +38,7 @@ def test_by_hand() -> None:
     # W = 1.625 + 2 x 0.5 = 2.625 in, share .16406. Steel k 50 W/(m K) = 346.7 Btu in/(h ft2 F).
     # Web row 3.4098 in: .0451/2.625 = .01718 of R-.009835 beside: R .5481; flanges .0004.
     # RA = .17 + .45 + .5485 + .45 + .68 = 2.2985; RB = 14.75; U = .07138 + .05667 = .12805.
-    found = solved([GYPSUM, STUDS, GYPSUM], "zone", **FILMS)  # type: ignore[arg-type]
+    found = solved([GYPSUM, STUDS, GYPSUM], "zone", **FILMS)
     assert found.value is not None
     assert found.value / U_IP == pytest.approx(0.12805, abs=2e-5)
     assert_recomputes(found.steps)

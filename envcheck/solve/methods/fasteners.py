@@ -85,12 +85,13 @@ def fastener_correction(
 
 
 def correct_for_fasteners(
-    assembly: Assembly, r_total: float, conventions: Conventions
+    assembly: Assembly, r_total: float, conventions: Conventions, outside: int = 0
 ) -> Correction:
     """Correct for all fasteners of an assembly by the rule set's convention.
 
     r_total: of the wall as drawn, films included and tapered layers at their least thickness,
-    m2 K/W. A tapered layer is counted here at its mean thickness, in R1 and RT.
+    m2 K/W. outside: how many layers lie outside of a well-ventilated cavity; fasteners through
+    them add nothing. A tapered layer is counted here at its mean thickness, in R1 and RT.
     """
     fasteners = assembly.fasteners
     if not fasteners:
@@ -101,7 +102,9 @@ def correct_for_fasteners(
         return Correction(0.0, assumptions=(said,))
     if conventions.fasteners == "chi":
         return _by_chi(assembly)
-    tapered = [layer for layer in assembly.layers if isinstance(layer, TaperedLayer)]
+    drawn = assembly.layers[outside:]
+    left_out = {layer.title for layer in assembly.layers[:outside]}
+    tapered = [layer for layer in drawn if isinstance(layer, TaperedLayer)]
     at_mean = r_total + sum(
         (mean_thickness(layer) - layer.least) / layer.material.conductivity for layer in tapered
     )
@@ -109,8 +112,11 @@ def correct_for_fasteners(
     missing: list[str] = []
     assumptions = [AT_MEAN] if tapered else []
     for number, one in enumerate(fasteners, 1):
-        insulation = _insulation(assembly.layers, one.layer)
-        if one.material.conductivity < LEAST_CONDUCTIVITY:
+        insulation = _insulation(drawn, one.layer)
+        if one.layer in left_out:
+            words = f"fasteners through {one.layer} lie outside of what counts: no correction"
+            assumptions.append(words)
+        elif one.material.conductivity < LEAST_CONDUCTIVITY:
             words = f"fasteners through {one.layer} conduct less than 1 W/(m K): no correction"
             assumptions.append(words)
         elif insulation is None:

@@ -8,7 +8,7 @@ from envcheck.model.project import FramedLayer
 from envcheck.model.solved import Block, Resistor
 from envcheck.solve.cells import material_cell, part_of
 from envcheck.solve.methods.fills import fill_resistor
-from envcheck.solve.registry import Context, Method
+from envcheck.solve.registry import Context, Method, NotDecided
 from envcheck.solve.section import grid, profile_pieces
 
 
@@ -75,6 +75,11 @@ def pattern_of(layer: FramedLayer, symbol: str) -> str:
 def _draw_profile(layer: FramedLayer, fill: Resistor, context: Context) -> Block:
     profile, spacing = layer.member.profile, layer.member.spacing
     assert profile is not None and spacing is not None, "the reader asks for both"
+    if layer.extras or layer.share is not None:
+        raise NotDecided(
+            f"{layer.title!r} without shares of area: a steel profile stands at a spacing; "
+            "state tracks and plates as linear bridges"
+        )
     pieces = profile_pieces(profile, layer.thickness, spacing)
     widths, depths, covered = grid(pieces, spacing, layer.thickness)
     rows = []

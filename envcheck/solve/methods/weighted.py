@@ -28,8 +28,8 @@ def decide_weighted(wall: Wall) -> Decision:
     Errors: NotDecided for metal members where the rule set states no weight of its own, since
     ISO 6946 excludes insulation bridged by metal.
     """
-    for layer in wall.layers:
-        metal = isinstance(layer, FramedLayer) and is_metal(layer)
+    for layer, block in zip(wall.layers, wall.blocks, strict=True):
+        metal = isinstance(layer, FramedLayer) and is_metal(layer) and block.pattern
         if metal and wall.setting.weight is None:
             raise NotDecided(
                 f"a method for metal members ({layer.title!r}): ISO 6946 excludes them from the "

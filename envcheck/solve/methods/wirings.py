@@ -21,8 +21,8 @@ def decide_series(wall: Wall) -> Decision:
 
 def decide_parallel_path(wall: Wall) -> Decision:
     """Wire by parallel paths; refused as a result where metal or cells make it wrong."""
-    for layer in wall.layers:
-        if isinstance(layer, FramedLayer) and is_metal(layer):
+    for layer, block in zip(wall.layers, wall.blocks, strict=True):
+        if isinstance(layer, FramedLayer) and is_metal(layer) and block.pattern:
             raise NotDecided(f"{REFUSED} steel framing ({layer.title!r})")
         if isinstance(layer, MasonryLayer) and 0 < layer.web_share < 1:
             raise NotDecided(f"{REFUSED} masonry units with cells ({layer.title!r})")

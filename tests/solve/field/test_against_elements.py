@@ -8,13 +8,12 @@ from __future__ import annotations
 
 import numpy as np
 import pytest
+import skfem
 
 from envcheck.solve.field.bound import bound
 from envcheck.solve.field.section import ModelError, Section
 from tests.solve.field.sections import BLOCK, CHEEK, WOOD, c_stud
 from tests.solve.field.test_bound import random_section
-
-skfem = pytest.importorskip("skfem")
 
 
 def lines(sizes: tuple[float, ...], pieces: int) -> np.ndarray:
@@ -39,15 +38,15 @@ def by_elements(of: Section, pieces: int) -> float:
     conductivity = np.array(of.conductivities)[row, column][:, None]
 
     @skfem.BilinearForm
-    def conduction(u, v, w):  # type: ignore[no-untyped-def]
+    def conduction(u, v, w):
         return w.k * (u.grad[0] * v.grad[0] + u.grad[1] * v.grad[1])
 
     @skfem.BilinearForm
-    def film(u, v, w):  # type: ignore[no-untyped-def]
+    def film(u, v, w):
         return u * v / w.resistance
 
     @skfem.LinearForm
-    def air(v, w):  # type: ignore[no-untyped-def]
+    def air(v, w):
         return v / w.resistance
 
     depth = sum(of.depths)

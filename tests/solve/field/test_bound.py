@@ -195,7 +195,7 @@ def test_iso_10211_case_2() -> None:
 def test_what_cannot_be_meant_is_refused(change: dict[str, object], words: str) -> None:
     plain = Section((0.1, 0.1), (0.1, 0.1), ((1.0, 1.0), (1.0, 1.0)), 0.04, 0.13)
     with pytest.raises(ModelError, match=words):
-        bound(plain._replace(**change))  # type: ignore[arg-type]
+        bound(plain._replace(**change))
 
 
 def test_a_thin_steel_stud_is_quick() -> None:

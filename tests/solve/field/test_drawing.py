@@ -7,8 +7,10 @@ from pathlib import Path
 import pytest
 
 from envcheck.model.layers import Layer
+from envcheck.model.project import Bridge
 from envcheck.model.solved import Solved
 from envcheck.pipeline import run
+from envcheck.solve.assembly import solve
 from envcheck.solve.bracket import narrow
 from envcheck.solve.field.drawing import NotDrawn, section_of
 from tests.solve.drawn import PLAIN, wall_of
@@ -19,8 +21,6 @@ ROOT = Path(__file__).parent.parent.parent.parent
 
 
 def narrowed(*layers: Layer) -> Solved:
-    from envcheck.solve.assembly import solve
-
     whole = assembly(*layers)
     by = setting(method="two_dimensional")
     return narrow(whole, by, PLAIN, solve(whole, by, PLAIN))
@@ -52,10 +52,24 @@ def test_a_closer_bound_takes_the_place_of_the_first() -> None:
     whole, first = assembly(*CHEEK), narrowed(*CHEEK)
     closer = narrow(whole, by, PLAIN, first, 1e-4)
     assert closer.value is not None
-    assert closer.value <= first.high  # type: ignore[operator]
+    assert closer.value <= first.high
     for steps in (closer.steps, closer.hand_check):
         (stated,) = [step for step in steps if step.symbol == "U_high"]
         assert stated.value == closer.value
+
+
+def test_bridges_stay_added_where_the_value_is_not_known() -> None:
+    """Hand sum: .1 W/K x 2 /m2 = .2 W/(m2 K) on both bounds, whatever else is missing."""
+    known = Bridge("point", "brackets", 0.1, 2.0, True, "test", "test", 1)
+    unsure = known._replace(title="anchors", evidence="assumed")
+    by = setting(method="two_dimensional")
+    plain = assembly(*CHEEK)
+    bridged = plain._replace(bridges=(known, unsure))
+    without = narrow(plain, by, PLAIN, solve(plain, by, PLAIN))
+    found = narrow(bridged, by, PLAIN, solve(bridged, by, PLAIN))
+    assert found.value is None
+    assert found.low == pytest.approx(without.low + 0.2)
+    assert found.high == pytest.approx(without.high + 0.2)
 
 
 def test_demo_lines_that_hang_on_the_method() -> None:

@@ -8,9 +8,7 @@ import pytest
 
 from envcheck.errors import InputError
 from envcheck.pipeline import run
-
-ROOT = Path(__file__).parent.parent.parent
-PERMIT = (ROOT / "projects/quillhaven-library/permit.yaml").read_text(encoding="utf-8")
+from tests.projects.test_unknowns import PERMIT, ROOT
 
 
 @pytest.mark.parametrize(
