@@ -10,8 +10,6 @@ from envcheck.model.patterns import matches
 from envcheck.model.project import Element, Project, Surface
 from envcheck.model.ruleset import Averaging, Limit, RuleSet
 
-CLOSES_WITHIN = 0.005
-"""Share of the gross area by which parts may miss it; drawings are dimensioned to the inch."""
 COMPARED = ("pass", "fail")
 """Verdicts that a comparison gives, and that a mean may replace."""
 RATIO_PARTS = {
@@ -33,11 +31,6 @@ def closings(project: Project) -> tuple[Closing, ...]:
         missing = surface.gross_area - sum(area for _, area in parts)
         found.append(Closing(surface.name, surface.sheet, surface.gross_area, parts, missing))
     return tuple(found)
-
-
-def closes(closing: Closing) -> bool:
-    """Whether gross = net + openings within the tolerance."""
-    return abs(closing.missing) <= CLOSES_WITHIN * closing.gross
 
 
 def ratios(project: Project, ruleset: RuleSet, categories: Mapping[str, str]) -> tuple[Ratio, ...]:

@@ -15,7 +15,7 @@ from envcheck.model.project import Assembly, Element, Project
 from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Properties, Solved
 
-SOLVED_METRICS = ("U_assembly", "U_product", "C_factor", "F_factor", "R_total")
+SOLVED_METRICS = ("U_assembly", "U_product", "C_factor", "F_factor")
 """Metrics that need a solution; the others are read off the product."""
 HEAT_FLOW = (*SOLVED_METRICS, "R_insulation")
 """Metrics that limit the heat flow: a table that gives none of them leaves the element open."""
@@ -120,7 +120,7 @@ def exit_status(judged: Judged) -> int:
     deciding = [line for line in judged.lines if line.decides]
     if any(line.verdict == "fail" for line in deciding):
         return OVER
-    unsettled = any(f.severity == "E" and not f.answered for f in judged.findings)
+    unsettled = any(finding.unsettled for finding in judged.findings)
     return OPEN if unsettled or any(line.open for line in deciding) else COMPLIES
 
 

@@ -17,8 +17,6 @@ from envcheck.model.patterns import closeness, in_words
 from envcheck.model.project import Element, Project
 from envcheck.model.ruleset import Limit, RuleSet
 
-__all__ = ["MissingFact", "Outcome", "Selection", "select"]
-
 KEPT = 8
 """Rule sets whose index is kept."""
 
@@ -35,8 +33,10 @@ class _Index:
     by_zone: dict[str, list[Limit]] = field(default_factory=dict)
     groups: dict[tuple[tuple[str, ...], str], tuple[Group, ...]] = field(default_factory=dict)
     dimensions: dict[tuple[tuple[str, ...], str], tuple[str, ...]] = field(default_factory=dict)
-    zones: dict[int, tuple[Project, ZoneFound]] = field(default_factory=dict)
+    zone: tuple[Project, ZoneFound] | None = None
+    """Of the project asked for last."""
     done: dict[tuple[object, ...], Selection] = field(default_factory=dict)
+    """What was selected for that project."""
 
 
 _INDEXES: dict[int, _Index] = {}
@@ -63,7 +63,7 @@ def select(
         name: fact_of(name, element, project, derived_facts or {}, ruleset.dimensions[name])
         for name in index.dimensions[key]
     }
-    memo = (id(project), category, tuple(facts.items()))
+    memo = (category, tuple(facts.items()))
     found = index.done.get(memo)
     if found is None:
         found = _selection(index, zone, category, facts, project)
@@ -83,12 +83,10 @@ def _index(ruleset: RuleSet) -> _Index:
 
 
 def _zone(index: _Index, project: Project) -> ZoneFound:
-    known = index.zones.get(id(project))
-    if known is None or known[0] is not project:
+    if index.zone is None or index.zone[0] is not project:
         index.done.clear()
-        index.zones.clear()
-        known = index.zones[id(project)] = (project, find_zone(index.ruleset, project.site))
-    return known[1]
+        index.zone = (project, find_zone(index.ruleset, project.site))
+    return index.zone[1]
 
 
 def _lay_out(index: _Index, heads: tuple[str, ...], category: str) -> None:

@@ -16,7 +16,7 @@ METRICS = {
     "C_factor": "C-factor",
     "F_factor": "F-factor",
     "R_insulation": "R-value of the insulation",
-    "R_total": "total R-value",
+    "VT": "visible transmittance",
 }
 """Metrics in words; the others are words already."""
 INSULATION = "insulation"
@@ -84,11 +84,6 @@ class Selection(NamedTuple):
         main = [o.metric for o in self.outcomes if o.path != INSULATION]
         return tuple(dict.fromkeys(main or [o.metric for o in self.outcomes]))
 
-    @property
-    def limits(self) -> dict[tuple[str, str], Limit]:
-        """The limits found, by metric and path."""
-        return {(o.metric, o.path): o.limit for o in self.outcomes if o.limit is not None}
-
     def outcome(self, metric: str, path: str = "") -> Outcome | None:
         """Outcome of a metric; without a path that of its main path."""
         if path:
@@ -116,21 +111,3 @@ class Selection(NamedTuple):
             what = METRICS.get(metric, metric)
             return self.why or f"no row of the rule set gives {what} for {in_words(self.category)}"
         return outcome.why
-
-    @property
-    def _stopped_by(self) -> str:
-        return next((m for m in self.metrics if self.limit(m) is None), "")
-
-    @property
-    def verdict(self) -> str:
-        """Verdict of the first metric that has no limit; empty where all have one."""
-        return "" if self._all_found else self.verdict_of(self._stopped_by)
-
-    @property
-    def reason(self) -> str:
-        """Why the first metric that has no limit has none."""
-        return "" if self._all_found else self.reason_of(self._stopped_by)
-
-    @property
-    def _all_found(self) -> bool:
-        return bool(self.outcomes) and not self._stopped_by

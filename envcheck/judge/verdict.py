@@ -14,7 +14,7 @@ from envcheck.judge.before import (
 )
 from envcheck.judge.compare import compare, other_ways, own_term
 from envcheck.judge.paths import insulation_of, insulation_path
-from envcheck.judge.selection import INSULATION
+from envcheck.judge.selection import INSULATION, METRICS
 from envcheck.model.judged import Choice, Comparison, Line, PathResult
 from envcheck.model.project import ExceptionClaim
 from envcheck.model.ruleset import Limit
@@ -23,14 +23,6 @@ from envcheck.model.solved import Solved
 R_INSULATION = "R_insulation"
 OUTCOMES = {"pass": "within its limit", "fail": "over its limit"}
 """What a claimed line is without its claim, in words; anything else is not decided."""
-METRICS = {
-    "U_assembly": "the U-factor",
-    "U_product": "the U-factor of the whole product",
-    "C_factor": "the C-factor",
-    "F_factor": "the F-factor",
-    "R_total": "the total R-value",
-    "VT": "the visible transmittance",
-}
 PATH_STATES = {"not_available": " not available", "not_decided": " not decided"}
 
 
@@ -99,7 +91,7 @@ def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Lin
         return _by_bracket(case, line, limit, solved)
     value = _value(case, limit, solved)
     if missing is None and value is None:
-        missing = f"missing: {METRICS.get(limit.metric, limit.metric)} of {case.assembly.id}"
+        missing = f"missing: {_named(limit.metric)} of {case.assembly.id}"
     labels = _labels(case, limit)
     if limit.metric == R_INSULATION:
         return _by_labels(line, labels)
@@ -138,6 +130,10 @@ def _outcome(
     return "fail", reasons
 
 
+def _named(metric: str) -> str:
+    return f"the {METRICS[metric]}" if metric in METRICS else metric
+
+
 def _value(case: Case, limit: Limit, solved: Solved | None) -> float | None:
     """The number that the limit speaks of, SI."""
     rated = case.assembly.rated
@@ -147,7 +143,7 @@ def _value(case: Case, limit: Limit, solved: Solved | None) -> float | None:
         return rated.visible_transmittance if rated is not None else None
     if solved is None or solved.value is None:
         return None
-    return 1.0 / solved.value if limit.metric == "R_total" else solved.value
+    return solved.value
 
 
 def _labels(case: Case, limit: Limit) -> PathResult | None:
@@ -225,7 +221,7 @@ def _with_bracket(case: Case, line: Line, limit: Limit, solved: Solved | None) -
         flags.append("rounding")
     if comparison.compared == comparison.limit:
         flags.append("at_limit")
-    if solved is None or solved.low is None or solved.high is None or limit.metric == "SHGC":
+    if solved is None or solved.low is None or solved.high is None:
         return line._replace(flags=tuple(flags))
     term = own_term(limit)
     low = compare(solved.low, term, limit, case.ruleset)

@@ -120,6 +120,11 @@ class Finding(NamedTuple):
     title: str = ""
     """What the check looks for, in a few words."""
 
+    @property
+    def unsettled(self) -> bool:
+        """Whether it counts as open: it stops, and the project does not answer it."""
+        return self.severity == "E" and not self.answered
+
 
 class Ratio(NamedTuple):
     """An area ratio with its parts, m2."""
@@ -149,6 +154,10 @@ class Mean(NamedTuple):
     """What the individual cap says, in words."""
 
 
+CLOSES_WITHIN = 0.005
+"""Share of the gross area by which parts may miss it; drawings are dimensioned to the inch."""
+
+
 class Closing(NamedTuple):
     """One surface's areas: gross = net + openings, m2."""
 
@@ -157,6 +166,11 @@ class Closing(NamedTuple):
     gross: float
     parts: tuple[tuple[str, float], ...]
     missing: float
+
+    @property
+    def closes(self) -> bool:
+        """Whether gross = net + openings within the tolerance."""
+        return abs(self.missing) <= CLOSES_WITHIN * self.gross
 
 
 @dataclass(frozen=True, slots=True)
@@ -170,5 +184,3 @@ class Judged:
     closings: tuple[Closing, ...]
     remarks: tuple[str, ...]
     """Trade-offs offered and not computed, drafts that do not decide ..."""
-    wanted: tuple[tuple[str, str], ...] = ()
-    """(assembly, setting key) whose bracket still holds the limit."""

@@ -6,7 +6,6 @@ at once; nothing built after a problem leaves this folder.
 
 from __future__ import annotations
 
-import re
 from collections.abc import Iterable
 from datetime import date
 from pathlib import Path
@@ -15,6 +14,7 @@ from typing import Any
 from envcheck.errors import Problem, did_you_mean, one_of, problem
 from envcheck.model.names import Names
 from envcheck.model.project import Material
+from envcheck.read.dates import read_date
 from envcheck.read.materials import library_material, material_ids
 from envcheck.read.yaml_reader import Entry
 from envcheck.units import UNITS, UnitError, parse
@@ -22,7 +22,6 @@ from envcheck.units import UNITS, UnitError, parse
 NAN = float("nan")
 MATCHES = 1e-6
 """Lengths closer than this, m, are taken as equal."""
-_DATE = re.compile(r"[0-9]{4}-[0-9]{2}-[0-9]{2}")
 
 
 class Context:
@@ -97,9 +96,7 @@ class Context:
         if text is None:
             return None
         try:
-            if not _DATE.fullmatch(text):
-                raise ValueError
-            return date.fromisoformat(text)
+            return read_date(text)
         except ValueError:
             self.add(
                 "bad-date", entry.lines[key], found=text, expected="a day of the calendar", key=key

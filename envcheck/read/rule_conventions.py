@@ -5,7 +5,6 @@ from __future__ import annotations
 from collections.abc import Mapping
 from typing import Any, NamedTuple
 
-from envcheck import units
 from envcheck.errors import Problem, did_you_mean, one_of, problem
 from envcheck.model.names import Names
 from envcheck.model.patterns import fits_any
@@ -165,7 +164,8 @@ def _known(
 ) -> None:
     if name in known:
         return
-    file, line = _place(source, at)
+    document = source.origin[str(at[0])]
+    file, line = document.name, document.line("conventions", *at)
     fix = did_you_mean(name, known)
     fill = {"found": name, "expected": one_of(known), "fix": fix, "name": name}
     fill["hint"] = fix or "use one of the known names"
@@ -237,15 +237,5 @@ def _number(
 def _parse(
     source: Source, text: str, quantity: str, at: tuple[str | int, ...], problems: list[Problem]
 ) -> float | None:
-    try:
-        return units.parse(text, quantity)
-    except units.UnitError as error:
-        file, line = _place(source, at)
-        fill = {"found": error.found, "expected": error.expected, "fix": error.fix}
-        problems.append(problem("unreadable-figure", file, line, **fill))
-        return None
-
-
-def _place(source: Source, at: tuple[str | int, ...]) -> tuple[str, int]:
     document = source.origin[str(at[0])]
-    return document.name, document.line("conventions", *at)
+    return document.figure(text, quantity, ("conventions", *at), problems)

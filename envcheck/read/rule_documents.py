@@ -10,14 +10,15 @@ from hashlib import sha256
 from pathlib import Path
 from typing import Any, NamedTuple
 
+from envcheck import units
 from envcheck.errors import InputError, Problem, did_you_mean, one_of, problem
+from envcheck.read.dates import read_date
 from envcheck.read.files import read_bytes
 from envcheck.read.schema import check
 from envcheck.read.yaml_reader import Entry, line_of, read_yaml
 
 MEANING = "ruleset.yaml"
 _ID = re.compile(r"[a-z0-9][a-z0-9-]*")
-_DATE = re.compile(r"\d{4}-\d\d-\d\d")
 _NOTHING = ("", "null", "~")
 
 
@@ -46,11 +47,18 @@ class Document(NamedTuple):
     def date(self, *path: str) -> date | None:
         """Date at a path. Errors: ValueError for what is no date."""
         text = self.get(*path)
-        if not isinstance(text, str):
+        return read_date(text) if isinstance(text, str) else None
+
+    def figure(
+        self, text: str, quantity: str, at: Sequence[str | int], problems: list[Problem]
+    ) -> float | None:
+        """Read a quantity typed at a path of keys, SI; None after a problem."""
+        try:
+            return units.parse(text, quantity)
+        except units.UnitError as error:
+            fill = {"found": error.found, "expected": error.expected, "fix": error.fix}
+            problems.append(problem("unreadable-figure", self.name, self.line(*at), **fill))
             return None
-        if not _DATE.fullmatch(text):
-            raise ValueError(text)
-        return date.fromisoformat(text)
 
     def shown(self, file: str) -> str:
         """Name of a file of the folder, as shown in messages."""

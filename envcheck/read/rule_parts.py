@@ -261,10 +261,4 @@ def _number(
     quantity: str = "number",
 ) -> float | None:
     share = quantity == "number" and text.endswith("%")
-    try:
-        return units.parse(text, "share" if share else quantity)
-    except units.UnitError as error:
-        fill = {"found": error.found, "expected": error.expected, "fix": error.fix}
-        p = problem("unreadable-figure", document.name, document.line(*at), **fill)
-        problems.append(p)
-        return None
+    return document.figure(text, "share" if share else quantity, at, problems)

@@ -76,7 +76,10 @@ def read_text(path: Path, shown: str, problems: list[Problem]) -> str | None:
     try:
         data = path.read_bytes()
     except OSError as error:
-        problems.append(problem("file-unreadable", shown, None, found=error.strerror or "?"))
+        gone = isinstance(error, FileNotFoundError)
+        fix = "put the sheet there, or correct the name in its table" if gone else ""
+        found = error.strerror or "?"
+        problems.append(problem("file-unreadable", shown, None, found=found, fix=fix))
         return None
     if len(data) > LARGEST:
         problems.append(problem("file-too-large", shown, None, found=f"{len(data)} bytes"))

@@ -49,8 +49,6 @@ class Building(NamedTuple):
     closings: tuple[ClosingView, ...]
 
 
-CLOSES_WITHIN = 5e-3
-"""Share of the gross area that roundings on drawings may leave over."""
 MOST_PARTS = 40
 
 
@@ -137,7 +135,7 @@ def _closing(closing: Closing, system: str) -> ClosingView:
         parts = [*parts[:MOST_PARTS], f"... ({len(closing.parts)} parts in all)"]
     total = numbers.area(sum(area for _, area in closing.parts), system)
     share = closing.missing / closing.gross if closing.gross else 0.0
-    if abs(share) <= CLOSES_WITHIN:
+    if closing.closes:
         state = "closes"
     else:
         word = "not accounted for" if closing.missing > 0 else "too much"

@@ -14,6 +14,12 @@ def sums(line: Line, ruleset: RuleSet | None, system: str) -> tuple[str, ...]:
         return ()
     value, converted = _value(line, own, system)
     compared, rounding = _rounded(value, own, ruleset)
+    exact = numbers.significant(own.value, worksheet.OPERAND_DIGITS)
+    judged, with_all_digits = _rounded(exact, own, ruleset)
+    unrounded = compared == value
+    if _holds(compared, own) != own.within or (not unrounded and compared != judged):
+        value, converted = exact, f"{exact} with all digits carried"
+        compared, rounding = judged, with_all_digits
     sign = ">=" if own.sense == "min" else "<="
     holds = "holds" if own.within else "does not hold"
     limit = said.limit_number(own)
@@ -53,8 +59,7 @@ def _rounded(value: str, own: Comparison, ruleset: RuleSet | None) -> tuple[str,
 
 
 def _value(line: Line, own: Comparison, system: str) -> tuple[str, str]:
-    """The worksheet's result in the printed unit, and how it got there; or the value itself."""
-    exact = numbers.significant(own.value, worksheet.OPERAND_DIGITS)
+    """The worksheet's result in the printed unit, and how it got there."""
     solved = line.solved
     if solved is None or not solved.steps or solved.setting.metric != line.metric:
         return numbers.significant(own.value, worksheet.RESULT_DIGITS), ""
@@ -67,6 +72,10 @@ def _value(line: Line, own: Comparison, system: str) -> tuple[str, str]:
         factor = numbers.significant(ratio, worksheet.OPERAND_DIGITS)
         value = numbers.significant(float(last.result) * float(factor), worksheet.RESULT_DIGITS)
         how = f"{last.result} * {factor} = {value}"
-    if numbers.fixed(float(value), own.decimals) != numbers.fixed(own.value, own.decimals):
-        return exact, f"{exact} with all digits carried"
     return value, how
+
+
+def _holds(compared: str, own: Comparison) -> bool:
+    """Whether the printed figure meets the limit, as a reader would see it."""
+    figure = float(compared)
+    return figure >= own.limit if own.sense == "min" else figure <= own.limit

@@ -135,7 +135,7 @@ def _beside(beside: Beside, solved: Solved, system: str) -> BesideView:
 
 def _films(solved: Solved, system: str) -> tuple[str, ...]:
     setting, unit = solved.setting, units.label("resistance", system)
-    if setting.metric not in ("U_assembly", "R_total"):
+    if setting.metric != "U_assembly":
         return ()
     counted = {step.symbol: (step.value, step.source) for step in solved.steps}
     pairs = (

@@ -24,6 +24,7 @@ from envcheck.report import (
 from envcheck.report import worksheet as sheet
 from envcheck.report.inert import clean
 from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, Paragraph, Section
+from envcheck.report.rows import path_row
 from envcheck.report.view import ViewOptions, system_for
 
 
@@ -191,14 +192,5 @@ def _held(line: Line, rulesets: Mapping[str, RuleSet], system: str) -> list[Sect
 
 
 def _paths(line: Line) -> Grid:
-    cells = tuple(
-        (
-            wording.path(each.path, numbers.symbol(line.metric)),
-            wording.STATES.get(each.state, each.state),
-            clean(each.value),
-            clean(each.limit),
-            clean(each.why),
-        )
-        for each in line.paths
-    )
+    cells = tuple(path_row(each, line.metric) for each in line.paths)
     return Grid(("path", "state", "value", "limit", "why"), cells, (), (4, 2, 3))

@@ -137,7 +137,7 @@ def _zone(ruleset: RuleSet, lines: Iterable[Line], project: Project) -> str:
             if step == "zone":
                 return f"{chosen}: {why}" if why else chosen
     for stated in project.site.zones:
-        if stated.ruleset in ("", ruleset.id):
+        if stated.ruleset in ("", ruleset.id, *(edition.id for edition in ruleset.chain)):
             return f"{stated.zone} ({stated.source or 'stated by the project'})"
     return ""
 

@@ -40,16 +40,11 @@ def summary(judged: Judged) -> str:
     lines = [line for line in judged.lines if line.decides]
     over = sum(line.verdict == "fail" for line in lines)
     waiting = sum(line.open for line in lines)
-    stop = sum(unsettled(finding) for finding in judged.findings)
+    stop = sum(finding.unsettled for finding in judged.findings)
     counts = f"{wording.plural(len(lines), 'line')}: {over} over their limit, {waiting} open"
     if stop:
         counts += f"; {wording.plural(stop, 'finding')} to be settled"
     return f"{counts}. {wording.APPROVES_NOTHING}"
-
-
-def unsettled(finding: Finding) -> bool:
-    """Whether a finding counts as open."""
-    return finding.severity == "E" and not finding.answered
 
 
 def open_items(rows: Iterable[Row], judged: Judged) -> tuple[Item, ...]:
@@ -60,7 +55,7 @@ def open_items(rows: Iterable[Row], judged: Judged) -> tuple[Item, ...]:
         if row.open and row.decides
     ]
     for finding in judged.findings:
-        if unsettled(finding):
+        if finding.unsettled:
             title = clean(finding.title) or wording.plain(clean(finding.check).replace("-", " "))
             what = f"finding: {title[0].lower()}{title[1:]}"
             found.append(Item(clean(finding.subject), clean(finding.sheet), what, ()))

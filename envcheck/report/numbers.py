@@ -15,7 +15,6 @@ QUANTITIES = {
     "C_factor": "u_factor",
     "F_factor": "linear_transmittance",
     "R_insulation": "resistance",
-    "R_total": "resistance",
 }
 """Metric -> quantity of ``units``; every other metric is a plain number."""
 SYMBOLS = {
@@ -24,7 +23,6 @@ SYMBOLS = {
     "C_factor": "C",
     "F_factor": "F",
     "R_insulation": "R",
-    "R_total": "R",
 }
 DECIMALS = {
     ("u_factor", "IP"): 4,
@@ -120,11 +118,6 @@ def in_system(value: float, quantity: str, system: str) -> float:
     if quantity == "temperature":
         return units.in_system(value, quantity, system)
     return value / factor(quantity, system)
-
-
-def in_unit(value: float, spelling: str) -> float:
-    """Express an SI number in a printed unit; an empty spelling is a plain number."""
-    return units.convert(value, spelling) if spelling else value
 
 
 @lru_cache(maxsize=64)

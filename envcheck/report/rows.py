@@ -158,7 +158,7 @@ def _row(line: Line, project: Project, system: str, written: _Written) -> Row:
         open=line.open,
         reasons=tuple(map(clean, line.reasons)),
         notes=said.notes(line),
-        paths=tuple(_path(path, line.metric) for path in line.paths),
+        paths=tuple(path_row(path, line.metric) for path in line.paths),
         hand_check=written.sum(line, system, value),
         trail=tuple(starmap(_choice, line.trail)) if written.trails else (),
     )
@@ -246,7 +246,8 @@ def _room_share(comparison: Comparison | None) -> str:
 
 
 @lru_cache(maxsize=4096)
-def _path(result: PathResult, metric: str) -> PathRow:
+def path_row(result: PathResult, metric: str) -> PathRow:
+    """One path by which a line may be met, in words."""
     path = wording.path(result.path, numbers.symbol(metric))
     state = wording.STATES.get(result.state, wording.plain(result.state))
     return PathRow(path, state, clean(result.value), clean(result.limit), clean(result.why))

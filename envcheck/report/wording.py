@@ -27,7 +27,6 @@ METRICS = {
     "C_factor": "C-factor (no films, no soil)",
     "F_factor": "F-factor of the slab edge",
     "R_insulation": "rated R-value of the insulation",
-    "R_total": "total R-value",
     "SHGC": "solar heat gain coefficient",
     "VT": "visible transmittance",
 }

@@ -11,7 +11,8 @@ from time import perf_counter
 
 import pytest
 
-from envcheck.judge.select import Selection, select
+from envcheck.judge.select import select
+from envcheck.judge.selection import Selection
 from envcheck.judge.zones import find_zone
 from envcheck.model.project import Element, Fact, Options, Project, Site, ZoneStated
 from envcheck.model.ruleset import (
@@ -179,13 +180,17 @@ def test_a_single_zone_needs_no_statement() -> None:
     assert find_zone(rules(zones=one), site()).heads == ("all",)
     none = Zones((), {}, {}, "")
     found = pick(rules(limit("*", "wall.mass", "0.3"), zones=none), element(), project(site()))
-    assert found.limits["U_assembly", ""].cell == "0.3"
+    assert found.limit("U_assembly").cell == "0.3"
 
 
 def test_no_zone_no_limit() -> None:
     found = pick(rules(limit("Z2", "wall.mass", "0.3")), element(), project(site()))
-    assert (found.state, found.outcomes, found.verdict) == ("zone_missing", (), "not_decided")
-    assert "neither the zone" in found.reason
+    assert (found.state, found.outcomes, found.verdict_of("U_assembly")) == (
+        "zone_missing",
+        (),
+        "not_decided",
+    )
+    assert "neither the zone" in found.reason_of("U_assembly")
 
 
 # ---------------------------------------------------------------------------------------- row
@@ -211,8 +216,8 @@ def test_a_general_row_takes_what_the_specific_one_leaves() -> None:
 
 def test_no_row() -> None:
     found = pick(rules(limit("Z2", "wall.mass", "0.3")), element("roof.attic"))
-    assert (found.state, found.verdict) == ("not_in_table", "not_in_table")
-    assert "covers roof (attic) for zone Z2" in found.reason
+    assert (found.state, found.verdict_of("U_assembly")) == ("not_in_table", "not_in_table")
+    assert "covers roof (attic) for zone Z2" in found.reason_of("U_assembly")
     other = pick(rules(limit("Z1", "wall.mass", "0.3")), element())
     assert other.state == "not_in_table"
 
@@ -270,7 +275,7 @@ def test_a_missing_fact_names_its_words_and_sheet() -> None:
         "space (heated or semiheated) is not stated; it belongs on the mechanical schedule"
     )
     assert {x.cell for x in found.candidates} == {"0.30", "0.50"}
-    assert pick(BY_SPACE, element()).verdict == "not_decided"
+    assert pick(BY_SPACE, element()).verdict_of("U_assembly") == "not_decided"
 
 
 def test_a_fact_that_no_longer_matters_is_not_asked_for() -> None:
@@ -292,7 +297,9 @@ def test_a_word_that_the_rule_set_does_not_know_is_never_a_pass() -> None:
     assert found.state == "missing_fact"
     assert "is stated as semi-heated (fact of E1, sheet A-1)" in found.why
     ruleset = rules(limit("Z2", "wall.mass", "0.3", upto("window_wall_ratio", None, 0.3)))
-    assert pick(ruleset, element(window_wall_ratio="much")).verdict == "not_decided"
+    assert (
+        pick(ruleset, element(window_wall_ratio="much")).verdict_of("U_assembly") == "not_decided"
+    )
 
 
 def test_words_are_compared_without_case() -> None:
@@ -302,9 +309,13 @@ def test_words_are_compared_without_case() -> None:
 def test_facing_stands_for_orientation() -> None:
     ruleset = rules(limit("Z2", "fenestration.fixed", "0.4", words("orientation", "S")))
     assert pick(ruleset, element("fenestration.fixed", "S")).limit("U_assembly") is not None
-    assert pick(ruleset, element("fenestration.fixed", "N")).verdict == "not_in_table"
-    assert pick(ruleset, element("fenestration.fixed", "SE")).verdict == "not_decided"
-    assert pick(ruleset, element("fenestration.fixed")).verdict == "not_decided"
+    assert (
+        pick(ruleset, element("fenestration.fixed", "N")).verdict_of("U_assembly") == "not_in_table"
+    )
+    assert (
+        pick(ruleset, element("fenestration.fixed", "SE")).verdict_of("U_assembly") == "not_decided"
+    )
+    assert pick(ruleset, element("fenestration.fixed")).verdict_of("U_assembly") == "not_decided"
 
 
 def test_two_rows_that_differ_are_both_named() -> None:
@@ -344,8 +355,9 @@ def test_the_trail_tells_every_step_in_order() -> None:
 def test_an_edition_not_in_force_decides_nothing() -> None:
     early = changed(BASE, effective_from=date(2027, 1, 1), in_force=False)
     found = pick(rules(limit("Z2", "wall.mass", "0.3"), chain=(early,)), element())
-    assert (found.state, found.verdict) == ("not_in_force", "not_decided")
-    assert "2027-01-01" in found.reason and "2026-03-02" in found.reason
+    assert (found.state, found.verdict_of("U_assembly")) == ("not_in_force", "not_decided")
+    reason = found.reason_of("U_assembly")
+    assert "2027-01-01" in reason and "2026-03-02" in reason
 
 
 def test_equal_elements_share_one_selection_and_others_do_not() -> None:

@@ -19,12 +19,11 @@ from envcheck.solve.methods.iso13370_basement import (
     unheated_basement_u,
 )
 from envcheck.solve.methods.iso13370_edge import Edge, edge_psi, edge_steps, slab_with_edge
-from envcheck.solve.methods.iso13370_slab import equivalent_thickness, slab_u
+from envcheck.solve.methods.iso13370_slab import bare_ground_u, equivalent_thickness, slab_u
 from envcheck.solve.methods.iso13370_suspended import (
     SuspendedFloor,
     suspended_steps,
     suspended_u,
-    underfloor_ground_u,
 )
 from tests.solve.samples import assert_recomputes
 
@@ -40,7 +39,7 @@ FLOOR = SuspendedFloor(
 def test_suspended_floor_between_its_limits() -> None:
     # Sealed and flush with the ground: floor and ground in series. Open to the wind: floor alone.
     sealed = FLOOR._replace(height=0.0, openings=0.0)
-    below = underfloor_ground_u(CLAY, 8.0, GROUND)
+    below = bare_ground_u(CLAY, 8.0, GROUND)
     assert 1 / suspended_u(sealed) == pytest.approx(1 / 1.8 + 1 / below)
     assert below == pytest.approx(slab_u(CLAY, 8.0, GROUND))
     assert suspended_u(FLOOR._replace(openings=1e9)) == pytest.approx(1.8)

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from envcheck.judge.building import closes
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.words import MOST_TAGS, area, listed, system
 from envcheck.model.judged import Closing, Finding
@@ -21,7 +20,7 @@ def does_not_close(facts: Facts) -> Iterator[Finding]:
     """Parts that miss the gross area of their surface by more than 0.5 %."""
     units = system(facts.project, facts.rulesets)
     for closing in facts.closings:
-        if closing.parts and not closes(closing):
+        if closing.parts and not closing.closes:
             yield _open_surface(closing, units)
 
 

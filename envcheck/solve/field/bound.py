@@ -12,8 +12,6 @@ from envcheck.solve.field.section import Array, Grid, Section, check, first_grid
 
 TOLERANCE = 1e-3
 """Gap between the bounds, as a share of the value."""
-CLOSE = 1e-4
-"""Gap where a deciding bracket still holds the limit."""
 MOST_ROUNDS = 20
 MOST_NODES = 150_000
 MARKED = 0.6

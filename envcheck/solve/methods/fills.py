@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from envcheck.model.project import Fill
 from envcheck.model.solved import Resistor
-from envcheck.solve.cells import material_cell, stated_cell
+from envcheck.solve.cells import material_cell
 from envcheck.solve.methods.air_space import draw_air_space
 from envcheck.solve.methods.compressed import compressed_cell
 from envcheck.solve.registry import Context, Method
@@ -18,8 +18,6 @@ def fill_resistor(fill: Fill, depth: float, context: Context) -> Resistor:
     if fill.air is not None:
         return draw_air_space(fill.air, context._replace(symbol=symbol)).cells[0][0]
     assert fill.label is not None, "the reader asks for a material, a label or an air space"
-    if fill.installed_label is None and (fill.product_thickness or depth) <= depth + 1e-6:
-        return stated_cell(symbol, "insulation as labelled", fill.label, fill.source)
     return compressed_cell(symbol, fill, depth, context)
 
 

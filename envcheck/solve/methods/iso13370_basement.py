@@ -7,12 +7,11 @@ from typing import NamedTuple
 
 from envcheck.model.solved import Operand, Step
 from envcheck.solve.elementary import ln_of_one_plus, smaller
-from envcheck.solve.methods.iso13370_slab import slab_u
+from envcheck.solve.methods.iso13370_slab import characteristic_dimension, slab_u
 from envcheck.solve.network import series
 from envcheck.solve.registry import Method
 
 SOURCE = "ISO 13370:2007, 9.3"
-UNHEATED = "ISO 13370:2007, 9.4"
 AIR = 0.33
 """Heat capacity of air by volume, Wh/(m3 K), as ISO 13370 prints it."""
 CHANGES = 0.3
@@ -113,7 +112,7 @@ class HeatedBasement(NamedTuple):
 
 def basement_steps(of: HeatedBasement) -> tuple[Step, ...]:
     """Worksheet to ``U_bf``, ``U_bw`` and the effective ``U`` of a heated basement."""
-    dimension = of.area / (0.5 * of.perimeter)
+    dimension = characteristic_dimension(of.area, of.perimeter)
     thickness = of.floor + 0.5 * of.depth
     slab = min(of.wall, of.floor)
     floor_u = basement_floor_u(of.depth, of.floor, dimension, of.soil)

@@ -50,6 +50,16 @@ def equivalent_thickness(
     return wall_thickness + soil_conductivity * series(inside_film, floor, outside_film)
 
 
+def bare_ground_u(soil_conductivity: float, dimension: float, thickness: float) -> float:
+    """U into the ground below a floor: U = 2 k / (pi B' + d) ln(pi B'/d + 1).
+
+    soil_conductivity: k, W/(m K). dimension: B', m. thickness: d, the equivalent thickness, m. Any
+    shape. Returns W/(m2 K). Source: ISO 13370:2017, 7.2 (2007: 9.1, 9.2).
+    """
+    width = pi * dimension
+    return 2.0 * soil_conductivity / (width + thickness) * ln_of_one_plus(width / thickness)
+
+
 def slab_u(soil_conductivity: float, dimension: float, thickness: float) -> float:
     """U of a slab on ground, soil included.
 
@@ -58,8 +68,7 @@ def slab_u(soil_conductivity: float, dimension: float, thickness: float) -> floa
     Any shape. Returns W/(m2 K).
     Source: ISO 13370:2017, 7.2.
     """
-    width = pi * dimension
-    uninsulated = 2.0 * soil_conductivity / (width + thickness) * ln_of_one_plus(width / thickness)
+    uninsulated = bare_ground_u(soil_conductivity, dimension, thickness)
     insulated = soil_conductivity / (0.457 * dimension + thickness)
     thick = thickness >= dimension
     return insulated * thick + uninsulated * (1 - thick)
@@ -133,7 +142,7 @@ def _numbers(slab: Slab) -> tuple[float, float, float, float]:
 def _closing_step(soil: float, dimension: float, thickness: float, value: float) -> Step:
     operands = (
         Operand("k", soil, "conductivity"),
-        Operand("B", dimension, "length"),
+        Operand("B", dimension, "run"),
         Operand("d_t", thickness, "length"),
     )
     if thickness >= dimension:

@@ -2,11 +2,10 @@
 
 from __future__ import annotations
 
-from math import pi
 from typing import NamedTuple
 
 from envcheck.model.solved import Operand, Step
-from envcheck.solve.elementary import ln_of_one_plus
+from envcheck.solve.methods.iso13370_slab import bare_ground_u
 from envcheck.solve.registry import Method
 
 SOURCE = "ISO 13370:2007, 9.2"
@@ -39,16 +38,6 @@ class SuspendedFloor(NamedTuple):
     """fw"""
 
 
-def underfloor_ground_u(soil: float, dimension: float, thickness: float) -> float:
-    """U from the space into the ground: Ug = 2 k / (pi B' + dg) ln(pi B' / dg + 1).
-
-    soil: k, W/(m K). dimension: B', thickness: dg, m. Any shape. Returns W/(m2 K).
-    Source: ISO 13370:2007, 9.2.
-    """
-    width = pi * dimension
-    return 2.0 * soil / (width + thickness) * ln_of_one_plus(width / thickness)
-
-
 def underfloor_air_u(of: SuspendedFloor) -> float:
     """U from the space by its walls and its openings: Ux = 2 h Uw / B' + 1450 e v fw / B'.
 
@@ -63,13 +52,13 @@ def suspended_u(of: SuspendedFloor) -> float:
 
     Returns W/(m2 K). Source: ISO 13370:2007, 9.2.
     """
-    ground = underfloor_ground_u(of.soil, of.dimension, of.ground)
+    ground = bare_ground_u(of.soil, of.dimension, of.ground)
     return 1.0 / (1.0 / of.floor + 1.0 / (ground + underfloor_air_u(of)))
 
 
 def suspended_steps(of: SuspendedFloor) -> tuple[Step, ...]:
     """Worksheet to ``U`` of a suspended floor. Floats."""
-    ground, air = underfloor_ground_u(of.soil, of.dimension, of.ground), underfloor_air_u(of)
+    ground, air = bare_ground_u(of.soil, of.dimension, of.ground), underfloor_air_u(of)
     size = Operand("B", of.dimension, "length")
     below = (Operand("k", of.soil, "conductivity"), size, Operand("d_g", of.ground, "length"))
     around = (

@@ -5,9 +5,6 @@ from __future__ import annotations
 from envcheck.solve.methods.air_space import STEFAN_BOLTZMANN
 from envcheck.solve.registry import Method
 
-STILL = {"up": 5.0, "horizontal": 2.5, "down": 0.7}
-"""hc of inside surfaces by direction of heat flow, W/(m2 K); ISO 6946:2017, annex C."""
-
 
 def surface_resistance(convective: float, emittance: float, temperature: float) -> float:
     """Surface resistance: Rs = 1 / (hc + e 4 sigma T^3).

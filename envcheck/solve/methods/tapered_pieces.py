@@ -6,17 +6,12 @@ resistance of everything else, films and the least thickness of the tapered laye
 
 from __future__ import annotations
 
-from collections.abc import Callable, Sequence
+from collections.abc import Sequence
 from typing import NamedTuple
 
 from envcheck.model.solved import Operand, Step
 from envcheck.solve.elementary import ln_of_one_plus
-from envcheck.solve.methods.tapered import (
-    SOURCE,
-    tapered_rectangle,
-    tapered_triangle_thickest_apex,
-    tapered_triangle_thinnest_apex,
-)
+from envcheck.solve.methods.tapered import SHAPES, SOURCE
 from envcheck.solve.registry import Method
 
 
@@ -42,22 +37,17 @@ class Piece(NamedTuple):
     area: float
     """m2 in plan"""
     r1: float
-    """Greatest resistance beyond the least, m2 K/W; of ``triangle``: at the middle corner."""
+    """Greatest resistance beyond the least, above 0, m2 K/W; of ``triangle``: at the middle
+    corner."""
     r2: float = 0.0
     """Of ``triangle``: at the thickest corner, m2 K/W."""
 
 
-U_FACTORS: dict[str, Callable[[float, Piece], float]] = {
-    "rectangle": lambda r0, piece: tapered_rectangle(r0, piece.r1),
-    "triangle_thickest_apex": lambda r0, piece: tapered_triangle_thickest_apex(r0, piece.r1),
-    "triangle_thinnest_apex": lambda r0, piece: tapered_triangle_thinnest_apex(r0, piece.r1),
-    "triangle": lambda r0, piece: tapered_triangle(r0, piece.r1, piece.r2),
-}
-
-
 def piece_u(r0: float, piece: Piece) -> float:
     """U of one piece, W/(m2 K). r0: R0, m2 K/W."""
-    return U_FACTORS[piece.shape](r0, piece)
+    if piece.shape == "triangle":
+        return tapered_triangle(r0, piece.r1, piece.r2)
+    return SHAPES[piece.shape].u_factor(r0, piece.r1)
 
 
 def drained_roof_u(r0: float, pieces: Sequence[Piece]) -> float:
@@ -70,17 +60,12 @@ def drained_roof_u(r0: float, pieces: Sequence[Piece]) -> float:
     return flow / sum(piece.area for piece in pieces)
 
 
-EXPRESSIONS = {
-    "rectangle": "ln(1 + {R_1} / {R_0}) / {R_1}",
-    "triangle_thickest_apex": (
-        "2 / {R_1} * ((1 + {R_0} / {R_1}) * ln(1 + {R_1} / {R_0}) - 1)"
-    ),
-    "triangle_thinnest_apex": "2 / {R_1} * (1 - {R_0} / {R_1} * ln(1 + {R_1} / {R_0}))",
-    "triangle": (
-        "2 * ({R_1} * ({R_0} + {R_2}) * ln(1 + {R_2} / {R_0}) - {R_2} * ({R_0} + {R_1}) * "
-        "ln(1 + {R_1} / {R_0})) / ({R_1} * {R_2} * ({R_2} - {R_1}))"
-    ),
-}  # fmt: skip
+GENERAL = (
+    "2 * ({R_taper} * ({R_rest} + {R_2}) * ln(1 + {R_2} / {R_rest}) - {R_2} * "
+    "({R_rest} + {R_taper}) * ln(1 + {R_taper} / {R_rest})) / ({R_taper} * {R_2} * "
+    "({R_2} - {R_taper}))"
+)
+"""The general triangle for the worksheet, R_taper being R1; the other shapes as in a taper."""
 
 
 def drained_roof_steps(r0: float, pieces: Sequence[Piece]) -> tuple[Step, ...]:
@@ -89,11 +74,11 @@ def drained_roof_steps(r0: float, pieces: Sequence[Piece]) -> tuple[Step, ...]:
     closing: list[Operand] = []
     for number, piece in enumerate(pieces, 1):
         title = f"piece {number}, {piece.shape.replace('_', ' ')}"
-        operands = [Operand("R_0", r0, "resistance"), Operand("R_1", piece.r1, "resistance")]
+        operands = [Operand("R_rest", r0, "resistance"), Operand("R_taper", piece.r1, "resistance")]
         if piece.shape == "triangle":
             operands.append(Operand("R_2", piece.r2, "resistance"))
         value = piece_u(r0, piece)
-        expression = EXPRESSIONS[piece.shape]
+        expression = GENERAL if piece.shape == "triangle" else SHAPES[piece.shape].expression
         steps.append(
             Step(f"U_{number}", title, expression, tuple(operands), value, "u_factor", SOURCE)
         )  # fmt: skip
