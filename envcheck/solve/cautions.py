@@ -63,11 +63,11 @@ def cautions(assembly: Assembly) -> tuple[Caution, ...]:
 
 def insulation_of(layer: Layer) -> bool:
     """Whether a layer is insulation or holds insulation between its members."""
-    if isinstance(layer, MaterialLayer):
-        return layer.material.material_class.startswith("insulation")
-    if isinstance(layer, FramedLayer):
+    if isinstance(layer, FramedLayer | MasonryLayer):
         return layer.fill.label is not None or is_insulation(layer.fill.material)
-    return isinstance(layer, TaperedLayer | ResistanceLayer) and is_insulation(layer.material)
+    if not isinstance(layer, MaterialLayer | TaperedLayer | ResistanceLayer):
+        return False
+    return is_insulation(layer.material)
 
 
 def is_insulation(material: Material | None) -> bool:
@@ -79,7 +79,7 @@ def is_combustible(layer: Layer) -> bool:
     """Whether the material of a layer, or of its infill, is marked combustible."""
     if isinstance(layer, MaterialLayer):
         return layer.material.combustible
-    if isinstance(layer, FramedLayer):
+    if isinstance(layer, FramedLayer | MasonryLayer):
         return layer.fill.material is not None and layer.fill.material.combustible
     if not isinstance(layer, TaperedLayer | ResistanceLayer) or layer.material is None:
         return False

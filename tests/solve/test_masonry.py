@@ -60,6 +60,15 @@ def test_block_by_planes(block: MasonryLayer, outside: float, cell: float, print
     assert_recomputes(found.steps)
 
 
+def test_filled_cells_trigger_the_cautions_of_insulation() -> None:
+    foam = PERLITE._replace(title="foam inserts", combustible=True)
+    block = FILLED._replace(fill=Fill(foam))
+    topics = {c.topic for c in solved([block], "isothermal_planes", **FILMS).cautions}
+    assert {"moisture", "fire"} <= topics
+    empty = {c.topic for c in solved([BLOCK], "isothermal_planes", **FILMS).cautions}
+    assert not {"moisture", "fire"} & empty
+
+
 def test_parallel_paths_flatter_and_are_refused() -> None:
     found = solved([FILLED], "parallel_path", **FILMS)
     assert found.value is None

@@ -2,7 +2,11 @@
 
 from __future__ import annotations
 
-from envcheck.solve.field.section import Section
+from collections.abc import Callable, Iterator
+
+import numpy as np
+
+from envcheck.solve.field.section import ModelError, Section, check
 
 MM = 1e-3
 STEEL = 50.0
@@ -61,3 +65,30 @@ CHEEK = section(
 BLOCK = section(
     [30, 155, 30, 155, 30], [30, 140, 30], [[1.0] * 5, [1.0, 0.05, 1.0, 0.05, 1.0], [1.0] * 5]
 )
+
+
+def random_section(rng: np.random.Generator) -> Section:
+    n, m = rng.integers(1, 6, 2)
+    k = 10.0 ** rng.uniform(-2, 2.5, (n, m))
+    return Section(
+        tuple(rng.uniform(0.002, 0.3, m)),
+        tuple(rng.uniform(0.001, 0.2, n)),
+        tuple(map(tuple, k)),
+        float(rng.uniform(0.01, 0.2)),
+        float(rng.uniform(0.01, 0.2)),
+        bool(rng.integers(2)),
+    )
+
+
+def accepted(
+    draw: Callable[[np.random.Generator], Section], rng: np.random.Generator, count: int
+) -> Iterator[Section]:
+    """Draw until so many are accepted; conductors that meet in a corner are refused."""
+    while count:
+        of = draw(rng)
+        try:
+            check(of)
+        except ModelError:
+            continue
+        count -= 1
+        yield of
