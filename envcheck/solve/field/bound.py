@@ -2,12 +2,13 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
+from collections.abc import Callable
+from typing import Generic, NamedTuple, Protocol, TypeVar
 
 import numpy as np
 import numpy.typing as npt
 
-from envcheck.solve.field.networks import indicators, lower, upper
+from envcheck.solve.field.networks import Lower, Upper, indicators, lower, upper
 from envcheck.solve.field.section import Array, Grid, Section, check, first_grid, refined
 
 TOLERANCE = 1e-3
@@ -61,38 +62,104 @@ def bound(
     check(section)
     conductivities = np.asarray(section.conductivities, dtype=float)
     width = sum(section.widths)
-    grid = first_grid(section)
+
+    def solve(grid: Grid) -> Solution[Upper, Lower]:
+        k = conductivities[np.ix_(grid.rows, grid.columns)]
+        above, below = upper(section, grid, k), lower(section, grid, k)
+
+        def scores() -> Scores:
+            n, m = k.shape
+            costs = np.full(m, n), np.full(n, m)
+            return (*indicators(section, grid, k, above, below), *costs)
+
+        return Solution(above, below, scores)
+
+    end = refine(first_grid(section), solve, tolerance, most_rounds, most_nodes)
+    return Bounds(
+        end.low / width,
+        end.high / width,
+        end.rounds,
+        end.grid.nodes,
+        end.stopped_by,
+        end.grid,
+        end.above.temperatures,
+        max(end.above.imbalance, end.below.imbalance),
+    )
+
+
+Scores = tuple[Array, Array, Array, Array]
+"""Share of the gap by column and by row; nodes that splitting a column, a row, adds."""
+
+
+class _Side(Protocol):
+    """What either network tells of the conductance."""
+
+    @property
+    def conductance(self) -> float:
+        """L, W/(m K)"""
+
+
+_Above = TypeVar("_Above", bound=_Side)
+_Below = TypeVar("_Below", bound=_Side)
+
+
+class Solution(NamedTuple, Generic[_Above, _Below]):
+    """Both networks on one grid."""
+
+    above: _Above
+    below: _Below
+    scores: Callable[[], Scores]
+
+
+class End(NamedTuple, Generic[_Above, _Below]):
+    """Where refining ended."""
+
+    low: float
+    """L, W/(m K)"""
+    high: float
+    rounds: int
+    stopped_by: str
+    grid: Grid
+    above: _Above
+    below: _Below
+
+
+def refine(
+    grid: Grid,
+    solve: Callable[[Grid], Solution[_Above, _Below]],
+    tolerance: float,
+    most_rounds: int,
+    most_nodes: int,
+) -> End[_Above, _Below]:
+    """Solve and split until the gap is at most ``tolerance`` or a cap is met."""
     low, high = 0.0, np.inf
     rounds, before = 0, np.inf
     while True:
         rounds += 1
-        k = conductivities[np.ix_(grid.rows, grid.columns)]
-        above, below = upper(section, grid, k), lower(section, grid, k)
-        low = max(low, below.conductance / width * (1.0 - ROUNDING))
-        high = min(high, above.conductance / width * (1.0 + ROUNDING))
-        gap = high / low - 1.0
+        found = solve(grid)
+        low = max(low, found.below.conductance * (1.0 - ROUNDING))
+        high = min(high, found.above.conductance * (1.0 + ROUNDING))
+        gap = high / low - 1.0 if low > 0 else np.inf
         stopped_by = "tolerance" if gap <= tolerance else "rounds" if rounds >= most_rounds else ""
         if not stopped_by:
-            scores = indicators(section, grid, k, above, below)
             mark = _marked_each_way if gap > STALLED * before else _marked
-            finer = mark(grid, *scores)
+            finer = mark(grid, *found.scores())
             stopped_by = "nodes" if finer.nodes > most_nodes else ""
         if stopped_by:
-            imbalance = max(above.imbalance, below.imbalance)
-            return Bounds(
-                low, high, rounds, grid.nodes, stopped_by, grid, above.temperatures, imbalance
-            )
+            return End(low, high, rounds, stopped_by, grid, found.above, found.below)
         grid, before = finer, gap
 
 
-def _marked(grid: Grid, columns: Array, rows: Array) -> Grid:
+def _marked(grid: Grid, columns: Array, rows: Array, column_costs: Array, row_costs: Array) -> Grid:
     """Split the columns and rows that hold most of the gap for the nodes that they cost."""
-    costs = np.concatenate([np.full(len(columns), len(rows)), np.full(len(rows), len(columns))])
+    costs = np.concatenate([column_costs, row_costs])
     marked = _most(np.concatenate([columns, rows]), costs)
     return refined(grid, marked[: len(columns)], marked[len(columns) :])
 
 
-def _marked_each_way(grid: Grid, columns: Array, rows: Array) -> Grid:
+def _marked_each_way(
+    grid: Grid, columns: Array, rows: Array, column_costs: Array, row_costs: Array
+) -> Grid:
     """Split most of the columns' share and most of the rows'.
 
     Where one way is cut far finer than the other, its lines cost so little that the first rule

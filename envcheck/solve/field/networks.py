@@ -90,7 +90,7 @@ def upper(section: Section, grid: Grid, k: Array) -> Upper:
         (index[:-1], index[1:], across[:, :width]),
     ]
     films = tributary[:width]
-    found, imbalance = _solve(
+    found, imbalance = solve_network(
         index.size,
         edges,
         [
@@ -108,15 +108,15 @@ def _energy(section: Section, grid: Grid, k: Array, field: Array) -> float:
     """Energy of a bilinear field: squares only, so that rounding cannot make it too small."""
     dx, dy = np.diff(field, axis=1), np.diff(field, axis=0)
     hx, hy = grid.hx, grid.hy[:, None]
-    along = (k * hy / hx * _mean_square(dx[:-1], dx[1:])).sum()
-    across = (k * hx / hy * _mean_square(dy[:, :-1], dy[:, 1:])).sum()
+    along = (k * hy / hx * mean_square(dx[:-1], dx[1:])).sum()
+    across = (k * hx / hy * mean_square(dy[:, :-1], dy[:, 1:])).sum()
     outer, inner = field[0], 1.0 - field[-1]
-    films = (hx * _mean_square(outer[:-1], outer[1:])).sum() / section.outside
-    films += (hx * _mean_square(inner[:-1], inner[1:])).sum() / section.inside
+    films = (hx * mean_square(outer[:-1], outer[1:])).sum() / section.outside
+    films += (hx * mean_square(inner[:-1], inner[1:])).sum() / section.inside
     return float(along + across + films)
 
 
-def _mean_square(a: Array, b: Array) -> Array:
+def mean_square(a: Array, b: Array) -> Array:
     """Mean of the square of what runs linearly from a to b."""
     squared: Array = ((a + b) / 2.0) ** 2 + (b - a) ** 2 / 12.0
     return squared
@@ -136,7 +136,7 @@ def lower(section: Section, grid: Grid, k: Array) -> Lower:
     left = index if wrap else index[:, :-1]
     out = hx / (section.outside + half_y[0])
     into = hx / (section.inside + half_y[-1])
-    found, imbalance = _solve(
+    found, imbalance = solve_network(
         index.size,
         [(left, right, along), (index[:-1], index[1:], across)],
         [(index[0], out, 0.0), (index[-1], into, 1.0)],
@@ -164,14 +164,16 @@ def _stream(flows: Array, over_edge: Array) -> Array:
 def _complementary(section: Section, grid: Grid, k: Array, stream: Array) -> float:
     down, aside = np.diff(stream, axis=1), np.diff(stream, axis=0)
     hx, hy = grid.hx, grid.hy[:, None]
-    across = (hy / (hx * k) * _mean_square(down[:-1], down[1:])).sum()
-    along = (hx / (hy * k) * _mean_square(aside[:, :-1], aside[:, 1:])).sum()
+    across = (hy / (hx * k) * mean_square(down[:-1], down[1:])).sum()
+    along = (hx / (hy * k) * mean_square(aside[:, :-1], aside[:, 1:])).sum()
     films = section.outside * (down[0] ** 2 / grid.hx).sum()
     films += section.inside * (down[-1] ** 2 / grid.hx).sum()
     return float(across + along + films)
 
 
-def _solve(size: int, edges: list[_Edges], boundaries: list[_Boundary]) -> tuple[Array, float]:
+def solve_network(
+    size: int, edges: list[_Edges], boundaries: list[_Boundary]
+) -> tuple[Array, float]:
     """Temperatures of a resistor network, and by how much its heat balance misses.
 
     Errors: SolveError where the balance does not close.

@@ -92,12 +92,13 @@ def _check_corners(k: Array, periodic: bool) -> None:
 
 def first_grid(section: Section) -> Grid:
     """The material lines, with cells that grow by no more than a factor of 4."""
-    hx, columns = _graded(section.widths)
-    hy, rows = _graded(section.depths)
+    hx, columns = graded(section.widths)
+    hy, rows = graded(section.depths)
     return Grid(hx, hy, columns, rows)
 
 
-def _graded(sizes: tuple[float, ...]) -> tuple[Array, npt.NDArray[np.intp]]:
+def graded(sizes: tuple[float, ...]) -> tuple[Array, npt.NDArray[np.intp]]:
+    """Cut sizes so that neighbours differ by no more than ``STEEPEST``; with the piece of each."""
     cells = [(size, piece) for piece, size in enumerate(sizes)]
     place = 0
     while place < len(cells) - 1:
