@@ -66,6 +66,7 @@ def check(
         colour=options.colour(color, output),
         width=options.width(output),
         details=details or form.details,
+        workings=form.workings,
         bounds=bounds,
     )
     text = form.render(view.build(run.project, run.rulesets, run.judged, asked))

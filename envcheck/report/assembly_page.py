@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from envcheck.report import wording
+from envcheck.report import wording, workings
 from envcheck.report.details import AssemblyView
 from envcheck.report.parts import Block, Facts, Grid, Pair
 
@@ -26,6 +26,8 @@ def blocks(each: AssemblyView) -> tuple[Block, ...]:
         blocks.append(_layers(each))
     if each.beside:
         blocks.append(_beside(each))
+    if each.workings is not None:
+        blocks += workings.blocks(each.workings)
     return tuple(blocks)
 
 

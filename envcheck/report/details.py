@@ -9,9 +9,10 @@ from envcheck import units
 from envcheck.model.judged import Line
 from envcheck.model.project import Assembly, Project
 from envcheck.model.solved import Beside, Solved
-from envcheck.report import layers, numbers, wording
+from envcheck.report import layers, numbers, wording, workings
 from envcheck.report.inert import clean
 from envcheck.report.layers import LayerView
+from envcheck.report.workings import Workings
 
 
 class BesideView(NamedTuple):
@@ -46,22 +47,35 @@ class AssemblyView(NamedTuple):
     conductivity_unit: str
     resistance_unit: str
     assumptions: tuple[str, ...]
+    workings: Workings | None = None
+    """Where they are asked for."""
 
 
-def build(project: Project, lines: Iterable[Line], system: str) -> tuple[AssemblyView, ...]:
-    """Every assembly that was solved, in drawing order, once per setting."""
-    found: dict[str, dict[int, tuple[Solved, list[str]]]] = {}
+def build(
+    project: Project, lines: Iterable[Line], system: str, worked: bool = False
+) -> tuple[AssemblyView, ...]:
+    """Every assembly that was solved, in drawing order, once per setting; ``worked`` adds ladder,
+    paths and worksheet."""
+    found: dict[str, dict[int, list[Line]]] = {}
     for line in lines:
         if line.solved is not None:
-            by_setting = found.setdefault(line.solved.assembly, {})
-            _, tags = by_setting.setdefault(id(line.solved), (line.solved, []))
-            if line.element not in tags:
-                tags.append(line.element)
+            found.setdefault(line.solved.assembly, {}).setdefault(id(line.solved), []).append(line)
     return tuple(
-        assembly_view(assembly, solved, tags, system)
+        _view(project, assembly, of_one, system, worked)
         for assembly in project.assemblies.values()
-        for solved, tags in found.get(assembly.id, {}).values()
+        for of_one in found.get(assembly.id, {}).values()
     )
+
+
+def _view(
+    project: Project, assembly: Assembly, lines: list[Line], system: str, worked: bool
+) -> AssemblyView:
+    solved = lines[0].solved
+    assert solved is not None
+    view = assembly_view(assembly, solved, dict.fromkeys(x.element for x in lines), system)
+    if not worked:
+        return view
+    return view._replace(workings=workings.build(project.site, solved, lines, system))
 
 
 def assembly_view(

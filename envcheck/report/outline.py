@@ -27,54 +27,102 @@ SAID_BY_LINES = {
 
 def page(view: View) -> Page:
     """Lay the view out as sections: what decides first, what explains it after."""
-    rows_of: dict[str, list[Row]] = {rules.id: [] for rules in view.rule_sets}
-    for row in view.rows:
-        rows_of.setdefault(row.rule_set, []).append(row)
-    deciding = [row for row in view.rows if row.decides]
-    told = {each.subject for each in view.findings if each.check == "hangs-on-method"}
-    sheets = {row.tag: row.sheet for row in view.rows}
-    several = len(view.rule_sets) > 1
     return Page(
         view.title,
         (
-            *_lead(view.lead),
+            *where(view),
             Section("", (Paragraph(view.summary),)),
-            *(
-                main_table.section(rows_of[rules.id], rules, several, view.bounds)
-                for rules in view.rule_sets
-            ),
-            *main_table.differing(view.rows, view.rule_sets),
-            *_if_any("Why over the limit", by_line.over(deciding, told)),
-            Section("Open items", (_open(view.open_items, sheets),)),
-            *_if_any("Claimed exceptions", _claims(view)),
-            *_aside(rows_of, view.rule_sets),
-            *_findings(view.findings, sheets, deciding),
-            *_building(view),
-            *_judged(view),
-            *(
-                Section(_heading("Line by line", rules, several), (_by_line(rows, told),))
-                for rules in view.rule_sets
-                for rows in [rows_of[rules.id]]
-            ),
-            *map(_assembly, view.assemblies),
-            *_if_any("Assumed", _plain(view.assumptions)),
-            *_if_any("Remarks", _plain(view.remarks)),
-            Section("Cautions", (_cautions(view),)),
-            Section("Not judged on this page", (_plain(view.not_judged or (wording.NOTHING,)),)),
-            _close(view),
+            *tables(view),
+            *why_over(view),
+            *open_items(view),
+            *beside_the_lines(view),
+            *what_it_rests_on(view),
         ),
     )
+
+
+def tables(view: View) -> tuple[Section, ...]:
+    """Every line once, by rule set, and those on which rule sets differ."""
+    several = len(view.rule_sets) > 1
+    rows_of = _rows_of(view)
+    return (
+        *(
+            main_table.section(rows_of[rules.id], rules, several, view.bounds)
+            for rules in view.rule_sets
+        ),
+        *main_table.differing(view.rows, view.rule_sets),
+    )
+
+
+def why_over(view: View) -> tuple[Section, ...]:
+    """Why lines are over their limits."""
+    return _if_any("Why over the limit", by_line.over(_deciding(view), _told(view)))
+
+
+def open_items(view: View) -> tuple[Section, ...]:
+    """What waits for somebody; "none" where nothing does."""
+    return (Section("Open items", (_open(view.open_items, _sheets(view)),)),)
+
+
+def beside_the_lines(view: View) -> tuple[Section, ...]:
+    """Claims, lines under sets that decide nothing, findings, lists to tick off, the building."""
+    return (
+        *_if_any("Claimed exceptions", _claims(view)),
+        *_aside(_rows_of(view), view.rule_sets),
+        *_findings(view.findings, _sheets(view), _deciding(view)),
+        *(Section(each.heading, (each.grid,)) for each in view.schedules),
+        *_building(view),
+    )
+
+
+def what_it_rests_on(view: View) -> tuple[Section, ...]:
+    """Conventions, each line's limit and sum, assemblies, cautions, what is not judged, hashes."""
+    several = len(view.rule_sets) > 1
+    rows_of, told = _rows_of(view), _told(view)
+    return (
+        *_judged(view),
+        *(
+            Section(_heading("Line by line", rules, several), (_by_line(rows_of[rules.id], told),))
+            for rules in view.rule_sets
+        ),
+        *map(_assembly, view.assemblies),
+        *_if_any("Assumed", _plain(view.assumptions)),
+        *_if_any("Remarks", _plain(view.remarks)),
+        Section("Cautions", (_cautions(view),)),
+        Section("Not judged on this page", (_plain(view.not_judged or (wording.NOTHING,)),)),
+        _close(view),
+    )
+
+
+def _rows_of(view: View) -> dict[str, list[Row]]:
+    found: dict[str, list[Row]] = {rules.id: [] for rules in view.rule_sets}
+    for row in view.rows:
+        found.setdefault(row.rule_set, []).append(row)
+    return found
+
+
+def _deciding(view: View) -> list[Row]:
+    return [row for row in view.rows if row.decides]
+
+
+def _told(view: View) -> set[str]:
+    """Assemblies of which a finding says how the verdict hangs on the method."""
+    return {each.subject for each in view.findings if each.check == "hangs-on-method"}
+
+
+def _sheets(view: View) -> dict[str, str]:
+    return {row.tag: row.sheet for row in view.rows}
 
 
 def _heading(words: str, rules: RuleSetView, several: bool) -> str:
     return f"{words}, {rules.id}" if several else words
 
 
-def _lead(lead: Sequence[str]) -> tuple[Section, ...]:
+def where(view: View) -> tuple[Section, ...]:
     """Place and rule sets: one line, or a line for each rule set."""
-    if len(lead) == 1:
-        return (Section("", (Paragraph(lead[0]),)),)
-    return _if_any("", _plain(lead))
+    if len(view.lead) == 1:
+        return (Section("", (Paragraph(view.lead[0]),)),)
+    return _if_any("", _plain(view.lead))
 
 
 # ------------------------------------------------------------------- what waits for somebody

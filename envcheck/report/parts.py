@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from typing import NamedTuple
 
+from envcheck.report.ladder import Ladder
+
 
 class Pair(NamedTuple):
     """A label and what it says."""
@@ -53,7 +55,13 @@ class Grid(NamedTuple):
     """``bad``, ``open`` or ``good`` for each row: a colour beside the words, never in place."""
 
 
-Block = Paragraph | Facts | Items | Grid
+class Picture(NamedTuple):
+    """A drawing of what a table beside it says in figures; formats of plain text leave it out."""
+
+    ladder: Ladder
+
+
+Block = Paragraph | Facts | Items | Grid | Picture
 
 
 class Section(NamedTuple):
@@ -61,6 +69,8 @@ class Section(NamedTuple):
 
     heading: str
     blocks: tuple[Block, ...]
+    level: int = 2
+    """2 for a part of the page, 3 within one."""
 
 
 class Page(NamedTuple):

@@ -6,7 +6,7 @@ import re
 from collections.abc import Iterable
 
 from envcheck.report import tabular
-from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, Paragraph
+from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, Paragraph, Picture
 
 COLOURS = {"bad": "\x1b[31m", "open": "\x1b[33m", "good": "\x1b[32m"}
 PLAIN = "\x1b[0m"
@@ -43,6 +43,8 @@ def _block(block: Block, width: int, colour: bool) -> list[str]:
             return _items(entries, numbered, width)
         case Grid():
             return grid(block, width, colour)
+        case Picture():
+            return []
 
 
 def _fact(pair: Pair, width: int) -> list[str]:

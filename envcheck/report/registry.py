@@ -1,7 +1,8 @@
 """The one registry of formats, filled by being in the folder ``formats``.
 
 A format is a module with ``NAME``, ``TITLE``, ``EXTENSION`` and ``render(view) -> str``. It may
-have ``DETAILS = True`` (it always lists the assemblies) and ``explain(page, view) -> str`` for
+have ``DETAILS = True`` (it always lists the assemblies), ``WORKINGS = True`` (with ladder and
+worksheet) and ``explain(page, view) -> str`` for
 the page of ``envcheck explain``.
 """
 
@@ -26,6 +27,7 @@ class Format(NamedTuple):
     title: str
     extension: str
     details: bool
+    workings: bool
     render: Callable[[View], str]
     explain: Callable[[Explained], str] | None
 
@@ -53,6 +55,7 @@ def format_named(name: str) -> Format:
         title=module.TITLE,
         extension=module.EXTENSION,
         details=getattr(module, "DETAILS", False),
+        workings=getattr(module, "WORKINGS", False),
         render=module.render,
         explain=getattr(module, "explain", None),
     )

@@ -13,7 +13,7 @@ from envcheck import __version__
 from envcheck.model.judged import Judged, Line
 from envcheck.model.project import Project
 from envcheck.model.ruleset import RuleSet
-from envcheck.report import building, cautions, details, header, items, rows, wording
+from envcheck.report import building, cautions, details, header, items, rows, schedules, wording
 from envcheck.report.building import Building
 from envcheck.report.cautions import CautionText
 from envcheck.report.details import AssemblyView
@@ -21,6 +21,7 @@ from envcheck.report.header import RuleSetView
 from envcheck.report.items import FindingView, Item
 from envcheck.report.parts import Pair
 from envcheck.report.rows import Row
+from envcheck.report.schedules import Schedule
 
 
 class ViewOptions(NamedTuple):
@@ -34,7 +35,9 @@ class ViewOptions(NamedTuple):
     width: int = 100
     """Characters a line of the text format may take."""
     details: bool = False
-    """Assemblies with their layers."""
+    """Assemblies with their layers, and lists to tick off."""
+    workings: bool = False
+    """Of each assembly also its ladder, paths and worksheet."""
     bounds: bool = False
     """A column with the bounds of the drawn model."""
 
@@ -59,6 +62,8 @@ class View(NamedTuple):
     remarks: tuple[str, ...]
     assemblies: tuple[AssemblyView, ...]
     """Empty unless details are asked for."""
+    schedules: tuple[Schedule, ...]
+    """Likewise."""
     cautions: tuple[CautionText, ...]
     not_judged: tuple[str, ...]
     deferral: str
@@ -103,7 +108,12 @@ def build(
         building=building.build(judged, system),
         assumptions=items.assumptions(judged.lines),
         remarks=items.remarks(judged.remarks),
-        assemblies=details.build(project, judged.lines, system) if options.details else (),
+        assemblies=(
+            details.build(project, judged.lines, system, options.workings)
+            if options.details
+            else ()
+        ),
+        schedules=schedules.build(project, made, judged, system) if options.details else (),
         cautions=cautions.gather(project, rulesets, judged),
         not_judged=header.not_judged(rulesets),
         deferral=wording.DEFERRAL,

@@ -12,8 +12,8 @@ TITLE = "JSON, versioned, with a schema"
 EXTENSION = "json"
 DETAILS = True
 SCHEMA_VERSION = 1
-LAYOUT = ("lead", "colour", "width", "bounds")
-"""Fields of a view that say how to print, or again what others say."""
+LAYOUT = ("lead", "colour", "width", "bounds", "workings", "right", "wrap", "tones")
+"""Fields of records that say how to print, or again what others say."""
 
 
 def render(view: View) -> str:
@@ -42,5 +42,6 @@ def plain(value: object) -> object:
         names = getattr(value, "_fields", None)
         if names is None:
             return [plain(item) for item in value]
-        return {name: plain(item) for name, item in zip(names, value, strict=True)}
+        pairs = zip(names, value, strict=True)
+        return {name: plain(item) for name, item in pairs if name not in LAYOUT}
     raise TypeError(f"nothing of JSON: {type(value).__name__}")

@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING
 
 from envcheck.report import outline, tabular
 from envcheck.report.inert import as_code, for_markdown
-from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Paragraph
+from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Paragraph, Picture
 from envcheck.report.view import View
 
 if TYPE_CHECKING:
@@ -49,6 +49,8 @@ def _block(block: Block) -> Iterable[str]:
             return _items(entries, numbered)
         case Grid():
             return _grid(block)
+        case Picture():
+            return []
 
 
 def _items(entries: Iterable[Entry], numbered: bool) -> list[str]:
