@@ -28,7 +28,7 @@ from envcheck.model.judged import Finding, Judged, Line, Mean, Ratio
 from envcheck.model.names import Names
 from envcheck.model.project import Project
 from envcheck.model.ruleset import RuleSet
-from envcheck.model.solved import Properties, Solved
+from envcheck.model.solved import Properties, Reasons, Solved
 from envcheck.read.materials import categories
 from envcheck.read.project import read_project
 from envcheck.read.rulesets import default_folders, read_ruleset
@@ -194,6 +194,13 @@ def _with_narrow_brackets(
                 solver.narrow(solved, ruleset, tolerance)
             lines = judge_again()
     return lines
+
+
+def why(solved: Solved) -> Reasons | None:
+    """Why a solved value is what it is; None where it has no worksheet of its own."""
+    from envcheck.solve.why import reasons
+
+    return reasons(solved)
 
 
 def _read_rulesets(project: Project, folders: Sequence[Path]) -> dict[str, RuleSet]:

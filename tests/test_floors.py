@@ -11,7 +11,7 @@ import envcheck
 
 PACKAGE = Path(envcheck.__file__).parent
 FLOORS = [
-    {"errors", "error_kinds", "model"},
+    {"errors", "error_kinds", "model", "formulas"},
     {"units"},
     {"solve"},
     {"read", "judge", "report"},

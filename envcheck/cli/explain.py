@@ -47,7 +47,7 @@ def explain(
             [problem("unknown-element", file, None, name=subject, expected=expected, hint=hint)]
         )
     asked = ViewOptions(units=units or "", width=options.width(output))
-    made = explained.build(run.project, run.rulesets, run.judged, subject, asked)
+    made = explained.build(run.project, run.rulesets, run.judged, subject, asked, pipeline.why)
     write = registry.format_named(format_name).explain
     assert write is not None
     deliver(write(made), output, (project,))

@@ -14,6 +14,7 @@ FILES = {
     "project": PACKAGE / "read" / "schemas" / "project.schema.json",
     "rules": PACKAGE / "read" / "schemas" / "rules.schema.json",
     "report": PACKAGE / "report" / "schemas" / "report.schema.json",
+    "explain": PACKAGE / "report" / "schemas" / "explain.schema.json",
 }
 
 
@@ -21,7 +22,7 @@ FILES = {
 @click.argument("name", type=click.Choice(list(FILES)))
 @options.OUTPUT
 def schema(name: str, output: str | None) -> int:
-    """Print the JSON Schema (2020-12) of project files, rule sets or the JSON report.
+    """Print the JSON Schema (2020-12) of project files, rule sets or the JSON of check and explain.
 
     \b
     A worked line:

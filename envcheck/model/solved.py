@@ -104,6 +104,63 @@ class Counted(NamedTuple):
     """What was done to it, in words."""
 
 
+class Flow(NamedTuple):
+    """Heat through one of several pieces or paths that stand side by side."""
+
+    among: str
+    """What they make up together: a layer, or all paths."""
+    piece: str
+    area: float
+    """Share of the area, 0..1."""
+    heat: float
+    """Share of the heat that crosses there, 0..1."""
+    resistance: float | None = None
+    """m2 K/W along it; None where heat also moves sideways."""
+
+
+class Weight(NamedTuple):
+    """How much of the whole resistance a layer or film is."""
+
+    symbol: str
+    """Of the layer in the worksheet: ``R3``, ``Ro``, ``Ri``."""
+    title: str
+    share: float
+    """-d ln U / d ln R of all that the layer is made of, 0..1; of layers in series R_i/R."""
+
+
+class Influence(NamedTuple):
+    """How U answers to one number."""
+
+    symbol: str
+    """Of the layer that it belongs to."""
+    title: str
+    quantity: str
+    """``conductivity``, ``resistance``, ``length``, ``u_factor`` ..."""
+    value: float | None
+    """SI; None where one number stands for several."""
+    elasticity: float
+    """d ln U / d ln x: per cent of U for one per cent of it."""
+
+
+class Face(NamedTuple):
+    """Temperatures behind a layer, 0 outdoors and 1 indoors."""
+
+    title: str
+    least: float
+    greatest: float
+
+
+class Reasons(NamedTuple):
+    """Why a value is what it is."""
+
+    flows: tuple[Flow, ...]
+    weights: tuple[Weight, ...]
+    """By layer, outside first; films included."""
+    influences: tuple[Influence, ...]
+    faces: tuple[Face, ...] = ()
+    """Of a drawn section, outside first."""
+
+
 class Caution(NamedTuple):
     """A caution that the assembly triggers: topic of ``needs`` and the reason."""
 
@@ -173,6 +230,8 @@ class Solved(NamedTuple):
     """The shortest sum that a reviewer can repeat; usually one step."""
     added: float = 0.0
     """What fasteners, points and lines add, as far as it is known, W/(m2 K)."""
+    drawn: Reasons | None = None
+    """Of the drawn section, where it was solved in two dimensions."""
 
 
 class Properties(NamedTuple):

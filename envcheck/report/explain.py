@@ -2,20 +2,21 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Callable, Iterable, Mapping
 from typing import NamedTuple
 
 from envcheck.model.judged import Judged, Line
 from envcheck.model.patterns import in_words
 from envcheck.model.project import Assembly, Element, Fact, Project
 from envcheck.model.ruleset import RuleSet
-from envcheck.model.solved import Solved
+from envcheck.model.solved import Reasons, Solved
 from envcheck.report import (
     assembly_page,
     comparison,
     details,
     header,
     numbers,
+    reasons,
     rows,
     said,
     tree,
@@ -28,12 +29,39 @@ from envcheck.report.rows import path_row
 from envcheck.report.view import ViewOptions, system_for
 
 
+class AssemblyExplained(NamedTuple):
+    """The numbers behind one solved assembly; those without a unit of their own are SI."""
+
+    assembly: str
+    metric: str
+    method: str
+    value: float | None
+    low: float | None
+    high: float | None
+    missing: tuple[str, ...]
+    worksheet: tuple[sheet.Line, ...]
+    reasons: Reasons | None
+    """Of the value by the prescribed method."""
+    drawn: Reasons | None
+    """Of the drawn section."""
+
+
 class Explained(NamedTuple):
     """The page of one element or assembly."""
 
     subject: str
     page: Page
     width: int
+    units: str
+    """``SI`` or ``IP``, of the worksheets"""
+    assemblies: tuple[AssemblyExplained, ...]
+
+
+Why = Callable[[Solved], Reasons | None]
+
+
+def _unknown(solved: Solved) -> Reasons | None:
+    return None
 
 
 def subjects(project: Project) -> tuple[str, ...]:
@@ -47,10 +75,11 @@ def build(
     judged: Judged,
     subject: str,
     options: ViewOptions | None = None,
+    why: Why = _unknown,
 ) -> Explained:
     """Explain the element or else the assembly of that name.
 
-    Errors: KeyError for a name that is neither.
+    why: gives the reasons behind a solved value. Errors: KeyError for a name that is neither.
     """
     options = options or ViewOptions()
     system = system_for(project, rulesets, options)
@@ -61,13 +90,32 @@ def build(
         assembly = project.assemblies[subject]
         lines = [line for line in judged.lines if line.solved and line.solved.assembly == subject]
         sections = [_drawn_assembly(assembly, lines)]
+    behind = []
     for solved in _distinct(lines):
-        sections += _solved(project, solved, lines, system)
+        found = why(solved)
+        sections += _solved(project, solved, lines, system, found)
+        behind.append(_numbers(solved, system, found))
     for line in lines:
         sections += _held(line, rulesets, system)
     sections.append(Section("", (Paragraph(wording.DEFERRAL),)))
     heading = f"{header.title(project)}: {clean(subject)}"
-    return Explained(clean(subject), Page(heading, tuple(sections)), options.width)
+    page = Page(heading, tuple(sections))
+    return Explained(clean(subject), page, options.width, system, tuple(behind))
+
+
+def _numbers(solved: Solved, system: str, found: Reasons | None) -> AssemblyExplained:
+    return AssemblyExplained(
+        solved.assembly,
+        solved.setting.metric,
+        solved.setting.method,
+        solved.value,
+        solved.low,
+        solved.high,
+        solved.missing,
+        sheet.write(solved.steps, system),
+        found,
+        solved.drawn,
+    )
 
 
 def _distinct(lines: Iterable[Line]) -> list[Solved]:
@@ -125,19 +173,36 @@ def _drawn_assembly(assembly: Assembly, lines: list[Line]) -> Section:
     return Section("As drawn", tuple(blocks))
 
 
-def _solved(project: Project, solved: Solved, lines: list[Line], system: str) -> list[Section]:
-    """Layers, worksheet, paths and temperatures of one solved assembly."""
+def _solved(
+    project: Project, solved: Solved, lines: list[Line], system: str, found: Reasons | None
+) -> list[Section]:
+    """Layers, reasons, worksheet, paths and temperatures of one solved assembly."""
     assembly = project.assemblies[solved.assembly]
     tags = dict.fromkeys(line.element for line in lines if line.solved is solved)
     view = details.assembly_view(assembly, solved, tags, system)
     made = [Section(f"Assembly {view.assembly}, {view.metric}", assembly_page.blocks(view))]
+    made += _reasons(assembly, solved, view.method, system, found)
     if solved.steps:
         made.append(Section("Worksheet", (Paragraph(_HOW), _worksheet(solved, system))))
-    grid = tree.paths(solved.tree, system)
-    if grid is not None:
-        made.append(Section("Paths and their share of the heat", (grid,)))
     made += _temperatures(project, solved, system)
     return made
+
+
+def _reasons(
+    assembly: Assembly, solved: Solved, method: str, system: str, found: Reasons | None
+) -> list[Section]:
+    """Why the value is what it is, and why that of the drawn section is."""
+    made = []
+    u_factor = solved.value if solved.setting.metric == "U_assembly" else None
+    if found is not None:
+        parts = reasons.blocks(assembly, found, u_factor, system, solved.counted)
+        made.append(Section(f"Why it is what it is, by {method}", parts))
+    if solved.drawn is not None:
+        heading = "Why it is what it is, in the drawn section"
+        ends = (solved.low or 0.0) + (solved.high or 0.0) - 2.0 * solved.added
+        parts = reasons.blocks(assembly, solved.drawn, ends / 2.0, system)
+        made.append(Section(heading, parts))
+    return [section for section in made if section.blocks]
 
 
 _HOW = (
@@ -164,9 +229,15 @@ def _temperatures(project: Project, solved: Solved, system: str) -> list[Section
     if solved.setting.metric != "U_assembly":
         return []
     air = (site.outdoor_temperature, site.indoor_temperature)
-    grids = tree.temperatures(solved.tree, *air, system)
+    drawn = solved.drawn if solved.decided_by_bracket else None
+    if drawn is not None:
+        grids = [tree.face_temperatures(drawn.faces, *air, system)]
+    else:
+        grids = tree.temperatures(solved.tree, *air, system)
     outdoor, indoor = (numbers.temperature(value, system) for value in air)
     text = f"Steady, for outdoor air at {outdoor} and indoor air at {indoor}."
+    if drawn is not None:
+        text += " Of the drawn section; unlike its U-factor they are not bounded."
     return [Section("Temperatures at the interfaces", (Paragraph(text), *grids))]
 
 

@@ -5,8 +5,9 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from functools import lru_cache
 
+from envcheck import formulas
 from envcheck.model.solved import Operand, Step
-from envcheck.report import arithmetic, numbers, worksheet
+from envcheck.report import numbers, worksheet
 from envcheck.report.inert import clean
 
 DIGITS = (4, 6, worksheet.OPERAND_DIGITS)
@@ -93,7 +94,7 @@ def _computed(
     expression: str, names: tuple[str, ...], pairs: Sequence[tuple[str, float]]
 ) -> tuple[str, float] | None:
     """A formula filled in, and its result; None where the numbers have none."""
-    formula = arithmetic.compiled(expression)
+    formula = formulas.compiled(expression)
     if len(pairs) != len(names):
         return None
     if formula.names != names:
@@ -105,7 +106,7 @@ def _computed(
     except (ArithmeticError, ValueError):
         return None
     if min(figures, default=0.0) < 0.0:
-        return arithmetic.filled(formula, texts), computed
+        return formulas.filled(formula, texts), computed
     return formula.form % texts, computed
 
 

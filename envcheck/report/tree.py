@@ -1,42 +1,14 @@
-"""Paths through a solved network, their share of the heat, and temperatures between parts."""
+"""Temperatures between the parts of a solved network or section."""
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Sequence
 
 from envcheck import units
-from envcheck.model.solved import Node, Parallel, Resistor, Series
+from envcheck.model.solved import Face, Node, Parallel, Resistor, Series
 from envcheck.report import numbers
 from envcheck.report.inert import clean
 from envcheck.report.parts import Grid
-
-
-def paths(tree: Node | None, system: str) -> Grid | None:
-    """Every set of branches with its shares of area and heat; None where there is one path."""
-    found = [
-        (
-            clean(branch.title),
-            numbers.percent(share, 2),
-            numbers.resistance(branch.value, system),
-            numbers.percent(share / branch.value * node.value) if branch.value else "",
-        )
-        for node in _parallels(tree)
-        for share, branch in zip(node.shares, node.branches, strict=True)
-    ]
-    if not found:
-        return None
-    unit = units.label("resistance", system)
-    return Grid(("path", "area", f"R, {unit}", "heat"), tuple(found), (1, 2, 3), (0,))
-
-
-def _parallels(tree: Node | None) -> Iterable[Parallel]:
-    if isinstance(tree, Parallel):
-        yield tree
-        for branch in tree.branches:
-            yield from _parallels(branch)
-    elif isinstance(tree, Series):
-        for part in tree.parts:
-            yield from _parallels(part)
 
 
 def temperatures(tree: Node, outside: float, inside: float, system: str) -> list[Grid]:
@@ -71,3 +43,13 @@ def _along(path: Node, outside: float, inside: float, system: str) -> Grid:
 
 def _title(part: Node) -> str:
     return part.title or (part.symbol if isinstance(part, Resistor) else "part")
+
+
+def face_temperatures(faces: Sequence[Face], outside: float, inside: float, system: str) -> Grid:
+    """Coldest and warmest point behind each layer of a drawn section, outside first."""
+
+    def shown(part: float) -> str:
+        return numbers.temperature(outside + (inside - outside) * part, system)
+
+    rows = tuple((f"behind {clean(f.title)}", shown(f.least), shown(f.greatest)) for f in faces)
+    return Grid(("drawn section", "coldest", "warmest"), rows, (1, 2), (0,))

@@ -11,9 +11,9 @@ from __future__ import annotations
 from collections.abc import Iterable
 from typing import NamedTuple
 
-from envcheck import units
+from envcheck import formulas, units
 from envcheck.model.solved import Operand, Step
-from envcheck.report import arithmetic, numbers
+from envcheck.report import numbers
 from envcheck.report.inert import clean
 
 OPERAND_DIGITS = 9
@@ -91,10 +91,10 @@ def _formula(sheet: _Sheet, step: Step, system: str) -> None:
             values[name] = printed(operand.value, operand.quantity, system, sheet.digits)
             stated.append(f"{name} = {values[name]} {unit}".rstrip())
     try:
-        result = arithmetic.evaluate(step.expression, {k: float(v) for k, v in values.items()})
+        result = formulas.evaluate(step.expression, {k: float(v) for k, v in values.items()})
     except (ArithmeticError, ValueError):
         result = numbers.in_system(step.value, step.quantity, system)
-    written = arithmetic.fill(step.expression, values)
+    written = formulas.fill(step.expression, values)
     text = numbers.significant(result, RESULT_DIGITS)
     _print(sheet, step, system, written, tuple(stated), text)
 
@@ -122,8 +122,8 @@ def _fails_in_ip(step: Step) -> bool:
 def _holds_in_ip(step: Step) -> bool:
     converted = {o.name: numbers.in_system(o.value, o.quantity, "IP") for o in step.operands}
     try:
-        truth = arithmetic.evaluate(step.expression, {o.name: o.value for o in step.operands})
-        result = arithmetic.evaluate(step.expression, converted)
+        truth = formulas.evaluate(step.expression, {o.name: o.value for o in step.operands})
+        result = formulas.evaluate(step.expression, converted)
     except (ArithmeticError, ValueError):
         return False
     expected = numbers.in_system(truth, step.quantity, "IP")
@@ -149,7 +149,7 @@ def _print(
     sheet: _Sheet, step: Step, system: str, written: str, stated: tuple[str, ...], result: str
 ) -> None:
     unit = units.label(step.quantity, system)
-    formula = arithmetic.named(step.expression)
+    formula = formulas.named(step.expression)
     title, source = clean(step.title), clean(step.source)
     sheet.lines.append(Line(step.symbol, title, formula, stated, written, result, unit, source))
     sheet.printed[step.symbol] = {unit: result}
@@ -169,7 +169,7 @@ def _in_unit(sheet: _Sheet, symbol: str, target: str, quantity: str) -> str:
         ratio = units.to_si(1.0, unit) / units.to_si(1.0, target)
         sign, factor = ("*", ratio) if ratio > 1.0 else ("/", 1.0 / ratio)
         written = f"{text} {sign} {numbers.significant(factor, OPERAND_DIGITS)}"
-    result = numbers.significant(arithmetic.evaluate(written, {}), RESULT_DIGITS)
+    result = numbers.significant(formulas.evaluate(written, {}), RESULT_DIGITS)
     title = f"{symbol} from {unit} to {target}"
     sheet.lines.append(Line(symbol, title, "", (), written, result, target, ""))
     known[target] = result

@@ -12,6 +12,8 @@ TOLERANCE = 1e-3
 CLOSE = 1e-4
 """... and where a deciding bracket still holds the limit."""
 
+PLANES = "U-factor by isothermal planes: the widest upper bound"
+
 
 def can_narrow(solved: Solved, tolerance: float) -> bool:
     """Whether there is a bracket that is wider than the tolerance."""
@@ -37,11 +39,14 @@ def narrow(
     from envcheck.solve.field.bound import bound
     from envcheck.solve.field.drawing import NotDrawn, section_of
     from envcheck.solve.field.networks import SolveError
+    from envcheck.solve.field.reasons import section_reasons
     from envcheck.solve.field.section import ModelError
 
     assert solved.low is not None and solved.high is not None, "see can_narrow"
     try:
-        found = bound(section_of(draw(assembly, setting, conventions)[0]), tolerance)
+        wall = draw(assembly, setting, conventions)[0]
+        section = section_of(wall)
+        found = bound(section, tolerance)
     except (NotDrawn, ModelError, SolveError) as why:
         note = solved.bracket_note.partition("; not solved")[0]
         return solved._replace(bracket_note=f"{note}; not solved in two dimensions: {why}")
@@ -67,9 +72,11 @@ def narrow(
         bracket_note=note,
         value=high if by_bracket else solved.value,
         clear=high - solved.added if by_bracket else solved.clear,
+        drawn=section_reasons(wall, section, found),
     )
 
 
 def _ending_in(step: Step, steps: tuple[Step, ...]) -> tuple[Step, ...]:
     """Steps with this one last, and none of its name before it: a closer bound replaces one."""
-    return (*(one for one in steps if one.symbol != step.symbol), step)
+    kept = (one for one in steps if one.symbol != step.symbol)
+    return (*(one._replace(title=PLANES) if one.symbol == "U" else one for one in kept), step)

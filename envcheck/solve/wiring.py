@@ -129,22 +129,27 @@ def parallel_paths(wall: Wall, symbol: str = "R") -> Wired:
 def isothermal_planes(wall: Wall, symbol: str = "R") -> Wired:
     """Wire by isothermal planes: each row of each block is one resistance, all rows in series."""
     parts: list[Node] = [wall.outside]
+    summed: list[Node] = [wall.outside]
     steps = []
     for block in wall.blocks:
         for number, row in enumerate(block.cells, 1):
             columns = _merged_row(block, row)
             if len(columns) == 1:
                 parts.append(columns[0][1])
+                summed.append(columns[0][1])
                 continue
             name = f"{block.symbol}_plane{number}" if len(block.cells) > 1 else block.symbol
             plane = in_parallel(block.title, columns)
             titles = " beside ".join(resistor.title for _, resistor in columns)
             named = [(resistor.symbol, share, resistor.value) for share, resistor in columns]
             steps.append(_beside_step(name, f"{block.title}: {titles}", named, plane.value))
-            parts.append(Resistor(name, block.title, plane.value))
+            parts.append(plane)
+            summed.append(Resistor(name, block.title, plane.value))
     parts.append(wall.inside)
+    summed.append(wall.inside)
     tree = in_series("isothermal planes", parts)
-    return Wired(tree, (*steps, _sum_step(symbol, FILM_TO_FILM, tree)))
+    closing = _sum_step(symbol, FILM_TO_FILM, tree._replace(parts=tuple(summed)))
+    return Wired(tree, (*steps, closing))
 
 
 def u_step(resistance: float, symbol: str = "R") -> Step:

@@ -2,12 +2,15 @@
 
 from __future__ import annotations
 
+import json
 from pathlib import Path
 
 import pytest
+from jsonschema import Draft202012Validator
 
 from envcheck.report import explain, registry
 from envcheck.report.view import ViewOptions
+from envcheck.solve.why import reasons
 from tests.changed import changed
 from tests.report.fixture import JUDGED, PROJECT, RULESETS
 
@@ -15,7 +18,7 @@ EXPECTED = Path(__file__).parent / "expected"
 
 
 def written(subject: str, name: str = "text", units: str = "") -> str:
-    made = explain.build(PROJECT, RULESETS, JUDGED, subject, ViewOptions(units=units))
+    made = explain.build(PROJECT, RULESETS, JUDGED, subject, ViewOptions(units=units), reasons)
     write = registry.format_named(name).explain
     assert write is not None
     return write(made)
@@ -65,3 +68,25 @@ def test_a_bracket_that_holds_the_limit_shows_both_ends() -> None:
     assert "low bound: 0.038 <= 0.060 Btu/(h ft2 F) holds" in text
     assert "high bound: 0.067 <= 0.060 Btu/(h ft2 F) does not hold" in text
     assert "Verdict: limit lies between the bounds" in text
+
+
+def test_json_is_what_its_schema_says() -> None:
+    path = Path(explain.__file__).parent / "schemas" / "explain.schema.json"
+    schema = json.loads(path.read_text(encoding="utf-8"))
+    Draft202012Validator.check_schema(schema)
+    for subject in explain.subjects(PROJECT):
+        found = json.loads(written(subject, "json"))
+        assert list(Draft202012Validator(schema).iter_errors(found)) == []
+    (wall,) = json.loads(written("W2", "json"))["assemblies"]
+    assert wall["worksheet"][-1]["symbol"] == "U"
+    heat = {flow["piece"]: flow["heat"] for flow in wall["reasons"]["flows"]}
+    assert heat["studs"] == pytest.approx(0.25 / 2.18112462 / 0.295764, rel=1e-4)
+    del wall["value"]
+    broken = {"schema_version": 1, "subject": "W2", "units": "SI", "assemblies": [wall]}
+    assert len(list(Draft202012Validator(schema).iter_errors(broken))) == 1
+
+
+def test_the_page_says_why_before_the_worksheet() -> None:
+    text = written("W2")
+    assert "studs, 25 % of the area, carries 38.8 % of the heat" in text
+    assert text.index("Why it is what it is") < text.index("Worksheet")

@@ -11,8 +11,9 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
+from envcheck import formulas
 from envcheck.model.solved import Operand, Step
-from envcheck.report import arithmetic, explain, hand_check, numbers, parts, worksheet
+from envcheck.report import explain, hand_check, numbers, parts, worksheet
 from envcheck.report.view import ViewOptions
 from envcheck.units import to_si
 from tests.report.fixture import STEEL, WOOD
@@ -192,7 +193,7 @@ def test_negative_operands_get_parentheses() -> None:
 )
 def test_what_is_no_formula_is_refused(formula: str) -> None:
     with pytest.raises(ValueError, match="formula"):
-        arithmetic.compiled(formula)
+        formulas.compiled(formula)
 
 
 positive = st.floats(0.01, 1000.0)
@@ -202,4 +203,4 @@ positive = st.floats(0.01, 1000.0)
 def test_the_evaluator_agrees_with_python(a: float, b: float, c: float) -> None:
     formula = "ln(1 + {a}) * sqrt({b}) - max({a}, {c}) / (-{b} + 2 * {b}) ** 2 + {c} + exp(-{a})"
     truth = math.log(1 + a) * math.sqrt(b) - max(a, c) / b**2 + c + math.exp(-a)
-    assert arithmetic.evaluate(formula, {"a": a, "b": b, "c": c}) == pytest.approx(truth)
+    assert formulas.evaluate(formula, {"a": a, "b": b, "c": c}) == pytest.approx(truth)

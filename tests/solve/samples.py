@@ -6,6 +6,7 @@ from collections.abc import Iterable
 
 import pytest
 
+from envcheck.formulas import evaluate
 from envcheck.model.project import (
     Assembly,
     Fill,
@@ -18,7 +19,6 @@ from envcheck.model.project import (
 )
 from envcheck.model.ruleset import Conventions
 from envcheck.model.solved import Setting, Step
-from envcheck.report.arithmetic import evaluate
 from envcheck.solve.registry import Context
 from envcheck.units import in_system, parse
 

@@ -1,11 +1,15 @@
-"""JSON for programs; its form is fixed by ``schemas/report.schema.json``."""
+"""JSON for programs; ``schemas/report.schema.json`` and ``explain.schema.json`` fix its form."""
 
 from __future__ import annotations
 
 import json
+from typing import TYPE_CHECKING
 
 from envcheck.report.rows import Figure
 from envcheck.report.view import View
+
+if TYPE_CHECKING:
+    from envcheck.report.explain import Explained
 
 NAME = "json"
 TITLE = "JSON, versioned, with a schema"
@@ -19,7 +23,17 @@ LAYOUT = ("lead", "colour", "width", "bounds", "workings", "right", "wrap", "ton
 def render(view: View) -> str:
     """Write the view as one JSON object; same view, same bytes."""
     kept = {name: plain(getattr(view, name)) for name in View._fields if name not in LAYOUT}
-    members = {"schema_version": SCHEMA_VERSION, **kept}
+    return _written({"schema_version": SCHEMA_VERSION, **kept})
+
+
+def explain(made: Explained) -> str:
+    """Write worksheets and reasons of one subject as JSON (``schemas/explain.schema.json``)."""
+    assemblies = plain(made.assemblies)
+    members = {"subject": made.subject, "units": made.units, "assemblies": assemblies}
+    return _written({"schema_version": SCHEMA_VERSION, **members})
+
+
+def _written(members: dict[str, object]) -> str:
     return (
         "{\n" + ",\n".join(f'"{key}": {_member(each)}' for key, each in members.items()) + "\n}\n"
     )

@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator, Sequence
+
 from envcheck.model.layers import TaperedLayer
-from envcheck.model.solved import Block
+from envcheck.model.solved import Block, Resistor
 from envcheck.solve.field.section import Section
 from envcheck.solve.registry import Wall
 from envcheck.solve.wiring import align
@@ -34,23 +36,24 @@ def section_of(wall: Wall) -> Section:
     if not all(block.repeat for block in patterned):
         raise NotDrawn("the spacing of the members is not stated")
     widths = patterned[0].widths
-    rows = [row for block in blocks for row in _rows(block, len(widths))]
+    rows = list(piece_rows(blocks))
     return Section(
         tuple(widths),
-        tuple(depth for depth, _ in rows),
-        tuple(conductivities for _, conductivities in rows),
+        tuple(depth for _, depth, _ in rows),
+        tuple(tuple(depth / cell.value for cell in cells) for _, depth, cells in rows),
         wall.outside.value,
         wall.inside.value,
     )
 
 
-def _rows(block: Block, columns: int) -> list[tuple[float, tuple[float, ...]]]:
-    """Depth and conductivities of the rows of a block; rows of no resistance are left out."""
-    found = []
-    for depth, row in zip(block.depths, block.cells, strict=True):
-        if all(cell.value == 0 for cell in row):
-            continue
-        drawn = depth if depth > 0 else THIN * row[0].value
-        conductivities = tuple(drawn / cell.value for cell in row)
-        found.append((drawn, conductivities * columns if len(row) == 1 else conductivities))
-    return found
+def piece_rows(blocks: Sequence[Block]) -> Iterator[tuple[Block, float, tuple[Resistor, ...]]]:
+    """Rows of aligned blocks as the section has them: block, depth (m), and a cell per column.
+
+    Rows of no resistance are left out.
+    """
+    columns = max(len(block.widths) for block in blocks)
+    for block in blocks:
+        for depth, row in zip(block.depths, block.cells, strict=True):
+            if any(cell.value for cell in row):
+                drawn = depth if depth > 0 else THIN * row[0].value
+                yield block, drawn, row * columns if len(row) == 1 else row
