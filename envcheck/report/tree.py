@@ -1,14 +1,44 @@
-"""Temperatures between the parts of a solved network or section."""
+"""Paths through a solved network, their share of the heat, and temperatures between parts."""
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterable, Sequence
 
 from envcheck import units
 from envcheck.model.solved import Face, Node, Parallel, Resistor, Series
 from envcheck.report import numbers
 from envcheck.report.inert import clean
 from envcheck.report.parts import Grid
+
+
+def paths(tree: Node | None, system: str) -> Grid | None:
+    """Every set of branches with its shares of area and heat; None where there is one path."""
+    found = [
+        (
+            clean(node.title),
+            clean(branch.title),
+            numbers.percent(share, 2),
+            numbers.resistance(branch.value, system),
+            numbers.percent(share / branch.value * node.value) if branch.value else "",
+        )
+        for node in _parallels(tree)
+        for share, branch in zip(node.shares, node.branches, strict=True)
+    ]
+    if not found:
+        return None
+    unit = units.label("resistance", system)
+    heads = ("side by side in", "path", "area", f"R, {unit}", "heat")
+    return Grid(heads, tuple(found), (2, 3, 4), (1, 0))
+
+
+def _parallels(tree: Node | None) -> Iterable[Parallel]:
+    if isinstance(tree, Parallel):
+        yield tree
+        for branch in tree.branches:
+            yield from _parallels(branch)
+    elif isinstance(tree, Series):
+        for part in tree.parts:
+            yield from _parallels(part)
 
 
 def temperatures(tree: Node, outside: float, inside: float, system: str) -> list[Grid]:
