@@ -12,7 +12,8 @@ from typing import TYPE_CHECKING
 
 from envcheck.errors import InputError, Problem
 from envcheck.judge import crosschecks
-from envcheck.judge.building import closings, ratios, take_means
+from envcheck.judge.building import closings, ratios
+from envcheck.judge.groups import take_groups
 from envcheck.judge.lines import (
     classes_of,
     exit_status,
@@ -24,7 +25,7 @@ from envcheck.judge.lines import (
     weighed,
 )
 from envcheck.judge.zones import zone_problems
-from envcheck.model.judged import Finding, Judged, Line, Mean, Ratio
+from envcheck.model.judged import Finding, Group, Judged, Line, Ratio
 from envcheck.model.names import Names
 from envcheck.model.project import Project
 from envcheck.model.ruleset import RuleSet
@@ -131,7 +132,7 @@ def _run(path: str, folders: Sequence[str], bounds: bool) -> Run:
     solver = Solver(project, metrics)
     lines: list[Line] = []
     all_ratios: list[Ratio] = []
-    means: list[Mean] = []
+    groups: list[Group] = []
     found: list[Finding] = []
     for choice in project.rule_sets:
         ruleset = rulesets[choice.id]
@@ -143,7 +144,7 @@ def _run(path: str, folders: Sequence[str], bounds: bool) -> Run:
             judge_lines,
             project,
             ruleset,
-            choice.decides,
+            choice,
             made_of,
             classes,
             measured,
@@ -151,10 +152,10 @@ def _run(path: str, folders: Sequence[str], bounds: bool) -> Run:
             solver.solve,
         )
         own = _with_narrow_brackets(judge_again, solver, ruleset, bounds)
-        own, taken = take_means(own, project, ruleset)
+        own, taken = take_groups(own, project, ruleset, choice, measured)
         lines += own
         all_ratios += measured
-        means += taken
+        groups += taken
     closed = closings(project)
     solver.drawn_only(rulesets[project.rule_sets[0].id])
     facts = crosschecks.Facts(
@@ -165,14 +166,14 @@ def _run(path: str, folders: Sequence[str], bounds: bool) -> Run:
         solver.first,
         closed,
         tuple(all_ratios),
-        tuple(means),
+        tuple(groups),
     )
     findings = (*found, *crosschecks.findings(facts))
     judged = Judged(
         lines=tuple(lines),
         findings=findings,
         ratios=tuple(all_ratios),
-        means=tuple(means),
+        groups=tuple(groups),
         closings=closed,
         remarks=remarks(project, rulesets),
     )

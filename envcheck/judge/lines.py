@@ -8,11 +8,12 @@ from envcheck.judge.before import Case
 from envcheck.judge.building import closed_rows
 from envcheck.judge.classes import Class, classify
 from envcheck.judge.select import select
+from envcheck.judge.tradeoff import elects
 from envcheck.judge.verdict import judge
 from envcheck.model.judged import Finding, Judged, Line, Ratio
 from envcheck.model.patterns import matches
-from envcheck.model.project import Assembly, Element, Project
-from envcheck.model.ruleset import RuleSet
+from envcheck.model.project import Assembly, Element, Project, RuleSetChoice
+from envcheck.model.ruleset import RuleSet, TradeOff
 from envcheck.model.solved import Properties, Solved
 
 SOLVED_METRICS = ("U_assembly", "U_product", "C_factor", "F_factor")
@@ -66,7 +67,7 @@ def merged(findings: Iterable[Finding]) -> list[Finding]:
 def judge_lines(
     project: Project,
     ruleset: RuleSet,
-    decides: bool,
+    choice: RuleSetChoice,
     made_of: Mapping[str, Properties],
     classes: Mapping[str, Class],
     measured: Sequence[Ratio],
@@ -75,9 +76,11 @@ def judge_lines(
 ) -> list[Line]:
     """Judge every element, a line for each metric that its row speaks of.
 
-    metrics: by category, the metric of an element for whose heat flow no row gives a limit.
+    metrics: by category, the metric of an element for whose heat flow no row gives a limit. An
+    elected trade-off that charges openings above their allowance closes no row.
     """
-    closed = closed_rows(ruleset, measured)
+    traded = ruleset.tradeoff is not None and ruleset.tradeoff.charges and elects(choice)
+    closed = {} if traded else closed_rows(ruleset, measured)
     derived = {ratio.name: ratio.value for ratio in measured if not ratio.missing}
     lines = []
     for tag, element in project.elements.items():
@@ -86,7 +89,7 @@ def judge_lines(
         case = Case(
             project,
             ruleset,
-            decides,
+            choice.decides,
             element,
             assembly,
             made_of[assembly.id],
@@ -129,9 +132,18 @@ def remarks(project: Project, rulesets: Mapping[str, RuleSet]) -> tuple[str, ...
     found = []
     for choice in project.rule_sets:
         ruleset = rulesets[choice.id]
-        if ruleset.tradeoff:
-            found.append(f"{ruleset.title}: {ruleset.tradeoff}")
+        if ruleset.tradeoff is not None and not ruleset.tradeoff.taken:
+            found.append(f"{ruleset.title}: {_not_taken(ruleset.tradeoff)}")
         found += [f"{ruleset.title}: {remark}" for remark in ruleset.remarks]
         if not choice.decides:
             found.append(f"{ruleset.title} is for information: it sets no exit status")
     return tuple(found)
+
+
+def _not_taken(tradeoff: TradeOff) -> str:
+    """What is said of a trade-off that is offered and not computed."""
+    clause = f"{tradeoff.clause}: " if tradeoff.clause else ""
+    rule = f" ({tradeoff.rule})" if tradeoff.rule else ""
+    say = f"; {tradeoff.say}" if tradeoff.say else ""
+    kind = tradeoff.kind.replace("_", " ")
+    return f"{clause}the code also offers a trade-off, {kind}{rule}; it is not computed here{say}"

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from math import fsum
 from typing import NamedTuple
 
 from envcheck.model.ruleset import Limit
@@ -85,6 +86,9 @@ class Line(NamedTuple):
     own: Comparison | None = None
     """A group member's own comparison."""
     group: str = ""
+    """Name of the group whose verdict it carries."""
+    group_kind: str = ""
+    """``mean`` or ``trade_off``"""
     low: Comparison | None = None
     """Ends of the bracket, compared likewise."""
     high: Comparison | None = None
@@ -138,20 +142,98 @@ class Ratio(NamedTuple):
     passed: bool
     """The cap is passed (exceeded)."""
     missing: tuple[str, ...] = ()
+    counted: tuple[str, ...] = ()
+    """Tags of the elements above the line."""
 
 
-class Mean(NamedTuple):
-    """An area-weighted mean that the project asks for."""
+class Part(NamedTuple):
+    """One line in a sum over several elements."""
 
-    group: str
-    ruleset: str
-    members: tuple[tuple[str, float, float], ...]
-    """(tag, area m2, U W/(m2 K))"""
+    element: str
+    assembly: str
+    metric: str
+    amount: float
+    """m2; of an F-factor m."""
     value: float
-    worst: str
+    """As drawn, unrounded: W/(m2 K), W/(m K), or a plain number."""
+    limit: float
+    """By the table, in the same unit."""
+    verdict: str
+    """Its own, beside that of the group."""
+    printed: str
+    """Digits of the limit as printed ..."""
+    unit: str
+    """... and their unit."""
+
+    @property
+    def drawn(self) -> float:
+        """What it adds as drawn, W/K."""
+        return self.amount * self.value
+
+    @property
+    def table(self) -> float:
+        """What it adds by the table, W/K."""
+        return self.amount * self.limit
+
+
+class Charge(NamedTuple):
+    """What a rule charges for openings above their allowance."""
+
+    ratio: str
+    """``window_wall_ratio`` or ``skylight_roof_ratio``"""
+    excess: float
+    """Area above the allowance, m2."""
+    glazing: float
+    """Mean U of the openings, W/(m2 K): as drawn, or by the table."""
+    opaque: float
+    """Mean U of what they stand in, likewise."""
+    amount: float
+    """W/K; added to the sum named by ``to``, less than 0 where it is taken off."""
+    to: str
+    """``drawn`` or ``table``"""
+
+
+class Group(NamedTuple):
+    """Several lines judged together: an area-weighted mean, or a trade-off."""
+
+    kind: str
+    """``mean`` or ``trade_off``"""
+    name: str
+    """Of a mean as the project names it; of a trade-off the class of its spaces, or empty."""
+    ruleset: str
+    decides: bool
     clause: str
-    cap: str
-    """What the individual cap says, in words."""
+    elected: bool
+    """The project asks for it: its lines carry its verdict. Else it is information."""
+    state: str
+    """``pass``, ``fail``, ``official_decides``, or ``not_decided`` where something is open."""
+    parts: tuple[Part, ...]
+    """Decided lines; the sums are over these."""
+    drawn: float
+    """Sum of amount times value, charges included; W/K of a U-, C- or F-factor."""
+    table: float
+    """The same by the table."""
+    waits: tuple[str, ...] = ()
+    """Why it is closed; empty where nothing stands in the way."""
+    left_out: tuple[tuple[str, str], ...] = ()
+    """(tag, why) of lines that have no place in the sum."""
+    charges: tuple[Charge, ...] = ()
+    cap: str = ""
+    """What the individual cap of a mean says, in words."""
+    rule: str = ""
+    """The rule of a trade-off, and what it holds besides, as the rule set words it."""
+
+    @property
+    def value(self) -> float:
+        """The mean."""
+        return self.drawn / fsum(part.amount for part in self.parts)
+
+    @property
+    def worst(self) -> Part:
+        """The member with the greatest value of a mean, the worst contributor of a sum."""
+        if self.kind == "mean":
+            return max(self.parts, key=lambda part: part.value)
+        return max(self.parts, key=lambda part: part.drawn - part.table)
 
 
 CLOSES_WITHIN = 0.005
@@ -180,7 +262,7 @@ class Judged:
     lines: tuple[Line, ...]
     findings: tuple[Finding, ...]
     ratios: tuple[Ratio, ...]
-    means: tuple[Mean, ...]
+    groups: tuple[Group, ...]
     closings: tuple[Closing, ...]
     remarks: tuple[str, ...]
     """Trade-offs offered and not computed, drafts that do not decide ..."""

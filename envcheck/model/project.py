@@ -250,6 +250,8 @@ class RuleSetChoice(NamedTuple):
     id: str
     decides: bool
     line: int
+    path: str = "prescriptive"
+    """``prescriptive`` (row by row) or ``trade_off``, where the project elects it."""
 
 
 class ZoneStated(NamedTuple):

@@ -240,6 +240,43 @@ class Averaging(NamedTuple):
     """m2"""
 
 
+class TradeOff(NamedTuple):
+    """A sum over the building that the code offers in place of its rows."""
+
+    kind: str
+    """As the rule set names it."""
+    clause: str = ""
+    rule: str = ""
+    """In words, for the report."""
+    supported: str = "no"
+    """``yes``; ``partly`` (the sum is taken, the official decides); ``no`` (said only)"""
+    say: str = ""
+    terms: tuple[str, ...] = ()
+    """Which products are summed: ``U_A``, ``C_A``, ``F_P``; empty = none is taken."""
+    rows: tuple[str, ...] = ()
+    """Category patterns that belong; empty = all."""
+    left_out: tuple[str, ...] = ()
+    """Category patterns that may not be traded."""
+    per: str = ""
+    """Dimension whose words part the building (``space_category``); empty = one sum."""
+    classes: tuple[str, ...] = ()
+    """Its words for which the code offers the sum; empty = all."""
+    glazing: str = "closes"
+    """Openings above their allowance: they close the sum (``closes``); the table counts the
+    excess as what it stands in (``at_allowance``); the design is charged for it
+    (``excess_added``)."""
+
+    @property
+    def taken(self) -> bool:
+        """Whether the sum is computed."""
+        return self.supported != "no" and bool(self.terms)
+
+    @property
+    def charges(self) -> bool:
+        """Whether openings above their allowance are charged, and close nothing."""
+        return self.taken and self.glazing != "closes"
+
+
 class Trigger(NamedTuple):
     """Alterations: the target applies where more than ``share`` of an element is renewed."""
 
@@ -308,8 +345,7 @@ class RuleSet(NamedTuple):
     conventions: Conventions
     area_limits: tuple[AreaLimit, ...]
     averaging: tuple[Averaging, ...]
-    tradeoff: str
-    """What is said of a trade-off that the code offers and that is not computed; or empty."""
+    tradeoff: TradeOff | None
     trigger: Trigger | None
     exceptions: tuple[ExceptionClause, ...]
     not_judged: tuple[str, ...]

@@ -183,6 +183,8 @@ def _rule_sets(sections: _Sections) -> tuple[RuleSetChoice, ...]:
     return tuple(
         RuleSetChoice(item, True, line)
         if isinstance(item, str)
-        else RuleSetChoice(item["id"], item.get("decides", True), line)
+        else RuleSetChoice(
+            item["id"], item.get("decides", True), line, item.get("path", "prescriptive")
+        )
         for line, item in sections.items("rule_sets")
     )

@@ -158,11 +158,11 @@ def read_area_limits(
     for i, stated in enumerate(document.get("area_limits") or ()):
         at = ("area_limits", i)
         most = _number(document, stated["max"], (*at, "max"), problems)
-        closes = _own_names(document, tuple(stated.get("closes") or ()))
+        closes = own_names(document, tuple(stated.get("closes") or ()))
         if not closes:
             p = problem("cap-closes-nothing", document.name, document.line(*at))
             problems.append(p)
-        _patterns(document, closes, categories, (*at, "closes"), problems)
+        check_patterns(document, closes, categories, (*at, "closes"), problems)
         if most is not None:
             found.append(AreaLimit(stated["of"], most, stated["clause"], closes))
     return tuple(found)
@@ -176,15 +176,15 @@ def read_averaging(
     for i, stated in enumerate(document.get("averaging") or ()):
         at = ("averaging", i)
         scope = stated["scope"]
-        patterns = _own_names(document, (scope,) if isinstance(scope, str) else tuple(scope))
+        patterns = own_names(document, (scope,) if isinstance(scope, str) else tuple(scope))
         if any(" " in p for p in patterns):
             remarks.append(f"{stated['clause']} permits a mean over {scope}; it is not taken here")
             continue
-        _patterns(document, patterns, categories, (*at, "scope"), problems)
+        check_patterns(document, patterns, categories, (*at, "scope"), problems)
         cap = stated.get("individual_cap")
         exempt, area = stated.get("cap_exempt", ""), stated.get("cap_exempt_area")
         if exempt:
-            _patterns(document, (exempt,), categories, (*at, "cap_exempt"), problems)
+            check_patterns(document, (exempt,), categories, (*at, "cap_exempt"), problems)
         cap_value = (
             None if cap is None else _number(document, cap, (*at, "individual_cap"), problems)
         )
@@ -219,32 +219,21 @@ def read_exceptions(*documents: Document) -> tuple[ExceptionClause, ...]:
     )
 
 
-def say_tradeoff(document: Document) -> str:
-    """What is said of a trade-off that the code offers; empty without one."""
-    stated = document.get("tradeoff")
-    if not stated:
-        return ""
-    clause = f"{stated['clause']}: " if stated.get("clause") else ""
-    kind = stated["kind"].replace("_", " ")
-    rule = f" ({stated['rule']})" if stated.get("rule") else ""
-    say = f"; {stated['say']}" if stated.get("say") else ""
-    return f"{clause}the code also offers a trade-off, {kind}{rule}; it is not computed here{say}"
-
-
-def _own_names(document: Document, names: tuple[str, ...]) -> tuple[str, ...]:
+def own_names(document: Document, names: tuple[str, ...]) -> tuple[str, ...]:
     """Write the rule set's own names (``elements``) out as categories."""
     own: Mapping[str, Any] = document.get("elements") or {}
     listed = (own.get(name, name) for name in names)
     return tuple(c for x in listed for c in ([x] if isinstance(x, str) else x))
 
 
-def _patterns(
+def check_patterns(
     document: Document,
     patterns: tuple[str, ...],
     categories: tuple[str, ...],
     at: tuple[str | int, ...],
     problems: list[Problem],
 ) -> None:
+    """Each pattern fits a category."""
     for pattern in patterns:
         if not fits_any(pattern, categories):
             fix, line = did_you_mean(pattern, categories), document.line(*at)

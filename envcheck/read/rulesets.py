@@ -22,8 +22,8 @@ from envcheck.read.rule_parts import (
     read_exceptions,
     read_trigger,
     read_zones,
-    say_tradeoff,
 )
+from envcheck.read.rule_tradeoff import read_tradeoff
 from envcheck.read.table_entry import METRICS
 
 __all__ = ["default_folders", "find", "read_ruleset"]
@@ -96,7 +96,7 @@ def read_ruleset(
         conventions=conventions,
         area_limits=read_area_limits(document("area_limits"), categories, problems),
         averaging=averaging,
-        tradeoff=say_tradeoff(document("tradeoff")),
+        tradeoff=read_tradeoff(document("tradeoff"), categories, dimensions, problems),
         trigger=read_trigger(document("trigger"), problems),
         exceptions=read_exceptions(*active),
         not_judged=tuple(text for d in active for text in d.get("not_judged") or ()),

@@ -1,12 +1,14 @@
-"""The building as a whole: area ratios, means, and whether areas close."""
+"""The building as a whole: area ratios, means and sums, and whether areas close."""
 
 from __future__ import annotations
 
 from typing import NamedTuple
 
 from envcheck import units
-from envcheck.model.judged import Closing, Judged, Mean, Ratio
-from envcheck.report import numbers, wording
+from envcheck.model.judged import Closing, Judged, Ratio
+from envcheck.model.project import Project
+from envcheck.report import groups, numbers, wording
+from envcheck.report.groups import GroupView
 from envcheck.report.inert import clean
 
 
@@ -19,17 +21,6 @@ class RatioView(NamedTuple):
     cap: str
     state: str
     missing: tuple[str, ...]
-
-
-class MeanView(NamedTuple):
-    """An area-weighted mean."""
-
-    rule_set: str
-    group: str
-    clause: str
-    sum: str
-    worst: str
-    cap: str
 
 
 class ClosingView(NamedTuple):
@@ -45,18 +36,18 @@ class Building(NamedTuple):
     """Everything about the building as a whole."""
 
     ratios: tuple[RatioView, ...]
-    means: tuple[MeanView, ...]
+    groups: tuple[GroupView, ...]
     closings: tuple[ClosingView, ...]
 
 
 MOST_PARTS = 40
 
 
-def build(judged: Judged, system: str) -> Building:
+def build(judged: Judged, project: Project, system: str) -> Building:
     """Write the sums of the building."""
     return Building(
         tuple(_ratio(ratio, system) for ratio in judged.ratios),
-        tuple(_mean(mean, system) for mean in judged.means),
+        groups.build(judged.groups, project, system),
         tuple(_closing(closing, system) for closing in judged.closings),
     )
 
@@ -87,45 +78,6 @@ def _division(ratio: Ratio, system: str) -> str:
         shown = (numbers.in_system(area, "area", system) for area in parts)
         top, bottom = (numbers.significant(area, 9) for area in shown)
     return f"{top} / {bottom} {units.label('area', system)} = {result}"
-
-
-def _mean(mean: Mean, system: str) -> MeanView:
-    places = numbers.DECIMALS["u_factor", system]
-    value = numbers.fixed(numbers.in_system(mean.value, "u_factor", system), places)
-    worst_text = clean(mean.worst)
-    worst = next((u for tag, _, u in mean.members if tag == mean.worst), None)
-    if worst is not None:
-        shown = numbers.in_system(worst, "u_factor", system)
-        worst_text += f" with U {numbers.fixed(shown, places)}"
-    return MeanView(
-        rule_set=clean(mean.ruleset),
-        group=clean(mean.group),
-        clause=clean(mean.clause),
-        sum=f"{_weighted(mean, system, value, places)} = {value} {units.label('u_factor', system)}",
-        worst=worst_text,
-        cap=clean(mean.cap),
-    )
-
-
-def _weighted(mean: Mean, system: str, value: str, places: int) -> str:
-    """Write sum(A U) / sum(A) with as few digits as give the printed mean."""
-    text = ""
-    for digits in (4, 6, 9):
-        pairs = [
-            (
-                tag,
-                numbers.significant(numbers.in_system(area, "area", system), max(digits, 6)),
-                numbers.significant(numbers.in_system(u, "u_factor", system), digits),
-            )
-            for tag, area, u in mean.members
-        ]
-        total = sum(float(area) for _, area, _ in pairs)
-        terms = " + ".join(f"{area} * {u} [{clean(tag)}]" for tag, area, u in pairs)
-        text = f"({terms}) / {numbers.significant(total, 9)}"
-        weighted = sum(float(area) * float(u) for _, area, u in pairs)
-        if total and numbers.fixed(weighted / total, places) == value:
-            break
-    return text
 
 
 def _closing(closing: Closing, system: str) -> ClosingView:

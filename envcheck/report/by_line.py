@@ -55,7 +55,7 @@ def notes(row: Row, told: Container[str]) -> tuple[str, ...]:
 
 
 def _by(row: Row) -> str:
-    if not row.room.text:
+    if not row.room.text.startswith("-"):  # within by itself: its group is over
         return ""
     share = row.room_share.lstrip("+-")
     text = f" by {row.room.text.lstrip('+-')} {row.room.unit}".rstrip()

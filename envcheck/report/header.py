@@ -67,6 +67,7 @@ def rule_set(ruleset: RuleSet, lines: Iterable[Line], project: Project, system: 
         ("status", status(ruleset)),
         ("documents", "; ".join(_documents(ruleset))),
         ("zone", _zone(ruleset, own, project)),
+        ("path", _path(ruleset, project)),
         ("weight", "" if decides(ruleset, project) else "information only, decides nothing"),
     )
     return RuleSetView(
@@ -78,6 +79,15 @@ def rule_set(ruleset: RuleSet, lines: Iterable[Line], project: Project, system: 
         units_note=_units_note(own, system),
         printed_units=", ".join(printed) if apart else "",
     )
+
+
+def _path(ruleset: RuleSet, project: Project) -> str:
+    """The path that the project elects, where it is not row by row."""
+    elected = any(c.id == ruleset.id and c.path == "trade_off" for c in project.rule_sets)
+    if not elected:
+        return ""
+    clause = ruleset.tradeoff.clause if ruleset.tradeoff is not None else ""
+    return f"trade-off ({clause})" if clause else "trade-off"
 
 
 def decides(ruleset: RuleSet, project: Project) -> bool:

@@ -153,6 +153,28 @@ def area(value: float, system: str) -> str:
     return trimmed(in_system(value, "area", system), 1 if system == "IP" else 2)
 
 
+def flow_unit(metric: str, system: str) -> str:
+    """Unit of a value times its area or length; empty where that is no heat flow."""
+    flows = quantity(metric) in ("u_factor", "linear_transmittance")
+    return units.label("point_transmittance", system) if flows else ""
+
+
+def heat_flow(value: float, system: str) -> str:
+    """Write a term of a sum, given in W/K, without its unit: to two decimals."""
+    return fixed(in_system(value, "point_transmittance", system), 2)
+
+
+def two_sums(drawn: float, table: float) -> tuple[str, str]:
+    """Write two sums with as many digits as tell the greater from the less."""
+    places = 0 if max(drawn, table) >= 1000.0 else 1 if max(drawn, table) >= 100.0 else 2
+    while places < 6:
+        texts = fixed(drawn, places), fixed(table, places)
+        if texts[0] != texts[1] or abs(drawn - table) <= 1e-12 * table:
+            return texts
+        places += 1
+    return fixed(drawn, places), fixed(table, places)
+
+
 def total(texts: Iterable[str]) -> str:
     """Add printed numbers up as they are printed."""
     return f"{sum(map(Decimal, texts)):f}"

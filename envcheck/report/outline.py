@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
 
-from envcheck.report import assembly_page, by_line, main_table, wording
+from envcheck.report import assembly_page, by_line, main_table, trade_off, wording
 from envcheck.report.by_line import place
 from envcheck.report.details import AssemblyView
 from envcheck.report.header import RuleSetView
@@ -72,6 +72,7 @@ def beside_the_lines(view: View) -> tuple[Section, ...]:
         *_findings(view.findings, _sheets(view), _deciding(view)),
         *(Section(each.heading, (each.grid,)) for each in view.schedules),
         *_building(view),
+        *(trade_off.section(g) for g in view.building.groups if g.kind == "trade_off"),
     )
 
 
@@ -209,10 +210,11 @@ def _building(view: View) -> tuple[Section, ...]:
         share = f"{ratio.name}: {ratio.sum}" if ratio.sum else ratio.name
         head = f"{share} ({ratio.cap}): {ratio.state}"
         entries.append(Entry(head, tuple(f"missing: {text}" for text in ratio.missing)))
-    for mean in view.building.means:
-        head = f"mean {mean.group} ({mean.clause})" if mean.clause else f"mean {mean.group}"
-        lines = tuple(filter(None, (f"worst member {mean.worst}", mean.cap)))
-        entries.append(Entry(head, lines, (mean.sum,)))
+    for mean in (group for group in view.building.groups if group.kind == "mean"):
+        lines = (f"worst member {mean.worst}" if mean.worst else "", mean.cap, mean.state_text)
+        waits = tuple(f"waits for {why}" for why in mean.waits)
+        sums = (mean.sum,) if mean.sum else ()
+        entries.append(Entry(mean.title, (*filter(None, lines), *waits), sums))
     for each in view.building.closings:
         entries.append(Entry(f"{place(each.surface, each.sheet)}: {each.sum}: {each.state}"))
     return _if_any("The building", Items(tuple(entries)))

@@ -8,7 +8,7 @@ from itertools import starmap
 from typing import NamedTuple
 
 from envcheck import units
-from envcheck.model.judged import Comparison, Line, PathResult
+from envcheck.model.judged import Comparison, Group, Line, Part, PathResult
 from envcheck.model.project import Element, Project
 from envcheck.model.solved import Step
 from envcheck.report import hand_check, numbers, said, wording
@@ -73,6 +73,12 @@ class Row(NamedTuple):
     """Left to the limit, in the printed unit; negative = over."""
     room_share: str
     """The same in per cent of the limit."""
+    group: str
+    """Means and sums that it stands in; empty where there are none."""
+    drawn: Figure
+    """What it adds to their sum as drawn ..."""
+    table: Figure
+    """... and by the table."""
     verdict: str
     verdict_text: str
     open: bool
@@ -85,10 +91,14 @@ class Row(NamedTuple):
 
 
 def build(
-    lines: Iterable[Line], project: Project, system: str, trails: bool = True
+    lines: Iterable[Line],
+    project: Project,
+    system: str,
+    trails: bool = True,
+    groups: Iterable[Group] = (),
 ) -> tuple[Row, ...]:
     """Make the rows in the order of ``lines``; ``trails`` asks why each limit was selected."""
-    written = _Written(trails)
+    written = _Written(trails, groups)
     return tuple(_row(line, project, system, written) for line in lines)
 
 
@@ -98,8 +108,13 @@ class _Written:
     Assemblies of the same layers, and one assembly under rule sets of the same films, share a sum.
     """
 
-    def __init__(self, trails: bool) -> None:
+    def __init__(self, trails: bool, groups: Iterable[Group]) -> None:
         self.trails = trails
+        self._parts: dict[tuple[str, str, str], list[tuple[Group, Part]]] = {}
+        for group in groups:
+            for part in group.parts:
+                key = (group.ruleset, part.element, part.metric)
+                self._parts.setdefault(key, []).append((group, part))
         self._sums: dict[tuple[float | None, str], list[tuple[tuple[Step, ...], str]]] = {}
         self._sources: dict[tuple[int, str], str] = {}
 
@@ -117,6 +132,17 @@ class _Written:
         self._sums.setdefault(key, []).append((solved.hand_check, text))
         return text
 
+    def in_sums(self, line: Line, system: str) -> tuple[str, Figure, Figure]:
+        """Groups of a line, and what it adds to their sums."""
+        found = self._parts.get((line.ruleset, line.element, line.metric), ())
+        if not found or not (flow := numbers.flow_unit(line.metric, system)):
+            return "", NO_FIGURE, NO_FIGURE
+        names = "; ".join(said.group(group.kind, group.name) for group, _ in found)
+        drawn, table = (
+            numbers.heat_flow(x, system) for x in (found[0][1].drawn, found[0][1].table)
+        )
+        return names, Figure(drawn, flow), Figure(table, flow)
+
     def source(self, line: Line) -> str:
         """Where the limit stands in print."""
         key = (id(line.limit), line.ruleset)
@@ -131,6 +157,7 @@ def _row(line: Line, project: Project, system: str, written: _Written) -> Row:
     own = line.own or line.comparison
     value = value_of(line, system)
     low, high = _bounds(line, system)
+    group, drawn, table = written.in_sums(line, system)
     return Row(
         rule_set=line.ruleset,
         decides=line.decides,
@@ -144,15 +171,18 @@ def _row(line: Line, project: Project, system: str, written: _Written) -> Row:
         symbol=numbers.symbol(line.metric),
         amount=amount(element, system),
         value=value,
-        compared=_compared(line.comparison),
+        compared=_compared(own),
         low=low,
         high=high,
         limit=said.limit_text(line),
         against=said.against(line),
-        limit_number=_limit_number(line.comparison),
+        limit_number=_limit_number(own),
         limit_source=written.source(line),
         room=_room(own, line.metric),
         room_share=_room_share(own),
+        group=group,
+        drawn=drawn,
+        table=table,
         verdict=line.verdict,
         verdict_text=said.verdict_text(line),
         open=line.open,

@@ -26,12 +26,9 @@ def limit_number(comparison: Comparison) -> str:
 
 def limit_text(line: Line) -> str:
     """The limit as printed in the table, with its sense in front of a number."""
+    own = line.own or line.comparison
     if line.limit is None:
-        return (
-            f"{_sense(line.comparison.sense)}{limit_number(line.comparison)}"
-            if (line.comparison)
-            else ""
-        )
+        return f"{_sense(own.sense)}{limit_number(own)}" if own else ""
     cell = clean(line.limit.cell)
     if line.limit.kind != "number" or cell.startswith(("<", ">")):
         return cell
@@ -41,8 +38,8 @@ def limit_text(line: Line) -> str:
 def against(line: Line) -> str:
     """The number that a value is held against; a cell of several numbers or none as printed."""
     limit = line.limit
-    if line.comparison is not None or limit is None or limit.kind != "number":
-        own = line.comparison
+    own = line.own or line.comparison
+    if own is not None or limit is None or limit.kind != "number":
         return f"{_sense(own.sense)}{limit_number(own)}" if own is not None else limit_text(line)
     terms = limit.alternatives[0] if len(limit.alternatives) == 1 else ()
     return f"{_sense(limit.sense)}{terms[0].text}" if len(terms) == 1 else limit_text(line)
@@ -79,9 +76,15 @@ def verdict_text(line: Line) -> str:
     own = line.comparison
     if line.verdict == "fail" and own is not None and own.sense == "min":
         text = wording.SHORT_OF
-    if line.group:
-        text += f" (mean {clean(line.group)})"
+    if line.group_kind:
+        text = wording.OVER_WITH if line.verdict == "fail" else text
+        text += f" ({group(line.group_kind, line.group)})"
     return text + _only_just(line) if line.verdict == "pass" else text
+
+
+def group(kind: str, name: str) -> str:
+    """Name a group: ``mean attic``, ``trade-off conditioned``."""
+    return clean(f"{wording.GROUPS[kind]} {name}".strip())
 
 
 def _only_just(line: Line) -> str:

@@ -90,7 +90,7 @@ def build(
     system = system_for(project, rulesets, options)
     rulesets = dict(sorted(rulesets.items(), key=lambda pair: not header.decides(pair[1], project)))
     ordered = in_order(judged.lines, rulesets)
-    made = rows.build(ordered, project, system, options.details)
+    made = rows.build(ordered, project, system, options.details, judged.groups)
     findings = items.findings(judged.findings)
     return View(
         title=header.title(project),
@@ -105,7 +105,7 @@ def build(
         open_items=items.open_items(made, judged),
         claims=items.claims(project),
         findings=findings,
-        building=building.build(judged, system),
+        building=building.build(judged, project, system),
         assumptions=items.assumptions(judged.lines),
         remarks=items.remarks(judged.remarks),
         assemblies=(

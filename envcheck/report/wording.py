@@ -16,6 +16,8 @@ VERDICTS = {
 }
 SHORT_OF = "short of its limit"
 """``fail`` where the limit is a least value."""
+OVER_WITH = "over"
+"""``fail`` that a line carries for its group."""
 BY_ROUNDING = ", by rounding"
 AT_LIMIT = ", at its limit"
 ROUNDED_TO_LIMIT = ", rounded to its limit"
@@ -63,6 +65,16 @@ SEVERITIES = {"E": "to be settled", "W": "to be checked", "N": "to note"}
 RATIOS = {
     "window_wall_ratio": "fenestration / gross above-grade wall",
     "skylight_roof_ratio": "skylights / gross roof",
+}
+GROUPS = {"mean": "mean", "trade_off": "trade-off"}
+"""Lines judged together, by kind."""
+ELECTED = "the project elects it: its lines carry this verdict"
+NOT_ELECTED = "for information: the project does not elect it"
+GROUP_STATES = {
+    "pass": "as drawn is not above the table",
+    "fail": "as drawn is above the table",
+    "official_decides": "the official decides",
+    "not_decided": "closed",
 }
 TRAIL = {
     "date": "date",

@@ -299,7 +299,7 @@ def ruleset(**more: Any) -> RuleSet:
         "conventions": Conventions(),
         "area_limits": (),
         "averaging": (),
-        "tradeoff": "",
+        "tradeoff": None,
         "trigger": None,
         "exceptions": (),
         "not_judged": (),

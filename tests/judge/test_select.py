@@ -88,7 +88,7 @@ def rules(*limits: Limit, zones: Zones = ZONES, chain: tuple[Edition, ...] = (BA
         checked_by="", chain=chain, units="SI", zones=zones, dimensions=DIMENSIONS, limits=limits,
         paths_clause="1.2", compare="rounded_to_printed_decimals", rounding_clause="",
         rounding_stated=False, conventions=Conventions(), area_limits=(), averaging=(),
-        tradeoff="", trigger=None, exceptions=(), not_judged=(), folder="rules/town",
+        tradeoff=None, trigger=None, exceptions=(), not_judged=(), folder="rules/town",
     )  # fmt: skip
 
 

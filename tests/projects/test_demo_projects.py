@@ -16,6 +16,7 @@ from pathlib import Path
 import pytest
 
 from envcheck import pipeline
+from envcheck.model.judged import Group
 from envcheck.units import convert
 
 PROJECTS = Path(__file__).parents[2] / "projects"
@@ -278,7 +279,7 @@ def test_area_ratios_of_the_library(project: str, glazing: float, skylights: flo
 
 
 def test_permit_mean_of_attic_and_hatch() -> None:
-    (mean,) = run(PERMIT).judged.means
+    (mean,) = [group for group in run(PERMIT).judged.groups if group.kind == "mean"]
     by_hand = (3185 * HAND_PERMIT["R2"] + 15 * HAND_PERMIT["HT1"]) / 3200
     assert convert(mean.value, IP) == pytest.approx(by_hand, rel=1e-4)
 
@@ -290,3 +291,64 @@ def test_permit_sits_at_one_limit_and_closes_one_path() -> None:
     assert (slab.compared, slab.limit, slab.within) == (0.54, 0.54, True)
     states = {path.path: path.state for path in lines["S-W2"].paths}
     assert states == {"assembly": "pass", "insulation": "not_available"}
+
+
+CONDITIONED_PERMIT = {
+    # assembly: (ft2 or ft, limit in Btu/(h ft2 F) or Btu/(h ft F)); the store and the wall to it
+    # are semi-heated and stand in no sum of conditioned space
+    "W1": (1818 + 1096 + 700, 0.060), "W2": (900 + 1120, 0.060), "W3": (1398, 0.092),
+    "W4": (480, 0.052), "W5": (720, 0.095), "W7": (420, 0.092), "R1": (4864, 0.030),
+    "R2": (3185, 0.022), "HT1": (15, 0.022), "R3": (1200, 0.030), "F1": (240, 0.036),
+    "G1": (280, 0.54), "CW1": (980, 0.38), "WN1": (360 + 300 + 420 + 240, 0.34),
+    "WN2": (320, 0.40), "E1": (84, 0.68), "D1": (42 + 42, 0.40), "SK1": (336, 0.50),
+}  # fmt: skip
+RATED = {"G1": 0.54, "CW1": 0.36, "WN1": 0.32, "WN2": 0.38, "E1": 0.65, "D1": 0.37, "SK1": 0.47}
+TO_SI = 0.527528  # W/K of 1 Btu/(h F)
+
+
+def trade_off(project: str) -> Group:
+    (found,) = [group for group in run(project).judged.groups if group.kind == "trade_off"]
+    return found
+
+
+def test_permit_trade_off_is_the_sum_by_hand() -> None:
+    found, values = trade_off(PERMIT), HAND_PERMIT | RATED
+    drawn = sum(amount * values[tag] for tag, (amount, _) in CONDITIONED_PERMIT.items())
+    table = sum(amount * limit for amount, limit in CONDITIONED_PERMIT.values())
+    assert (round(drawn), round(table)) == (2037, 2219)
+    assert (found.drawn / TO_SI, found.table / TO_SI) == pytest.approx((drawn, table), rel=1e-4)
+    assert (found.name, found.state, found.elected) == ("conditioned", "pass", False)
+    assert not found.waits
+    assert {part.assembly for part in found.parts} == set(CONDITIONED_PERMIT)
+
+
+def test_review_trade_off_is_closed_and_names_the_worst() -> None:
+    found = trade_off(REVIEW)
+    assert found.state == "not_decided"
+    assert {why.rpartition(" ")[2] for why in found.waits} == {
+        "N-W7", "N-WN1", "S-WN1", "W-WN1", "E-WN1", "N-W5", "R-SK1", "F-G1",
+    }  # fmt: skip
+    over: dict[str, float] = {}
+    for part in found.parts:
+        over[part.assembly] = over.get(part.assembly, 0.0) + (part.drawn - part.table) / TO_SI
+    worst = sorted(over, key=lambda tag: -over[tag])
+    assert worst[:4] == ["W2", "CW1", "W1", "W3"]
+    # 2020 (.12579 - .060), 980 (.42 - .38), 3266 (.06472 - .060), 1398 (.10170 - .092)
+    assert [round(over[tag], 1) for tag in worst[:4]] == [132.9, 39.2, 15.4, 13.6]
+
+
+def test_an_elected_trade_off_of_the_review_waits(tmp_path: Path) -> None:
+    text = (PROJECTS / REVIEW).read_text(encoding="utf-8")
+    elected = text.replace(
+        "rule_sets: [quillhaven-2025-3]", "rule_sets: [{id: quillhaven-2025-3, path: trade_off}]"
+    )
+    assert elected != text
+    path = tmp_path / "elected.yaml"
+    path.write_text(elected, encoding="utf-8")
+    done = pipeline.run(str(path), [str(PROJECTS.parent / "rules")])
+    lines = {line.element: line for line in done.judged.lines if line.metric != "SHGC"}
+    assert {lines[tag].verdict for tag in ("S-CW1", "N-W1", "R-R1", "C-W4")} == {"not_decided"}
+    assert "the trade-off by 4.5 for conditioned spaces waits for" in lines["S-CW1"].reasons[0]
+    # the store is semi-heated: the code offers it no sum
+    assert (lines["T-W6"].verdict, lines["T-R4"].verdict) == ("fail", "pass")
+    assert done.exit_status == 1

@@ -369,7 +369,10 @@ def test_caps_means_trigger_and_exceptions() -> None:
     assert county.exceptions[0].clause == "7.2" and county.trigger is None
     assert town.trigger is not None and town.trigger.share == 0.25
     assert (town.compare, county.compare) == ("rounded_2dp", "rounded_to_printed_decimals")
-    assert "4.5" in county.tradeoff and "not computed" in county.tradeoff
+    offered = county.tradeoff
+    assert offered is not None and offered.taken and offered.clause == "4.5"
+    assert (offered.terms, offered.per) == (("U_A", "C_A", "F_P"), "space_category")
+    assert (offered.classes, offered.charges) == (("conditioned",), False)
 
 
 def test_degree_day_bounds_are_si() -> None:

@@ -5,13 +5,15 @@ from __future__ import annotations
 from datetime import date
 
 from envcheck.model.judged import (
+    Charge,
     Choice,
     Closing,
     Comparison,
     Finding,
+    Group,
     Judged,
     Line,
-    Mean,
+    Part,
     PathResult,
     Ratio,
 )
@@ -76,6 +78,14 @@ def u(value: float) -> float:
 
 def ft2(value: float) -> float:
     return to_si(value, "ft2")
+
+
+def part(tag: str, assembly: str, area: float, value: float, limit: float, verdict: str) -> Part:
+    """Area in m2; value and limit in Btu/(h ft2 F)."""
+    unit = "Btu/(h*ft2*degF)"
+    return Part(
+        tag, assembly, "U_assembly", area, u(value), u(limit), verdict, f"{limit:.3f}", unit
+    )
 
 
 # ------------------------------------------------------------------------------------ project
@@ -232,7 +242,7 @@ RULESET = RuleSet(
     conventions=CONVENTIONS,
     area_limits=(),
     averaging=(),
-    tradeoff="",
+    tradeoff=None,
     trigger=None,
     exceptions=(),
     not_judged=("air leakage",),
@@ -444,11 +454,32 @@ JUDGED = Judged(
         Ratio("window_wall_ratio", ft2(2704.0), ft2(10720.0), 2704 / 10720, 0.30, "Table 3", False),
         Ratio("skylight_roof_ratio", ft2(504.0), ft2(10800.0), 504 / 10800, 0.04, "Table 3", True),
     ),
-    means=(
-        Mean(
-            "attic", "anywhere-2025",
-            (("R-2", ft2(3185.0), u(0.0211)), ("HATCH", ft2(15.0), u(0.498))),
-            u((3185 * 0.0211 + 15 * 0.498) / 3200), "HATCH", "clause 4.1", "no part above 1.25 x",
+    groups=(
+        Group(
+            "mean", "attic", "anywhere-2025", True, "clause 4.1", True, "fail",
+            (
+                part("R-2", "R2", ft2(3185.0), 0.0211, 0.022, "pass"),
+                part("HATCH", "HT1", ft2(15.0), 0.498, 0.022, "fail"),
+            ),
+            ft2(3185.0) * u(0.0211) + ft2(15.0) * u(0.498), ft2(3200.0) * u(0.022),
+            cap="no part above 1.25 x",
+        ),
+        Group(
+            "trade_off", "conditioned", "anywhere-2025", True, "4.5", False, "not_decided",
+            (
+                part("N-1", "W1", ft2(1818.0), 0.0647, 0.060, "fail"),
+                part("N-2", "W4", ft2(480.0), 0.0417, 0.052, "pass"),
+            ),
+            ft2(1818.0) * u(0.0647) + ft2(480.0) * u(0.0417),
+            ft2(1818.0) * u(0.060) + ft2(480.0) * u(0.052),
+            waits=("the value of N-3", "the value of N-5", "the area of N-6"),
+            left_out=(("G-1", "the table prints NR"),),
+            charges=(
+                Charge(
+                    "skylight_roof_ratio", ft2(72.0), u(0.47), u(0.03), ft2(72.0) * u(0.44), "drawn"
+                ),
+            ),
+            rule="the sum of the design is at most that of the table",
         ),
     ),
     closings=(

@@ -36,11 +36,13 @@ def test_a_least_value_is_fallen_short_of() -> None:
 def test_a_member_of_a_mean_shows_the_means_verdict_and_its_own() -> None:
     own = compared(0.4980, 0.498, 0.022)
     mean = compared(0.0233, 0.023, 0.024)
-    made = line("HATCH", "roof.attic", "pass", comparison=mean, own=own, group="attic")
+    made = line(
+        "HATCH", "roof.attic", "pass", comparison=mean, own=own, group="attic", group_kind="mean"
+    )
     row = view.build(PROJECT, RULESETS, changed(JUDGED, lines=(made,))).rows[0]
     assert row.verdict_text == "within (mean attic)"
     assert row.value.text == "0.4980"
-    assert row.compared.text == "0.023"
+    assert row.compared.text == "0.498"
     assert "alone it would be over: 0.498 against 0.022" in row.notes
 
 
@@ -212,6 +214,6 @@ def test_units_are_those_asked_for_or_the_rule_sets(units: str, expected: str) -
 def test_the_mean_and_the_ratio_can_be_repeated() -> None:
     building = view.build(PROJECT, RULESETS, JUDGED).building
     # (3185 x 0.0211 + 15 x 0.498) / 3200 = 74.6735 / 3200 = 0.02334
-    assert building.means[0].sum.endswith("/ 3200 = 0.0233 Btu/(h ft2 F)")
+    assert building.groups[0].sum.endswith("/ 3200 = 0.0233 Btu/(h ft2 F)")
     assert building.ratios[0].sum == "2704 / 10720 ft2 = 25.22 %"
     assert building.closings[0].state == "81 ft2 (2.3 %) not accounted for"

@@ -12,7 +12,7 @@ from importlib import import_module
 from pkgutil import iter_modules
 from typing import NamedTuple
 
-from envcheck.model.judged import Closing, Finding, Line, Mean, Ratio
+from envcheck.model.judged import Closing, Finding, Group, Line, Ratio
 from envcheck.model.project import Project
 from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Properties, Solved
@@ -31,7 +31,7 @@ class Facts(NamedTuple):
     element are solved with the category of their own kind where that is possible."""
     closings: tuple[Closing, ...]
     ratios: tuple[Ratio, ...]
-    means: tuple[Mean, ...]
+    groups: tuple[Group, ...]
 
 
 class Check(NamedTuple):

@@ -32,6 +32,12 @@ AMOUNTS = {
     "ft": "perimeter [ft]",
     "count": "count [-]",
 }
+SUMS = tuple(
+    f"{what} [{units.label('point_transmittance', system)}]"
+    for what in ("as drawn", "by the table")
+    for system in ("SI", "IP")
+)
+"""What a line adds to the sums that it stands in."""
 HEADS = (
     "rule set",
     "decides",
@@ -53,6 +59,8 @@ HEADS = (
     "printed unit",
     "limit as printed",
     "limit from",
+    "sums",
+    *SUMS,
     "verdict",
     "verdict in words",
     "why",
@@ -60,7 +68,7 @@ HEADS = (
 )
 TEXT = (
     frozenset(HEADS)
-    - {*AMOUNTS.values(), *VALUE_HEADS}
+    - {*AMOUNTS.values(), *VALUE_HEADS, *SUMS}
     - {head for head in HEADS if "bound [" in head or "[printed unit]" in head or "[% of" in head}
 )
 """Columns of text, guarded against being read as formulas."""
@@ -95,6 +103,7 @@ def _cells(row: Row) -> dict[str, str]:
         "printed unit": row.compared.unit,
         "limit as printed": row.limit,
         "limit from": row.limit_source,
+        "sums": row.group,
         "verdict": row.verdict,
         "verdict in words": row.verdict_text,
         "why": "; ".join((*row.reasons, *row.notes)),
@@ -103,6 +112,9 @@ def _cells(row: Row) -> dict[str, str]:
     cells = {head: for_csv(text) if head in TEXT else text for head, text in cells.items()}
     if row.value.text:
         cells[_value_head(row)] = row.value.text
+    for what, figure in (("as drawn", row.drawn), ("by the table", row.table)):
+        if figure.text:
+            cells[f"{what} [{figure.unit}]"] = figure.text
     if row.amount.text:
         cells[AMOUNTS[row.amount.unit]] = row.amount.text
     return cells
