@@ -18,10 +18,23 @@ KINDS = (
         "A chain of amendments must end at a base.",
     ),
     Kind(
+        "conditions-leave-gap",
+        "the conditions on {name!r} leave a gap",
+        "add the row that is printed for it, or say why there is none: "
+        "`uncovered_allowed: {{{name}: ...}}`",
+        "A case that no row covers must be one that the code leaves open, and said so.",
+    ),
+    Kind(
         "conditions-overlap",
         "two rows hold at once, the other one at {where}",
         "correct the conditions so that exactly one row is left for each case",
         "Exactly one limit must remain for an element; none of two is chosen at run time.",
+    ),
+    Kind(
+        "dates-overlap",
+        "two columns hold on the same day",
+        "correct `from:` or `until:` under `in_force:`",
+        "Columns by date must not overlap: exactly one holds on each day.",
     ),
     Kind(
         "dates-reversed",
@@ -36,16 +49,16 @@ KINDS = (
         "What a condition may ask for must be declared, so that a misspelt word is found.",
     ),
     Kind(
-        "metric-not-executed",
-        "{where}: this metric is not judged by this version",
-        "leave the column or row out, and say so under `not_judged:`",
-        "The format knows metrics that are not computed yet; their limits are refused.",
+        "footnote-without-text",
+        "the footnote waits for the official and says nothing",
+        "add `text:` with the footnote as printed",
+        "What a machine cannot decide is printed for the official, so it needs its words.",
     ),
     Kind(
-        "not-executed",
-        "the rule set asks for {what}, which this version does not judge",
-        "leave it out, and say so under `not_judged:`",
-        "Nothing is passed over in silence: what is not judged yet is refused or remarked.",
+        "footnotes-multiply",
+        "{where}: the footnotes of one cell make too many cases",
+        "split the row by `when:` columns, or leave a footnote to the official (`check: reviewer`)",
+        "Each conditional footnote doubles the cases of its cell; six are 64.",
     ),
     Kind(
         "paths-not-stated",
@@ -118,6 +131,12 @@ KINDS = (
         "{where}: no known metric",
         "state `metric:` for the row, the head or the table",
         "Every figure is a figure of something: U_assembly, R_insulation, SHGC ...",
+    ),
+    Kind(
+        "unknown-ratio",
+        "the area cap is on a ratio that is not known",
+        "use window_wall_ratio or skylight_roof_ratio, or say in words what it caps",
+        "A cap in words is printed in the report and not judged.",
     ),
     Kind(
         "unknown-rule-set",

@@ -25,9 +25,10 @@ KINDS = (
     ),
     Kind(
         "cell-not-executed",
-        "{where}: this kind of cell is not judged by this version",
-        "type a figure, or leave the row out and say so under `not_judged:`",
-        "Rating bands, references to rows and lengths in words are not judged yet.",
+        "{where}: the cell holds no figure of its own metric",
+        "type a figure of the row's metric beside the other one, or leave the row out and say so "
+        "under `not_judged:`",
+        "A rating such as ER 34 stands beside the row's own figure, never alone.",
     ),
     Kind(
         "empty-sheet",
@@ -108,6 +109,12 @@ KINDS = (
         "The same key with the same conditions.",
     ),
     Kind(
+        "second-table",
+        "a second table begins in the sheet",
+        "give each printed table its own CSV file and its own entry under `tables:`",
+        "One sheet holds one printed table.",
+    ),
+    Kind(
         "sense-against-metric",
         "{where}: the figure is a maximum where a minimum is meant, or the reverse",
         "correct `limit:` or the sign in the cell",
@@ -136,6 +143,19 @@ KINDS = (
         "{where}: the footnote mark is not defined",
         "define it under `notes:`",
         "A mark without its note would change a limit unseen.",
+    ),
+    Kind(
+        "unknown-band",
+        "{where}: the rating band is not declared",
+        "list the bands under `bands:`, best first, or correct the cell",
+        "A band such as WER B means B or better, in the order that `bands:` gives.",
+    ),
+    Kind(
+        "unknown-reference",
+        "{where}: the cell refers to a row that has no figure in this column",
+        "write `see ` and the key of another row of the sheet, or say under `rows:` what `see:` "
+        "means",
+        "`see wall.mass` takes the figure of that row in the same column.",
     ),
     Kind(
         "unknown-head",

@@ -23,7 +23,13 @@ class Term(NamedTuple):
     extent: float | None = None
     """Depth or width, m."""
     metric: str = ""
-    """Where a prefix names another metric than the row's (``ER 34``)."""
+    """Where a prefix names another metric than the row's (``ER 34``, ``WER B``)."""
+    where: str = ""
+    """An extent in words: ``perimeter & under entire slab``, ``below``."""
+    also: tuple[str, ...] = ()
+    """Further suffixes: ``7.5ci std``."""
+    band: str = ""
+    """A rating band instead of a number, which then is its rank (0 = best)."""
 
     @property
     def decimals(self) -> int:
@@ -46,7 +52,7 @@ class Condition(NamedTuple):
     def holds(self, value: str | float) -> bool:
         """Whether the value of the fact meets the condition."""
         if self.words:
-            return str(value).casefold() in {word.casefold() for word in self.words}
+            return value in self.words or str(value).casefold() in map(str.casefold, self.words)
         number = float(value)
         above = self.low is None or (number >= self.low if self.low_closed else number > self.low)
         below = self.high is None or (
@@ -67,6 +73,12 @@ class Dimension(NamedTuple):
     """Value where the project says nothing, and the rule set says so; empty = must be stated."""
     sheet: str = ""
     """Drawing where the fact belongs ("mechanical schedule"), for the missing-fact message."""
+    kind: str = ""
+    """``date``: a day (as its ordinal), by default the permit application date; else empty."""
+    interpolate: bool = False
+    """Between the rows for two values the limit is found linearly."""
+    outside: str = "hold"
+    """Beyond those values: ``hold`` the nearest row's figure, or ``error``: no limit."""
 
 
 class Note(NamedTuple):
@@ -77,10 +89,22 @@ class Note(NamedTuple):
     text: str
     by_official: bool
     """The program cannot decide it: the verdict becomes ``official_decides``."""
+    did: str = ""
+    """What it did to the printed figure, in words: ``19 instead of 30``, ``does not apply``."""
+
+
+class Weight(NamedTuple):
+    """Weight of an area in a mean."""
+
+    factor: float
+    text: str
+    """What it is for, as printed."""
+    when: tuple[Condition, ...] = ()
+    """Of the element; empty where only a person can tell."""
 
 
 class Limit(NamedTuple):
-    """One cell in long form."""
+    """One cell in long form: one reading of it, under the conditions for which it holds."""
 
     id: str
     """``ruleset/table/zone/row/metric`` and the conditions that tell it apart."""
@@ -95,7 +119,7 @@ class Limit(NamedTuple):
     categories: tuple[str, ...]
     """envcheck categories that the row covers; patterns such as ``wall.*`` allowed."""
     metric: str
-    """U_assembly, U_product, C_factor, F_factor, R_insulation, R_total, SHGC, VT ..."""
+    """A name of :data:`envcheck.model.metrics.METRICS`."""
     sense: str
     """``max`` or ``min``"""
     unit: str
@@ -110,12 +134,23 @@ class Limit(NamedTuple):
     path: str
     """``assembly``, ``insulation`` or empty where the code knows one path."""
     applies_to: str
+    """``each_component``, ``area_weighted_mean``, ``any_point`` or ``whole_envelope``."""
     notes: tuple[Note, ...]
     src: str
     file: str
     line: int
     replaced: str = ""
     """What an amendment replaced: the base cell's text and rule set."""
+    threshold: Term | None = None
+    """The limit is a target that counts only where the old value is worse than this."""
+    threshold_cell: str = ""
+    """The threshold as printed."""
+    weights: tuple[Weight, ...] = ()
+    """Of areas in the mean that this limits."""
+    otherwise: bool = False
+    """Row for all cases that no other row covers."""
+    depth_to: float | None = None
+    """Depth to which the row counts, m (below-grade walls)."""
 
 
 # -------------------------------------------------------------------------------- conventions
@@ -277,6 +312,26 @@ class TradeOff(NamedTuple):
         return self.taken and self.glazing != "closes"
 
 
+class OtherMetric(NamedTuple):
+    """A rating that a cell may offer beside the row's own metric: ``ER 34``, ``WER B``."""
+
+    name: str
+    sense: str
+    """``min``, ``max`` or ``band_or_better``"""
+    meaning: str
+    bands: tuple[str, ...] = ()
+    """Best first."""
+
+
+class Adjustment(NamedTuple):
+    """A factor on the design's own value before it is compared."""
+
+    clause: str
+    metric: str
+    factor: float
+    when: tuple[Condition, ...]
+
+
 class Trigger(NamedTuple):
     """Alterations: the target applies where more than ``share`` of an element is renewed."""
 
@@ -353,3 +408,6 @@ class RuleSet(NamedTuple):
     folder: str
     remarks: tuple[str, ...] = ()
     """What the rule set holds and is not judged here, in sentences for the report."""
+    other_metrics: Mapping[str, OtherMetric] = MappingProxyType({})
+    """Ratings that cells offer beside their metric, by name."""
+    adjustments: tuple[Adjustment, ...] = ()

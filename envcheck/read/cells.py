@@ -5,7 +5,7 @@
     cell  = special | alt { " or " alt }, with footnote marks in square brackets
     alt   = part { "/" part }      where the row says what its slash means
     part  = term { "+" term }      where the row says what its plus means, or each term says it
-    term  = [prefix] [<=|>=] number [suffix] [extent]
+    term  = [prefix] [<=|>=] number [suffixes] [extent], or a rating scheme and its band
 
 A cell is read for one metric at a time: :class:`Grammar` says what row and column allow.
 """
@@ -13,7 +13,6 @@ A cell is read for one metric at a time: :class:`Grammar` says what row and colu
 from __future__ import annotations
 
 import re
-from functools import lru_cache
 from typing import NamedTuple
 
 from envcheck import units
@@ -22,31 +21,43 @@ from envcheck.model.ruleset import Term
 NO_REQUIREMENT = ("nr", "no requirement", "keine anforderung", "sans exigence", "uninsulated")
 NOT_COVERED = ("-", "\u2013", "\u2014", "n/a")
 REFERENCES = {"<": "left", "^": "above", ".": "unchanged"}
+_RESISTANCES = (
+    "R_insulation", "R_total", "R_construction", "RSI_effective", "R_without_framing",
+    "R_old_and_new",
+)  # fmt: skip
 PREFIXES = {
-    "U": ("U_assembly", "U_product"),
+    "U": ("U_assembly", "U_product", "U_glazing", "U_curtain_wall", "U_mean"),
     "Uw": ("U_product",),
     "Ud": ("U_product",),
-    "Uc": ("U_product",),
+    "Ug": ("U_glazing",),
+    "Uc": ("U_curtain_wall", "U_product"),
+    "Ucw": ("U_curtain_wall", "U_product"),
+    "Um": ("U_mean",),
+    "K": ("K_global",),
     "C": ("C_factor",),
     "F": ("F_factor",),
-    "R": ("R_insulation", "R_total"),
-    "RSI": ("R_insulation", "R_total"),
+    "R": _RESISTANCES,
+    "RSI": _RESISTANCES,
     "SHGC": ("SHGC",),
+    "g": ("SHGC",),
     "VT": ("VT",),
+    "VT/SHGC": ("VT_per_SHGC",),
 }
 """Prefix -> the metrics that it may stand for."""
 SUFFIXES = ("ci", "Ls", "FC", "std")
 """Suffixes that need no declaration: continuous insulation, liner system, filled cavity, standard
 framing."""
-EXTENT_WORDS = ("perimeter", "under", "full")
+EXTENT_WORDS = ("perimeter", "under", "full", "edge", "entire", "below", "above", "around")
+"""Words with which an extent may begin."""
 _MARKS = re.compile(r"\[([^\[\]]*)\]")
 _OR = re.compile(r"\s+or\s+")
 _TERM = re.compile(
     r"(?:(?P<prefix>[A-Za-z]+(?:/[A-Za-z]+)?)\s*[-=]?\s*)?(?P<relation><=|>=|\u2264|\u2265)?\s*"
     r"(?P<number>\d*[.,]?\d+)(?P<rest>.*)"
 )
-_REST = re.compile(r"(?P<suffix>[A-Za-z.]*)\s*(?:(?:for|,)\s*(?P<extent>\S.*))?")
-_BAND = re.compile(r"([A-Za-z]+) [A-Z][+]*")
+_SUFFIX = re.compile(r"\s*([A-Za-z][A-Za-z.]*)(?=[\s,]|$)")
+_EXTENT = re.compile(r"(?:for\b|,)\s*(?P<length>.*\d.*?(?:in|ft|mm|cm|m)\b\.?)\s*(?P<words>.*)")
+_BAND = re.compile(r"([A-Za-z]+)\s+([A-Z][+]*)")
 
 
 class CellError(ValueError):
@@ -80,6 +91,8 @@ class Grammar(NamedTuple):
     """Further words for no requirement."""
     metrics: tuple[str, ...] = ()
     """Other metrics that a prefix may name."""
+    bands: tuple[tuple[str, tuple[str, ...]], ...] = ()
+    """Rating scheme -> its bands, best first."""
 
 
 class Branch(NamedTuple):
@@ -116,11 +129,10 @@ def split_marks(text: str) -> tuple[str, tuple[str, ...]]:
     return plain.strip(), tuple(dict.fromkeys(marks))
 
 
-@lru_cache(maxsize=4096)
 def read_cell(text: str, grammar: Grammar) -> Cell:
     """Read a cell. Errors: CellError."""
     plain, marks = split_marks(text)
-    plain = re.sub(r"\s+", " ", plain)
+    plain = " ".join(plain.split())
     if not plain:
         raise CellError("blank-cell")
     if plain in REFERENCES:
@@ -185,23 +197,36 @@ def _part(text: str, grammar: Grammar, role: str) -> tuple[Term, ...]:
         raise CellError("unreadable-cell", f"at most {len(grammar.plus)} figures in a sum")
     roles = grammar.plus or (role,) * len(terms)
     return tuple(
-        t if t.role else Term(t.number, t.text, role or r, t.extent, t.metric)
+        t if t.role or t.metric else t._replace(role=role or r)
         for t, r in zip(terms, roles, strict=False)
     )
 
 
 def _term(text: str, grammar: Grammar) -> Term:
-    """Read one number with its prefix, suffix and extent."""
+    """Read one number with its prefix, suffixes and extent, or a band of a rating scheme."""
     match = _TERM.fullmatch(text)
     if match is None:
-        band = _BAND.fullmatch(text)
-        if band is not None and band[1] in grammar.metrics:
-            raise CellError("cell-not-executed", "a figure (rating bands are not yet read)")
-        raise CellError("unreadable-cell", _example(grammar))
+        return _band(text, grammar)
     digits = _digits(match["number"], grammar)
     _check_relation(match["relation"], grammar)
-    role, extent = _rest(match["rest"], grammar)
-    return Term(float(digits), digits, role, extent, _metric(match["prefix"] or "", grammar))
+    metric = _metric(match["prefix"] or "", grammar)
+    if not match["rest"]:
+        return Term(float(digits), digits, metric=metric)
+    suffixes, extent, where = _rest(match["rest"], grammar)
+    role, also = (suffixes[0], suffixes[1:]) if suffixes else ("", ())
+    return Term(float(digits), digits, role, extent, metric, where, also)
+
+
+def _band(text: str, grammar: Grammar) -> Term:
+    """Read ``WER B``: this band or a better one."""
+    match = _BAND.fullmatch(text)
+    if match is None or match[1] not in grammar.metrics:
+        raise CellError("unreadable-cell", _example(grammar))
+    known = dict(grammar.bands).get(match[1], ())
+    if match[2] not in known:
+        expected = "one of " + ", ".join(known) if known else f"bands: {{{match[1]}: [A, B, ...]}}"
+        raise CellError("unknown-band", expected)
+    return Term(float(known.index(match[2])), match[2], metric=match[1], band=match[2])
 
 
 def _digits(number: str, grammar: Grammar) -> str:
@@ -219,30 +244,41 @@ def _check_relation(relation: str | None, grammar: Grammar) -> None:
         raise CellError("sense-against-metric", f"a {grammar.sense}imum, as its row or column says")
 
 
-def _rest(rest: str, grammar: Grammar) -> tuple[str, float | None]:
-    """Read what follows the number: suffix and extent."""
+def _rest(rest: str, grammar: Grammar) -> tuple[tuple[str, ...], float | None, str]:
+    """Read what follows the number: suffixes, and an extent as a length, in words or both."""
     plain = rest.strip()
-    if not plain:
-        return "", None
     allowed = {s.casefold(): s for s in (*SUFFIXES, *grammar.suffixes)}
-    match = _REST.fullmatch(plain)
-    if match is None or plain.split()[0] in EXTENT_WORDS:
-        if plain.split()[0].strip(",") in EXTENT_WORDS:
-            raise CellError("cell-not-executed", "a length such as 'for 24 in'")
-        raise CellError("unreadable-cell", _example(grammar))
-    suffix = match["suffix"].replace(".", "").casefold()
-    if suffix and suffix not in allowed:
-        if len(suffix) == 1 and rest[0] != " ":
-            raise CellError("trailing-letter", fix=f"write [{suffix}] where it is a footnote mark")
-        raise CellError("unknown-suffix", "one of " + ", ".join(sorted(allowed.values())))
-    return allowed.get(suffix, ""), _extent(match["extent"], grammar)
-
-
-def _extent(text: str | None, grammar: Grammar) -> float | None:
-    if not text:
-        return None
+    found: list[str] = []
+    while match := _SUFFIX.match(plain):
+        name = match[1].replace(".", "").casefold()
+        if name not in allowed:
+            break
+        found.append(allowed[name])
+        plain = plain[match.end() :].lstrip()
+    if not plain:
+        return tuple(found), None, ""
+    extent = _EXTENT.fullmatch(plain)
+    if extent is None and plain.lstrip(", ").split(" ")[0].casefold() not in EXTENT_WORDS:
+        _refuse(plain, rest, allowed, grammar)
     if not grammar.extent:
         raise CellError("extent-without-rule")
+    if extent is None:
+        return tuple(found), None, plain.lstrip(", ")
+    return tuple(found), _length(extent["length"], grammar), extent["words"]
+
+
+def _refuse(plain: str, rest: str, allowed: dict[str, str], grammar: Grammar) -> None:
+    """Say what is wrong with letters that no suffix and no extent explain."""
+    word = re.fullmatch(r"[A-Za-z.]+", plain.split(" ")[0].rstrip(","))
+    if word is not None and plain.split(" ")[0] not in ("for", ","):
+        if len(word[0]) == 1 and rest[0] != " ":
+            raise CellError("trailing-letter", fix=f"write [{word[0]}] where it is a footnote mark")
+        if " " not in plain:
+            raise CellError("unknown-suffix", "one of " + ", ".join(sorted(allowed.values())))
+    raise CellError("unreadable-cell", _example(grammar))
+
+
+def _length(text: str, grammar: Grammar) -> float:
     try:
         return units.parse(text.removesuffix("."), "length")
     except units.UnitError as error:
@@ -257,6 +293,8 @@ def _metric(prefix: str, grammar: Grammar) -> str:
     if grammar.metric in names:
         if prefix == "RSI" and not grammar.si:
             raise CellError("prefix-against-metric", "an R-value in the printed unit, not RSI")
+        return ""
+    if prefix in PREFIXES and grammar.metric in PREFIXES[prefix]:
         return ""
     if prefix in grammar.metrics:
         return prefix

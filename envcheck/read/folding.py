@@ -7,18 +7,16 @@ from typing import Any, NamedTuple
 
 from envcheck.errors import Problem, did_you_mean, one_of, problem
 from envcheck.model.ruleset import Dimension, Limit
+from envcheck.read.coverage import check_coverage
 from envcheck.read.rule_documents import Document
 from envcheck.read.rule_tables import expand
 from envcheck.read.sheets import Sheet, is_plain, read_sheet
 from envcheck.read.table_entry import CellKey, Table
+from envcheck.read.weights import weights_of
 
-LATER_TABLE_KEYS = {
-    "in_force": "columns by date",
-    "weights": "weights in a mean",
-    "otherwise_row": "a row for all other cases",
-}
 HEAD_ROWS = ("1", "2", "3")
-LATER_SCOPES = ("any_point", "whole_envelope", "by_head")
+Marks = dict[str, dict[tuple[str, ...], tuple[str, ...]]]
+"""Table id -> heads, or (row key,) -> their footnote marks."""
 
 
 class Setting(NamedTuple):
@@ -26,10 +24,20 @@ class Setting(NamedTuple):
 
     zones: tuple[str, ...]
     dimensions: Mapping[str, Dimension]
-    units: Mapping[str, str]
+    units: Mapping[str, Mapping[str, str]]
+    """Document id -> its units."""
     categories: tuple[str, ...]
     paths: Mapping[str, str]
     """Table id -> path, where ``paths`` names tables."""
+
+
+class _Fold:
+    """What is known of the documents below the one being read."""
+
+    def __init__(self) -> None:
+        self.cells: dict[CellKey, tuple[Limit, ...]] = {}
+        self.settings: dict[str, Mapping[str, Any]] = {}
+        self.marks: Marks = {}
 
 
 def fold(
@@ -39,33 +47,75 @@ def fold(
     problems: list[Problem],
 ) -> dict[CellKey, tuple[Limit, ...]]:
     """Cells of the base with those of the amendments in force put in their place."""
-    cells: dict[CellKey, tuple[Limit, ...]] = {}
-    known: dict[str, Mapping[str, Any]] = {}
+    below = _Fold()
     for document, holds in zip(chain, in_force, strict=True):
-        amends = document is not chain[0]
-        if amends and document.get("overlay", "replaces") != "cells":
-            line = document.line("overlay", "replaces")
-            fill = {"found": "table", "what": "an amendment that replaces whole tables"}
-            problems.append(problem("not-executed", document.name, line, **fill))
-            continue
+        base = document is chain[0]
+        whole = not base and document.get("overlay", "replaces") == "table"
         found: dict[CellKey, tuple[Limit, ...]] = {}
-        own = known
+        own, marks = dict(below.settings), dict(below.marks)
         for i, entry in enumerate(document.get("tables") or ()):
-            settings = _table_settings(document, i, entry, own, amends, problems)
+            amends = not base and not whole
+            settings = _table_settings(document, i, entry, own, amends, whole, problems)
             if settings is not None:
-                found |= _read_table(document, i, settings, chain, setting, amends, problems)
-                own = {**own, str(settings["id"]): settings}
-        if amends:
-            _check_amended(document, found, cells, problems)
+                inherited = below.marks.get(str(settings["id"]), {}) if amends else {}
+                cells, printed = _read_table(
+                    document, i, settings, chain, setting, amends, inherited, problems
+                )
+                found |= cells
+                own[str(settings["id"])] = settings
+                marks[str(settings["id"])] = {**inherited, **printed}
+        if whole:
+            found = _in_place_of(document, found, below.cells, holds, problems)
+        elif not base:
+            _check_amended(document, found, below.cells, problems)
             found = {
-                key: tuple(_replacing(limit, cells[key]) for limit in limits)
+                key: tuple(_replacing(limit, below.cells[key]) for limit in limits)
                 for key, limits in found.items()
-                if key in cells
+                if key in below.cells
             }
-        if holds or not amends:
-            cells |= found
-            known = own
-    return cells
+        if holds or base:
+            below.cells |= found
+            below.settings, below.marks = own, marks
+    return below.cells
+
+
+def _in_place_of(
+    document: Document,
+    found: Mapping[CellKey, tuple[Limit, ...]],
+    cells: dict[CellKey, tuple[Limit, ...]],
+    holds: bool,
+    problems: list[Problem],
+) -> dict[CellKey, tuple[Limit, ...]]:
+    """Take whole tables of the base out; their successors say what they stand for."""
+    stated: Mapping[str, Any] = document.get("overlay", "table_map") or {}
+    known = {key[0] for key in cells}
+    replaced: dict[str, str] = {}
+    for i, entry in enumerate(document.get("tables") or ()):
+        name = str(stated.get(str(entry["id"]), entry["id"]))
+        if name not in known and str(entry["id"]) in {key[0] for key in found}:
+            if str(entry["id"]) in stated or not stated:
+                fill = {"found": name, "expected": one_of(sorted(known))}
+                line = document.line("tables", i, "id")
+                fix = did_you_mean(name, known) or "say under `overlay: {table_map: {own: base}}`"
+                p = problem("unknown-base-table", document.name, line, fix=fix, **fill)
+                problems.append(p)
+            continue
+        replaced[str(entry["id"])] = name
+    of = {
+        name: next(limits[0] for key, limits in cells.items() if key[0] == name and limits)
+        for name in set(replaced.values())
+        if any(key[0] == name and limits for key, limits in cells.items())
+    }
+    if holds:
+        gone = set(replaced.values())
+        for key in [key for key in cells if key[0] in gone]:
+            del cells[key]
+    made = {}
+    for key, limits in found.items():
+        base = of.get(replaced.get(key[0], ""))
+        words = f"the whole of {base.clause} ({base.ruleset})" if base is not None else ""
+        made[key] = tuple(limit._replace(replaced=words) for limit in limits)
+    return made
 
 
 def _table_settings(
@@ -74,6 +124,7 @@ def _table_settings(
     entry: Mapping[str, Any],
     known: Mapping[str, Mapping[str, Any]],
     amends: bool,
+    whole: bool,
     problems: list[Problem],
 ) -> dict[str, Any] | None:
     """Settings of a table over those of the table that it is like, or that it amends."""
@@ -86,18 +137,12 @@ def _table_settings(
         fill = {"found": like, "expected": one_of(known), "fix": fix}
         problems.append(problem(kind, document.name, line, **fill))
         return None
-    if not amends and entry["id"] in known:
+    if not amends and not whole and entry["id"] in known:
         problems.append(problem("repeated-table", document.name, line, found=entry["id"]))
         return None
     settings = {**(known[like] if like is not None else {}), **entry}
-    later = [k for k in LATER_TABLE_KEYS if settings.get(k)]
-    if settings.get("applies_to") in LATER_SCOPES:
-        later.append("applies_to")
-    for name in later:
-        what = LATER_TABLE_KEYS.get(name, f"a limit that applies to {settings['applies_to']}")
-        fill = {"found": name, "what": what}
-        problems.append(problem("not-executed", document.name, line, **fill))
-    return None if later else settings
+    settings.pop("like", None)
+    return settings
 
 
 def _read_table(
@@ -107,27 +152,36 @@ def _read_table(
     chain: Sequence[Document],
     setting: Setting,
     amends: bool,
+    inherited: Mapping[tuple[str, ...], tuple[str, ...]],
     problems: list[Problem],
-) -> dict[CellKey, tuple[Limit, ...]]:
+) -> tuple[dict[CellKey, tuple[Limit, ...]], dict[tuple[str, ...], tuple[str, ...]]]:
     """Read one sheet and expand it; guidance is read for its mistakes and left out."""
     other, notes = _surroundings(document, chain, str(settings["id"]))
     sheet = _sheet(document, i, settings, str(other.get("separator", ",")), problems)
-    if sheet is None:
-        return {}
-    for dimension in sheet.when:
-        if dimension not in setting.dimensions:
-            fix = did_you_mean(dimension, setting.dimensions)
-            fix = fix or f"declare {dimension!r} under `dimensions:`"
-            fill = {"found": dimension, "fix": fix}
-            problems.append(problem("undeclared-condition", sheet.file, 1, **fill))
-            return {}
+    if sheet is None or not _known_conditions(sheet, setting, problems):
+        return {}, {}
     table = Table(
         document, ("tables", i), settings, sheet, setting.dimensions, setting.zones,
-        setting.units, notes, other, setting.categories,
-        setting.paths.get(str(settings["id"]), ""), amends,
+        setting.units[document.id], notes, other, setting.categories,
+        setting.paths.get(str(settings["id"]), ""), amends, inherited,
     )  # fmt: skip
+    table = table._replace(weights=weights_of(table, problems))
     cells = expand(table, problems)
-    return {} if settings.get("status") == "guidance" else cells
+    check_coverage(table, cells, problems)
+    printed = {column.heads: column.marks for column in sheet.columns if column.marks}
+    printed |= {(row.key,): row.marks for row in sheet.rows if row.marks}
+    return {} if settings.get("status") == "guidance" else cells, printed
+
+
+def _known_conditions(sheet: Sheet, setting: Setting, problems: list[Problem]) -> bool:
+    """Whether every ``when:`` column names a declared dimension."""
+    unknown = [d for d in sheet.when if d not in setting.dimensions]
+    for dimension in unknown:
+        fix = did_you_mean(dimension, setting.dimensions)
+        fix = fix or f"declare {dimension!r} under `dimensions:`"
+        fill = {"found": dimension, "fix": fix}
+        problems.append(problem("undeclared-condition", sheet.file, 1, **fill))
+    return not unknown
 
 
 def _surroundings(

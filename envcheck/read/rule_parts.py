@@ -32,6 +32,9 @@ RATIOS = {
     "skylight_roof_ratio": "area of skylights over gross roof area",
 }
 """Dimensions that need no declaration: the program computes them."""
+DATE_TESTED = "date_tested"
+"""Dimension of columns and rows by date, which needs no declaration either."""
+TESTED = "day that the rule set tests: the permit application date of the project"
 
 
 def read_zones(document: Document, problems: list[Problem]) -> Zones:
@@ -102,6 +105,8 @@ def _overlaps(
 def intersect(a: Condition, b: Condition) -> bool:
     """Whether two conditions on one dimension can hold at once."""
     if a.words or b.words:
+        if len(a.words) == 1 == len(b.words):
+            return a.words[0].casefold() == b.words[0].casefold()
         return bool({w.casefold() for w in a.words} & {w.casefold() for w in b.words})
     for low, high in ((a, b), (b, a)):
         if low.low is not None and high.high is not None:
@@ -115,36 +120,38 @@ def intersect(a: Condition, b: Condition) -> bool:
 def read_dimensions(document: Document, problems: list[Problem]) -> dict[str, Dimension]:
     """Read what conditions may ask for."""
     found = {name: Dimension(name, meaning=words) for name, words in RATIOS.items()}
+    found[DATE_TESTED] = Dimension(DATE_TESTED, meaning=TESTED, sheet="cover sheet", kind="date")
     for name, stated in (document.get("dimensions") or {}).items():
-        line = document.line("dimensions", name)
-        values, unit = tuple(stated.get("values") or ()), stated.get("unit", "")
-        unit = "" if unit == "-" else unit
-        if stated.get("interpolate") or stated.get("type") == "date":
-            what = "interpolation between rows" if stated.get("interpolate") else "rows by date"
-            problems.append(problem("not-executed", document.name, line, found=name, what=what))
-            continue
-        if not values and not stated.get("type"):
-            problems.append(problem("dimension-without-values", document.name, line, found=name))
-            continue
-        if unit and not units.quantity_of(unit):
-            problems.append(
-                problem(
-                    "unknown-unit",
-                    document.name,
-                    line,
-                    found=unit,
-                    hint="use a spelling such as Btu/(ft2*degF)",
-                )
-            )
-            continue
-        default, sheet = stated.get("default", ""), stated.get("sheet", "")
-        if default and values and default not in values:
-            fix = did_you_mean(default, values)
-            fill = {"found": default, "expected": one_of(values), "fix": fix, "name": name}
-            problems.append(problem("unknown-condition-word", document.name, line, **fill))
-            continue
-        found[name] = Dimension(name, values, unit, stated.get("meaning", ""), default, sheet)
+        read = _dimension(document, name, stated, problems)
+        if read is not None:
+            found[name] = read
     return found
+
+
+def _dimension(
+    document: Document, name: str, stated: Mapping[str, Any], problems: list[Problem]
+) -> Dimension | None:
+    line = document.line("dimensions", name)
+    values, unit = tuple(stated.get("values") or ()), stated.get("unit", "")
+    unit = "" if unit == "-" or stated.get("interpolate") else unit
+    if not values and not stated.get("type"):
+        problems.append(problem("dimension-without-values", document.name, line, found=name))
+        return None
+    if unit and not units.quantity_of(unit):
+        hint = "use a spelling such as Btu/(ft2*degF)"
+        problems.append(problem("unknown-unit", document.name, line, found=unit, hint=hint))
+        return None
+    default, sheet = stated.get("default", ""), stated.get("sheet", "")
+    if default and values and default not in values:
+        fix = did_you_mean(default, values)
+        fill = {"found": default, "expected": one_of(values), "fix": fix, "name": name}
+        problems.append(problem("unknown-condition-word", document.name, line, **fill))
+        return None
+    kind = "date" if stated.get("type") == "date" else ""
+    return Dimension(
+        name, values, unit, stated.get("meaning", ""), default, sheet, kind,
+        bool(stated.get("interpolate")), stated.get("outside", "hold"),
+    )  # fmt: skip
 
 
 # --------------------------------------------------------------------------- caps, means, others
@@ -152,11 +159,19 @@ def read_dimensions(document: Document, problems: list[Problem]) -> dict[str, Di
 
 def read_area_limits(
     document: Document, categories: tuple[str, ...], problems: list[Problem]
-) -> tuple[AreaLimit, ...]:
-    """Read the caps on area ratios and the rows that each closes."""
-    found = []
+) -> tuple[tuple[AreaLimit, ...], tuple[str, ...]]:
+    """Read the caps on area ratios and the rows that each closes; one in prose is a remark."""
+    found, remarks = [], []
     for i, stated in enumerate(document.get("area_limits") or ()):
         at = ("area_limits", i)
+        if stated["of"] not in RATIOS:
+            if " " in stated["of"]:
+                remarks.append(f"{stated['clause']} caps {stated['of']}; it is not judged here")
+                continue
+            fix = did_you_mean(stated["of"], RATIOS)
+            fill = {"found": stated["of"], "expected": one_of(RATIOS), "fix": fix}
+            problems.append(problem("unknown-ratio", document.name, document.line(*at), **fill))
+            continue
         most = _number(document, stated["max"], (*at, "max"), problems)
         closes = own_names(document, tuple(stated.get("closes") or ()))
         if not closes:
@@ -165,7 +180,7 @@ def read_area_limits(
         check_patterns(document, closes, categories, (*at, "closes"), problems)
         if most is not None:
             found.append(AreaLimit(stated["of"], most, stated["clause"], closes))
-    return tuple(found)
+    return tuple(found), tuple(remarks)
 
 
 def read_averaging(
@@ -222,8 +237,15 @@ def read_exceptions(*documents: Document) -> tuple[ExceptionClause, ...]:
 def own_names(document: Document, names: tuple[str, ...]) -> tuple[str, ...]:
     """Write the rule set's own names (``elements``) out as categories."""
     own: Mapping[str, Any] = document.get("elements") or {}
-    listed = (own.get(name, name) for name in names)
-    return tuple(c for x in listed for c in ([x] if isinstance(x, str) else x))
+    return tuple(c for name in names for c in written_out(own, name)[0])
+
+
+def written_out(own: Mapping[str, Any], name: str) -> tuple[list[str], Mapping[str, Any]]:
+    """Categories and conditions that a name stands for; a category stands for itself."""
+    listed = own.get(name, name)
+    if isinstance(listed, Mapping):
+        return list(listed.get("categories") or ()), listed.get("when") or {}
+    return ([listed] if isinstance(listed, str) else list(listed)), {}
 
 
 def check_patterns(

@@ -2,15 +2,16 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from datetime import date
 from pathlib import Path
 from typing import Any
 
 from envcheck import units
 from envcheck.errors import InputError, Problem, problem
+from envcheck.model.metrics import METRICS
 from envcheck.model.names import Names
-from envcheck.model.ruleset import Edition, Limit, RuleSet
+from envcheck.model.ruleset import Edition, Limit, OtherMetric, RuleSet
 from envcheck.read.folding import Setting, fold
 from envcheck.read.overlaps import check_overlaps
 from envcheck.read.rule_conventions import Source, read_conventions
@@ -24,19 +25,10 @@ from envcheck.read.rule_parts import (
     read_zones,
 )
 from envcheck.read.rule_tradeoff import read_tradeoff
-from envcheck.read.table_entry import METRICS
+from envcheck.read.single_limits import Clauses
 
 __all__ = ["default_folders", "find", "read_ruleset"]
 
-RECORDED = {
-    "point_limits": "limits at any point",
-    "single_limits": "single limits outside the tables",
-    "thresholds": "thresholds",
-    "adjustments": "adjustments of a value",
-    "relaxations": "relaxations",
-    "exemptions": "exemptions",
-}
-"""Keys that the format knows, that are kept and said, and not judged."""
 COMPARE = "rounded_to_printed_decimals"
 
 
@@ -67,13 +59,16 @@ def read_ruleset(
     zones = read_zones(document("zones"), problems)
     # the tables of every document are read, so that all dimensions are known; those in force win
     dimensions = {k: v for d in (*chain, *active) for k, v in read_dimensions(d, problems).items()}
-    printed = _units(document("units"), problems)
+    printed = _units(chain, problems)
     setting = Setting(zones.order, dimensions, printed, categories, _table_paths(document("paths")))
     cells = fold(chain, in_force, setting, problems)
-    limits = tuple(limit for group in cells.values() for limit in group)
+    clauses = [Clauses(d, dimensions, printed[d.id], categories, problems) for d in active]
+    limits = _with_clauses((x for group in cells.values() for x in group), clauses)
+    _check_zones_printed(zones.order, limits, document("tables"), problems)
     check_overlaps(limits, chain[-1], problems)
     _check_paths(document("paths"), limits, problems)
     averaging, remarks = read_averaging(document("averaging"), categories, problems)
+    caps, prose = read_area_limits(document("area_limits"), categories, problems)
     conventions = read_conventions(_conventions(active, names), problems)
     top = chain[-1]
     rounding: Mapping[str, Any] = document("rounding").get("rounding") or {}
@@ -85,7 +80,7 @@ def read_ruleset(
         invented=top.get("invented") == "yes",
         checked_by=_checked_by(top.get("checked_by")),
         chain=_editions(chain, in_force),
-        units="IP" if "Btu" in "".join(printed.values()) else "SI",
+        units="IP" if "Btu" in "".join(printed[document("units").id].values()) else "SI",
         zones=zones,
         dimensions=dimensions,
         limits=limits,
@@ -94,14 +89,16 @@ def read_ruleset(
         rounding_clause=rounding.get("clause", ""),
         rounding_stated=bool(rounding),
         conventions=conventions,
-        area_limits=read_area_limits(document("area_limits"), categories, problems),
+        area_limits=caps,
         averaging=averaging,
         tradeoff=read_tradeoff(document("tradeoff"), categories, dimensions, problems),
         trigger=read_trigger(document("trigger"), problems),
         exceptions=read_exceptions(*active),
         not_judged=tuple(text for d in active for text in d.get("not_judged") or ()),
         folder=top.folder.as_posix(),
-        remarks=(*remarks, *_remarks(active, limits)),
+        remarks=(*remarks, *prose, *_remarks(active, limits, clauses)),
+        other_metrics=_other_metrics(active),
+        adjustments=tuple(a for c in clauses for a in c.adjustments()),
     )
     if problems:
         raise InputError(dict.fromkeys(problems))
@@ -172,12 +169,22 @@ def _checked_by(stated: Any) -> str:
 # ------------------------------------------------------------------------- units and paths
 
 
-def _units(document: Document, problems: list[Problem]) -> dict[str, str]:
+def _units(chain: Sequence[Document], problems: list[Problem]) -> dict[str, dict[str, str]]:
+    """By document, printed units by key: its own over those of what it amends."""
+    found: dict[str, dict[str, str]] = {}
+    below: dict[str, str] = {}
+    for document in chain:
+        own = _own_units(document, problems)
+        below = found[document.id] = {**below, **own}
+    return found
+
+
+def _own_units(document: Document, problems: list[Problem]) -> dict[str, str]:
     """Printed units by key, as labels of the units table."""
     found: dict[str, str] = {}
     quantities = {m.key: m.quantity for m in METRICS.values() if m.key}
     for key, spelling in (document.get("units") or {}).items():
-        name = "R" if key == "RSI" else key
+        name = {"RSI": "R", "K": "U"}.get(key, key)
         quantity = quantities.get(name, "")
         factor = units.quantity_of(spelling) and units.to_si(1.0, spelling)
         for system in ("SI", "IP"):
@@ -193,6 +200,47 @@ def _units(document: Document, problems: list[Problem]) -> dict[str, str]:
     if "U" in found:
         found.setdefault("C", found["U"])
     return found
+
+
+def _other_metrics(active: Sequence[Document]) -> dict[str, OtherMetric]:
+    """Ratings that cells offer beside the row's own metric."""
+    stated = {k: v for d in active for k, v in (d.get("other_metrics") or {}).items()}
+    bands = {k: v for d in active for k, v in (d.get("bands") or {}).items()}
+    return {
+        name: OtherMetric(
+            name,
+            str((entry or {}).get("limit", "min")),
+            str((entry or {}).get("meaning", "")),
+            tuple(map(str, bands.get(name) or ())),
+        )
+        for name, entry in stated.items()
+    }
+
+
+def _with_clauses(limits: Iterable[Limit], clauses: Sequence[Clauses]) -> tuple[Limit, ...]:
+    """Add the limits of clauses, then split off what clauses free."""
+    found = tuple(limits)
+    for own in clauses:
+        found += (*own.limits("single_limits"), *own.limits("point_limits"))
+    for own in clauses:
+        found = own.exempt(found)
+    return found
+
+
+def _check_zones_printed(
+    order: Sequence[str], limits: Sequence[Limit], document: Document, problems: list[Problem]
+) -> None:
+    """Where each zone has a sheet of its own, none is left out."""
+    tables = document.get("tables") or ()
+    single = [t for t in tables if t.get("zone")]
+    if len(single) < 2 or any(limit.zone == "*" for limit in limits):
+        return
+    printed = {t["zone"] for t in single}
+    allowed = {z for t in tables for z in t.get("gaps_allowed") or ()}
+    for zone in order:
+        if zone not in printed | allowed:
+            line, fill = document.line("zones", "order"), {"zone": zone, "what": "sheet"}
+            problems.append(problem("zone-missing", document.name, line, found="none", **fill))
 
 
 def _table_paths(document: Document) -> dict[str, str]:
@@ -219,14 +267,13 @@ def _check_paths(document: Document, limits: Sequence[Limit], problems: list[Pro
         problems.append(problem("paths-not-stated", document.name, None, found=found))
 
 
-def _remarks(active: Sequence[Document], limits: Sequence[Limit]) -> tuple[str, ...]:
+def _remarks(
+    active: Sequence[Document], limits: Sequence[Limit], clauses: Sequence[Clauses]
+) -> tuple[str, ...]:
     """What the rule set holds and this version does not judge."""
     found = []
-    for document in active:
-        for key, words in RECORDED.items():
-            clauses = [str(e.get("clause", "")) for e in document.get(key) or ()]
-            if clauses:
-                found.append(f"{document.id}: {words} ({', '.join(clauses)}) are not judged")
+    for document, own in zip(active, clauses, strict=True):
+        found += own.remarks()
         for table in document.get("tables") or ():
             if table.get("status") == "guidance":
                 found.append(f"{document.id}: {table['clause']} is guidance and is not judged")

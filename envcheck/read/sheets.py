@@ -19,6 +19,8 @@ from envcheck.read.yaml_text import check_bytes, control_characters
 
 LARGEST = 2_000_000
 """Bytes; no printed table is larger."""
+MOST_CELLS = 250_000
+"""Cells of one sheet; the largest printed table has some thousands."""
 WHEN = "when:"
 _PLAIN = re.compile(r"[\w-][\w.-]*\.csv")
 
@@ -99,10 +101,17 @@ def read_lines(
     if text is None:
         return None
     lines: list[_Line] = []
+    cells_left = MOST_CELLS
     reader = csv.reader(io.StringIO(text, newline=""), delimiter=separator, strict=True)
     start = 1
     try:
         for cells in reader:
+            cells_left -= len(cells)
+            if cells_left < 0:
+                found, expected = f"more than {MOST_CELLS} cells", "one printed table"
+                p = problem("file-too-large", shown, start, found=found, expected=expected)
+                problems.append(p)
+                return None
             if any(cells):
                 lines.append(_Line(start, [cell.strip() for cell in cells]))
             start = reader.line_num + 1
@@ -123,6 +132,10 @@ def read_sheet(
         problems.append(problem("empty-sheet", shown, None, found=f"{len(lines)} rows"))
         return None
     heads, body = lines[:header_rows], lines[header_rows:]
+    second = next((line for line in body if line.cells[:2] == ["row", "label"]), None)
+    if second is not None:
+        body = body[: body.index(second)]
+        lines = heads + body
     width = len(heads[0].cells)
     ragged = [line for line in lines if len(line.cells) != width]
     for line in ragged:
@@ -133,6 +146,9 @@ def read_sheet(
     dimensions = _reserved(heads[0], shown, separator, problems)
     if dimensions is None:
         return None
+    if second is not None:
+        fill = {"found": "row,label,... again", "expected": "one printed table"}
+        problems.append(problem("second-table", shown, second.number, **fill))
     first = 2 + len(dimensions)
     columns = _columns(heads, first, width - 1, shown, problems)
     if len({column.heads for column in columns}) < len(columns):

@@ -3,37 +3,18 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
+from types import MappingProxyType
 from typing import Any, NamedTuple
 
 from envcheck.errors import Problem, did_you_mean, one_of, problem
-from envcheck.model.ruleset import Condition, Dimension
+from envcheck.model.ruleset import Condition, Dimension, Weight
 from envcheck.read.rule_documents import Document
 from envcheck.read.sheets import Column, Row, Sheet
 
-
-class Metric(NamedTuple):
-    """What a limit may speak of: key of ``units``, quantity, usual sense."""
-
-    key: str
-    quantity: str
-    sense: str
-
-
-METRICS = {
-    "U_assembly": Metric("U", "u_factor", "max"),
-    "U_product": Metric("U", "u_factor", "max"),
-    "C_factor": Metric("C", "u_factor", "max"),
-    "F_factor": Metric("F", "linear_transmittance", "max"),
-    "R_insulation": Metric("R", "resistance", "min"),
-    "SHGC": Metric("", "number", "max"),
-    "VT": Metric("", "number", "min"),
-}
-LATER = (
-    "R_total", "R_construction", "RSI_effective", "R_old_and_new", "U_glazing", "U_curtain_wall",
-    "U_mean", "K_global", "VT_per_SHGC", "solar_admittance", "solar_absorptance",
+MEANINGS = (
+    "element", "metric", "limit", "when", "path", "applies_to", "plus", "slash", "extent", "see",
+    "in_force", "depth_to",
 )  # fmt: skip
-"""Metrics that the format knows and that are not judged yet."""
-MEANINGS = ("element", "metric", "limit", "when", "path", "applies_to", "plus", "slash", "extent")
 CellKey = tuple[str, str, tuple[tuple[str, str], ...], tuple[str, ...]]
 """(table id, row key, conditions as typed, heads): finds the cell that an amendment replaces."""
 
@@ -59,6 +40,9 @@ class Table(NamedTuple):
     """Path of the whole table, where ``paths`` names tables."""
     unchanged: bool
     """A cell may be ``.``: the table amends another."""
+    inherited: Mapping[tuple[str, ...], tuple[str, ...]] = MappingProxyType({})
+    """Footnote marks of the base's heads (by heads) and rows (by key), which an amendment keeps."""
+    weights: tuple[Weight, ...] = ()
 
     @property
     def id(self) -> str:
@@ -73,6 +57,9 @@ class Head(NamedTuple):
     zone: str
     settings: dict[str, Any]
     when: tuple[Condition, ...]
+    marks: tuple[str, ...] = ()
+    trigger_of: str = ""
+    """Printed head of the target, where the column holds the threshold for it."""
 
 
 def at(

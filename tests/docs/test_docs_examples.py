@@ -11,6 +11,7 @@ import pytest
 
 from envcheck import pipeline, units
 from envcheck.error_kinds import rule_sets, sheets
+from envcheck.model.metrics import METRICS
 from envcheck.read.cells import CellError, Grammar, read_cell
 from envcheck.read.coefficient_tables import FORMS
 from envcheck.read.condition_text import read_condition
@@ -18,7 +19,6 @@ from envcheck.read.materials import categories
 from envcheck.read.rule_conventions import KEYS
 from envcheck.read.rulesets import read_ruleset
 from envcheck.read.schema import schema_text
-from envcheck.read.table_entry import METRICS
 from envcheck.read.yaml_reader import read_yaml
 from tests.docs.excerpts import BLOCK, PAGES, printed
 from tests.docs.pages import (

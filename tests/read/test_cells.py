@@ -12,6 +12,7 @@ from envcheck.read.condition_text import read_condition
 
 U = Grammar()
 R = Grammar(metric="R_insulation", sense="min", plus=("cavity", "ci"), extent="depth")
+RATED = Grammar("U_product", metrics=("WER",), bands=(("WER", ("A", "B", "C")),))
 FOOT = 0.3048
 
 
@@ -128,6 +129,23 @@ def test_other_metric_as_an_alternative() -> None:
     assert [t.metric for (t,) in branch.alternatives] == ["", "ER"]
 
 
+def test_a_rating_band_has_its_rank() -> None:
+    (branch,) = read_cell("1.4 or WER B", RATED).branches
+    own, band = (alternative[0] for alternative in branch.alternatives)
+    assert (own.number, own.band, band.metric, band.band, band.number) == (1.4, "", "WER", "B", 1)
+
+
+def test_an_extent_in_words_and_two_suffixes() -> None:
+    grammar = R._replace(plus=(), extent="perimeter", suffixes=("LS",))
+    (branch,) = read_cell("R-10 perimeter & under entire slab", grammar).branches
+    assert branch.alternatives[0][0].where == "perimeter & under entire slab"
+    (branch,) = read_cell("R-10 for 24 in below", grammar).branches
+    term = branch.alternatives[0][0]
+    assert (term.extent, term.where) == (pytest.approx(2 * FOOT), "below")
+    (branch,) = read_cell("R-13 + R-7.5ci std", R._replace(suffixes=("std",))).branches
+    assert [(t.role, t.also) for t in branch.alternatives[0]] == [("cavity", ()), ("ci", ("std",))]
+
+
 @pytest.mark.parametrize(
     ("text", "plain", "marks"),
     [
@@ -172,8 +190,10 @@ def test_references() -> None:
         ("nan", U, "unreadable-cell"),
         ("1e3", U, "unreadable-cell"),
         ("20xx", R, "unknown-suffix"),
-        ("WER B", U._replace(metrics=("WER",)), "cell-not-executed"),
-        ("R-10 perimeter & under entire slab", R, "cell-not-executed"),
+        ("WER B", U._replace(metrics=("WER",)), "unknown-band"),
+        ("WER H", RATED, "unknown-band"),
+        ("DSER B", RATED, "unreadable-cell"),
+        ("10 perimeter", R._replace(extent=""), "extent-without-rule"),
         ("10 for 24 parsec", R, "unreadable-cell"),
         ("=1+1", U, "unreadable-cell"),
     ],

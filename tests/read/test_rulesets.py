@@ -162,12 +162,20 @@ def test_every_limit_has_its_own_id() -> None:
         assert len(ids) == len(set(ids))
 
 
-def test_footnotes_that_wait_for_the_official() -> None:
+def test_footnotes_that_act_and_that_wait_for_the_official() -> None:
     ruleset = read_ruleset("example-2024", [CASES], DAY, NAMES)
-    mass = cell(ruleset, "Zone 1", "wall.mass", "U_assembly")
-    assert [(n.mark, n.effect, n.by_official) for n in mass.notes] == [("a", "replace", True)]
+    inside = {"mass_wall_insulation": "more_than_half_interior"}
+    mass = cell(ruleset, "Zone 1", "wall.mass", "U_assembly", **inside)
+    assert (mass.cell, mass.alternatives[0][0].text) == ("0.120", "0.120")
+    assert [(n.mark, n.by_official, n.did) for n in mass.notes] == [
+        ("a", False, "0.120 instead of 0.098")
+    ]
+    outside = {"mass_wall_insulation": "less_than_half_interior"}
+    mass = cell(ruleset, "Zone 1", "wall.mass", "U_assembly", **outside)
+    assert (mass.cell, mass.notes[0].did) == ("0.098", "does not apply")
     altered = cell(ruleset, "Zone 1", "wall.any", "U_assembly", work="alteration")
     assert altered.notes[0].text == "cavity filled to its full depth also complies"
+    assert altered.notes[0].by_official
 
 
 def test_an_alternative_in_another_metric() -> None:

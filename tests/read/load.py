@@ -1,0 +1,60 @@
+"""Load every rule set of the folders given, by hand: ``python -m tests.read.load FOLDER...``.
+
+Prints for each set whether it loads, its printed cells, the limits they become, how many of these
+wait for the official, and every problem. The folders may lie anywhere; nothing of them is kept.
+"""
+
+from __future__ import annotations
+
+import sys
+from collections import Counter
+from collections.abc import Iterable
+from pathlib import Path
+from time import perf_counter
+
+from envcheck.errors import InputError
+from envcheck.model.ruleset import RuleSet
+from envcheck.pipeline import names
+from envcheck.read.rule_documents import known_ids
+from envcheck.read.rulesets import read_ruleset
+
+
+def printed_cells(ruleset: RuleSet) -> int:
+    """Number of printed cells: limits that stand in the same place are one."""
+    return len({(x.file, x.line, x.zone, x.row, x.metric, x.path, x.label) for x in ruleset.limits})
+
+
+def summary(ruleset: RuleSet) -> str:
+    """One line on a rule set that loads."""
+    kinds = Counter(limit.kind for limit in ruleset.limits)
+    official = sum(any(n.by_official for n in x.notes) for x in ruleset.limits)
+    metrics = ", ".join(dict.fromkeys(x.metric for x in ruleset.limits))
+    return (
+        f"{printed_cells(ruleset)} cells, {len(ruleset.limits)} limits "
+        f"({kinds['number']} figures, {kinds['no_requirement']} NR, {kinds['not_covered']} none), "
+        f"{official} for the official; {metrics}; {len(ruleset.remarks)} remarks"
+    )
+
+
+def load(folders: Iterable[str]) -> int:
+    """Load and report; the number of sets that do not load."""
+    failed = 0
+    for folder in map(Path, folders):
+        for name in known_ids([folder]):
+            start = perf_counter()
+            try:
+                ruleset = read_ruleset(name, [folder], None, names())
+            except InputError as error:
+                failed += 1
+                print(f"{name}: does not load, {len(error.problems)} problems")
+                for problem in error.problems:
+                    print(f"    {problem}")
+                continue
+            print(f"{name}: {summary(ruleset)} [{(perf_counter() - start) * 1000:.0f} ms]")
+            for remark in ruleset.remarks:
+                print(f"    remark: {remark}")
+    return failed
+
+
+if __name__ == "__main__":
+    sys.exit(1 if load(sys.argv[1:]) else 0)
