@@ -87,12 +87,12 @@ def by_area_cap(case: Case) -> str | None:
     return None
 
 
-def lacks_evidence(case: Case) -> str | None:
+def lacks_evidence(case: Case, metric: str) -> str | None:
     """Why the evidence of a rated product is not accepted, or None."""
     rated = case.assembly.rated
     if rated is None:
         return None
-    if rated.basis == "centre_of_glass":
+    if rated.basis == "centre_of_glass" and metric != "U_glazing":
         return (
             f"missing: values of the whole product for {case.assembly.id}, frame included; only "
             f"those of the centre of glass are stated, on {case.assembly.sheet or 'its schedule'}"

@@ -11,15 +11,13 @@ from envcheck.judge.select import select
 from envcheck.judge.tradeoff import elects
 from envcheck.judge.verdict import judge
 from envcheck.model.judged import Finding, Judged, Line, Ratio
+from envcheck.model.metrics import METRICS
 from envcheck.model.patterns import matches
 from envcheck.model.project import Assembly, Element, Project, RuleSetChoice
 from envcheck.model.ruleset import RuleSet, TradeOff
 from envcheck.model.solved import Properties, Solved
 
-SOLVED_METRICS = ("U_assembly", "U_product", "C_factor", "F_factor")
-"""Metrics that need a solution; the others are read off the product."""
-HEAT_FLOW = (*SOLVED_METRICS, "R_insulation")
-"""Metrics that limit the heat flow: a table that gives none of them leaves the element open."""
+EACH = "each_component"
 COMPLIES, OVER, OPEN = 0, 1, 3
 """Exit status of a run: none over and none open; at least one over; none over, some open."""
 SolveOne = Callable[[Element, Assembly, str, str, RuleSet], Solved]
@@ -97,14 +95,18 @@ def judge_lines(
             selection,
             closed,
         )
-        asked = selection.metrics
-        if not any(metric in HEAT_FLOW for metric in asked):
-            asked = (metrics[found.category], *asked)
-        for metric in asked:
+        own = metrics[found.category]
+        asked = selection.held
+        if not any(METRICS[metric].key for metric, _ in asked):
+            asked = ((own, EACH), *asked)
+        for metric, applies_to in asked:
+            by = METRICS[metric].solved_as
             solved = None
-            if metric in SOLVED_METRICS:
-                solved = solve(element, assembly, found.category, metric, ruleset)
-            lines.append(judge(case, metric, solved))
+            if by:
+                solves = metric if by == "own" else own
+                solved = solve(element, assembly, found.category, solves, ruleset)
+            scope = case._replace(selection=selection.of_scope(metric, applies_to))
+            lines.append(judge(scope, metric, solved))
     return lines
 
 

@@ -9,20 +9,25 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 
-from envcheck.judge.facts import Known, Value, fact_of, shown
+from envcheck.judge.between import interpolate, interpolated_over
+from envcheck.judge.facts import Known, Value, building_fact, fact_of, in_words
 from envcheck.judge.selection import METRICS, MissingFact, Outcome, Selection
 from envcheck.judge.zones import ZoneFound, find_zone, holds
 from envcheck.model.judged import Choice
-from envcheck.model.patterns import closeness, in_words
+from envcheck.model.patterns import closeness
+from envcheck.model.patterns import in_words as category_in_words
 from envcheck.model.project import Element, Project
-from envcheck.model.ruleset import Limit, RuleSet
+from envcheck.model.ruleset import Condition, Limit, Note, RuleSet
 
 KEPT = 8
 """Rule sets whose index is kept."""
 
 
-Group = tuple[tuple[str, str], tuple[tuple[Limit, ...], ...]]
-"""(metric, path) and the limits of the rows that cover a category, most specific rows first."""
+Group = tuple[tuple[str, str, str], tuple[tuple[Limit, ...], ...]]
+"""(metric, path, applies to) and the limits of the rows that cover a category, most specific rows
+first; a row for all other cases comes last."""
+ENVELOPE = "envelope"
+"""What a limit for the building as a whole covers."""
 
 
 @dataclass(slots=True)
@@ -55,14 +60,39 @@ def select(
     these over ``derived_facts``, these over the rule set's defaults. Limits stay in printed units.
     """
     index = _index(ruleset)
+    zone, asked = _asked(index, project, category)
+    facts = {
+        name: fact_of(name, element, project, derived_facts or {}, ruleset.dimensions[name])
+        for name in asked
+    }
+    return _remembered(index, zone, category, facts, project)
+
+
+def select_envelope(
+    ruleset: RuleSet, project: Project, derived_facts: Mapping[str, Value] | None = None
+) -> Selection:
+    """Select the limits of the building as a whole (a global coefficient)."""
+    index = _index(ruleset)
+    zone, asked = _asked(index, project, ENVELOPE)
+    facts = {
+        name: building_fact(name, project, derived_facts or {}, ruleset.dimensions[name])
+        for name in asked
+    }
+    return _remembered(index, zone, ENVELOPE, facts, project)
+
+
+def _asked(index: _Index, project: Project, category: str) -> tuple[ZoneFound, tuple[str, ...]]:
+    """Give the zone of the site, and the facts that limits of a category ask for there."""
     zone = _zone(index, project)
     key = (zone.heads, category)
     if key not in index.groups:
         _lay_out(index, zone.heads, category)
-    facts = {
-        name: fact_of(name, element, project, derived_facts or {}, ruleset.dimensions[name])
-        for name in index.dimensions[key]
-    }
+    return zone, index.dimensions[key]
+
+
+def _remembered(
+    index: _Index, zone: ZoneFound, category: str, facts: dict[str, Known], project: Project
+) -> Selection:
     memo = (category, tuple(facts.items()))
     found = index.done.get(memo)
     if found is None:
@@ -91,13 +121,18 @@ def _zone(index: _Index, project: Project) -> ZoneFound:
 
 def _lay_out(index: _Index, heads: tuple[str, ...], category: str) -> None:
     """Group the limits that cover a category by metric and path, most specific rows first."""
-    found: dict[tuple[str, str], dict[int, list[Limit]]] = {}
+    found: dict[tuple[str, str, str], dict[int, list[Limit]]] = {}
+    fits: dict[tuple[str, ...], int] = {}
     for head in (*heads, "*"):
         for limit in index.by_zone.get(head, ()):
-            fit = max((closeness(p, category) for p in limit.categories), default=-1)
-            if fit >= 0:
-                levels = found.setdefault((limit.metric, limit.path), {})
-                levels.setdefault(fit, []).append(limit)
+            fit = fits.get(limit.categories)
+            if fit is None:
+                fit = max((closeness(p, category) for p in limit.categories), default=-1)
+                fits[limit.categories] = fit
+            if fit >= 0 and (category != ENVELOPE or ENVELOPE in limit.categories):
+                key = (limit.metric, limit.path, limit.applies_to)
+                levels = found.setdefault(key, {})
+                levels.setdefault(-1 if limit.otherwise else fit, []).append(limit)
     index.groups[(heads, category)] = tuple(
         (key, tuple(tuple(levels[fit]) for fit in sorted(levels, reverse=True)))
         for key, levels in found.items()
@@ -136,62 +171,91 @@ def _selection(
     groups = index.groups[(zone.heads, category)]
     if not groups:
         printed = f" for zone {zone.printed}" if zone.printed else ""
-        why = f"no row of {ruleset.title} covers {in_words(category)}{printed}"
+        why = f"no row of {ruleset.title} covers {category_in_words(category)}{printed}"
         return stopped("not_in_table", why)
     outcomes = tuple(_outcome(key, levels, ruleset, facts) for key, levels in groups)
     trail += _row_trail(outcomes, facts)
-    by = {(o.metric, o.path): o for o in outcomes}
+    by = {(o.metric, o.path): o for o in reversed(outcomes)}
     return Selection(ruleset.id, category, zone.printed, "selected", "", outcomes, tuple(trail), by)
 
 
 def _outcome(
-    key: tuple[str, str],
+    key: tuple[str, str, str],
     levels: tuple[tuple[Limit, ...], ...],
     ruleset: RuleSet,
     facts: Mapping[str, Known],
 ) -> Outcome:
     """Go from the most specific rows down until rows hold, or could hold if a fact were known."""
-    metric, path = key
-    for limits in levels:
-        holding: list[Limit] = []
-        undecided: list[Limit] = []
-        lacking: dict[str, None] = {}
-        for limit in limits:
-            unknown = _unknown(limit, facts)
-            if unknown is None:
-                continue
-            (undecided if unknown else holding).append(limit)
-            lacking |= dict.fromkeys(unknown)
+    metric, path, applies_to = key
+    out: list[tuple[Limit, str]] = []
+
+    def outcome(state: str, limit: Limit | None = None, why: str = "") -> Outcome:
+        return Outcome(metric, path, state, limit, (), (), why, applies_to, tuple(out))
+
+    for level, limits in enumerate(levels):
+        holding, undecided, lacking = _hold(limits, ruleset, facts, out)
         if undecided:
             missing = tuple(_missing(name, ruleset, facts[name]) for name in lacking)
-            why = "; ".join(map(str, missing))
             every = (*holding, *undecided)
-            return Outcome(metric, path, "missing_fact", None, every, missing, why)
+            found = outcome("missing_fact", why="; ".join(map(str, missing)))
+            return found._replace(candidates=every, missing=missing)
+        over = interpolated_over(holding, ruleset)
+        if over:
+            limit, why = interpolate(holding, over, facts[over], ruleset)
+            return outcome("found" if limit is not None else "not_in_table", limit, why)
         if len(holding) == 1:
-            return Outcome(metric, path, "found", holding[0])
+            out += [(x, LESS_SPECIFIC) for rest in levels[level + 1 :] for x in rest]
+            return outcome("found", holding[0])
         if holding:
             rows = " and ".join(f"{x.clause}, {x.label}: {x.cell}" for x in holding)
-            return Outcome(metric, path, "two_rows", None, tuple(holding), why=f"two rows: {rows}")
-    stated = ", ".join(f"{n} {shown(k.value)}" for n, k in facts.items() if k.value is not None)
-    why = f"no row holds for {stated}" if stated else "no row holds"
-    return Outcome(metric, path, "not_in_table", None, why=why)
+            return outcome("two_rows", why=f"two rows: {rows}")._replace(candidates=tuple(holding))
+    stated = ", ".join(f"{n} {in_words(k)}" for n, k in facts.items() if k.value is not None)
+    return outcome("not_in_table", why=f"no row holds for {stated}" if stated else "no row holds")
 
 
-def _unknown(limit: Limit, facts: Mapping[str, Known]) -> tuple[str, ...] | None:
-    """Facts that the limit still asks for; None where a known fact rules it out."""
+LESS_SPECIFIC = "speaks of more than this category"
+
+
+def _hold(
+    limits: tuple[Limit, ...],
+    ruleset: RuleSet,
+    facts: Mapping[str, Known],
+    out: list[tuple[Limit, str]],
+) -> tuple[list[Limit], list[Limit], list[str]]:
+    """Split limits into those that hold and those that lack facts; ``out`` takes the others."""
+    holding: list[Limit] = []
+    undecided: list[Limit] = []
+    lacking: dict[str, None] = {}
+    for limit in limits:
+        unknown, against = _unknown(limit, ruleset, facts)
+        if against is not None:
+            name = against.dimension.replace("_", " ")
+            out.append((limit, f"asks for {name} {against.text}"))
+            continue
+        (undecided if unknown else holding).append(limit)
+        lacking |= dict.fromkeys(unknown)
+    return holding, undecided, list(lacking)
+
+
+def _unknown(
+    limit: Limit, ruleset: RuleSet, facts: Mapping[str, Known]
+) -> tuple[tuple[str, ...], Condition | None]:
+    """Facts that the limit still asks for; or the condition by which a known fact rules it out."""
     unknown = []
     for condition in limit.when:
         fact = facts[condition.dimension]
         if fact.value is None or not fact.usable:
             unknown.append(condition.dimension)
-        elif not holds(condition, fact.value):
-            return None
-    return tuple(unknown)
+        elif not (
+            ruleset.dimensions[condition.dimension].interpolate or holds(condition, fact.value)
+        ):
+            return (), condition
+    return tuple(unknown), None
 
 
 def _missing(name: str, ruleset: RuleSet, known: Known) -> MissingFact:
     dimension = ruleset.dimensions[name]
-    found = "" if known.value is None else f"{shown(known.value)} ({known.where})"
+    found = "" if known.value is None else f"{in_words(known)} ({known.where})"
     return MissingFact(
         name, dimension.values, dimension.unit, dimension.meaning, dimension.sheet, found
     )
@@ -235,15 +299,19 @@ def _row_trail(outcomes: tuple[Outcome, ...], facts: Mapping[str, Known]) -> lis
         if limit is None:
             trail.append(Choice("row", f"{what}: none", outcome.why))
             continue
-        covers = ", ".join(map(in_words, limit.categories))
+        covers = ", ".join(map(category_in_words, limit.categories))
         why = f'{limit.clause}, row "{limit.label}", covers {covers}; {what} {limit.cell}'
         if limit.replaced:
             why += f"; replaces {limit.replaced}"
         trail.append(Choice("row", limit.id, why))
         for condition in limit.when:
             fact = facts[condition.dimension]
-            chosen = f"{condition.dimension.replace('_', ' ')} {shown(fact.value)}"
+            chosen = f"{condition.dimension.replace('_', ' ')} {in_words(fact)}"
             why = f"the row asks for {condition.text} ({fact.where})"
             trail.append(Choice("condition", chosen, why))
-        trail += [Choice("footnote", f"[{note.mark}]", note.text) for note in limit.notes]
+        trail += [Choice("footnote", f"[{n.mark}]", _note_in_words(n)) for n in limit.notes]
     return list(dict.fromkeys(trail))
+
+
+def _note_in_words(note: Note) -> str:
+    return f"{note.text}: {note.did}" if note.did else note.text

@@ -6,19 +6,13 @@ from collections.abc import Mapping
 from types import MappingProxyType
 from typing import NamedTuple
 
+from envcheck.model import metrics
 from envcheck.model.judged import Choice
 from envcheck.model.patterns import in_words
 from envcheck.model.ruleset import Limit
 
-METRICS = {
-    "U_assembly": "U-factor",
-    "U_product": "U-factor of the whole product",
-    "C_factor": "C-factor",
-    "F_factor": "F-factor",
-    "R_insulation": "R-value of the insulation",
-    "VT": "visible transmittance",
-}
-"""Metrics in words; the others are words already."""
+METRICS = {name: metric.words for name, metric in metrics.METRICS.items()}
+"""Metrics in words."""
 INSULATION = "insulation"
 """Path of labelled R-values, printed beside the value of the whole."""
 
@@ -60,6 +54,10 @@ class Outcome(NamedTuple):
     missing: tuple[MissingFact, ...] = ()
     why: str = ""
     """Why there is no limit, in words."""
+    applies_to: str = "each_component"
+    """What the limit holds for: two may hold at once, for each part and for the mean."""
+    ruled_out: tuple[tuple[Limit, str], ...] = ()
+    """Rows of the same kind that do not hold, each with its reason."""
 
 
 class Selection(NamedTuple):
@@ -81,8 +79,21 @@ class Selection(NamedTuple):
     @property
     def metrics(self) -> tuple[str, ...]:
         """Metrics that make a line each: those of the insulation path stand in another's line."""
-        main = [o.metric for o in self.outcomes if o.path != INSULATION]
-        return tuple(dict.fromkeys(main or [o.metric for o in self.outcomes]))
+        return tuple(dict.fromkeys(metric for metric, _ in self.held))
+
+    @property
+    def held(self) -> tuple[tuple[str, str], ...]:
+        """Metric and what it applies to, a line for each."""
+        main = [o for o in self.outcomes if o.path != INSULATION or o.metric != "R_insulation"]
+        return tuple(dict.fromkeys((o.metric, o.applies_to) for o in main or self.outcomes))
+
+    def of_scope(self, metric: str, applies_to: str) -> Selection:
+        """This selection without the limits of the metric that apply to something else."""
+        kept = tuple(o for o in self.outcomes if o.metric != metric or o.applies_to == applies_to)
+        if len(kept) == len(self.outcomes):
+            return self
+        by = {(o.metric, o.path): o for o in reversed(kept)}
+        return self._replace(outcomes=kept, by=by)
 
     def outcome(self, metric: str, path: str = "") -> Outcome | None:
         """Outcome of a metric; without a path that of its main path."""

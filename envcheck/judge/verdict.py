@@ -15,6 +15,7 @@ from envcheck.judge.before import (
 from envcheck.judge.compare import compare, other_ways, own_term
 from envcheck.judge.paths import insulation_of, insulation_path
 from envcheck.judge.selection import INSULATION, METRICS
+from envcheck.judge.values import of_metric, value_of
 from envcheck.model.judged import Choice, Comparison, Line, PathResult
 from envcheck.model.project import ExceptionClaim
 from envcheck.model.ruleset import Limit
@@ -84,12 +85,12 @@ def _claimed(line: Line, claim: ExceptionClaim) -> Line:
 
 
 def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Line:
-    missing = lacks_evidence(case) or lacks_depth(case, limit)
+    missing = lacks_evidence(case, limit.metric) or lacks_depth(case, limit)
     if missing is None and solved is not None and solved.missing:
         missing = f"missing: {solved.missing[0]}"
     if missing is None and solved is not None and solved.decided_by_bracket:
         return _by_bracket(case, line, limit, solved)
-    value = _value(case, limit, solved)
+    value = value_of(limit.metric, case.assembly, solved)
     if missing is None and value is None:
         missing = f"missing: {_named(limit.metric)} of {case.assembly.id}"
     labels = _labels(case, limit)
@@ -132,18 +133,6 @@ def _outcome(
 
 def _named(metric: str) -> str:
     return f"the {METRICS[metric]}" if metric in METRICS else metric
-
-
-def _value(case: Case, limit: Limit, solved: Solved | None) -> float | None:
-    """The number that the limit speaks of, SI."""
-    rated = case.assembly.rated
-    if limit.metric == "SHGC":
-        return rated.shgc if rated is not None else case.assembly.shgc
-    if limit.metric == "VT":
-        return rated.visible_transmittance if rated is not None else None
-    if solved is None or solved.value is None:
-        return None
-    return solved.value
 
 
 def _labels(case: Case, limit: Limit) -> PathResult | None:
@@ -201,8 +190,8 @@ def _by_bracket(case: Case, line: Line, limit: Limit, solved: Solved) -> Line:
     """The method is the two-dimensional solution: the bracket decides."""
     assert solved.low is not None and solved.high is not None
     term = own_term(limit)
-    low = compare(solved.low, term, limit, case.ruleset)
-    high = compare(solved.high, term, limit, case.ruleset)
+    low = compare(of_metric(limit.metric, solved.low), term, limit, case.ruleset)
+    high = compare(of_metric(limit.metric, solved.high), term, limit, case.ruleset)
     if high.within:
         verdict, why = "pass", "both bounds lie within the limit"
     elif not low.within:
@@ -224,8 +213,8 @@ def _with_bracket(case: Case, line: Line, limit: Limit, solved: Solved | None) -
     if solved is None or solved.low is None or solved.high is None:
         return line._replace(flags=tuple(flags))
     term = own_term(limit)
-    low = compare(solved.low, term, limit, case.ruleset)
-    high = compare(solved.high, term, limit, case.ruleset)
+    low = compare(of_metric(limit.metric, solved.low), term, limit, case.ruleset)
+    high = compare(of_metric(limit.metric, solved.high), term, limit, case.ruleset)
     if {low.within, high.within, comparison.within} == {True, False}:
         flags.append("method")
     return line._replace(low=low, high=high, flags=tuple(flags))

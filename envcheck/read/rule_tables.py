@@ -13,6 +13,7 @@ from itertools import pairwise
 from typing import Any, NamedTuple
 
 from envcheck.errors import Problem, one_of, problem
+from envcheck.model.days import ordinal
 from envcheck.model.ruleset import Condition, Limit, Note, Term
 from envcheck.read.cells import Branch, Cell, CellError, read_cell
 from envcheck.read.condition_text import period_of
@@ -127,24 +128,17 @@ def _days(table: Table) -> dict[tuple[str, object], float]:
         for rows in same.values():
             rows.sort(key=lambda item: item[0])
             for (_, row), (following, _) in pairwise(rows):
-                ends[(d, (row.key, row.when))] = _ordinal(following)
+                end = ordinal(following)
+                if end is not None:  # no day is said where the row itself is read
+                    ends[(d, (row.key, row.when))] = end
     return ends
-
-
-def _ordinal(text: str) -> float:
-    from datetime import date
-
-    try:
-        return float(date.fromisoformat(text).toordinal())
-    except ValueError:  # said where the row itself is read
-        return float("inf")
 
 
 def _until(
     c: Condition, row: Row, table: Table, ends: Mapping[tuple[str, object], float]
 ) -> Condition:
     end = ends.get((c.dimension, (row.key, row.when)))
-    if end is None or c.low is None or c.low >= end or end == float("inf"):
+    if end is None or c.low is None or c.low >= end:
         return c
     return period_of(c.dimension, c.low, end)
 

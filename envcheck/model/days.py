@@ -1,0 +1,13 @@
+"""Days as numbers, so that a period is an interval like any other."""
+
+from __future__ import annotations
+
+from datetime import date
+
+
+def ordinal(text: str) -> float | None:
+    """Give the ordinal of a day such as 2026-03-02; None for what is no day."""
+    try:
+        return float(date.fromisoformat(text).toordinal())
+    except ValueError:
+        return None
