@@ -11,6 +11,32 @@ from datetime import date
 from types import MappingProxyType
 from typing import NamedTuple
 
+from envcheck.model.conventions import ClassTest, Conventions, FilmRow, MethodRule, TableRow
+
+__all__ = [
+    "Adjustment",
+    "AreaLimit",
+    "Averaging",
+    "ClassTest",
+    "Condition",
+    "Conventions",
+    "Dimension",
+    "Edition",
+    "ExceptionClause",
+    "FilmRow",
+    "Limit",
+    "MethodRule",
+    "Note",
+    "OtherMetric",
+    "RuleSet",
+    "TableRow",
+    "Term",
+    "TradeOff",
+    "Trigger",
+    "Weight",
+    "Zones",
+]
+
 
 class Term(NamedTuple):
     """One number of a cell: ``13``, ``9ci``, ``R-15 for 24 in``."""
@@ -151,102 +177,6 @@ class Limit(NamedTuple):
     """Row for all cases that no other row covers."""
     depth_to: float | None = None
     """Depth to which the row counts, m (below-grade walls)."""
-
-
-# -------------------------------------------------------------------------------- conventions
-
-
-class FilmRow(NamedTuple):
-    """A surface resistance for a side, what lies beyond it and the direction of heat flow."""
-
-    side: str
-    """``inside`` or ``outside``"""
-    adjoins: str
-    """What lies beyond (``outdoors``, ``vented_attic`` ...), ``ventilated_cladding``, or ``*``."""
-    direction: str
-    """``up``, ``horizontal``, ``down`` or ``*``"""
-    resistance: float
-    """m2 K/W"""
-    text: str
-    """As printed, with its unit."""
-    source: str
-
-
-class MethodRule(NamedTuple):
-    """The method that the rule set prescribes for a class of construction."""
-
-    category: str
-    """Category or pattern."""
-    method: str
-    clause: str
-    refused: tuple[str, ...] = ()
-    """Methods that the clause does not accept."""
-    weight: float | None = None
-    """Of the upper limit, for the weighted rule."""
-
-
-class ClassTest(NamedTuple):
-    """The test that keeps an element in the class claimed: mass, or light let through."""
-
-    category: str
-    """The class claimed, or a pattern."""
-    measure: str
-    """``heat_capacity``, ``weight`` or ``visible_transmittance`` (above ``at_least``)"""
-    at_least: float
-    """J/(m2 K) or kg/m2"""
-    text: str
-    """As printed: ``6 Btu/(ft2*degF)``."""
-    counted: str
-    """``whole`` or ``indoor_of_continuous_insulation``."""
-    clause: str
-    arguable: bool = False
-    """The code leaves room: where ways of counting differ, the official decides."""
-    otherwise: str = ""
-    """Class of an element that fails; empty = by its framing."""
-
-
-class TableRow(NamedTuple):
-    """One row of a coefficient table: cavity factors, effective layers, F-factors, air spaces.
-
-    Keys and values by column; SI numbers, words as text.
-    """
-
-    table: str
-    keys: dict[str, str | float]
-    value: float
-    text: str
-    source: str
-
-
-class Conventions(NamedTuple):
-    """How this code counts. ``where`` says for each key whether it is stated or our default."""
-
-    films: tuple[FilmRow, ...] = ()
-    film_set: str = "iso6946"
-    methods: tuple[MethodRule, ...] = ()
-    air_spaces: str = "iso6946"
-    """``iso6946`` (formula) or ``table`` (rows of ``tables['air_spaces']``)."""
-    cladding: str = "iso6946"
-    """``iso6946``: outer layers dropped, inner film outside; ``film_stays``: space and what lies
-    outside count 0, outer film stays."""
-    fasteners: str = "ignored"
-    """``ignored`` in continuous insulation, ``iso6946`` or ``chi``."""
-    tapered: str = "integral"
-    """``integral``, ``mean`` or ``minimum``; with ``tapered_mean_within`` the mean may be used."""
-    tapered_mean_within: float | None = None
-    """m of variation up to which the mean thickness may be used."""
-    crossed_insulation: str = "zero"
-    """Insulation crossed by continuous metal: ``zero``, ``counted`` or ``two_dimensional``."""
-    framing_shares: tuple[tuple[str, float, str], ...] = ()
-    """(category pattern, share, clause)"""
-    tables: Mapping[str, tuple[TableRow, ...]] = MappingProxyType({})
-    class_tests: tuple[ClassTest, ...] = ()
-    accepted_evidence: Mapping[str, tuple[str, ...]] = MappingProxyType({})
-    """Category pattern -> kinds of evidence (and ``standard:NAME``) that it accepts."""
-    dimensions_measured: str = ""
-    """``outside`` or ``inside`` where the code says."""
-    where: Mapping[str, str] = MappingProxyType({})
-    """Key -> "Table 5 of the rule set" or "default of envcheck"."""
 
 
 class AreaLimit(NamedTuple):
