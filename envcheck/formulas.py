@@ -92,6 +92,49 @@ def evaluate(expression: str, values: Mapping[str, float]) -> float:
     return formula.evaluate([values[name] for name in formula.names])
 
 
+def spreadsheet(expression: str, cells: Mapping[str, str]) -> str:
+    """Write the formula as a spreadsheet reads it; ``cells`` gives what stands for each operand.
+
+    Every part is set in parentheses: spreadsheets bind a leading minus closer than a power.
+    """
+    names = compiled(expression).names
+    pieces = _OPERAND.split(expression)
+    numbered = "".join(
+        f" {_NAME}{place // 2} " if place % 2 else text for place, text in enumerate(pieces)
+    )
+    texts = [cells[name] for name in names]
+    return _cell_formula(ast.parse(numbered.strip(), mode="eval").body, texts)
+
+
+_SIGNS: dict[type[ast.operator], str] = {
+    ast.Add: "+",
+    ast.Sub: "-",
+    ast.Mult: "*",
+    ast.Div: "/",
+    ast.Pow: "^",
+}
+
+
+def _cell_formula(node: ast.expr, texts: Sequence[str]) -> str:
+    match node:
+        case ast.Constant(value=constant):
+            return repr(constant)
+        case ast.Name(id=name):
+            return texts[int(name.removeprefix(_NAME))]
+        case ast.BinOp(left=left, op=op, right=right):
+            return f"{_part(left, texts)}{_SIGNS[type(op)]}{_part(right, texts)}"
+        case ast.UnaryOp(operand=operand):
+            return f"-{_part(operand, texts)}"
+        case ast.Call(func=ast.Name(id=name), args=args):
+            return f"{name.upper()}({','.join(_cell_formula(arg, texts) for arg in args)})"
+    raise ValueError(f"not allowed in a formula: {ast.unparse(node)!r}")
+
+
+def _part(node: ast.expr, texts: Sequence[str]) -> str:
+    text = _cell_formula(node, texts)
+    return text if isinstance(node, ast.Constant | ast.Name | ast.Call) else f"({text})"
+
+
 def _node(node: ast.expr) -> Evaluate:
     match node:
         case ast.Constant(value=int() | float() as constant) if not isinstance(constant, bool):

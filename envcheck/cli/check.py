@@ -69,6 +69,6 @@ def check(
         workings=form.workings,
         bounds=bounds,
     )
-    text = form.render(view.build(run.project, run.rulesets, run.judged, asked))
-    deliver(text, output, (project,))
+    made = options.rendered(form, view.build(run.project, run.rulesets, run.judged, asked))
+    deliver(made, output, (project,))
     return OVER if run.exit_status == OPEN and fail_on == "open" else run.exit_status

@@ -5,9 +5,13 @@ from __future__ import annotations
 import os
 import sys
 from collections.abc import Callable
-from typing import Any, TypeVar
+from typing import TYPE_CHECKING, Any, TypeVar
 
 import click
+
+if TYPE_CHECKING:
+    from envcheck.report.registry import Format
+    from envcheck.report.view import View
 
 PROJECT = click.argument("project", type=click.Path(allow_dash=True))
 RULES = click.option(
@@ -55,6 +59,19 @@ def one_of(names: tuple[str, ...], default: str) -> Callable[[Function], Functio
         show_default=True,
         help="Form of the report.",
     )
+
+
+def rendered(form: Format, view: View) -> str | bytes:
+    """Lay a view out. Errors: click.ClickException where the library of an extra is missing."""
+    from envcheck.report.registry import MissingExtra
+
+    try:
+        return form.render(view)
+    except MissingExtra as missing:
+        raise click.ClickException(
+            f"the format {form.name} needs {missing.library}, which is not installed. "
+            f"Fix: pip install 'envcheck[{missing.extra}]'"
+        ) from missing
 
 
 def colour(choice: str, output: str | None) -> bool:

@@ -10,14 +10,13 @@ from pathlib import Path
 import click
 
 
-def deliver(text: str, output: str | None, inputs: tuple[str, ...] = ()) -> None:
+def deliver(made: str | bytes, output: str | None, inputs: tuple[str, ...] = ()) -> None:
     """Write a report. ``inputs`` are files that must not be overwritten by it.
 
-    Errors: click.ClickException where the file cannot be written.
+    Errors: click.ClickException where the file cannot be written, or a terminal cannot show it.
     """
     if output is None or output == "-":
-        sys.stdout.write(text)
-        sys.stdout.flush()
+        _show(made)
         return
     target = Path(os.path.realpath(output))
     try:
@@ -27,20 +26,30 @@ def deliver(text: str, output: str | None, inputs: tuple[str, ...] = ()) -> None
             if name != "-" and target.exists() and Path(name).exists() and target.samefile(name):
                 what = f"{output}: is the input. Fix: name another file to write"
                 raise click.ClickException(what)
-        write_whole(text, target)
+        write_whole(made, target)
     except OSError as error:
         reason = error.strerror or str(error)
         raise click.ClickException(f"{output}: cannot be written ({reason})") from error
 
 
-def write_whole(text: str, target: Path) -> None:
+def _show(made: str | bytes) -> None:
+    if isinstance(made, str):
+        sys.stdout.write(made)
+    elif sys.stdout.isatty():
+        raise click.ClickException("a terminal cannot show this format. Fix: add --output FILE")
+    else:
+        sys.stdout.buffer.write(made)
+    sys.stdout.flush()
+
+
+def write_whole(made: str | bytes, target: Path) -> None:
     """Write beside the target and put it in place in one step."""
     import tempfile  # costs more to load than the rest of a small report
 
     handle, name = tempfile.mkstemp(dir=target.parent, prefix=f".{target.name}.")
     try:
-        with open(handle, "w", encoding="utf-8", newline="\n") as file:  # noqa: PTH123  # Path cannot open a file handle
-            file.write(text)
+        with open(handle, "wb") as file:  # noqa: PTH123  # Path cannot open a file handle
+            file.write(made.encode("utf-8") if isinstance(made, str) else made)
         Path(name).chmod(_mode(target))
         Path(name).replace(target)
     except BaseException:

@@ -38,6 +38,8 @@ class AssemblyView(NamedTuple):
     method: str
     method_from: str
     value: str
+    unrounded: float | None
+    """In the unit of the value."""
     unit: str
     missing: tuple[str, ...]
     bracket: str
@@ -47,6 +49,8 @@ class AssemblyView(NamedTuple):
     conductivity_unit: str
     resistance_unit: str
     assumptions: tuple[str, ...]
+    rule_sets: tuple[str, ...] = ()
+    """Those by whose conventions it was solved so."""
     workings: Workings | None = None
     """Where they are asked for."""
 
@@ -73,9 +77,10 @@ def _view(
     solved = lines[0].solved
     assert solved is not None
     view = assembly_view(assembly, solved, dict.fromkeys(x.element for x in lines), system)
-    if not worked:
-        return view
-    return view._replace(workings=workings.build(project.site, solved, lines, system))
+    made = workings.build(project.site, solved, lines, system) if worked else None
+    return view._replace(
+        rule_sets=tuple(dict.fromkeys(clean(x.ruleset) for x in lines)), workings=made
+    )
 
 
 def assembly_view(
@@ -96,6 +101,11 @@ def assembly_view(
         method=method,
         method_from=clean(setting.method_from),
         value="" if solved.value is None else shown(solved.value, metric, system),
+        unrounded=(
+            None
+            if solved.value is None
+            else numbers.in_system(solved.value, numbers.quantity(metric), system)
+        ),
         unit=numbers.unit(metric, system),
         missing=tuple(map(clean, solved.missing)),
         bracket=bracket(solved, system),

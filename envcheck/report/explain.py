@@ -21,6 +21,7 @@ from envcheck.report import (
     said,
     tree,
     wording,
+    workings,
 )
 from envcheck.report import worksheet as sheet
 from envcheck.report.inert import clean
@@ -183,7 +184,8 @@ def _solved(
     made = [Section(f"Assembly {view.assembly}, {view.metric}", assembly_page.blocks(view))]
     made += _reasons(assembly, solved, view.method, system, found)
     if solved.steps:
-        made.append(Section("Worksheet", (Paragraph(_HOW), _worksheet(solved, system))))
+        steps = workings.steps(sheet.write(solved.steps, system))
+        made.append(Section("Worksheet", (Paragraph(workings.HOW), steps)))
     made += _temperatures(project, solved, system)
     return made
 
@@ -203,23 +205,6 @@ def _reasons(
         parts = reasons.blocks(assembly, solved.drawn, ends / 2.0, system)
         made.append(Section(heading, parts))
     return [section for section in made if section.blocks]
-
-
-_HOW = (
-    "Each result follows from the numbers printed in its line; a number that an earlier step gave "
-    "stands as that step printed it."
-)
-
-
-def _worksheet(solved: Solved, system: str) -> Items:
-    entries = []
-    for line in sheet.write(solved.steps, system):
-        source = f" [{line.source}]" if line.source else ""
-        formula = f"{line.symbol} = {line.formula}" if line.formula else ""
-        given = "; ".join(line.operands)
-        text = "; with ".join(filter(None, (formula, given)))
-        entries.append(Entry(line.title + source, (text,) if text else (), (line.text,)))
-    return Items(tuple(entries), numbered=True)
 
 
 def _temperatures(project: Project, solved: Solved, system: str) -> list[Section]:

@@ -34,6 +34,8 @@ class RuleSetView(NamedTuple):
     """Which unit stands behind each letter of the table."""
     printed_units: str
     """Units in which the table is printed and compared, where the report's are others."""
+    rounding: str
+    """How a value is rounded before it is compared, as the rule set names it."""
 
 
 def title(project: Project) -> str:
@@ -78,6 +80,7 @@ def rule_set(ruleset: RuleSet, lines: Iterable[Line], project: Project, system: 
         conventions=tuple(_conventions(ruleset, system)),
         units_note=_units_note(own, system),
         printed_units=", ".join(printed) if apart else "",
+        rounding=ruleset.compare,
     )
 
 

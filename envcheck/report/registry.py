@@ -1,6 +1,7 @@
 """The one registry of formats, filled by being in the folder ``formats``.
 
-A format is a module with ``NAME``, ``TITLE``, ``EXTENSION`` and ``render(view) -> str``. It may
+A format is a module with ``NAME``, ``TITLE``, ``EXTENSION`` and ``render(view)``, which gives text
+or the bytes of a file. Where that needs a library of an extra, it raises ``MissingExtra``. It may
 have ``DETAILS = True`` (it always lists the assemblies), ``WORKINGS = True`` (with ladder and
 worksheet) and ``explain(page, view) -> str`` for
 the page of ``envcheck explain``.
@@ -20,6 +21,15 @@ if TYPE_CHECKING:
     from envcheck.report.explain import Explained
 
 
+class MissingExtra(Exception):
+    """A format whose library is not installed: the extra that brings it, the library."""
+
+    def __init__(self, extra: str, library: str) -> None:
+        super().__init__(extra, library)
+        self.extra = extra
+        self.library = library
+
+
 class Format(NamedTuple):
     """One way to lay a view out."""
 
@@ -28,7 +38,7 @@ class Format(NamedTuple):
     extension: str
     details: bool
     workings: bool
-    render: Callable[[View], str]
+    render: Callable[[View], str | bytes]
     explain: Callable[[Explained], str] | None
 
 
@@ -46,7 +56,10 @@ def explaining() -> tuple[str, ...]:
 
 
 def format_named(name: str) -> Format:
-    """Load one format. Errors: KeyError for a name that no file bears."""
+    """Load one format.
+
+    Errors: KeyError for a name that no file bears.
+    """
     if name not in names():
         raise KeyError(name)
     module = import_module(f"envcheck.report.formats.{name}")

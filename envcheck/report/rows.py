@@ -88,6 +88,8 @@ class Row(NamedTuple):
     hand_check: str
     trail: tuple[Pair, ...]
     """Why this limit; empty unless details are asked for."""
+    comparison: Comparison | None
+    """The value's own comparison with all digits, in the printed unit."""
 
 
 def build(
@@ -191,6 +193,7 @@ def _row(line: Line, project: Project, system: str, written: _Written) -> Row:
         paths=tuple(path_row(path, line.metric) for path in line.paths),
         hand_check=written.sum(line, system, value),
         trail=tuple(starmap(_choice, line.trail)) if written.trails else (),
+        comparison=own,
     )
 
 

@@ -8,7 +8,7 @@ from typing import NamedTuple
 from envcheck import units
 from envcheck.model.judged import Line
 from envcheck.model.project import Site
-from envcheck.model.solved import Solved
+from envcheck.model.solved import Solved, Step
 from envcheck.report import ladder, tree
 from envcheck.report import worksheet as sheet
 from envcheck.report.ladder import Ladder
@@ -16,7 +16,7 @@ from envcheck.report.parts import Block, Entry, Grid, Items, Paragraph, Picture
 
 HOW = (
     "Each result follows from the numbers printed in its line; a number that an earlier step gave "
-    "is printed as that step gave it."
+    "stands as that step printed it."
 )
 
 
@@ -26,6 +26,8 @@ class Workings(NamedTuple):
     ladder: Ladder | None
     paths: Grid | None
     worksheet: tuple[sheet.Line, ...]
+    steps: tuple[Step, ...]
+    """The same with all digits, SI."""
 
 
 def build(site: Site, solved: Solved, lines: Iterable[Line], system: str) -> Workings:
@@ -34,6 +36,7 @@ def build(site: Site, solved: Solved, lines: Iterable[Line], system: str) -> Wor
         ladder=ladder.build(solved, air(site), _limits(solved, lines), system),
         paths=tree.paths(solved.tree, system),
         worksheet=sheet.write(solved.steps, system),
+        steps=solved.steps,
     )
 
 

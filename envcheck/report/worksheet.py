@@ -8,7 +8,8 @@ lines that convert stand before and behind it.
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+import math
+from collections.abc import Iterable, Mapping
 from typing import NamedTuple
 
 from envcheck import formulas, units
@@ -63,7 +64,7 @@ def write(steps: Iterable[Step], system: str, digits: int = OPERAND_DIGITS) -> t
     for step in steps:
         if not step.expression:
             _value(sheet, step)
-        elif system == "SI" or not (step.si_only or _fails_in_ip(step)):
+        elif system == "SI" or not fails_in_ip(step):
             _formula(sheet, step, system)
         else:
             _in_si(sheet, step)
@@ -82,11 +83,11 @@ def _formula(sheet: _Sheet, step: Step, system: str) -> None:
     stated: list[str] = []
     for operand in step.operands:
         name, unit = operand.name, units.label(operand.quantity, system)
-        earlier = _earlier(sheet, operand) if sheet.given else ""
-        if earlier:
-            values[name] = _in_unit(sheet, earlier, unit, operand.quantity)
-            if earlier != name:
-                stated.append(f"{name} = {earlier}")
+        found = earlier(sheet.given, operand) if sheet.given else ""
+        if found:
+            values[name] = _in_unit(sheet, found, unit, operand.quantity)
+            if found != name:
+                stated.append(f"{name} = {found}")
         else:
             values[name] = printed(operand.value, operand.quantity, system, sheet.digits)
             stated.append(f"{name} = {values[name]} {unit}".rstrip())
@@ -105,39 +106,46 @@ def _in_si(sheet: _Sheet, step: Step) -> None:
     _in_unit(sheet, step.symbol, units.label(step.quantity, sheet.system), step.quantity)
 
 
-_HOLDS_IN_IP: dict[tuple[str, str, tuple[str, ...]], bool] = {}
+_HELD_IN_IP: dict[tuple[str, str, tuple[str, ...]], float] = {}
 
 
-def _fails_in_ip(step: Step) -> bool:
-    """Whether a formula that is true in SI misses its value with operands in IP units.
+def fails_in_ip(step: Step, most: float = COHERENT) -> bool:
+    """Whether a formula that is true in SI misses its value with operands in IP units by more than
+    the share ``most``.
 
     That is a matter of the formula and its quantities, so each pair is tried once.
     """
     key = (step.expression, step.quantity, tuple(o.quantity for o in step.operands))
-    if key not in _HOLDS_IN_IP:
-        _HOLDS_IN_IP[key] = _holds_in_ip(step)
-    return not _HOLDS_IN_IP[key]
+    if key not in _HELD_IN_IP:
+        _HELD_IN_IP[key] = _missed_in_ip(step)
+    return step.si_only or _HELD_IN_IP[key] > most
 
 
-def _holds_in_ip(step: Step) -> bool:
+def _missed_in_ip(step: Step) -> float:
+    """Share by which the formula misses with operands in IP units; infinite without a result."""
     converted = {o.name: numbers.in_system(o.value, o.quantity, "IP") for o in step.operands}
     try:
         truth = formulas.evaluate(step.expression, {o.name: o.value for o in step.operands})
         result = formulas.evaluate(step.expression, converted)
     except (ArithmeticError, ValueError):
-        return False
+        return math.inf
     expected = numbers.in_system(truth, step.quantity, "IP")
-    return abs(result - expected) <= COHERENT * abs(expected)
+    if result == expected:
+        return 0.0
+    return abs(result - expected) / abs(expected) if expected else math.inf
 
 
-def _earlier(sheet: _Sheet, operand: Operand) -> str:
-    """Symbol of the step that gave the operand: of its name, else of its very value; or empty."""
-    given = sheet.given.get(operand.name)
-    if given is not None and abs(given - operand.value) <= 1e-9 * abs(given):
+def earlier(given: Mapping[str, float], operand: Operand) -> str:
+    """Symbol of the step that gave the operand: of its name, else of its very value; or empty.
+
+    given: results of the earlier steps by symbol, SI.
+    """
+    of_name = given.get(operand.name)
+    if of_name is not None and abs(of_name - operand.value) <= 1e-9 * abs(of_name):
         return operand.name
-    if given is None:
+    if of_name is None:
         return ""
-    return next((name for name, value in sheet.given.items() if value == operand.value), "")
+    return next((name for name, value in given.items() if value == operand.value), "")
 
 
 def printed(value: float, quantity: str, system: str, digits: int) -> str:

@@ -2,6 +2,9 @@
 
 from __future__ import annotations
 
+from io import BytesIO
+
+import openpyxl
 import pytest
 
 from envcheck.report import registry, view
@@ -12,6 +15,15 @@ from tests.report.fixture import JUDGED, PROJECT, RULESETS
 HOSTILE = "=cmd|' /C calc'!A0 \x1b[31mred\x07 \u202egnp.exe <script>alert(1)</script> | **x** `y`"
 
 
+def texts_of(made: str | bytes) -> str:
+    """The text itself, or the texts of the cells of a workbook, a line each."""
+    if isinstance(made, str):
+        return made
+    book = openpyxl.load_workbook(BytesIO(made))
+    cells = (cell for sheet in book for row in sheet.iter_rows() for cell in row)
+    return "\n".join(str(cell.value) for cell in cells if cell.data_type == "s")
+
+
 def hostile(name: str) -> str:
     assemblies = dict(PROJECT.assemblies)
     assemblies["W1"] = changed(assemblies["W1"], title=HOSTILE, sheet="a\nb")
@@ -19,7 +31,8 @@ def hostile(name: str) -> str:
     lines = tuple(changed(line, reasons=(HOSTILE, *line.reasons)) for line in JUDGED.lines)
     judged = changed(JUDGED, lines=lines, remarks=(HOSTILE,))
     asked = view.ViewOptions(details=True)
-    return registry.format_named(name).render(view.build(project, RULESETS, judged, asked))
+    made = registry.format_named(name).render(view.build(project, RULESETS, judged, asked))
+    return texts_of(made)
 
 
 @pytest.mark.parametrize("name", registry.names())

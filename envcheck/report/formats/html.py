@@ -7,14 +7,14 @@ from functools import cache
 from pathlib import Path
 from typing import TYPE_CHECKING
 
-from jinja2 import Environment, FileSystemLoader, StrictUndefined
-from markupsafe import Markup
-
 from envcheck.report import desk, drawing
 from envcheck.report.parts import Block, Facts, Grid, Items, Page, Paragraph, Picture
 from envcheck.report.view import View
 
 if TYPE_CHECKING:
+    from jinja2 import Environment
+    from markupsafe import Markup
+
     from envcheck.report.explain import Explained
 
 NAME = "html"
@@ -40,6 +40,8 @@ def explain(explained: Explained) -> str:
 
 def write(page: Page, date: str = "", digest: str = "") -> str:
     """Write a page; ``date`` and ``digest`` run along on every printed sheet."""
+    from markupsafe import Markup
+
     decided = (n for n, s in enumerate(page.sections, 1) if s.heading)
     return (
         _environment()
@@ -60,6 +62,8 @@ def write(page: Page, date: str = "", digest: str = "") -> str:
 
 def css_text(text: str) -> Markup:
     """Write a text as a string of CSS that nothing in it can end."""
+    from markupsafe import Markup
+
     return Markup('"' + re.sub(r"[^\w .,:()-]", _escaped, text, flags=re.ASCII) + '"')
 
 
@@ -69,6 +73,8 @@ def _escaped(found: re.Match[str]) -> str:
 
 @cache
 def _environment() -> Environment:
+    from jinja2 import Environment, FileSystemLoader, StrictUndefined
+
     return Environment(
         loader=FileSystemLoader(Path(__file__).parent.parent / "templates"),
         autoescape=True,
@@ -85,6 +91,8 @@ def _style() -> str:
 
 def _laid_out(block: Block, part: int, place: int, heading: str) -> Markup:
     """One block as HTML; ``part`` and ``place`` make the ids of drawings unique."""
+    from markupsafe import Markup
+
     module = _environment().get_template("blocks.html").module
     match block:
         case Paragraph():
