@@ -14,6 +14,7 @@ from envcheck import formulas, units
 from envcheck.model.solved import Step
 from envcheck.report import numbers, wording, worksheet
 from envcheck.report.details import AssemblyView
+from envcheck.report.groups import GroupView, PartView
 from envcheck.report.parts import Grid, Pair
 from envcheck.report.rows import Row
 from envcheck.report.view import View
@@ -61,6 +62,7 @@ def build(view: View) -> tuple[Sheet, ...]:
         _check(view),
         _lines(view, results),
         assemblies,
+        *_sums(view),
         *(_listed(each.heading, each.grid) for each in view.schedules),
         _layers(view),
         _notes(view),
@@ -245,6 +247,64 @@ def _verdict(row: Row, holds: str, holds_exactly: str) -> str | Formula:
     return Formula(text, value)
 
 
+# --------------------------------------------------------------------------------------- sums
+
+
+def _sums(view: View) -> tuple[Sheet, ...]:
+    """Sums as drawn against the table; values follow those of the sheet Lines."""
+    groups = [group for group in view.building.groups if group.parts]
+    if not groups:
+        return ()
+    lines: dict[Place, tuple[int, Row]] = {}
+    for place, row in enumerate(view.rows, 2):
+        lines.setdefault((row.rule_set, row.tag, row.symbol), (place, row))
+    heads = ("elements", "built as", "letter", "amount", "unit", "value", "limit", "as drawn",
+             "by the table", "difference", "verdict of its own")  # fmt: skip
+    rows: list[Cells] = []
+    for group in groups:
+        rows += [(Head(group.title),), (group.state_text,), tuple(map(Head, heads))]
+        first, drawn, table = len(rows) + 1, 0.0, 0.0
+        for part in group.parts:
+            cells, ours, theirs = _part(group, part, len(rows) + 1, lines, view.units)
+            rows.append(cells)
+            drawn, table = drawn + ours, table + theirs
+        last = len(rows)
+        totals = (
+            Formula(f"SUM({column}{first}:{column}{last})", value)
+            for column, value in (("H", drawn), ("I", table), ("J", drawn - table))
+        )
+        rows += [("sum", "", "", "", "", "", "", *totals, group.drawn.unit)]
+        rows += [(text,) for text in (*group.waits, *group.charges)] + [()]
+    return (Sheet("Sums", tuple(rows), (34, 34, 8, 12, 8, 14, 12, 14, 14, 14, 24)),)
+
+
+def _part(
+    group: GroupView,
+    part: PartView,
+    number: int,
+    lines: dict[Place, tuple[int, Row]],
+    system: str,
+) -> tuple[Cells, float, float]:
+    """The row of a part, and its two products."""
+    value: Cell = None
+    exact = part.value.number or 0.0
+    found = lines.get((group.rule_set, part.elements[0], part.symbol))
+    if found is not None and found[1].comparison is not None:
+        own = found[1].comparison
+        exact = _in_report(own.value, own.unit, found[1].metric, system)
+        value = Formula(f"'{LINES}'!${VALUE}${found[0]}", exact)
+    else:
+        value = Input(exact)
+    amount, limit = part.amount.number or 0.0, part.limit.number or 0.0
+    cells: Cells = (
+        ", ".join(part.elements), part.built_as, part.symbol, amount, part.amount.unit, value,
+        Input(limit), Formula(f"D{number}*F{number}", amount * exact),
+        Formula(f"D{number}*G{number}", amount * limit),
+        Formula(f"H{number}-I{number}", amount * (exact - limit)), part.verdict_text,
+    )  # fmt: skip
+    return cells, amount * exact, amount * limit
+
+
 # ------------------------------------------------------------------------------ other sheets
 
 
@@ -315,7 +375,7 @@ def _notes(view: View) -> Sheet:
     ] or [(wording.NOTHING,)]
     rows += [(), (Head("The building"),)]
     rows += [(x.name, x.cap, x.sum, x.state) for x in view.building.ratios]
-    rows += [(x.group, x.clause, x.sum, x.cap) for x in view.building.means]
+    rows += [(x.title, x.state_text, x.sum, x.cap) for x in view.building.groups]
     rows += [(x.surface, x.sheet, x.sum, x.state) for x in view.building.closings]
     rows += [(), (Head("Cautions"),)]
     rows += [(x.heading, "", x.text, "; ".join(x.reasons)) for x in view.cautions]
