@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import gc
 from collections.abc import Callable, Iterator, Sequence
-from contextlib import contextmanager
+from contextlib import contextmanager, suppress
 from dataclasses import dataclass
 from functools import cache, partial
 from pathlib import Path
@@ -40,6 +40,9 @@ from envcheck.solve.solver import Solver
 
 if TYPE_CHECKING:
     import pandas
+
+    from envcheck.model.details import Extras, SolvedDetail
+    from envcheck.model.solved import Setting
 
 
 @dataclass(frozen=True, slots=True)
@@ -167,6 +170,7 @@ def _run(path: str, folders: Sequence[str], bounds: bool) -> Run:
         closed,
         tuple(all_ratios),
         tuple(groups),
+        solved_details(project, asked_by_bridges(project)) if project.details else {},
     )
     findings = (*found, *crosschecks.findings(facts))
     judged = Judged(
@@ -202,6 +206,56 @@ def why(solved: Solved) -> Reasons | None:
     from envcheck.solve.why import reasons
 
     return reasons(solved)
+
+
+def asked_by_bridges(project: Project) -> tuple[str, ...]:
+    """Details that some bridge of an element takes its psi from."""
+    found: dict[str, None] = {}
+    for element in project.elements.values():
+        for bridge in (*element.bridges, *project.assemblies[element.assembly].bridges):
+            if bridge.detail is not None:
+                found[bridge.detail.id] = None
+    return tuple(found)
+
+
+def solved_details(project: Project, names: Sequence[str]) -> dict[str, SolvedDetail]:
+    """Solve drawn details; those that cannot be solved are left out (their bridges say why)."""
+    from envcheck.solve.detail import NotSolved, solve_detail
+
+    found = {}
+    for name in names:
+        with suppress(NotSolved):
+            found[name] = solve_detail(project.details[name])
+    return found
+
+
+def extras(run: Run, subject: str) -> Extras:
+    """Solve what a page about one element, assembly or detail shows beside its lines."""
+    from envcheck.model.details import Coldest, Extras
+    from envcheck.solve.detail import NotSolved, solve_detail
+    from envcheck.solve.surface import NoSurface, coldest_of
+
+    details: dict[str, SolvedDetail | str] = {}
+    if subject in run.project.details:
+        try:
+            details[subject] = solve_detail(run.project.details[subject], surfaces=True)
+        except NotSolved as why:
+            details[subject] = str(why)
+    surfaces: dict[tuple[str, Setting], Coldest | str] = {}
+    for line in run.judged.lines:
+        solved = line.solved
+        if solved is None or subject not in (line.element, solved.assembly):
+            continue
+        assembly = run.project.assemblies[solved.assembly]
+        if assembly.kind != "layers" or solved.setting.metric != "U_assembly":
+            continue
+        conventions = run.rulesets[line.ruleset].conventions
+        try:
+            found: Coldest | str = coldest_of(assembly, solved.setting, conventions)
+        except NoSurface as why:
+            found = str(why)
+        surfaces[solved.assembly, solved.setting] = found
+    return Extras(details, surfaces)
 
 
 def _read_rulesets(project: Project, folders: Sequence[Path]) -> dict[str, RuleSet]:

@@ -1,4 +1,4 @@
-"""``envcheck explain``: one element or assembly, from layers to verdict."""
+"""``envcheck explain``: one element, assembly or detail, from layers to verdict."""
 
 from __future__ import annotations
 
@@ -25,7 +25,7 @@ def explain(
     output: str | None,
     units: str | None,
 ) -> int:
-    """Show how one element or assembly of PROJECT comes to its value and its verdict.
+    """Show how one element, assembly or detail of PROJECT comes to its value and its verdict.
 
     Every step can be repeated with a pocket calculator, to the last printed digit. The exit status
     is 0 whatever the verdict.
@@ -41,13 +41,19 @@ def explain(
     run = pipeline.run(project, rules, bounds=True)
     known = explained.subjects(run.project)
     if subject not in known:
-        hint = did_you_mean(subject, known) or "name an element or an assembly of the project"
+        hint = (
+            did_you_mean(subject, known)
+            or "name an element, an assembly or a detail of the project"
+        )
         file, expected = run.project.file, one_of(known)
         raise InputError(
             [problem("unknown-element", file, None, name=subject, expected=expected, hint=hint)]
         )
     asked = ViewOptions(units=units or "", width=options.width(output))
-    made = explained.build(run.project, run.rulesets, run.judged, subject, asked, pipeline.why)
+    extras = pipeline.extras(run, subject)
+    made = explained.build(
+        run.project, run.rulesets, run.judged, subject, asked, pipeline.why, extras
+    )
     write = registry.format_named(format_name).explain
     assert write is not None
     deliver(write(made), output, (project,))

@@ -24,6 +24,10 @@ from envcheck.model.solved import Solved
 R_INSULATION = "R_insulation"
 OUTCOMES = {"pass": "within its limit", "fail": "over its limit"}
 """What a claimed line is without its claim, in words; anything else is not decided."""
+BETWEEN_BRIDGES = (
+    "the limit lies between the bounds of its bridges from drawn details: over it by the high "
+    "bound, within it by the low one"
+)
 PATH_STATES = {"not_available": " not available", "not_decided": " not decided"}
 
 
@@ -107,6 +111,8 @@ def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Lin
         "",
     )
     verdict, reasons = _outcome(comparison, labels, other_ways(limit))
+    if verdict == "fail" and _within_bounds(case, value, limit, solved):
+        verdict, reasons = "too_close", (BETWEEN_BRIDGES, *reasons)
     line = line._replace(
         verdict=verdict,
         comparison=comparison,
@@ -114,6 +120,13 @@ def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Lin
         reasons=reasons,
     )
     return _with_bracket(case, line, limit, solved)
+
+
+def _within_bounds(case: Case, value: float, limit: Limit, solved: Solved | None) -> bool:
+    """Whether the low bound of the bridges from drawn details would be within the limit."""
+    if solved is None or not solved.unsure:
+        return False
+    return compare(value - solved.unsure, own_term(limit), limit, case.ruleset).within
 
 
 def _outcome(

@@ -6,7 +6,10 @@ where a thing starts, for messages of later stages.
 
 from __future__ import annotations
 
-from typing import NamedTuple
+from typing import TYPE_CHECKING, NamedTuple
+
+if TYPE_CHECKING:
+    from envcheck.model.details import Detail
 
 
 class Material(NamedTuple):
@@ -223,13 +226,15 @@ class Bridge(NamedTuple):
     """``line`` (psi) or ``point`` (chi)."""
     title: str
     value: float
-    """psi in W/(m K) or chi in W/K"""
+    """psi in W/(m K) or chi in W/K; 0 where a detail gives it"""
     amount: float
     """Length in m or count of one element; per m2 where ``per_area``."""
     per_area: bool
     source: str
     evidence: str
     line: int
+    detail: Detail | None = None
+    """The drawing that gives psi."""
 
 
 Layer = (

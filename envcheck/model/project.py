@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass, field
 from datetime import date
-from typing import NamedTuple
+from typing import TYPE_CHECKING, NamedTuple
 
 from envcheck.model.layers import (
     AirSpaceLayer,
@@ -27,6 +27,9 @@ from envcheck.model.layers import (
     ResistanceLayer,
     TaperedLayer,
 )
+
+if TYPE_CHECKING:
+    from envcheck.model.details import Detail
 
 __all__ = [
     "AirSpaceLayer",
@@ -311,4 +314,6 @@ class Project:
     accepted: tuple[tuple[str, str], ...] = ()
     """Findings that the project answers: (finding id and tag, the answer)."""
     sha256: str = ""
+    details: dict[str, Detail] = field(default_factory=dict)
+    """Drawn junctions, by id."""
     lines: dict[str, int] = field(default_factory=dict, compare=False, repr=False)

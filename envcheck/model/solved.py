@@ -232,6 +232,8 @@ class Solved(NamedTuple):
     """What fasteners, points and lines add, as far as it is known, W/(m2 K)."""
     drawn: Reasons | None = None
     """Of the drawn section, where it was solved in two dimensions."""
+    unsure: float = 0.0
+    """How much less that may be: bridges from drawn details stand at their high bound, W/(m2 K)."""
 
 
 class Properties(NamedTuple):

@@ -128,15 +128,35 @@ def _bridge(context: Context, entry: Entry) -> Bridge:
         value = context.positive(entry, "chi", "point_transmittance")
         amount = context.positive(entry, "density", "per_area")
     else:
-        value = context.number(entry, "psi", "linear_transmittance")
+        value = linear(context, entry)
         amount = context.positive(entry, "length_per_area", "per_length")
     return bridge(context, entry, value, amount, per_area=True)
+
+
+def linear(context: Context, entry: Entry) -> float:
+    """Read psi of a linear bridge, W/(m K); 0 where a drawn detail gives it."""
+    key = context.exactly_one(entry, ("psi", "detail"), "the linear bridge")
+    if key == "psi":
+        return context.number(entry, "psi", "linear_transmittance")
+    if key:
+        if entry["detail"] not in context.detail_ids:
+            line, name = entry.lines["detail"], entry["detail"]
+            context.unknown("unknown-detail", line, name, context.detail_ids)
+        hint = "delete it: the drawing is the source"
+        context.out_of_place(entry, ("source", "evidence"), "a bridge with a detail", hint)
+    return 0.0
 
 
 def bridge(
     context: Context, entry: Entry, value: float, amount: float, *, per_area: bool
 ) -> Bridge:
     """Put together a bridge whose value, W/(m K) or W/K, and amount are read."""
+    detail = context.details.get(entry.get("detail", ""))
+    if detail is not None:
+        title = entry.get("title", detail.title)
+        source = f"detail {detail.id}" + (f", {detail.sheet}" if detail.sheet else "")
+        line = entry.line
+        return Bridge("line", title, 0.0, amount, per_area, source, "calculation", line, detail)
     return Bridge(
         kind=entry["kind"],
         title=entry.get("title", f"{entry['kind']} bridge"),

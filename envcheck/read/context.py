@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Iterable
 from datetime import date
 from pathlib import Path
-from typing import Any
+from typing import TYPE_CHECKING, Any
 
 from envcheck.errors import Problem, did_you_mean, one_of, problem
 from envcheck.model.names import Names
@@ -18,6 +18,9 @@ from envcheck.read.dates import read_date
 from envcheck.read.materials import library_material, material_ids
 from envcheck.read.yaml_reader import Entry
 from envcheck.units import UNITS, UnitError, parse
+
+if TYPE_CHECKING:
+    from envcheck.model.details import Detail
 
 NAN = float("nan")
 MATCHES = 1e-6
@@ -35,6 +38,8 @@ class Context:
         self.own: dict[str, Material] = {}
         self.own_ids: frozenset[str] = frozenset()
         self.used: dict[str, Material] = {}
+        self.details: dict[str, Detail] = {}
+        self.detail_ids: frozenset[str] = frozenset()
 
     def add(self, kind: str, line: int | None, **fill: Any) -> None:
         """Note a problem."""

@@ -7,7 +7,7 @@ from collections.abc import Iterable, Mapping
 from typing import Any
 
 from envcheck.model.project import Bridge, Element, ExceptionClaim, Fact, Opening, Surface
-from envcheck.read.assemblies import bridge
+from envcheck.read.assemblies import bridge, linear
 from envcheck.read.context import Context
 from envcheck.read.materials import categories
 from envcheck.read.yaml_reader import Entry
@@ -206,7 +206,7 @@ def _bridge(context: Context, entry: Entry) -> Bridge:
     if entry["kind"] == "point":
         value = context.positive(entry, "chi", "point_transmittance")
         return bridge(context, entry, value, float(entry["count"]), per_area=False)
-    value = context.number(entry, "psi", "linear_transmittance")
+    value = linear(context, entry)
     length = context.positive(entry, "length", "length")
     return bridge(context, entry, value, length, per_area=False)
 

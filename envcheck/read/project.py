@@ -9,7 +9,7 @@ from typing import Any, TypeVar
 
 from envcheck.errors import InputError
 from envcheck.model.names import Names
-from envcheck.model.project import Assembly, Fact, Project, RuleSetChoice
+from envcheck.model.project import Assembly, Element, Fact, Project, RuleSetChoice
 from envcheck.read.assemblies import read_assembly, read_material
 from envcheck.read.context import Context
 from envcheck.read.elements import (
@@ -26,7 +26,7 @@ from envcheck.read.site import read_answers, read_options, read_site
 from envcheck.read.yaml_reader import Entry, read_yaml
 
 _Thing = TypeVar("_Thing")
-_NAMED = {"materials", "assemblies", "surfaces", "elements"}
+_NAMED = {"materials", "assemblies", "details", "surfaces", "elements"}
 
 
 def read_project(path: str, names: Names) -> Project:
@@ -138,10 +138,14 @@ def _build(context: Context, sections: _Sections, digest: str) -> Project:
     assemblies = sections.names("assemblies")
     context.own_ids = frozenset(sections.names("materials"))
     context.own = sections.each("materials", lambda n, e: read_material(context, n, e))
+    if "details" in sections.data:
+        _read_details(context, sections, assemblies)
     built = sections.each("assemblies", lambda n, e: read_assembly(context, n, e))
     elements = sections.each(
         "elements", lambda n, e: read_element(context, n, e, assemblies, surfaces)
     )
+    if context.details:
+        _check_measured(context, elements, built)
     facts = read_facts(sections.whole("facts"))
     head = sections.whole("project")
     return Project(
@@ -159,6 +163,7 @@ def _build(context: Context, sections: _Sections, digest: str) -> Project:
         rule_sets=_rule_sets(sections),
         materials={**context.own, **context.used},
         assemblies={name: _heated_as_stated(one, facts) for name, one in built.items()},
+        details=context.details,
         surfaces=sections.each("surfaces", lambda n, e: read_surface(context, n, e, entries)),
         elements=with_openings(context, elements, entries),
         exceptions=tuple(
@@ -169,6 +174,31 @@ def _build(context: Context, sections: _Sections, digest: str) -> Project:
         sha256=digest,
         lines=dict(sections.data.lines),
     )
+
+
+def _read_details(context: Context, sections: _Sections, assemblies: dict[str, Any]) -> None:
+    """Read the details before what refers to them."""
+    from envcheck.read.details import read_detail
+
+    context.detail_ids = frozenset(sections.names("details"))
+    context.details = sections.each("details", lambda n, e: read_detail(context, n, e, assemblies))
+
+
+def _check_measured(
+    context: Context, elements: dict[str, Element], assemblies: dict[str, Assembly]
+) -> None:
+    """A psi belongs to the dimensions that it was made for."""
+    for element in elements.values():
+        assembly = assemblies.get(element.assembly)
+        for bridge in (*element.bridges, *(assembly.bridges if assembly is not None else ())):
+            detail = bridge.detail
+            if detail is not None and detail.measured != element.measured:
+                context.add(
+                    "detail-measured",
+                    bridge.line,
+                    found=f"element {element.tag!r} measured {element.measured}",
+                    expected=f"{detail.measured}, like the detail {detail.id!r}",
+                )
 
 
 def _heated_as_stated(assembly: Assembly, facts: tuple[Fact, ...]) -> Assembly:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Mapping
-from typing import NamedTuple
+from typing import TYPE_CHECKING, NamedTuple
 
 from envcheck.model.judged import Judged, Line
 from envcheck.model.patterns import in_words
@@ -15,6 +15,7 @@ from envcheck.report import (
     comparison,
     details,
     header,
+    junction,
     numbers,
     reasons,
     rows,
@@ -28,6 +29,9 @@ from envcheck.report.inert import clean
 from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, Paragraph, Section
 from envcheck.report.rows import path_row
 from envcheck.report.view import ViewOptions, system_for
+
+if TYPE_CHECKING:
+    from envcheck.model.details import Extras
 
 
 class AssemblyExplained(NamedTuple):
@@ -66,8 +70,8 @@ def _unknown(solved: Solved) -> Reasons | None:
 
 
 def subjects(project: Project) -> tuple[str, ...]:
-    """Every tag and assembly that can be explained."""
-    return (*project.elements, *project.assemblies)
+    """Every tag, assembly and detail that can be explained."""
+    return (*project.elements, *project.assemblies, *project.details)
 
 
 def build(
@@ -77,25 +81,33 @@ def build(
     subject: str,
     options: ViewOptions | None = None,
     why: Why = _unknown,
+    extras: Extras | None = None,
 ) -> Explained:
-    """Explain the element or else the assembly of that name.
+    """Explain the element or else the assembly or the detail of that name.
 
-    why: gives the reasons behind a solved value. Errors: KeyError for a name that is neither.
+    why: gives the reasons behind a solved value. extras: surface temperatures and details solved
+    for the page. Errors: KeyError for a name that is none of them.
     """
     options = options or ViewOptions()
     system = system_for(project, rulesets, options)
     if subject in project.elements:
         lines = [line for line in judged.lines if line.element == subject]
         sections = _element(project, project.elements[subject], lines, system)
-    else:
+    elif subject in project.assemblies or extras is None:
         assembly = project.assemblies[subject]
         lines = [line for line in judged.lines if line.solved and line.solved.assembly == subject]
         sections = [_drawn_assembly(assembly, lines)]
+    else:
+        lines, detail = [], project.details[subject]
+        sections = junction.sections(detail, extras.details[subject], project.site, system)
     behind = []
     for solved in _distinct(lines):
         found = why(solved)
         sections += _solved(project, solved, lines, system, found)
         behind.append(_numbers(solved, system, found))
+        coldest = extras.surfaces.get((solved.assembly, solved.setting)) if extras else None
+        if coldest is not None:
+            sections.append(junction.surface(coldest, project.site, system))
     for line in lines:
         sections += _held(line, rulesets, system)
     sections.append(Section("", (Paragraph(wording.DEFERRAL),)))

@@ -29,6 +29,7 @@ from envcheck.solve.registry import (
 from envcheck.solve.wiring import bounds
 
 NOT_DRAWN = "no bracket: the value comes from a table, a rating or a formula of the whole"
+UNSURE = "the psi of drawn details from its low to its high bound"
 TAPERED = "no bracket: a tapered layer is not drawn as rectangles"
 
 
@@ -64,7 +65,10 @@ def _solve_layers(
     corrections = (*corrections, correct_for_bridges(bridges, area))
     added = sum(correction.value for correction in corrections)
     value = None if decision.value is None else decision.value + added
+    unsure = sum(correction.unsure for correction in corrections)
     low, high, note, beside = _bracket(wall, added)
+    if low is not None and unsure:
+        low, note = low - unsure, f"{note}; {UNSURE}"
     steps = _closed(decision, corrections)
     missing = (*decision.missing, *(m for c in corrections for m in c.missing))
     assumptions = (a for c in corrections for a in c.assumptions)
@@ -87,6 +91,7 @@ def _solve_layers(
         cautions=(*cautions(assembly), *decision.cautions),
         hand_check=steps[decision.layer_steps :],
         added=added,
+        unsure=unsure,
     )
 
 
@@ -128,6 +133,7 @@ def _solve_whole(
         assumptions=decision.assumptions,
         cautions=(*cautions(assembly), *decision.cautions),
         hand_check=closed[decision.layer_steps :],
+        unsure=correction.unsure,
     )
 
 

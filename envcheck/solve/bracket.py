@@ -50,7 +50,7 @@ def narrow(
     except (NotDrawn, ModelError, SolveError) as why:
         note = solved.bracket_note.partition("; not solved")[0]
         return solved._replace(bracket_note=f"{note}; not solved in two dimensions: {why}")
-    low = max(solved.low, found.low + solved.added)
+    low = max(solved.low, found.low + solved.added - solved.unsure)
     high = min(solved.high, found.high + solved.added)
     note = (
         f"the drawn section in two dimensions: {found.rounds} rounds, {found.nodes} nodes, "

@@ -34,7 +34,7 @@ def run(monkeypatch: pytest.MonkeyPatch) -> SimpleNamespace:
             project=PROJECT, rulesets=RULESETS, judged=JUDGED, exit_status=wanted.status
         )
 
-    module = SimpleNamespace(run=fake, why=lambda solved: None)
+    module = SimpleNamespace(run=fake, why=lambda solved: None, extras=lambda run, subject: None)
     monkeypatch.setitem(sys.modules, "envcheck.pipeline", module)
     monkeypatch.setattr(envcheck, "pipeline", module, raising=False)
     return wanted

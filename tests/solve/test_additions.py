@@ -91,7 +91,7 @@ def test_layer_without_a_thickness_of_its_own_is_missing() -> None:
 
 
 def test_no_fasteners_no_word() -> None:
-    assert correct_for_fasteners(assembly(ROOF), 5.0, ISO) == (0.0, (), (), ())
+    assert correct_for_fasteners(assembly(ROOF), 5.0, ISO) == (0.0, (), (), (), 0.0)
 
 
 def point(evidence: str = "test", per_area: bool = True, amount: float = 0.0) -> Bridge:

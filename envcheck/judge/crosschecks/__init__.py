@@ -10,12 +10,16 @@ from collections.abc import Callable, Iterable, Mapping
 from functools import cache
 from importlib import import_module
 from pkgutil import iter_modules
-from typing import NamedTuple
+from types import MappingProxyType
+from typing import TYPE_CHECKING, NamedTuple
 
 from envcheck.model.judged import Closing, Finding, Group, Line, Ratio
 from envcheck.model.project import Project
 from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Properties, Solved
+
+if TYPE_CHECKING:
+    from envcheck.model.details import SolvedDetail
 
 
 class Facts(NamedTuple):
@@ -32,6 +36,8 @@ class Facts(NamedTuple):
     closings: tuple[Closing, ...]
     ratios: tuple[Ratio, ...]
     groups: tuple[Group, ...]
+    details: Mapping[str, SolvedDetail] = MappingProxyType({})
+    """By detail id: the drawn details that some bridge takes its psi from."""
 
 
 class Check(NamedTuple):

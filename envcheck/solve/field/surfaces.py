@@ -15,10 +15,6 @@ from envcheck.solve.field.outline import Cells, Outline
 from envcheck.solve.field.outline_bound import OutlineBounds
 from envcheck.solve.field.section import Array, Section
 
-STILL = 0.25
-"""Inside surface resistance for the lowest surface temperature, m2 K/W. Source: ISO 13788:2012 and
-ISO 10211:2017, opaque parts (from memory); U-factors have a lower one."""
-
 
 class Spot(NamedTuple):
     """A place and its temperature factor."""
@@ -44,13 +40,13 @@ class Flux(NamedTuple):
     """(n, m) towards larger y"""
 
 
-def with_still_air(outline: Outline, film: float = STILL) -> Outline:
+def with_still_air(outline: Outline, film: float) -> Outline:
     """The outline with that resistance at every inside surface."""
     kinds = tuple(k._replace(film=film) if k.indoors else k for k in outline.kinds)
     return outline._replace(kinds=kinds)
 
 
-def section_with_still_air(section: Section, film: float = STILL) -> Section:
+def section_with_still_air(section: Section, film: float) -> Section:
     """The section with that resistance at its inside surface."""
     return section._replace(inside=film)
 

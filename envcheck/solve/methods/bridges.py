@@ -29,19 +29,67 @@ def correct_for_bridges(
     """Add all bridges to a U-factor.
 
     bridges: of an assembly or of an element. area: of the element, m2, for amounts that are not
-    per m2. prefix: of the addends' symbols. A bridge without a confirmed source, or without the
+    per m2. prefix: of the addends' symbols. A drawn detail is solved here, and counts with its high
+    bound (loads numpy and scipy). A bridge without a confirmed source, or without the
     area it needs, is named as missing and not counted.
     """
-    steps, missing = [], []
+    steps, missing, unsure = [], [], 0.0
     for number, bridge in enumerate(bridges, 1):
         name = "psi" if bridge.kind == "line" else "chi"
         if bridge.evidence in UNCONFIRMED:
             missing.append(f"a confirmed source of {name} for {bridge.title!r}")
         elif not bridge.per_area and not area:
             missing.append(f"the area that the bridge {bridge.title!r} belongs to")
+        elif bridge.detail is not None:
+            try:
+                made, spread = _from_detail(f"{prefix}{number}", bridge, area)
+            except _NotSolved as why:
+                missing.append(f"psi of the detail {bridge.detail.id!r}: {why}")
+            else:
+                steps += made
+                unsure += spread
         else:
             steps.append(_step(f"{prefix}{number}", bridge, area))
-    return Correction(sum(step.value for step in steps), tuple(steps), tuple(missing))
+    value = sum(step.value for step in steps if step.symbol.startswith(prefix))
+    return Correction(value, tuple(steps), tuple(missing), (), unsure)
+
+
+class _NotSolved(Exception):
+    """Why a detail gives no psi."""
+
+
+def _from_detail(symbol: str, bridge: Bridge, area: float | None) -> tuple[list[Step], float]:
+    """The steps that lead to an addend from a drawing, and how much less the addend may be."""
+    from envcheck.solve.detail import SOURCE, NotSolved, solve_detail
+
+    assert bridge.detail is not None, "called for bridges with a detail"
+    try:
+        found = solve_detail(bridge.detail)
+    except NotSolved as why:
+        raise _NotSolved(str(why)) from why
+    psi = Step(
+        f"psi_{symbol.removeprefix('dU_')}",
+        f"psi of the detail {found.detail}, high bound ({found.note})",
+        "{L2D}" + "".join(f" - {{U_{n}}} * {{l_{n}}}" for n in range(1, len(found.flanks) + 1)),
+        (
+            Operand("L2D", found.high, "linear_transmittance"),
+            *(
+                operand
+                for n, flank in enumerate(found.flanks, 1)
+                for operand in (
+                    Operand(f"U_{n}", flank.u_factor, "u_factor"),
+                    Operand(f"l_{n}", flank.length, "run"),
+                )
+            ),
+        ),
+        found.psi_high,
+        "linear_transmittance",
+        SOURCE,
+    )
+    addend = _step(symbol, bridge._replace(value=psi.value), area, psi.symbol)
+    whole = 1.0 if bridge.per_area else area or 1.0
+    spread = added_by_bridge(found.psi_high - found.psi_low, bridge.amount, whole)
+    return [psi, addend], spread
 
 
 def total_step(symbol: str, clear: Operand, additions: Sequence[Step]) -> Step:
@@ -56,9 +104,10 @@ def total_step(symbol: str, clear: Operand, additions: Sequence[Step]) -> Step:
     return Step(symbol, "U-factor with corrections", expression, operands, value, "u_factor")
 
 
-def _step(symbol: str, bridge: Bridge, area: float | None) -> Step:
+def _step(symbol: str, bridge: Bridge, area: float | None, name: str = "") -> Step:
+    """The addend of a bridge; ``name`` is the symbol of the step that its psi comes from."""
     line = bridge.kind == "line"
-    name, count = ("psi", "l") if line else ("chi", "n")
+    name, count = name or ("psi" if line else "chi"), "l" if line else "n"
     flow = Operand(name, bridge.value, "linear_transmittance" if line else "point_transmittance")
     if bridge.per_area:
         amount = Operand(count, bridge.amount, "per_length" if line else "per_area")
@@ -78,7 +127,7 @@ METHODS = (
         name="bridges",
         title="Linear and point bridges",
         formula="dU = sum of psi l / A + sum of chi n / A",
-        source="ISO 14683:2017; ISO 13789:2017",
+        source="ISO 14683:2017; ISO 13789:2017; psi of a drawn detail by ISO 10211:2017",
         valid="psi and chi with a confirmed source and the dimensions that they were made for",
     ),
 )

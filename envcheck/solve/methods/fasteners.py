@@ -35,6 +35,8 @@ class Correction(NamedTuple):
     """What leads to each addend, then the addend, whose symbol starts with ``dU``."""
     missing: tuple[str, ...] = ()
     assumptions: tuple[str, ...] = ()
+    unsure: float = 0.0
+    """How much less it may be: the addends stand at their high bound, W/(m2 K)."""
 
     @property
     def addends(self) -> tuple[Step, ...]:

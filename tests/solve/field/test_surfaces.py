@@ -10,7 +10,6 @@ import pytest
 from envcheck.solve.field.bound import bound
 from envcheck.solve.field.outline_bound import OutlineBounds, bound_outline
 from envcheck.solve.field.surfaces import (
-    STILL,
     coldest_inside,
     coldest_of_section,
     flow_through,
@@ -19,6 +18,7 @@ from envcheck.solve.field.surfaces import (
     temperature_at,
     with_still_air,
 )
+from envcheck.solve.surface import STILL, plain_factor
 from tests.solve.field.outlines import GAP, IN, OUT, insulated_corner, of_section, outline
 from tests.solve.field.sections import WOOD, section
 
@@ -113,25 +113,25 @@ def test_plain_wall_has_the_factor_of_its_definition() -> None:
     R without the inside film 3.2033: .92761, computed by hand.
     """
     wall = of_section(section([1000], [100], [[0.1 / (3.2033 - 0.04)]]))
-    found = coldest_inside(bound_outline(with_still_air(wall)))
-    assert found.factor == pytest.approx(1.0 - STILL / (3.2033 + STILL), abs=1e-6)
+    found = coldest_inside(bound_outline(with_still_air(wall, STILL)))
+    assert found.factor == pytest.approx(plain_factor(3.2033), abs=1e-6)
     assert found.factor == pytest.approx(0.92761, abs=1e-5)
 
 
 def test_coldest_place_of_a_corner_is_its_inner_edge() -> None:
-    found = bound_outline(with_still_air(insulated_corner()), 3e-4)
+    found = bound_outline(with_still_air(insulated_corner(), STILL), 3e-4)
     spot = coldest_inside(found)
     assert (spot.x, spot.y) == pytest.approx((0.6, 0.6))
     assert spot.factor == pytest.approx(temperature_at(found, 0.6, 0.6))
     assert spot.factor < temperature_at(found, 1.5, 0.6) - 0.01
-    slab = coldest_inside(bound_outline(with_still_air(insulated_corner(slab=True)), 3e-4))
+    slab = coldest_inside(bound_outline(with_still_air(insulated_corner(slab=True), STILL), 3e-4))
     assert slab.factor < spot.factor
     with_less = coldest_inside(bound_outline(insulated_corner(), 3e-4))
     assert with_less.factor > spot.factor  # .13 instead of .25 is no answer to the question
 
 
 def test_coldest_place_of_a_stud_wall_is_before_the_stud() -> None:
-    of = section_with_still_air(WOOD._replace(periodic=False))
+    of = section_with_still_air(WOOD._replace(periodic=False), STILL)
     spot = coldest_of_section(bound(of))
     assert spot.x == pytest.approx(0.203, abs=0.02)
     same = coldest_inside(bound_outline(of_section(of)))
