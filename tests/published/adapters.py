@@ -44,6 +44,7 @@ from envcheck.solve.methods.weighted import weighted
 from envcheck.solve.methods.zone import zone_width
 from envcheck.solve.network import parallel, plane_wall, series
 from envcheck.units import convert, to_si
+from tests.published import field_adapters
 
 Inputs = dict[str, Any]
 Figures = dict[str, float]
@@ -377,4 +378,5 @@ ADAPTERS: dict[str, Callable[[Inputs, Units], Figures]] = {
     "degree_day_limit": degree_day_limit,
     "thermal_zone": thermal_zone,
     "dryness": dryness,
+    **field_adapters.ADAPTERS,
 }

@@ -137,32 +137,6 @@ def test_caps_return_the_interval_reached() -> None:
     assert found.nodes <= 2000
 
 
-def test_iso_10211_case_2() -> None:
-    """ISO 10211:2017, annex C, case 2: 9.5 W/m within 0.1 for 20 K; geometry from memory.
-
-    Concrete 6 mm, wood 15 x 5 mm, aluminium 1.5 mm, insulation; 500 mm wide, adiabatic sides.
-    """
-    wool, metal = 0.029, 230.0
-    of = section(
-        [1.5, 13.5, 485],
-        [6, 5, 1.5, 33.5, 1.5],
-        [
-            [1.15] * 3,
-            [0.12, 0.12, wool],
-            [metal, metal, wool],
-            [metal, wool, wool],
-            [metal] * 3,
-        ],
-        0.06,
-        0.11,
-        periodic=False,
-    )
-    found = bound(of)
-    flow = 20.0 * 0.5
-    assert found.low * flow == pytest.approx(9.5, abs=0.1)
-    assert found.high * flow == pytest.approx(9.5, abs=0.1)
-
-
 @pytest.mark.parametrize(
     ("change", "words"),
     [
