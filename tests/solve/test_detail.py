@@ -145,6 +145,9 @@ pieces: [{material: block, x: [3 m, 5.1 m], y: [6.8 m, 7.1 m]},
 flanks: [{assembly: W, cut: left, length: 1.8 m}, {assembly: W, cut: bottom, length: 1.8 m}]
 """)
     )
+    for flank in turned.flanks:  # from indoors to outdoors along these edges
+        assert (flank.face_outside, flank.face_inside) == pytest.approx((2.1, 1.8))
+        assert flank.even == pytest.approx(1.0, abs=0.01)
     assert turned.psi_low == pytest.approx(there.psi_low, abs=1e-3)
     assert turned.psi_low <= there.psi_high and there.psi_low <= turned.psi_high
 

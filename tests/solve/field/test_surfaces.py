@@ -96,6 +96,9 @@ def test_flux_far_from_the_corner_is_that_of_the_wall() -> None:
     column = len(drawn.x) - 1
     through = drawn.across[found.cells.k[:, column] > 0, column]
     assert through == pytest.approx(np.full(len(through), -u), rel=0.03)
+    row = len(drawn.y) - 1
+    beside = drawn.along[row, found.cells.k[row] > 0]
+    assert beside == pytest.approx(np.full(len(beside), -u), rel=0.03)
     assert np.all(drawn.across[found.cells.k == 0] == 0)
 
 
