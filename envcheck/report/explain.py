@@ -31,7 +31,7 @@ from envcheck.report.rows import path_row
 from envcheck.report.view import ViewOptions, system_for
 
 if TYPE_CHECKING:
-    from envcheck.model.details import Extras
+    from envcheck.model.details import Coldest, Extras, SolvedDetail
 
 
 class AssemblyExplained(NamedTuple):
@@ -49,6 +49,8 @@ class AssemblyExplained(NamedTuple):
     """Of the value by the prescribed method."""
     drawn: Reasons | None
     """Of the drawn section."""
+    coldest: Coldest | None
+    """Of its inside surface."""
 
 
 class Explained(NamedTuple):
@@ -60,6 +62,8 @@ class Explained(NamedTuple):
     units: str
     """``SI`` or ``IP``, of the worksheets"""
     assemblies: tuple[AssemblyExplained, ...]
+    detail: SolvedDetail | None = None
+    """Where the subject is a detail that could be solved."""
 
 
 Why = Callable[[Solved], Reasons | None]
@@ -101,11 +105,12 @@ def build(
         lines, detail = [], project.details[subject]
         sections = junction.sections(detail, extras.details[subject], project.site, system)
     behind = []
+    of_detail = extras.details.get(subject) if extras else None
     for solved in _distinct(lines):
         found = why(solved)
         sections += _solved(project, solved, lines, system, found)
-        behind.append(_numbers(solved, system, found))
         coldest = extras.surfaces.get((solved.assembly, solved.setting)) if extras else None
+        behind.append(_numbers(solved, system, found, coldest))
         if coldest is not None:
             sections.append(junction.surface(coldest, project.site, system))
     for line in lines:
@@ -113,10 +118,13 @@ def build(
     sections.append(Section("", (Paragraph(wording.DEFERRAL),)))
     heading = f"{header.title(project)}: {clean(subject)}"
     page = Page(heading, tuple(sections))
-    return Explained(clean(subject), page, options.width, system, tuple(behind))
+    solved_detail = None if isinstance(of_detail, str) else of_detail
+    return Explained(clean(subject), page, options.width, system, tuple(behind), solved_detail)
 
 
-def _numbers(solved: Solved, system: str, found: Reasons | None) -> AssemblyExplained:
+def _numbers(
+    solved: Solved, system: str, found: Reasons | None, coldest: Coldest | str | None
+) -> AssemblyExplained:
     return AssemblyExplained(
         solved.assembly,
         solved.setting.metric,
@@ -128,6 +136,7 @@ def _numbers(solved: Solved, system: str, found: Reasons | None) -> AssemblyExpl
         sheet.write(solved.steps, system),
         found,
         solved.drawn,
+        None if isinstance(coldest, str) else coldest,
     )
 
 

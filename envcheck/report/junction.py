@@ -88,14 +88,15 @@ def _psi(detail: Detail, solved: SolvedDetail, system: str) -> Section:
         f"R, {units.label('resistance', system)}",
         f"U, {units.label('u_factor', system)}",
         f"length, {run}",
-        f"outer face, {run}",
-        f"inner face, {run}",
-        "flow at the cut",
+        f"outer, {run}",
+        f"inner, {run}",
+        "flow",
     )
     note = (
         "R and U are those of the layers that the cut shows, without and with the films of the "
-        "drawing. The flow at the cut is a share of what those layers alone would pass: near 100 % "
-        "where the cut lies far enough from the junction."
+        "drawing; outer and inner are how far both faces run on from the cut. The flow at the cut "
+        "is a share of what those layers alone would pass: near 100 % where the cut lies far "
+        "enough from the junction."
     )
     blocks: tuple[Block, ...] = (
         _facts(pairs), Grid(heads, rows, (2, 3, 4, 5, 6, 7), (0,)), Paragraph(note),

@@ -2,12 +2,15 @@
 
 from __future__ import annotations
 
+import json
 from pathlib import Path
 
 import pytest
+from jsonschema import Draft202012Validator
 
 from envcheck.__main__ import main
 from envcheck.pipeline import Run, run
+from envcheck.report import explain
 from envcheck.solve.detail import solve_detail
 
 ROOT = Path(__file__).parent.parent.parent
@@ -107,6 +110,12 @@ def test_the_page_of_a_detail(tmp_path: Path, capsys: pytest.CaptureFixture[str]
         "W1 right 3.107 0.30514 1.7 1.7 1.4 100",
     ):
         assert words in text, (words, text)
+    given = json.loads(explained(tmp_path, capsys, "D1", "--format", "json"))
+    schema = Path(explain.__file__).parent / "schemas" / "explain.schema.json"
+    validator = Draft202012Validator(json.loads(schema.read_text(encoding="utf-8")))
+    assert list(validator.iter_errors(given)) == []
+    assert given["detail"]["psi_low"] < given["detail"]["psi_high"] < -0.0704
+    assert given["detail"]["coldest"]["factor"] == pytest.approx(0.860, abs=5e-4)
     assert "Btu/(h ft F)" in explained(tmp_path, capsys, "D1", "--units", "IP")
 
 
@@ -115,6 +124,9 @@ def test_the_page_of_a_plain_wall_has_its_factor(
 ) -> None:
     """ISO 13788: f = 1 - U Rsi with Rsi .25: R = .04 + 2.857 + .25 = 3.147, f = .9264."""
     text = explained(tmp_path, capsys, "N-W1")
+    (wall,) = json.loads(explained(tmp_path, capsys, "N-W1", "--format", "json"))["assemblies"]
+    assert wall["coldest"]["factor"] == pytest.approx(1 - 0.25 / (0.04 + 0.1 / 0.035 + 0.5))
+    assert wall["coldest"]["x"] is None
     assert "f_Rsi = (Tsi - Te) / (Ti - Te) = 0.926" in text
     assert "layers in series" in text
 

@@ -30,6 +30,7 @@ def explain(made: Explained) -> str:
     """Write worksheets and reasons of one subject as JSON (``schemas/explain.schema.json``)."""
     assemblies = plain(made.assemblies)
     members = {"subject": made.subject, "units": made.units, "assemblies": assemblies}
+    members["detail"] = plain(made.detail)
     return _written({"schema_version": SCHEMA_VERSION, **members})
 
 
