@@ -9,6 +9,7 @@ from __future__ import annotations
 from typing import NamedTuple
 
 import numpy as np
+import numpy.typing as npt
 
 from envcheck.solve.field.bound import Bounds
 from envcheck.solve.field.outline import Cells, Outline
@@ -85,16 +86,34 @@ def lines(sizes: Array) -> Array:
 def temperature_at(found: OutlineBounds, x: float, y: float) -> float:
     """Temperature factor at a point of a solid or of its surface, interpolated in its cell.
 
-    x, y: m. Errors: ValueError where nothing solid is.
+    x, y: m. Not bounded. Errors: ValueError where nothing solid is.
     """
-    cells, field = found.cells, found.above.temperatures
-    across, up = lines(cells.hx), lines(cells.hy)
+    cells = found.cells
+    grid = lines(cells.hx), lines(cells.hy)
+    return _interpolated(*grid, found.above.temperatures, cells.k > 0, x, y)
+
+
+def temperature_in_section(found: Bounds, x: float, y: float) -> float:
+    """Temperature factor at a point of a section, y from its outer face, interpolated.
+
+    x, y: m. Not bounded. Errors: ValueError outside the section.
+    """
+    grid = lines(found.grid.hx), lines(found.grid.hy)
+    solid = np.ones((len(found.grid.hy), len(found.grid.hx)), dtype=bool)
+    return _interpolated(*grid, found.temperatures, solid, x, y)
+
+
+def _interpolated(
+    across: Array, up: Array, field: Array, solid: npt.NDArray[np.bool_], x: float, y: float
+) -> float:
+    """Bilinear between the nodes of a solid cell that holds the point or has it on its edge."""
     near = 1e-9
     for row in _touching(up, y, near):
         for column in _touching(across, x, near):
-            if cells.k[row, column] > 0:
-                right = min(max((x - across[column]) / cells.hx[column], 0.0), 1.0)
-                top = min(max((y - up[row]) / cells.hy[row], 0.0), 1.0)
+            if solid[row, column]:
+                right = (x - across[column]) / (across[column + 1] - across[column])
+                top = (y - up[row]) / (up[row + 1] - up[row])
+                right, top = min(max(right, 0.0), 1.0), min(max(top, 0.0), 1.0)
                 low = field[row, column : column + 2] @ (1.0 - right, right)
                 high = field[row + 1, column : column + 2] @ (1.0 - right, right)
                 return float(low * (1.0 - top) + high * top)

@@ -124,31 +124,3 @@ def test_an_asymmetric_member_needs_its_repeat() -> None:
     )
     assert meets(bound(of), bound(through))
     assert bound(through._replace(periodic=False)).high < 0.85 * bound(of).low
-
-
-@pytest.mark.parametrize(
-    ("place", "x", "y", "printed"),
-    [
-        ("A", 0, 0, 7.1), ("B", 500, 0, 0.8), ("C", 0, 6, 7.9), ("D", 15, 6, 6.3),
-        ("E", 500, 6, 0.8), ("F", 0, 11, 16.4), ("G", 15, 11, 16.3), ("H", 0, 47.5, 16.8),
-        ("I", 500, 47.5, 18.3),
-    ],
-)  # fmt: skip
-def test_temperatures_of_iso_10211_case_2(place: str, x: float, y: float, printed: float) -> None:
-    """ISO 10211:2017, annex C, case 2: printed temperatures for 20 K (from memory), within 0.1 K.
-
-    Point temperatures are not bounded; the fine grid reproduces them.
-    """
-    wool, metal = 0.029, 230.0
-    rows = [
-        [1.15] * 3,
-        [0.12, 0.12, wool],
-        [metal, metal, wool],
-        [metal, wool, wool],
-        [metal] * 3,
-    ]
-    sizes = [1.5, 13.5, 485], [6, 5, 1.5, 33.5, 1.5]
-    found = bound(section(*sizes, rows, 0.06, 0.11, periodic=False))
-    across = np.abs(np.append(0, np.cumsum(found.grid.hx)) * 1000 - x).argmin()
-    down = np.abs(np.append(0, np.cumsum(found.grid.hy)) * 1000 - y).argmin()
-    assert 20 * found.temperatures[down, across] == pytest.approx(printed, abs=0.1), place

@@ -16,12 +16,13 @@ from envcheck.solve.field.surfaces import (
     flux,
     section_with_still_air,
     temperature_at,
+    temperature_in_section,
     with_still_air,
 )
 from envcheck.solve.surface import STILL, plain_factor
 from tests.published.field_adapters import AIR, column
 from tests.solve.field.outlines import insulated_corner, of_section
-from tests.solve.field.sections import WOOD, section
+from tests.solve.field.sections import WOOD, c_stud, section
 
 # The figures of ISO 10211, cases 1 and 2, stand in `tests/published`.
 
@@ -75,6 +76,17 @@ def test_coldest_place_of_a_stud_wall_is_before_the_stud() -> None:
     assert spot.x == pytest.approx(0.203, abs=0.02)
     same = coldest_inside(bound_outline(of_section(of)))
     assert spot.factor == pytest.approx(same.factor, abs=1e-3)
+
+
+def test_a_section_has_the_temperatures_of_its_outline() -> None:
+    of = c_stud(outer=True)._replace(periodic=False)
+    one, other = bound(of, 3e-4), bound_outline(of_section(of), 3e-4)
+    for x in (0.0, 0.1, 0.183, 0.2, 0.3, 0.406):
+        for y in (0.0, 0.02, 0.05, 0.1, sum(of.depths)):
+            at = temperature_in_section(one, x, y)
+            assert at == pytest.approx(temperature_at(other, x, 0.1 + y), abs=2e-3)
+    with pytest.raises(ValueError, match="nothing solid"):
+        temperature_in_section(one, 0.5, 0.1)
 
 
 def test_what_enters_leaves_and_what_is_drawn_adds_up() -> None:
