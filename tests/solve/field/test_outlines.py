@@ -44,9 +44,8 @@ def test_a_rectangle_is_the_section_that_it_is(of: Section) -> None:
 
 # The extra squares of a plain right-angled corner between surfaces of given temperatures: exactly
 # 1 - 2 ln 2 / pi = .5587 by conformal mapping (from memory); heat-transfer textbooks print .54 per
-# metre for the edge of two adjoining walls (Holman, Heat Transfer, table of conduction shape
-# factors; Incropera and DeWitt likewise; from memory), for walls longer than a fifth of their
-# thickness.
+# metre for the edge of two adjoining walls (Incropera and DeWitt, Table 4.1, case 8, seen in a
+# quotation; Holman likewise, from memory), for walls longer than a fifth of their thickness.
 CORNER, PRINTED_CORNER = 1.0 - 2.0 * math.log(2.0) / math.pi, 0.54
 
 
