@@ -16,11 +16,11 @@ PLANES = "U-factor by isothermal planes: the widest upper bound"
 
 
 def can_narrow(solved: Solved, tolerance: float) -> bool:
-    """Whether there is a bracket that is wider than the tolerance."""
+    """Whether there is a bracket of drawn pieces that is wider than the tolerance."""
     return (
         solved.low is not None
         and solved.high is not None
-        and solved.high > solved.low * (1.0 + tolerance)
+        and solved.high > (solved.low + solved.unsure) * (1.0 + tolerance)
     )
 
 

@@ -11,7 +11,7 @@ from envcheck.model.project import Bridge
 from envcheck.model.solved import Solved
 from envcheck.pipeline import run
 from envcheck.solve.assembly import solve
-from envcheck.solve.bracket import narrow
+from envcheck.solve.bracket import can_narrow, narrow
 from envcheck.solve.field.drawing import NotDrawn, section_of
 from tests.solve.drawn import PLAIN, wall_of
 from tests.solve.samples import assembly, setting
@@ -92,3 +92,11 @@ def test_demo_lines_that_hang_on_the_method() -> None:
     assert line.verdict == "pass"
     assert line.comparison is not None
     assert line.comparison.value == pytest.approx(0.2732, abs=2e-4)
+
+
+def test_what_psi_holds_open_is_not_drawn_again() -> None:
+    by = setting(method="two_dimensional")
+    whole = assembly(*CHEEK)
+    wide = solve(whole, by, PLAIN)._replace(low=0.30, high=0.31)
+    assert can_narrow(wide, 1e-3)
+    assert not can_narrow(wide._replace(unsure=0.01), 1e-3)
