@@ -93,7 +93,7 @@ def _strip(
     _text(svg, LEFT, top + 11.0, f"{strip.title}{share}: R {strip.resistance}", "start")
     bar = top + 16.0
     if not strip.rungs:
-        _box(svg, LEFT, bar, strip.length * scale, "#000")
+        _box(svg, LEFT, bar, strip.length * scale, "#fff")
         return
     at = LEFT
     ends = [(at, outdoor)]

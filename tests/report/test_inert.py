@@ -6,6 +6,7 @@ from io import BytesIO
 
 import openpyxl
 import pytest
+from pypdf import PdfReader
 
 from envcheck.report import registry, view
 from envcheck.report.inert import as_code, clean, for_csv, for_markdown
@@ -19,6 +20,10 @@ def texts_of(made: str | bytes) -> str:
     """The text itself, or the texts of the cells of a workbook, a line each."""
     if isinstance(made, str):
         return made
+    if made.startswith(b"%PDF-"):
+        pages = PdfReader(BytesIO(made)).pages
+        text = "\n".join(page.extract_text() for page in pages)
+        return text.replace("\u200b", "")  # where a long word may break
     book = openpyxl.load_workbook(BytesIO(made))
     cells = (cell for sheet in book for row in sheet.iter_rows() for cell in row)
     return "\n".join(str(cell.value) for cell in cells if cell.data_type == "s")
