@@ -110,7 +110,7 @@ def test_no_script_no_address_no_handler() -> None:
         "meta",
         {
             "http-equiv": "Content-Security-Policy",
-            "content": "default-src 'none'; style-src 'unsafe-inline'",
+            "content": "default-src 'none'; style-src 'unsafe-inline'; img-src data:",
         },
     ) in read.tags
 
