@@ -3,9 +3,9 @@
 from __future__ import annotations
 
 import gc
-from collections.abc import Callable, Iterator, Sequence
+from collections.abc import Callable, Iterator, Mapping, Sequence
 from contextlib import contextmanager, suppress
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import cache, partial
 from pathlib import Path
 from typing import TYPE_CHECKING
@@ -125,6 +125,7 @@ def _no_cycles_to_collect() -> Iterator[None]:
 def _run(path: str, folders: Sequence[str], bounds: bool) -> Run:
     project = read_project(path, names())
     rulesets = _read_rulesets(project, default_folders(path, folders))
+    project = _with_criteria(project, rulesets)
     compressed = rulesets[project.rule_sets[0].id].conventions.tables.get("compressed_batts", ())
     asked = weighed(project, rulesets)
     made_of = {
@@ -182,6 +183,16 @@ def _run(path: str, folders: Sequence[str], bounds: bool) -> Run:
         remarks=remarks(project, rulesets),
     )
     return Run(project, rulesets, judged, made_of, solver.first, exit_status(judged))
+
+
+def _with_criteria(project: Project, rulesets: Mapping[str, RuleSet]) -> Project:
+    """Work out the zone by the criteria that rule sets name."""
+    named = dict.fromkeys(r.zones.criteria for r in rulesets.values() if r.zones.criteria)
+    if not named:
+        return project
+    from envcheck.solve.climate_zone import with_criteria  # only where a rule set asks
+
+    return replace(project, site=with_criteria(project.site, named))
 
 
 def _with_narrow_brackets(

@@ -24,6 +24,9 @@ TABLES = {
     "air_spaces.csv": ("thickness", "emittance", "resistance"),
     "material_classes.csv": ("low", "high"),
     "gases.csv": ("density", "viscosity", "conductivity", "specific_heat"),
+    "conversion_temperature.csv": ("conductivity", "per_kelvin"),
+    "conversion_moisture.csv": ("per_share", "most"),
+    "corrected_emissivities.csv": ("normal", "ratio"),
     "compressed_batts.csv": (),
     "materials.csv": ("conductivity", "low", "high", "density", "specific_heat"),
 }

@@ -54,6 +54,31 @@ KINDS = (
         "An answer names the id of a finding.",
     ),
     Kind(
+        "unknown-conversion",
+        "no conversion is printed for the class {name!r}",
+        "{hint}",
+        "Classes of material whose conversion coefficients come with envcheck (ISO 10456).",
+    ),
+    Kind(
+        "unknown-gas",
+        "the gas {name!r} is not known",
+        "{hint}",
+        "Gases of glazing are air, argon, krypton and sf6, as in EN 673.",
+    ),
+    Kind(
+        "panes-and-gaps",
+        "the panes and the gaps between them do not match",
+        "give one gap fewer than panes, outside first",
+        "Every two panes next to each other have one gap between them.",
+    ),
+    Kind(
+        "parts-do-not-close",
+        "the parts of the window do not add up to its size",
+        "{hint}",
+        "Lights and frames that state their areas fill width times height within 0.5 %; one frame "
+        "may take the rest.",
+    ),
+    Kind(
         "needs-one-of",
         "{where} needs exactly one of {keys}",
         "{hint}",

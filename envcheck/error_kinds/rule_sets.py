@@ -6,6 +6,13 @@ from envcheck.errors import Kind
 
 KINDS = (
     Kind(
+        "class-test-incomplete",
+        "a class test needs {what}",
+        "{hint}",
+        "The class holds from its figure on (at_least) or below it; a test of slope or of a share "
+        "says in which class an element stands that fails.",
+    ),
+    Kind(
         "cap-closes-nothing",
         "the area cap does not say which rows it closes",
         "add `closes:` with the categories whose rows do not apply above the cap",

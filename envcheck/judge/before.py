@@ -14,6 +14,9 @@ from envcheck.model.project import Assembly, Element, ExceptionClaim, Project
 from envcheck.model.ruleset import Limit, RuleSet
 from envcheck.model.solved import Properties
 
+COMPUTED_BY = {"window": "ISO 10077-1", "curtain-wall": "ISO 12631"}
+"""Kinds computed from parts, and the standard that the value follows."""
+
 
 class Case(NamedTuple):
     """Everything that one line is judged from."""
@@ -88,28 +91,47 @@ def by_area_cap(case: Case) -> str | None:
 
 
 def lacks_evidence(case: Case, metric: str) -> str | None:
-    """Why the evidence of a rated product is not accepted, or None."""
+    """Why the evidence of a product is not accepted, or None.
+
+    A value computed from parts is a calculation to its own standard, and never a rating.
+    """
     rated = case.assembly.rated
     if rated is None:
-        return None
+        standard = COMPUTED_BY.get(case.assembly.kind)
+        return _not_accepted(case, "calculation", standard) if standard else None
     if rated.basis == "centre_of_glass" and metric != "U_glazing":
         return (
             f"missing: values of the whole product for {case.assembly.id}, frame included; only "
             f"those of the centre of glass are stated, on {case.assembly.sheet or 'its schedule'}"
         )
+    return _not_accepted(case, rated.evidence, rated.standard)
+
+
+def _not_accepted(case: Case, evidence: str, standard: str) -> str | None:
     stated = case.ruleset.conventions.accepted_evidence
     pattern = best_pattern(case.found_class.category, stated)
     accepted = stated[pattern] if pattern is not None else ()
     kinds = [kind for kind in accepted if not kind.startswith("standard:")]
     standards = [kind.partition(":")[2] for kind in accepted if kind.startswith("standard:")]
-    if kinds and rated.evidence not in kinds:
+    if kinds and evidence not in kinds:
         return (
             f"missing: evidence that the rule set accepts ({', '.join(kinds)}); "
-            f"{case.assembly.id} has {rated.evidence or 'none'}"
+            f"{case.assembly.id} has {_named(case, evidence, standard)}"
         )
-    if standards and rated.standard not in standards:
-        return f"missing: a rating to {' or '.join(standards)} for {case.assembly.id}"
+    computed = case.assembly.rated is None
+    if computed:  # the standard that a rule set names may carry its year
+        standards = [name.partition(":")[0] for name in standards]
+    if standards and standard not in standards:
+        also = f", which is computed to {standard}" if computed else ""
+        return f"missing: a rating to {' or '.join(standards)} for {case.assembly.id}{also}"
     return None
+
+
+def _named(case: Case, evidence: str, standard: str) -> str:
+    """What stands behind a product, in words."""
+    if case.assembly.rated is None:
+        return f"a {evidence} to {standard}"
+    return evidence or "none"
 
 
 def claim_of(case: Case) -> ExceptionClaim | None:

@@ -22,6 +22,8 @@ from envcheck.model.ruleset import Limit
 from envcheck.model.solved import Solved
 
 R_INSULATION = "R_insulation"
+PRODUCTS = ("rated", "window", "curtain-wall", "glazing")
+"""Kinds without labelled insulation of their own."""
 OUTCOMES = {"pass": "within its limit", "fail": "over its limit"}
 """What a claimed line is without its claim, in words; anything else is not decided."""
 BETWEEN_BRIDGES = (
@@ -151,7 +153,7 @@ def _named(metric: str) -> str:
 def _labels(case: Case, limit: Limit) -> PathResult | None:
     """The R-value path, where the table prints one for this element."""
     other = case.selection.limit(R_INSULATION, INSULATION)
-    if other is None or other.kind != "number" or case.assembly.kind in ("rated", "window"):
+    if other is None or other.kind != "number" or case.assembly.kind in PRODUCTS:
         return None
     brought = insulation_of(case.assembly, case.element, case.properties)
     result = insulation_path(other, brought, case.ruleset)

@@ -8,7 +8,7 @@ from typing import NamedTuple
 
 from envcheck.errors import Problem, did_you_mean, one_of, problem
 from envcheck.model.judged import Choice
-from envcheck.model.project import Project, Site, ZoneStated
+from envcheck.model.project import ByCriteria, Project, Site, ZoneStated
 from envcheck.model.ruleset import Condition, RuleSet, Zones
 
 FALLEN = 3
@@ -41,6 +41,14 @@ def find_zone(ruleset: RuleSet, site: Site) -> ZoneFound:
         why = f"the project states {' and '.join(names)} for {ruleset.id}"
         return ZoneFound("zone_ambiguous", (), "", why, ())
     by_bounds = _by_bounds(zones, site)
+    criteria = _criteria(zones, site)
+    if criteria is not None and criteria.zone and not names:
+        found = _stated(zones, criteria.zone, criteria.why, by_bounds, "by")
+        other = [zone for zone in by_bounds if zone not in found.heads]
+        if found.state == "found" and other:
+            why = f"{by_bounds[other[0]]}, but {criteria.why} gives {criteria.zone}"
+            return ZoneFound("zone_ambiguous", (), "", f"bounds and criteria disagree: {why}", ())
+        return found
     if names:
         return _stated(zones, names[0], stated[0].source, by_bounds)
     if len(by_bounds) == 1:
@@ -53,8 +61,28 @@ def find_zone(ruleset: RuleSet, site: Site) -> ZoneFound:
         return _found(zones.order, zones.order[0], "the only zone of the rule set")
     measures = " or ".join(zones.bounds)
     ways = f" or its {measures}" if measures else ""
+    if criteria is not None:
+        ways += f" or, for the criteria {criteria.criteria}: {criteria.why}"
     why = f"the project states neither the zone of the site{ways} ({zones.chosen_by})"
     return ZoneFound("zone_missing", (), "", why, ())
+
+
+def contradicted(ruleset: RuleSet, site: Site) -> tuple[str, ByCriteria] | None:
+    """The stated zone, and the criteria that give another one; None where they agree."""
+    zones = ruleset.zones
+    criteria = _criteria(zones, site)
+    if criteria is None or not criteria.zone:
+        return None
+    stated = find_zone(ruleset, site)
+    computed = find_zone(ruleset, site._replace(zones=(), measures=()))
+    if stated.state != "found" or set(stated.heads) & set(computed.heads):
+        return None
+    return stated.printed, criteria
+
+
+def _criteria(zones: Zones, site: Site) -> ByCriteria | None:
+    """What the rule set's criteria make of the site."""
+    return next((found for found in site.by_criteria if found.criteria == zones.criteria), None)
 
 
 def zone_problems(project: Project, rulesets: Iterable[RuleSet]) -> list[Problem]:
@@ -95,9 +123,16 @@ def _found(heads: tuple[str, ...], printed: str, why: str) -> ZoneFound:
     return ZoneFound("found", heads, printed, "", trail)
 
 
-def _stated(zones: Zones, name: str, source: str, by_bounds: dict[str, str]) -> ZoneFound:
-    """Take a stated zone: printed as such, a member of a printed one, or with letters dropped."""
+def _stated(
+    zones: Zones, name: str, source: str, by_bounds: dict[str, str], how: str = "stated"
+) -> ZoneFound:
+    """Take a stated zone: printed as such, a member of a printed one, or with letters dropped.
+
+    A zone ``by`` the rule set's criteria is taken the same way.
+    """
     said = f"stated {name}" + (f" ({source})" if source else "")
+    if how == "by":
+        said = f"{name} by {zones.criteria} from {source}"
     plain, dropped = name, ""
     for _ in range(FALLEN):
         heads = _heads(zones, plain)
@@ -118,7 +153,7 @@ def _stated(zones: Zones, name: str, source: str, by_bounds: dict[str, str]) -> 
     if plain not in heads:
         why += f"; {plain} belongs to {' and '.join(heads)}"
     other = [zone for zone in by_bounds if zone not in heads]
-    if other:
+    if other and how == "stated":
         why += f"; {by_bounds[other[0]]} would give {other[0]}, the stated zone is used"
     return _found(heads, " / ".join(heads), why)
 

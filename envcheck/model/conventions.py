@@ -32,19 +32,21 @@ class MethodRule(NamedTuple):
     clause: str
     refused: tuple[str, ...] = ()
     """Methods that the clause does not accept."""
-    weight: float | None = None
-    """Of the upper limit, for the weighted rule."""
+    weight: float | str | None = None
+    """Of the upper limit, for the weighted rule; or the name of a published formula for it, or
+    ``table``: found in the rule set's table of weights."""
 
 
 class ClassTest(NamedTuple):
-    """The test that keeps an element in the class claimed: mass, or light let through."""
+    """The test that keeps an element in the class claimed: by mass, light, slope or share."""
 
     category: str
     """The class claimed, or a pattern."""
     measure: str
-    """``heat_capacity``, ``weight`` or ``visible_transmittance`` (above ``at_least``)"""
+    """``heat_capacity``, ``weight``, ``tilt``, ``below_grade_share``, ``continuous_share`` or
+    ``visible_transmittance`` (above ``at_least``)"""
     at_least: float
-    """J/(m2 K) or kg/m2"""
+    """J/(m2 K), kg/m2, degrees or a share 0..1"""
     text: str
     """As printed: ``6 Btu/(ft2*degF)``."""
     counted: str
@@ -54,6 +56,18 @@ class ClassTest(NamedTuple):
     """The code leaves room: where ways of counting differ, the official decides."""
     otherwise: str = ""
     """Class of an element that fails; empty = by its framing."""
+    below: bool = False
+    """The class holds below the printed figure, not from it on."""
+
+    @property
+    def words(self) -> str:
+        """The figure as the test has it: ``at least 60 deg``."""
+        return f"{'below' if self.below else 'at least'} {self.text}"
+
+    def holds(self, value: float) -> bool:
+        """Whether a measured value keeps the class; a rounding error off the figure is on it."""
+        reached = value >= self.at_least - 1e-9 * abs(self.at_least)
+        return reached != self.below
 
 
 class TableRow(NamedTuple):

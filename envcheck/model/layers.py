@@ -11,6 +11,8 @@ from typing import TYPE_CHECKING, NamedTuple
 if TYPE_CHECKING:
     from envcheck.model.details import Detail
 
+from envcheck.model.conversion import Conversion
+
 
 class Material(NamedTuple):
     """One material: conductivity, or a resistance for a stated thickness (then converted)."""
@@ -30,6 +32,8 @@ class Material(NamedTuple):
     evidence: str = ""
     """Kind of evidence: label, rating, test, table, calculation, assumed."""
     combustible: bool = False
+    conversion: Conversion | None = None
+    """How the conductivity follows from a declared one; None where it is stated as it counts."""
 
 
 class Profile(NamedTuple):

@@ -27,6 +27,7 @@ from envcheck.model.layers import (
     ResistanceLayer,
     TaperedLayer,
 )
+from envcheck.model.windows import Glazing, Window
 
 if TYPE_CHECKING:
     from envcheck.model.details import Detail
@@ -35,6 +36,8 @@ __all__ = [
     "AirSpaceLayer",
     "Assembly",
     "Bridge",
+    "ByCriteria",
+    "Climate",
     "ContactLayer",
     "Declared",
     "Element",
@@ -44,6 +47,7 @@ __all__ = [
     "Fasteners",
     "Fill",
     "FramedLayer",
+    "Glazing",
     "Layer",
     "MasonryLayer",
     "Material",
@@ -76,20 +80,6 @@ class Declared(NamedTuple):
     text: str
     """As typed."""
     sheet: str
-
-
-class Window(NamedTuple):
-    """ISO 10077-1 parts of a window or door: whole unit from glass, frame and spacer."""
-
-    width: float
-    height: float
-    frame_width: float
-    """Visible width of the frame, m."""
-    u_glass: float
-    u_frame: float
-    psi: float
-    """Of the glass edge, W/(m K)."""
-    sources: tuple[str, ...] = ()
 
 
 class Rated(NamedTuple):
@@ -136,7 +126,8 @@ class Assembly(NamedTuple):
 
     id: str
     kind: str
-    """``layers``, ``window``, ``rated``, ``slab-on-grade``, ``below-grade-wall``."""
+    """``layers``, ``window``, ``curtain-wall``, ``glazing``, ``rated``, ``slab-on-grade``,
+    ``below-grade-wall``."""
     title: str
     sheet: str
     line: int
@@ -152,6 +143,8 @@ class Assembly(NamedTuple):
     inside_film: float | None = None
     shgc: float | None = None
     """Of a computed window."""
+    glazing: Glazing | None = None
+    """Of kind ``glazing``: panes and spaces without a frame."""
 
 
 # ----------------------------------------------------------------------------------- elements
@@ -232,6 +225,8 @@ class Element(NamedTuple):
     facts: tuple[Fact, ...]
     bridges: tuple[Bridge, ...]
     note: str = ""
+    wall_height: float | None = None
+    """m; for the share of a wall below grade."""
 
 
 class ExceptionClaim(NamedTuple):
@@ -266,6 +261,32 @@ class ZoneStated(NamedTuple):
     line: int
 
 
+class Climate(NamedTuple):
+    """Facts of the site that tell its climate zone and moisture regime."""
+
+    source: str
+    temperatures: tuple[float, ...] = ()
+    """Monthly means from January, degC; twelve or none."""
+    precipitation: tuple[float, ...] = ()
+    """Of each month from January, m; twelve or none."""
+    mean_temperature: float | None = None
+    """Of the year, degC; where months are stated, their mean."""
+    annual_precipitation: float | None = None
+    """m; where months are stated, their sum."""
+    marine: bool | None = None
+    """Whether the climate is marine, where that is stated."""
+
+
+class ByCriteria(NamedTuple):
+    """The zone that published criteria give for a site."""
+
+    criteria: str
+    zone: str
+    """Empty where a fact is missing."""
+    why: str
+    """How it was found, or what is missing."""
+
+
 class Site(NamedTuple):
     """Where the building stands."""
 
@@ -276,6 +297,9 @@ class Site(NamedTuple):
     indoor_temperature: float | None = None
     """degrees C"""
     outdoor_temperature: float | None = None
+    climate: Climate | None = None
+    by_criteria: tuple[ByCriteria, ...] = ()
+    """By each formula that a rule set names; filled in once the rule sets are read."""
 
 
 class Options(NamedTuple):

@@ -288,6 +288,8 @@ class Zones(NamedTuple):
     chosen_by: str
     suffixes: tuple[str, ...] = ()
     """Letters that fall back to the plain zone."""
+    criteria: str = ""
+    """Name of the published formula that gives the zone from the facts of the site; or empty."""
 
 
 class Edition(NamedTuple):

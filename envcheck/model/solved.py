@@ -182,7 +182,7 @@ class Setting(NamedTuple):
     method_from: str
     """Clause, or "assumed: the rule set names no method"."""
     refused: tuple[str, ...]
-    weight: float | None
+    weight: float | str | None
     direction: str
     """``up``, ``horizontal`` or ``down``"""
     outside_film: float

@@ -11,12 +11,14 @@ from envcheck.model.project import (
     Material,
     Rated,
     Slab,
-    Window,
 )
 from envcheck.read.context import MATCHES, NAN, Context
+from envcheck.read.conversions import read_conversion
 from envcheck.read.layers import read_layers
+from envcheck.read.windows import read_glazing, read_window
 from envcheck.read.yaml_reader import Entry
 
+_BY_PARTS = ("window", "curtain-wall")
 _DECLARED = {
     "u_factor": "u_factor",
     "resistance": "resistance",
@@ -26,14 +28,22 @@ _DECLARED = {
 
 
 def read_material(context: Context, name: str, entry: Entry) -> Material:
-    """Read a material of the project: a conductivity, or a resistance for a thickness."""
+    """Read a material: a conductivity, a declared one to convert, or R for a thickness."""
     where = f"material {name!r}"
-    kind = context.exactly_one(entry, ("conductivity", "resistance"), where)
-    conductivity = NAN
+    kind = context.exactly_one(entry, ("conductivity", "resistance", "declared"), where)
+    conductivity, conversion = NAN, None
+    if kind != "declared":
+        hint = "it belongs beside 'declared'"
+        context.out_of_place(entry, ("conversion",), f"{where} without a declared value", hint)
     if kind == "conductivity":
         conductivity = context.positive(entry, "conductivity", "conductivity")
         hint = "it belongs beside 'resistance'"
         context.out_of_place(entry, ("thickness",), f"{where} with a conductivity", hint)
+    elif kind == "declared":
+        conversion = read_conversion(context, entry, where)
+        conductivity = conversion.conductivity if conversion is not None else NAN
+        hint = "it belongs beside 'resistance'"
+        context.out_of_place(entry, ("thickness",), f"{where} with a declared value", hint)
     elif kind == "resistance":
         resistance = context.positive(entry, "resistance", "resistance")
         if "thickness" in entry:
@@ -51,6 +61,7 @@ def read_material(context: Context, name: str, entry: Entry) -> Material:
         source=entry.get("source", "assumed"),
         evidence=context.evidence(entry),
         combustible=entry.get("combustible", False),
+        conversion=conversion,
     )
 
 
@@ -68,12 +79,13 @@ def read_assembly(context: Context, name: str, entry: Entry) -> Assembly:
         layers=layers,
         fasteners=tuple(_fasteners(context, f, layers) for f in entry.get("fasteners", ())),
         bridges=tuple(_bridge(context, bridge) for bridge in entry.get("bridges", ())),
-        window=_window(context, entry) if kind == "window" else None,
+        window=read_window(context, entry) if kind in _BY_PARTS else None,
         rated=_rated(context, entry) if kind == "rated" else None,
         slab=_slab(context, entry) if kind == "slab-on-grade" else None,
         outside_film=_film(context, entry, "outside_film"),
         inside_film=_film(context, entry, "inside_film"),
-        shgc=_plain(entry, "shgc") if kind == "window" else None,
+        shgc=_plain(entry, "shgc") if kind in _BY_PARTS else None,
+        glazing=read_glazing(context, entry) if kind == "glazing" else None,
     )
 
 
@@ -166,26 +178,6 @@ def bridge(
         source=entry.get("source", ""),
         evidence=context.evidence(entry),
         line=entry.line,
-    )
-
-
-def _window(context: Context, entry: Entry) -> Window:
-    width = context.positive(entry, "width", "length")
-    height = context.positive(entry, "height", "length")
-    frame = context.positive(entry, "frame_width", "length")
-    if 2 * frame >= min(width, height):
-        found = entry["frame_width"]
-        limit = "half the window, so that no glass is left"
-        line = entry.lines["frame_width"]
-        context.add("too-thick", line, found=found, key="frame_width", limit=limit)
-    return Window(
-        width=width,
-        height=height,
-        frame_width=frame,
-        u_glass=context.positive(entry, "u_glass", "u_factor"),
-        u_frame=context.positive(entry, "u_frame", "u_factor"),
-        psi=context.number(entry, "psi", "linear_transmittance"),
-        sources=tuple(entry.get("sources", ())),
     )
 
 

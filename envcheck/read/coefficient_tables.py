@@ -32,6 +32,11 @@ FORMS = {
     "effective_layers": Form(
         ("resistance", "unit", "resistance"), (("label", "unit", "resistance"), *_LENGTHS)
     ),
+    "weights": Form(
+        ("weight", "", "number"),
+        (("spacing_over", "", "length"), ("spacing_up_to", "", "length")),
+        ("continuous_insulation",),
+    ),
     "f_factors": Form(
         ("f_factor", "f_unit", "linear_transmittance"),
         (("extent", "", "length"), ("resistance", "unit", "resistance")),
@@ -60,6 +65,7 @@ WORDS = {
     "side": ("inside", "outside"),
     "direction": ("up", "horizontal", "down", "*"),
     "heated": ("yes", "no"),
+    "continuous_insulation": ("yes", "no", "*"),
     "adjoins": (
         "*", "outdoors", "ground", "vented_attic", "vented_crawl_space", "garage", "unheated",
         "semiheated", "conditioned", "ventilated_cladding",

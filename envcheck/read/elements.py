@@ -122,7 +122,28 @@ def read_element(
         facts=read_facts(entry["facts"]) if "facts" in entry else (),
         bridges=tuple(_bridge(context, item) for item in entry.get("bridges", ())),
         note=entry.get("note", ""),
+        wall_height=_wall_height(context, entry),
     )
+
+
+def _wall_height(context: Context, entry: Entry) -> float | None:
+    """The height of a wall, no less than its depth below grade."""
+    height = context.optional(entry, "wall_height", "length")
+    deep = entry.get("depth_below_grade")
+    if (
+        height is not None
+        and deep
+        and context.number(entry, "depth_below_grade", "length") > height
+    ):
+        context.add(
+            "too-thick",
+            entry.lines["depth_below_grade"],
+            found=deep,
+            expected=f"at most {entry['wall_height']}",
+            key="depth_below_grade",
+            limit="the height of the wall",
+        )
+    return height
 
 
 def _refer(context: Context, entry: Entry, key: str, known: Iterable[str]) -> None:

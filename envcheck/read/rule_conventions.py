@@ -16,19 +16,24 @@ DEFAULT = "default of envcheck"
 NOT_STATED = "not stated"
 WITHOUT_DEFAULT = (
     "methods", "framing_shares", "class_tests", "evidence", "measured", "cavity_factors",
-    "effective_layers", "f_factors",
+    "effective_layers", "f_factors", "weights",
 )  # fmt: skip
 """Conventions that envcheck has no value of its own for."""
+WEIGHTS = ("bre_465", "table")
+"""What may stand for the weight of the weighted rule."""
 MEASURED = {
     "heat_capacity": "heat_capacity",
     "weight": "area_weight",
     "visible_transmittance": "share",
+    "tilt": "angle",
+    "below_grade_share": "share",
+    "continuous_share": "share",
 }
 """What a class test measures, and the quantity of its threshold."""
 KEYS = (
     "films", "air_spaces", "methods", "cladding", "fasteners", "tapered", "crossed_insulation",
     "framing_shares", "class_tests", "evidence", "measured", "cavity_factors",
-    "effective_layers", "f_factors",
+    "effective_layers", "f_factors", "weights",
 )  # fmt: skip
 
 
@@ -99,7 +104,8 @@ def _methods(source: Source, problems: list[Problem]) -> tuple[MethodRule, ...]:
             _known(source, ("methods", i), name, source.names.methods, "unknown-method", problems)
         if not _pattern(source, "methods", rule["category"], problems, i):
             continue
-        weight = _number(source, rule.get("weight"), ("methods", i), problems)
+        stated = rule.get("weight")
+        weight = stated if stated in WEIGHTS else _number(source, stated, ("methods", i), problems)
         clause, refused = rule.get("clause", ""), tuple(rule.get("refused", ()))
         rules.append(MethodRule(rule["category"], rule["method"], clause, refused, weight))
     return tuple(rules)
@@ -111,7 +117,17 @@ def _class_tests(source: Source, problems: list[Problem]) -> tuple[ClassTest, ..
         quantity = MEASURED.get(str(test["measure"]))
         if quantity is None:  # refused by the schema already
             continue
-        value = _parse(source, test["at_least"], quantity, ("class_tests", i, "at_least"), problems)
+        key = "below" if "below" in test else "at_least"
+        if ("at_least" in test) == ("below" in test):
+            found = "both" if key in test else "neither"
+            hint = "keep the one that the code prints"
+            _incomplete(source, i, found, "exactly one of at_least, below", hint, problems)
+            continue
+        if quantity in ("angle", "share") and not test.get("otherwise"):
+            what = "'otherwise', the class of an element that fails"
+            _incomplete(source, i, "none", what, "add a category, such as wall.other", problems)
+            continue
+        value = _parse(source, test[key], quantity, ("class_tests", i, key), problems)
         if value is None or not _pattern(source, "class_tests", test["category"], problems, i):
             continue
         counted, arguable = test.get("counted", "whole"), test.get("arguable") == "yes"
@@ -123,14 +139,24 @@ def _class_tests(source: Source, problems: list[Problem]) -> tuple[ClassTest, ..
                 test["category"],
                 test["measure"],
                 value,
-                test["at_least"],
+                test[key],
                 counted,
                 test.get("clause", ""),
                 arguable,
                 otherwise,
+                key == "below",
             )
         )
     return tuple(tests)
+
+
+def _incomplete(
+    source: Source, test: int, found: str, what: str, hint: str, problems: list[Problem]
+) -> None:
+    document = source.origin["class_tests"]
+    line = document.line("conventions", "class_tests", test)
+    fill = {"found": found, "what": what, "hint": hint}
+    problems.append(problem("class-test-incomplete", document.name, line, **fill))
 
 
 def _shares(source: Source, problems: list[Problem]) -> tuple[tuple[str, float, str], ...]:
@@ -197,7 +223,7 @@ def _tables(source: Source, problems: list[Problem]) -> tuple[str, dict[str, tup
     """Coefficient tables by name; air spaces are a formula, a built-in table or an own one."""
     tables = {
         key: own_table(source.origin[key], key, str(source.stated[key]), problems)
-        for key in ("cavity_factors", "effective_layers", "f_factors")
+        for key in ("cavity_factors", "effective_layers", "f_factors", "weights")
         if source.stated.get(key) is not None
     }
     tables["compressed_batts"] = built_in("compressed_batts", "")

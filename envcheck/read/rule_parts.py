@@ -59,7 +59,8 @@ def read_zones(document: Document, problems: list[Problem]) -> Zones:
                 bounds[measure][zone] = condition
         _overlaps(document, measure, bounds[measure], problems)
     suffixes = tuple(stated.get("suffixes") or ())
-    return Zones(order, members, bounds, stated.get("chosen_by", ""), suffixes)
+    criteria = stated.get("criteria", "")
+    return Zones(order, members, bounds, stated.get("chosen_by", ""), suffixes, criteria)
 
 
 def _zone_names(

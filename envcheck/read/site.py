@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from envcheck.model.project import Options, Site, ZoneStated
+from envcheck.model.project import Climate, Options, Site, ZoneStated
 from envcheck.read.context import Context
 from envcheck.read.yaml_reader import Entry
 from envcheck.units import to_si
@@ -31,7 +31,43 @@ def read_site(context: Context, entry: Entry) -> Site:
         measures=tuple(measures),
         indoor_temperature=_temperature(context, entry, "indoor_temperature"),
         outdoor_temperature=_temperature(context, entry, "outdoor_temperature"),
+        climate=_climate(context, entry["climate"]) if "climate" in entry else None,
     )
+
+
+def _climate(context: Context, entry: Entry) -> Climate:
+    """Read monthly means and rain, or those of the year; the months stand above the year."""
+    temperatures = _months(context, entry, "temperatures", "temperature")
+    rain = _months(context, entry, "precipitation", "length")
+    for months, key in ((temperatures, "mean_temperature"), (rain, "annual_precipitation")):
+        if months:
+            hint = "it follows from the months: delete it"
+            context.out_of_place(entry, (key,), "a climate with monthly values", hint)
+    mean = _temperature(context, entry, "mean_temperature")
+    annual = None
+    if "annual_precipitation" in entry:
+        annual = context.not_negative(entry, "annual_precipitation", "length")
+    return Climate(
+        entry["source"],
+        temperatures,
+        rain,
+        sum(temperatures) / len(temperatures) if temperatures else mean,
+        sum(rain) if rain else annual,
+        entry.get("marine"),
+    )
+
+
+def _months(context: Context, entry: Entry, key: str, quantity: str) -> tuple[float, ...]:
+    """Twelve quantities from January."""
+    texts = entry.get(key)
+    if texts is None:
+        return ()
+    months = Entry(entry.lines[key])
+    for place, text in enumerate(texts):
+        months[str(place)], months.lines[str(place)] = text, texts.lines[place]
+    if quantity == "length":
+        return tuple(context.not_negative(months, place, quantity) for place in months)
+    return tuple(_temperature(context, months, place) or 0.0 for place in months)
 
 
 def _degree_days(name: str, value: float) -> float:

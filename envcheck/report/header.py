@@ -186,10 +186,10 @@ def _conventions(ruleset: RuleSet, system: str) -> Iterable[Convention]:
     if not conv.framing_shares:
         yield Convention("framing share", "none is built in: each as the project states", "project")
     for test in conv.class_tests:
-        counted = f"{in_words(test.category)}: {wording.plain(test.measure)} at least {test.text}"
+        counted = f"{in_words(test.category)}: {wording.plain(test.measure)} {test.words}"
         if test.measure == "visible_transmittance":
             counted = f"{in_words(test.category)}: must let light through"
-        else:
+        elif test.measure in ("heat_capacity", "weight"):
             counted += f", counted {wording.plain(test.counted)}"
         yield Convention("class test", clean(counted), clean(test.clause))
     evidence: dict[tuple[str, ...], list[str]] = {}
@@ -220,13 +220,15 @@ def _films(conv: Conventions) -> str:
 
 def _methods(conv: Conventions) -> Iterable[tuple[str, str]]:
     """Methods with their categories, those of one clause and method together."""
-    found: dict[tuple[str, float | None, tuple[str, ...], str], list[str]] = {}
+    found: dict[tuple[str, float | str | None, tuple[str, ...], str], list[str]] = {}
     for rule in conv.methods:
         key = (rule.method, rule.weight, rule.refused, rule.clause)
         found.setdefault(key, []).append(in_words(rule.category))
     for (method, weight, refused, clause), categories in found.items():
         text = wording.METHODS.get(method, wording.plain(method))
-        text += f" (weight {weight:g})" if weight is not None else ""
+        if weight is not None:
+            named = weight if isinstance(weight, str) else f"{weight:g}"
+            text += f" (weight {wording.WEIGHTS.get(named, named)})"
         if refused:
             names = ", ".join(wording.METHODS.get(name, wording.plain(name)) for name in refused)
             text += f"; not accepted: {names}"

@@ -45,11 +45,14 @@ METHODS = {
     "f_factor": "F-factor looked up",
     "iso13370_slab": "slab on ground by ISO 13370",
     "iso10077_window": "window by ISO 10077-1",
+    "iso12631_curtain_wall": "curtain wall by ISO 12631",
+    "en673_glazing": "centre of the glass by EN 673",
     "rated": "rated value",
     "sum_of_labels": "labels added up",
     "mean_thickness": "mean thickness",
     "minimum_thickness": "least thickness",
 }
+WEIGHTS = {"bre_465": "by BRE Digest 465", "table": "by the rule set's table"}
 SCOPES = {
     "new": "new building",
     "addition": "addition",

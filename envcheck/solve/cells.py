@@ -10,12 +10,17 @@ from envcheck.solve.network import plane_wall
 def material_cell(symbol: str, title: str, depth: float, material: Material) -> Resistor:
     """A depth (m) of a material: R = L/k."""
     value = plane_wall(depth, material.conductivity)
-    operands = (
-        Operand("L", depth, "length"),
-        Operand("k", material.conductivity, "conductivity"),
-    )
-    step = Step(symbol, title, "{L} / {k}", operands, value, "resistance", material.source)
-    return Resistor(symbol, title, value, (step,))
+    length, name = Operand("L", depth, "length"), "k"
+    before: tuple[Step, ...] = ()
+    if material.conversion is not None:
+        from envcheck.solve.methods.iso10456_conversion import conversion_step
+
+        name = f"{symbol}_k"
+        before = (conversion_step(name, material.title, material.conversion),)
+    k = Operand(name, material.conductivity, "conductivity")
+    source = material.source
+    step = Step(symbol, title, f"{{L}} / {{{name}}}", (length, k), value, "resistance", source)
+    return Resistor(symbol, title, value, (*before, step))
 
 
 def stated_cell(symbol: str, title: str, value: float, source: str) -> Resistor:

@@ -168,7 +168,7 @@ def _influences(
         symbol, title = layer_of(step.symbol), step.title
         if operand is not None and step.symbol not in of_layers:
             symbol, title = operand.name, _first_title(found, operand, step)
-        elif quantity == "length":
+        elif quantity == "length" and operand is not None:
             title = ""
         add(found, Influence(symbol, title, quantity, value, elasticity))
     return tuple(found.values())

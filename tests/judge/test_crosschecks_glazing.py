@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import pytest
 
+from envcheck.model.windows import Glazing, Infill, Light, Window
 from tests.judge import crosscheck_models as m
 
 SPANDREL = m.rated(0.085, shgc=None, visible_transmittance=0.0)
@@ -52,6 +53,29 @@ def test_nothing_said_of_light_is_an_error_for_a_spandrel_and_else_a_warning():
 def test_glass_doors_and_walls_are_fine(rated, category):
     kind = "window" if rated is None else "rated"
     assert not opaque(rated, category, kind=kind)
+
+
+def module(*opaque):
+    lights = tuple(
+        Light("a light", 1, dark, 1.0, 1.0, 1.0, 4.0, 1, 0.1, Infill(1.1)) for dark in opaque
+    )
+    return Window(1.0, 2.0, None, lights, ())
+
+
+def test_panels_of_a_curtain_wall_are_found():
+    (all_dark,) = opaque(None, kind="curtain-wall", window=module(True, True))
+    assert all_dark.severity == "E" and "opaque panels only" in all_dark.seen
+    (half,) = opaque(None, kind="curtain-wall", window=module(True, False))
+    assert half.severity == "W" and "50 %" in half.seen
+    assert not opaque(None, kind="curtain-wall", window=module(False, False))
+    assert not opaque(None, kind="window", window=module(True, False))
+
+
+def test_a_glazing_in_use_is_the_centre_of_glass():
+    glazing = m.assembly("GL1", kind="glazing", glazing=Glazing((0.004,), ()))
+    elements = (m.element("N-GL1", "GL1", category="fenestration.fixed"),)
+    (found,) = m.run("centre-of-glass", m.facts((glazing,), elements))
+    assert found.severity == "E" and "a glazing is stated" in found.seen
 
 
 def centre(basis, used=True):

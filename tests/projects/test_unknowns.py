@@ -74,3 +74,47 @@ def test_a_mean_waits_for_a_member_that_the_official_decides(tmp_path: Path) -> 
     (mean, _) = done.judged.groups
     assert (mean.state, mean.waits) == ("not_decided", ("the decision on R-HT1",))
     assert done.exit_status == 3
+
+
+WINDOW = """  WX: {kind: window, title: Computed window, width: 5 ft, height: 4 ft,
+       frame_width: 3 in, u_glass: 0.2 Btu/(h*ft2*degF), u_frame: 0.3 Btu/(h*ft2*degF),
+       psi: 0.03 Btu/(h*ft*degF), shgc: 0.30}
+"""
+
+
+def computed_window(tmp_path: Path, evidence: str) -> tuple[str, str]:
+    """Verdict and reason of a window from its parts, under rules that accept this evidence."""
+    rules = spoilt_rules(
+        tmp_path,
+        "merrow-2025/ruleset.yaml",
+        '"fenestration.*": [label, rating, test]',
+        f'"fenestration.*": {evidence}',
+    )
+    path = tmp_path / "p.yaml"
+    text = PERMIT.replace("assemblies:\n", f"assemblies:\n{WINDOW}", 1)
+    assert "assembly: CW1" in text
+    path.write_text(text.replace("assembly: CW1", "assembly: WX"), encoding="utf-8")
+    done = run(str(path), [rules])
+    line = next(n for n in done.judged.lines if n.element == "S-CW1" and n.metric == "U_product")
+    return line.verdict, " ".join(line.reasons)
+
+
+def test_a_computed_window_never_passes_where_a_rating_is_asked_for(tmp_path: Path) -> None:
+    verdict, why = computed_window(tmp_path / "a", "[label, rating]")
+    assert verdict == "not_decided" and "a calculation to ISO 10077-1" in why
+    verdict, why = computed_window(tmp_path / "b", '[calculation, "standard:NFRC 100"]')
+    assert verdict == "not_decided" and "computed to ISO 10077-1" in why
+    verdict, _ = computed_window(tmp_path / "c", '[calculation, "standard:ISO 10077-1:2017"]')
+    assert verdict == "pass"
+
+
+def test_a_rating_to_another_standard_never_passes_for_iso_10077(tmp_path: Path) -> None:
+    rules = spoilt_rules(
+        tmp_path,
+        "merrow-2025/ruleset.yaml",
+        '"fenestration.*": [label, rating, test]',
+        '"fenestration.*": [label, rating, test, "standard:ISO 10077-1"]',
+    )
+    done = run(str(PROJECT), [rules])
+    verdicts = {n.verdict for n in done.judged.lines if n.element == "S-CW1"}
+    assert verdicts == {"not_decided"}

@@ -16,11 +16,12 @@ from typing import Any
 
 import envcheck
 from envcheck.read.coefficient_tables import built_in
+from envcheck.read.windows import corrected_ratio
 from envcheck.solve import climate_zone, shells
 from envcheck.solve.methods import air_space as air
 from envcheck.solve.methods.air_voids import void_correction
 from envcheck.solve.methods.compressed import TABLE, installed_resistance
-from envcheck.solve.methods.en673_glazing import Gas, glazing_u, mixture
+from envcheck.solve.methods.en673_glazing import Gas, glazing_u, mixture, space_resistances
 from envcheck.solve.methods.fasteners import fastener_correction, penetration_factor
 from envcheck.solve.methods.inverted_roof import rain_correction
 from envcheck.solve.methods.iso10077_window import window_geometry, window_u
@@ -265,6 +266,23 @@ def glazing(inputs: Inputs, units: Units) -> Figures:
     return {"Ug": value}
 
 
+def coated_glazing(inputs: Inputs, units: Units) -> Figures:
+    """Equal spaces, one face of each coated; the other is uncoated glass of corrected 0.837."""
+    gas = mixture(_gases()[inputs["gas"]], _gases()["air"], inputs["gas_share"])
+    coated = inputs["normal"] * corrected_ratio(inputs["normal"])
+    spaces = inputs["spaces"]
+    panes = [inputs["pane_mm"] / 1000.0] * (spaces + 1)
+    gaps = [inputs["gap_mm"] / 1000.0] * spaces
+    return {"Ug": glazing_u(panes, gaps, [gas] * spaces, [(0.837, coated)] * spaces)}
+
+
+def window_space(inputs: Inputs, units: Units) -> Figures:
+    coated = inputs["normal"] * corrected_ratio(inputs["normal"])
+    gap = inputs["thickness_mm"] / 1000.0
+    (resistance,), _ = space_resistances([gap], [_gases()["air"]], [(0.837, coated)])
+    return {"R": resistance}
+
+
 @cache
 def _gases() -> dict[str, Gas]:
     with (DATA / "gases.csv").open(encoding="utf-8", newline="") as file:
@@ -367,6 +385,8 @@ ADAPTERS: dict[str, Callable[[Inputs, Units], Figures]] = {
     "chip": chip,
     "critical_radius": critical_radius,
     "glazing": glazing,
+    "coated_glazing": coated_glazing,
+    "window_space": window_space,
     "design_conductivity": conversion,
     "basement_wall": basement_wall,
     "edge_psi": slab_edge,

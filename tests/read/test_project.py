@@ -45,6 +45,42 @@ def shed() -> Project:
     return read_project(str(SOUND / "shed.yaml"), NAMES)
 
 
+def converted(conversion: str, declared: str = "0.035 W/(m*K)") -> tuple[Any, Any]:
+    wool = f"{{declared: {declared}, source: label, conversion: {conversion}}}"
+    project = read(f"{HEAD}  D: {{kind: rated, title: D}}\nmaterials:\n  wool: {wool}\n")
+    return project.materials["wool"], project.materials["wool"].conversion
+
+
+def test_declared_conductivity_is_converted_by_its_class() -> None:
+    # ISO 10456:2007, annex A and table 4 (from memory): boards of 0.034 and 0.036 have 0.0043 and
+    # 0.0048 per K, mineral wool 4 per share of volume. 0.035: halfway, 0.00455.
+    # 0.035 x exp(0.00455 x 10) = 0.036629; with 2 % of moisture x exp(0.08) = 0.039680.
+    wool, conversion = converted("{class: mineral_wool_board, temperature: 20 degC}")
+    assert conversion.per_kelvin == pytest.approx(0.00455)
+    assert wool.conductivity == pytest.approx(0.036629, abs=5e-7)
+    assert "annex A" in conversion.source
+    wet, _ = converted("{class: mineral_wool_board, temperature: 20 degC, moisture: 2 %}")
+    assert wet.conductivity == pytest.approx(0.039680, abs=5e-7)
+
+
+def test_stated_coefficients_stand_above_the_class() -> None:
+    wool, _ = converted(
+        "{class: eps, temperature_coefficient: 0.0043, temperature: 68 degF, source: a report}"
+    )
+    # Recomputed from the printed formula: 0.035 x exp(0.0043 x 10) = 0.0365378.
+    assert wool.conductivity == pytest.approx(0.0365378, abs=1e-7)
+    assert wool.conversion.source == "a report"
+
+
+@pytest.mark.parametrize("declared", ["0.032", "0.038"])
+def test_ends_of_the_printed_range_belong_to_it(declared: str) -> None:
+    _, conversion = converted(
+        "{class: mineral_wool_board, temperature: 0 degC}", f"{declared} W/(m*K)"
+    )
+    assert conversion.per_kelvin == {"0.032": 0.0038, "0.038": 0.0053}[declared]
+    assert conversion.conductivity < conversion.declared
+
+
 def test_head_and_site(shed: Project) -> None:
     assert shed.title == "Shed at Saltmarsh"
     assert shed.permit_application_date == date(2026, 3, 2)

@@ -10,6 +10,7 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from envcheck.solve import network
+from envcheck.solve.lights import in_series
 from envcheck.solve.methods.air_voids import void_correction
 from envcheck.solve.methods.bridges import added_by_bridge
 from envcheck.solve.methods.compressed import in_proportion
@@ -34,7 +35,7 @@ from envcheck.solve.methods.iso13370_suspended import SuspendedFloor, suspended_
 from envcheck.solve.methods.steel_framing import effective_resistance
 from envcheck.solve.methods.surface_films import convection_by_wind, surface_resistance
 from envcheck.solve.methods.tapered_pieces import Piece, drained_roof_u, tapered_triangle
-from envcheck.solve.methods.weighted import weighted
+from envcheck.solve.methods.weighted import bre_weight, weighted
 from envcheck.solve.methods.zone import zone_u, zone_width
 from tests.solve.test_invariants import few
 
@@ -54,6 +55,8 @@ FUNCTIONS: list[tuple[Callable[..., object], int]] = [
     (void_correction, 3),
     (rain_correction, 4),
     (design_conductivity, 5),
+    (in_series, 3),
+    (bre_weight, 4),
     (surface_resistance, 3),
     (convection_by_wind, 1),
     (zone_width, 2),

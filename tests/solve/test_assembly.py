@@ -8,6 +8,7 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
+from envcheck.model.conversion import Conversion
 from envcheck.model.project import (
     AirSpaceLayer,
     Bridge,
@@ -24,6 +25,7 @@ from envcheck.model.solved import Solved
 from envcheck.solve.assembly import NOT_DRAWN, TAPERED, solve
 from envcheck.solve.network import interface_temperatures, leaves
 from envcheck.solve.registry import prescribable
+from tests.changed import changed
 from tests.solve.drawn import few_walls, solved, value
 from tests.solve.samples import (
     INCH,
@@ -222,6 +224,8 @@ def test_no_method_is_said_in_the_setting_s_words() -> None:
     ("kind", "method", "words"),
     [
         ("window", "iso10077_window", "size, glass, frame and edge of the window"),
+        ("curtain-wall", "iso12631_curtain_wall", "joints of the curtain wall module"),
+        ("glazing", "en673_glazing", "panes and spaces of the glazing"),
         ("rated", "rated", "the U-factor of the whole product"),
         ("slab-on-grade", "f_factor", "insulation and heating of the slab"),
         ("slab-on-grade", "iso13370_slab", "perimeter, area, wall thickness and soil"),
@@ -327,3 +331,16 @@ def test_si_and_ip_of_one_wall() -> None:
     found = value([stated("board", R_IP)], "series", **films)
     assert found / U_IP == pytest.approx(1 / 1.85)
     assert found == pytest.approx(3.069, abs=5e-4)
+
+
+def test_a_declared_conductivity_is_converted_in_the_worksheet() -> None:
+    wet = Conversion(0.034, 0.0043, 10.0, 20.0, 4.0, 0.0, 0.02, "a table")
+    wool = changed(WOOL, conductivity=wet.conductivity, conversion=wet)
+    studs = framed("studs", 0.14, Member(WOOD, 0.038, 0.4), Fill(material=wool))
+    found = solved([plane("boards", wool, 0.05), studs], "parallel_path")
+    assert_recomputes(found.steps)
+    # Recomputed from the printed formula: 0.034 exp(0.043) exp(0.08) = 0.038450.
+    step = next(step for step in found.steps if step.symbol == "R1_k")
+    assert step.value == pytest.approx(0.038450, abs=5e-7)
+    assert "ISO 10456:2007, 7; a table" in step.source
+    assert sum(step.quantity == "conductivity" for step in found.steps) == 2

@@ -194,6 +194,8 @@ def test_method_assumed_in_words(layers: tuple[Layer, ...], method: str, words: 
         ("rated", "U_product", "rated"),
         ("window", "U_product", "iso10077_window"),
         ("window", "U_assembly", "iso10077_window"),
+        ("curtain-wall", "U_product", "iso12631_curtain_wall"),
+        ("glazing", "U_product", "en673_glazing"),
         ("slab-on-grade", "F_factor", "f_factor"),
         ("slab-on-grade", "U_assembly", "iso13370_slab"),
         ("below-grade-wall", "C_factor", "c_factor"),

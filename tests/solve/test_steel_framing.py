@@ -11,6 +11,9 @@ import pytest
 
 from envcheck.model.project import AirSpaceLayer, Fill, FramedLayer, Layer, Member, Profile
 from envcheck.model.ruleset import Conventions, TableRow
+from envcheck.read.rule_conventions import WEIGHTS as READ
+from envcheck.solve.methods.weighted import WEIGHTS, bre_weight
+from tests.changed import changed
 from tests.solve.drawn import solved
 from tests.solve.samples import (
     INCH,
@@ -162,3 +165,79 @@ def test_parallel_paths_are_no_result_for_steel() -> None:
     )
     assert found.steps == ()
     assert found.low is not None
+
+
+# ------------------------------------------------------------------------- weighted rules
+
+WALL = [plane("XPS", XPS, INCH), STUDS, GYPSUM]
+BARE = [GYPSUM, STUDS, GYPSUM]
+
+
+def test_the_reader_knows_the_weights_that_are_computed() -> None:
+    assert set(READ) == set(WEIGHTS)
+
+
+def test_weight_of_bre_digest_465_by_hand() -> None:
+    # From memory: p = 0.8 Rmin/Rmax + 0.44 - 0.1 (w/40) - 0.2 (600/s) - 0.04 (d/100). With
+    # Rmin/Rmax = 0.5, w = 40, s = 600, d = 100 mm: 0.4 + 0.44 - 0.1 - 0.2 - 0.04 = 0.5.
+    assert bre_weight(0.5, 0.040, 0.600, 0.100) == pytest.approx(0.5)
+    # w = 50, s = 400, d = 150: 0.4 + 0.44 - 0.125 - 0.3 - 0.06 = 0.355.
+    assert bre_weight(0.5, 0.050, 0.400, 0.150) == pytest.approx(0.355)
+
+
+def test_steel_studs_by_bre_digest_465() -> None:
+    found = solved(WALL, "weighted", **FILMS, weight="bre_465")
+    assert found.low is not None and found.high is not None and found.value is not None
+    upper, lower = 1 / found.low, 1 / found.high
+    p = bre_weight(lower / upper, 1.625 * INCH, SPACING, DEPTH)
+    assert 0 < p < 1
+    assert 1 / found.value == pytest.approx(p * upper + (1 - p) * lower)
+    assert_recomputes(found.steps)
+    assert "BRE Digest 465" in next(s for s in found.steps if s.symbol == "p").source
+
+
+def test_bre_digest_465_is_for_steel_studs_at_a_spacing() -> None:
+    wood = framed("studs", DEPTH, Member(WOOD, 0.038, SPACING), LABELLED)
+    found = solved([GYPSUM, wood], "weighted", weight="bre_465")
+    assert found.value is None
+    assert "one layer of steel studs at a spacing" in found.missing[0]
+
+
+def test_a_weight_that_is_no_weight_is_not_decided() -> None:
+    wide = changed(C_STUD, flange=0.15)
+    member = changed(MEMBER, width=0.15, profile=wide)
+    found = solved([framed("wide", DEPTH, member, LABELLED)], "weighted", weight="bre_465")
+    assert found.value is None and "no weight between 0 and 1" in found.missing[0]
+
+
+# Weights of Canada's National Building Code, 9.36, for steel framing (from memory): .33 without and
+# .40 with insulating sheathing below 500 mm of spacing, .50 from 500 mm on.
+NBC = Conventions(
+    tables={
+        "weights": (
+            row("weights", 0.33, spacing_up_to=0.499, continuous_insulation="no"),
+            row("weights", 0.40, spacing_up_to=0.499, continuous_insulation="yes"),
+            row("weights", 0.50, spacing_over=0.499, continuous_insulation="yes"),
+        )
+    }
+)
+
+
+@pytest.mark.parametrize(
+    ("layers", "spacing", "weight"),
+    [(BARE, SPACING, 0.33), (WALL, SPACING, 0.40), (WALL, 24 * INCH, 0.50)],
+)
+def test_weights_by_build_up(layers: list[Layer], spacing: float, weight: float) -> None:
+    studs = changed(STUDS, member=changed(MEMBER, spacing=spacing))
+    found = solved([layers[0], studs, layers[2]], "weighted", NBC, **FILMS, weight="table")
+    assert found.low is not None and found.high is not None and found.value is not None
+    expected = weight / found.low + (1 - weight) / found.high
+    assert 1 / found.value == pytest.approx(expected)
+    assert_recomputes(found.steps)
+
+
+def test_a_build_up_that_the_table_does_not_print_is_not_decided() -> None:
+    studs = changed(STUDS, member=changed(MEMBER, spacing=24 * INCH))
+    found = solved([GYPSUM, studs, GYPSUM], "weighted", NBC, weight="table")
+    assert found.value is None
+    assert "spacing 610 mm, without continuous insulation" in found.missing[0]

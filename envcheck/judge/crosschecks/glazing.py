@@ -9,7 +9,7 @@ from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.words import listed, system, trimmed
 from envcheck.model.judged import Finding, Line
 from envcheck.model.patterns import in_words
-from envcheck.model.project import Assembly, Element
+from envcheck.model.project import Assembly, Element, Window
 from envcheck.units import in_system, label
 
 OPAQUE_WORDS = ("spandrel", "opaque")
@@ -40,6 +40,8 @@ def _opaque(assembly: Assembly) -> tuple[str, str] | None:
     """Severity and what shows that no light passes; None where light does."""
     if assembly.kind == "layers":
         return "E", "is built of opaque layers"
+    if assembly.window is not None:
+        return _panels(assembly, assembly.window)
     rated = assembly.rated
     if rated is None or rated.shgc:
         return None
@@ -50,6 +52,16 @@ def _opaque(assembly: Assembly) -> tuple[str, str] | None:
     named = any(word in assembly.title.casefold() for word in OPAQUE_WORDS)
     why = "states no SHGC and no visible transmittance"
     return ("E", f"({assembly.title}) {why}") if named else ("W", why)
+
+
+def _panels(assembly: Assembly, window: Window) -> tuple[str, str] | None:
+    """Opaque panels among the lights: all of them, or a part of a curtain wall."""
+    if window.opaque:
+        return "E", "has opaque panels only"
+    if assembly.kind == "curtain-wall" and window.opaque_area:
+        share = window.opaque_area / (window.width * window.height)
+        return "W", f"has opaque panels over {share * 100:.0f} % of its module"
+    return None
 
 
 def _as_host(facts: Facts, element: Element) -> str:
@@ -77,18 +89,23 @@ def _line(facts: Facts, tag: str) -> Line | None:
 
 
 def centre_of_glass(facts: Facts) -> Iterator[Finding]:
-    """A rated product in use whose U-factor is that of the glass alone."""
+    """A product in use whose U-factor is that of the glass alone."""
     units = system(facts.project, facts.rulesets)
     uses: dict[str, list[str]] = {}
     for element in facts.project.elements.values():
         uses.setdefault(element.assembly, []).append(element.tag)
     for assembly in facts.project.assemblies.values():
         rated = assembly.rated
-        if rated is None or rated.basis != "centre_of_glass" or assembly.id not in uses:
+        alone = assembly.glazing is not None or (
+            rated is not None and rated.basis == "centre_of_glass"
+        )
+        if not alone or assembly.id not in uses:
             continue
-        value = "a value"
-        if rated.u_factor is not None:
-            shown = trimmed(in_system(rated.u_factor, "u_factor", units), 4)
+        value, stated = "a value", rated.u_factor if rated is not None else None
+        if assembly.glazing is not None:
+            value, stated = "a glazing", _centre(facts, assembly.id)
+        if stated is not None:
+            shown = trimmed(in_system(stated, "u_factor", units), 4)
             value = f"{shown} {label('u_factor', units)}"
         yield Finding(
             "centre-of-glass",
@@ -99,6 +116,12 @@ def centre_of_glass(facts: Facts) -> Iterator[Finding]:
             "frame and edge of the glass are left out; they mostly raise the value",
             "the rating of the whole product, frame included",
         )
+
+
+def _centre(facts: Facts, name: str) -> float | None:
+    """U-factor of the centre of a computed glazing."""
+    solved = facts.solved.get(name)
+    return solved.beside[0].value if solved is not None and solved.beside else None
 
 
 CHECKS = (

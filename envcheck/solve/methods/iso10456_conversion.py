@@ -2,30 +2,35 @@
 
 from __future__ import annotations
 
-from math import e
-
+from envcheck.model.conversion import Conversion, design_conductivity
+from envcheck.model.solved import Operand, Step
 from envcheck.solve.registry import Method
 
+__all__ = ["METHODS", "conversion_step", "design_conductivity"]
+SOURCE = "ISO 10456:2007, 7"
 
-def design_conductivity(
-    declared: float,
-    temperature_coefficient: float = 0.0,
-    temperature_difference: float = 0.0,
-    moisture_coefficient: float = 0.0,
-    moisture_difference: float = 0.0,
-) -> float:
-    """Design conductivity: k2 = k1 exp(fT (T2 - T1)) exp(f_psi (psi2 - psi1)).
 
-    declared: k1, W/(m K). temperature_coefficient: fT, 1/K; difference T2 - T1, K.
-    moisture_coefficient: f_psi, m3/m3; difference psi2 - psi1, m3/m3 (likewise by mass). Any
-    shape. Returns W/(m K). Source: ISO 10456:2007, 7.
-    """
-    power = (
-        temperature_coefficient * temperature_difference
-        + moisture_coefficient * moisture_difference
+def conversion_step(symbol: str, title: str, conversion: Conversion) -> Step:
+    """The step from the declared conductivity of a material to that of the design."""
+    operands = (
+        Operand("k_d", conversion.declared, "conductivity"),
+        Operand("f_T", conversion.per_kelvin, "number"),
+        Operand("T_2", conversion.temperature, "temperature"),
+        Operand("T_1", conversion.declared_temperature, "temperature"),
+        Operand("f_m", conversion.per_moisture, "number"),
+        Operand("m_2", conversion.moisture, "number"),
+        Operand("m_1", conversion.declared_moisture, "number"),
     )
-    factor: float = e**power
-    return declared * factor
+    return Step(
+        symbol,
+        f"design conductivity of {title}",
+        "{k_d} * exp({f_T} * ({T_2} - {T_1})) * exp({f_m} * ({m_2} - {m_1}))",
+        operands,
+        conversion.conductivity,
+        "conductivity",
+        f"{SOURCE}; {conversion.source}",
+        si_only=True,
+    )
 
 
 METHODS = (
@@ -33,7 +38,7 @@ METHODS = (
         name="iso10456_conversion",
         title="Declared to design conductivity",
         formula="k2 = k1 exp(fT (T2 - T1)) exp(f_psi (psi2 - psi1))",
-        source="ISO 10456:2007, 7",
-        valid="the material and range for which the coefficients were published",
+        source=SOURCE,
+        valid="the material, conductivity and moisture for which the coefficients were published",
     ),
 )
