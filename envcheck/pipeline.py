@@ -258,7 +258,8 @@ def extras(run: Run, subject: str) -> Extras:
         if solved is None or subject not in (line.element, solved.assembly):
             continue
         assembly = run.project.assemblies[solved.assembly]
-        if assembly.kind != "layers" or solved.setting.metric != "U_assembly":
+        done = (assembly.id, solved.setting) in surfaces
+        if done or assembly.kind != "layers" or solved.setting.metric != "U_assembly":
             continue
         conventions = run.rulesets[line.ruleset].conventions
         try:
