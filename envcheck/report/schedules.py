@@ -212,6 +212,9 @@ def _bridge(owner: str, sheet: str, bridge: Bridge, system: str) -> tuple[str, .
     quantity = "linear_transmittance" if linear else "point_transmittance"
     letter = "psi" if linear else "chi"
     value = numbers.significant(numbers.in_system(bridge.value, quantity, system), 4)
+    shown = f"{letter} {value} {units.label(quantity, system)}"
+    if bridge.detail is not None:
+        shown = f"{letter} of the detail {bridge.detail.id}, in the worksheet"
     return tuple(
         map(
             clean,
@@ -219,7 +222,7 @@ def _bridge(owner: str, sheet: str, bridge: Bridge, system: str) -> tuple[str, .
                 owner,
                 sheet,
                 bridge.title,
-                f"{letter} {value} {units.label(quantity, system)}",
+                shown,
                 _amount(bridge, system),
                 ", ".join(filter(None, (bridge.source, bridge.evidence))) or "no source",
             ),

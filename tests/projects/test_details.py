@@ -131,6 +131,16 @@ def test_the_page_of_a_plain_wall_has_its_factor(
     assert "layers in series" in text
 
 
+def test_the_list_of_bridges_names_the_detail(
+    tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    (tmp_path / "p.yaml").write_text(CORNER, encoding="utf-8")
+    main(["check", str(tmp_path / "p.yaml"), "--rules", RULES[0], "--format", "html"])
+    text = capsys.readouterr().out
+    assert "psi of the detail D1, in the worksheet" in text
+    assert "psi 0 W" not in text
+
+
 def test_framed_and_other_assemblies_say_what_they_can(
     capsys: pytest.CaptureFixture[str],
 ) -> None:
