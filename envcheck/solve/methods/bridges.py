@@ -3,11 +3,15 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from typing import TYPE_CHECKING
 
 from envcheck.model.project import Bridge
 from envcheck.model.solved import Operand, Step
 from envcheck.solve.methods.fasteners import Correction
 from envcheck.solve.registry import Method
+
+if TYPE_CHECKING:
+    from envcheck.model.details import Detail
 
 UNCONFIRMED = ("", "assumed")
 """Kinds of evidence that decide nothing."""
@@ -33,7 +37,9 @@ def correct_for_bridges(
     bound (loads numpy and scipy). A bridge without a confirmed source, or without the
     area it needs, is named as missing and not counted.
     """
-    steps, missing, unsure = [], [], 0.0
+    steps: list[Step] = []
+    missing: list[str] = []
+    unsure = 0.0
     for number, bridge in enumerate(bridges, 1):
         name = "psi" if bridge.kind == "line" else "chi"
         if bridge.evidence in UNCONFIRMED:
@@ -41,32 +47,24 @@ def correct_for_bridges(
         elif not bridge.per_area and not area:
             missing.append(f"the area that the bridge {bridge.title!r} belongs to")
         elif bridge.detail is not None:
-            try:
-                made, spread = _from_detail(f"{prefix}{number}", bridge, area)
-            except _NotSolved as why:
-                missing.append(f"psi of the detail {bridge.detail.id!r}: {why}")
-            else:
-                steps += made
-                unsure += spread
+            drawn = _from_detail(f"{prefix}{number}", bridge, bridge.detail, area)
+            steps += drawn.steps
+            missing += drawn.missing
+            unsure += drawn.unsure
         else:
             steps.append(_step(f"{prefix}{number}", bridge, area))
     value = sum(step.value for step in steps if step.symbol.startswith(prefix))
     return Correction(value, tuple(steps), tuple(missing), (), unsure)
 
 
-class _NotSolved(Exception):
-    """Why a detail gives no psi."""
-
-
-def _from_detail(symbol: str, bridge: Bridge, area: float | None) -> tuple[list[Step], float]:
-    """The steps that lead to an addend from a drawing, and how much less the addend may be."""
+def _from_detail(symbol: str, bridge: Bridge, detail: Detail, area: float | None) -> Correction:
+    """An addend from a drawing with the steps that lead to it."""
     from envcheck.solve.detail import SOURCE, NotSolved, solve_detail
 
-    assert bridge.detail is not None, "called for bridges with a detail"
     try:
-        found = solve_detail(bridge.detail)
+        found = solve_detail(detail)
     except NotSolved as why:
-        raise _NotSolved(str(why)) from why
+        return Correction(0.0, missing=(f"psi of the detail {detail.id!r}: {why}",))
     psi = Step(
         f"psi_{symbol.removeprefix('dU_')}",
         f"psi of the detail {found.detail}, high bound ({found.note})",
@@ -89,7 +87,7 @@ def _from_detail(symbol: str, bridge: Bridge, area: float | None) -> tuple[list[
     addend = _step(symbol, bridge._replace(value=psi.value), area, psi.symbol)
     whole = 1.0 if bridge.per_area else area or 1.0
     spread = added_by_bridge(found.psi_high - found.psi_low, bridge.amount, whole)
-    return [psi, addend], spread
+    return Correction(addend.value, (psi, addend), unsure=spread)
 
 
 def total_step(symbol: str, clear: Operand, additions: Sequence[Step]) -> Step:
