@@ -16,7 +16,7 @@ from envcheck.solve.field.bound import (
 )
 from envcheck.solve.field.outline import Cells, Outline, cells_of, check_outline, first_outline_grid
 from envcheck.solve.field.outline_networks import Lower, Upper, indicators, lower, upper
-from envcheck.solve.field.section import Grid
+from envcheck.solve.field.section import Grid, ModelError
 
 
 class OutlineBounds(NamedTuple):
@@ -57,6 +57,12 @@ def bound_outline(
     Errors: ModelError for a detail that cannot be meant, SolveError where a balance does not close.
     """
     check_outline(outline)
+    drawn = first_outline_grid(outline)
+    if drawn.nodes > most_nodes:
+        raise ModelError(
+            f"the lines of the drawing cross in {drawn.nodes} nodes, more than {most_nodes}: line "
+            "up edges that are meant to lie on one line"
+        )
 
     def solve(grid: Grid) -> Solution[Upper, Lower]:
         cells = cells_of(outline, grid)
@@ -69,7 +75,7 @@ def bound_outline(
 
         return Solution(above, below, scores)
 
-    end = refine(first_outline_grid(outline), solve, tolerance, most_rounds, most_nodes)
+    end = refine(drawn, solve, tolerance, most_rounds, most_nodes)
     return OutlineBounds(
         end.low,
         end.high,

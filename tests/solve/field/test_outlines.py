@@ -260,5 +260,7 @@ def test_sizes_and_films_must_be_there() -> None:
         bound_outline(of._replace(kinds=(of.kinds[0], of.kinds[1]._replace(film=0.0))))
     with pytest.raises(ModelError, match="do not match"):
         bound_outline(of._replace(heights=(0.1, 1.0)))
+    with pytest.raises(ModelError, match="nodes, more than 20"):
+        bound_outline(of, most_nodes=20)
     with pytest.raises(ModelError, match="solid and air"):
         bound_outline(of._replace(airs=((0, 0, 0),) * 3))
