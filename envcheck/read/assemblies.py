@@ -7,15 +7,15 @@ from envcheck.model.project import (
     Bridge,
     Declared,
     Fasteners,
+    Glazing,
     Layer,
     Material,
     Rated,
     Slab,
+    Window,
 )
 from envcheck.read.context import MATCHES, NAN, Context
-from envcheck.read.conversions import read_conversion
 from envcheck.read.layers import read_layers
-from envcheck.read.windows import read_glazing, read_window
 from envcheck.read.yaml_reader import Entry
 
 _BY_PARTS = ("window", "curtain-wall")
@@ -40,6 +40,8 @@ def read_material(context: Context, name: str, entry: Entry) -> Material:
         hint = "it belongs beside 'resistance'"
         context.out_of_place(entry, ("thickness",), f"{where} with a conductivity", hint)
     elif kind == "declared":
+        from envcheck.read.conversions import read_conversion  # few projects convert
+
         conversion = read_conversion(context, entry, where)
         conductivity = conversion.conductivity if conversion is not None else NAN
         hint = "it belongs beside 'resistance'"
@@ -79,14 +81,26 @@ def read_assembly(context: Context, name: str, entry: Entry) -> Assembly:
         layers=layers,
         fasteners=tuple(_fasteners(context, f, layers) for f in entry.get("fasteners", ())),
         bridges=tuple(_bridge(context, bridge) for bridge in entry.get("bridges", ())),
-        window=read_window(context, entry) if kind in _BY_PARTS else None,
+        window=_window(context, entry) if kind in _BY_PARTS else None,
         rated=_rated(context, entry) if kind == "rated" else None,
         slab=_slab(context, entry) if kind == "slab-on-grade" else None,
         outside_film=_film(context, entry, "outside_film"),
         inside_film=_film(context, entry, "inside_film"),
         shgc=_plain(entry, "shgc") if kind in _BY_PARTS else None,
-        glazing=read_glazing(context, entry) if kind == "glazing" else None,
+        glazing=_glazing(context, entry) if kind == "glazing" else None,
     )
+
+
+def _window(context: Context, entry: Entry) -> Window:
+    from envcheck.read.windows import read_window  # most projects state rated products
+
+    return read_window(context, entry)
+
+
+def _glazing(context: Context, entry: Entry) -> Glazing:
+    from envcheck.read.windows import read_glazing
+
+    return read_glazing(context, entry)
 
 
 def _film(context: Context, entry: Entry, key: str) -> float | None:
