@@ -178,6 +178,20 @@ KINDS = (
         "A known unit of the wrong quantity, such as a conductivity for a U-factor.",
     ),
     Kind(
+        "bad-range",
+        "this is no range of a value",
+        "{hint}",
+        "A range is a value, +- (or ±), and half its width in the same unit or in per cent; its "
+        "low end is above zero.",
+    ),
+    Kind(
+        "range-not-here",
+        "no range can be stated here",
+        "{hint}",
+        "Ranges are for the conductivity of a material, the thickness of a layer of one "
+        "material, and the resistance of a layer or contact.",
+    ),
+    Kind(
         "comma-decimal",
         "a comma in a number",
         "{hint}",

@@ -79,6 +79,13 @@ KINDS = (
         "may take the rest.",
     ),
     Kind(
+        "no-class-band",
+        "the material {name!r} has no range by its class",
+        "{hint}",
+        "A range by class needs a class of the table of classes, and a conductivity inside its "
+        "band.",
+    ),
+    Kind(
         "needs-one-of",
         "{where} needs exactly one of {keys}",
         "{hint}",

@@ -112,7 +112,8 @@ def judge_lines(
 
 def undecided_by_bracket(line: Line) -> bool:
     """Whether the limit lies inside a bracket that decides."""
-    return line.verdict == "too_close"
+    solved = line.solved
+    return line.verdict == "too_close" and solved is not None and solved.decided_by_bracket
 
 
 def hangs_on_bracket(line: Line) -> bool:

@@ -32,8 +32,11 @@ def amount(element: Element, metric: str) -> float | None:
 
 
 def deciding_value(line: Line) -> float | None:
-    """The value that decides, unrounded, SI: of a bracket that decides its high end."""
+    """The value that decides, unrounded, SI: of a bracket that decides its high end, likewise of
+    the interval from stated ranges."""
     solved = line.solved
+    if solved is not None and solved.ranged is not None:
+        return solved.ranged.high
     if solved is not None:
         return solved.high if solved.decided_by_bracket else solved.value
     own = line.comparison

@@ -30,6 +30,7 @@ BETWEEN_BRIDGES = (
     "the limit lies between the bounds of its bridges from drawn details: over it by the high "
     "bound, within it by the low one"
 )
+IN_RANGE = "the limit lies inside the interval that follows from the stated ranges"
 PATH_STATES = {"not_available": " not available", "not_decided": " not decided"}
 
 
@@ -95,7 +96,7 @@ def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Lin
     if missing is None and solved is not None and solved.missing:
         missing = f"missing: {solved.missing[0]}"
     if missing is None and solved is not None and solved.decided_by_bracket:
-        return _by_bracket(case, line, limit, solved)
+        return _with_range(case, _by_bracket(case, line, limit, solved), limit, solved)
     value = value_of(limit.metric, case.assembly, solved)
     if missing is None and value is None:
         missing = f"missing: {_named(limit.metric)} of {case.assembly.id}"
@@ -121,6 +122,7 @@ def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Lin
         paths=(own, labels) if labels is not None else (),
         reasons=reasons,
     )
+    line = _with_range(case, line, limit, solved)
     return _with_bracket(case, line, limit, solved)
 
 
@@ -129,6 +131,25 @@ def _within_bounds(case: Case, value: float, limit: Limit, solved: Solved | None
     if solved is None or not solved.unsure:
         return False
     return compare(value - solved.unsure, own_term(limit), limit, case.ruleset).within
+
+
+def _with_range(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Line:
+    """Hold both ends of the interval from stated ranges against the limit.
+
+    Where the limit lies inside it nobody can say whether the value meets it, unless another path
+    carries the line.
+    """
+    if solved is None or solved.ranged is None or limit.metric != solved.setting.metric:
+        return line
+    term = own_term(limit)
+    low = compare(solved.ranged.low, term, limit, case.ruleset)
+    high = compare(solved.ranged.high, term, limit, case.ruleset)
+    line = line._replace(range_low=low, range_high=high)
+    by_labels = any(path.path == "insulation" and path.state == "pass" for path in line.paths)
+    if low.within == high.within or by_labels or line.verdict not in ("pass", "fail", "too_close"):
+        return line
+    reasons = tuple(reason for reason in line.reasons if not reason.startswith("both bounds"))
+    return line._replace(verdict="too_close", reasons=(IN_RANGE, *reasons))
 
 
 def _outcome(

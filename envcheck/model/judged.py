@@ -92,6 +92,9 @@ class Line(NamedTuple):
     low: Comparison | None = None
     """Ends of the bracket, compared likewise."""
     high: Comparison | None = None
+    range_low: Comparison | None = None
+    """Ends of the interval from stated ranges, compared likewise."""
+    range_high: Comparison | None = None
     paths: tuple[PathResult, ...] = ()
     trail: tuple[Choice, ...] = ()
     flags: tuple[str, ...] = ()

@@ -8,10 +8,13 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, NamedTuple
 
+from envcheck.model.conversion import Conversion
+
 if TYPE_CHECKING:
     from envcheck.model.details import Detail
 
-from envcheck.model.conversion import Conversion
+Span = tuple[float, float]
+"""Low and high end of a stated range, SI."""
 
 
 class Material(NamedTuple):
@@ -34,6 +37,8 @@ class Material(NamedTuple):
     combustible: bool = False
     conversion: Conversion | None = None
     """How the conductivity follows from a declared one; None where it is stated as it counts."""
+    span: Span | None = None
+    """Stated range of the conductivity, W/(m K)."""
 
 
 class Profile(NamedTuple):
@@ -65,6 +70,8 @@ class MaterialLayer(NamedTuple):
     material: Material
     thickness: float
     """m"""
+    span: Span | None = None
+    """Stated range of the thickness, m."""
 
 
 class ResistanceLayer(NamedTuple):
@@ -81,6 +88,8 @@ class ResistanceLayer(NamedTuple):
     """Names class, density and specific heat where they matter."""
     source: str
     evidence: str
+    span: Span | None = None
+    """Stated range of the resistance, m2 K/W."""
 
 
 class ContactLayer(NamedTuple):
@@ -92,6 +101,8 @@ class ContactLayer(NamedTuple):
     resistance: float
     """m2 K/W"""
     source: str
+    span: Span | None = None
+    """Stated range of the resistance, m2 K/W."""
 
 
 class AirSpaceLayer(NamedTuple):

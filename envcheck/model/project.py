@@ -337,6 +337,8 @@ class Project:
     options: Options
     accepted: tuple[tuple[str, str], ...] = ()
     """Findings that the project answers: (finding id and tag, the answer)."""
+    ranged: bool = False
+    """Some value of it is stated with a range."""
     sha256: str = ""
     details: dict[str, Detail] = field(default_factory=dict)
     """Drawn junctions, by id."""

@@ -150,6 +150,15 @@ class Face(NamedTuple):
     greatest: float
 
 
+class Drawn(NamedTuple):
+    """The section that was solved."""
+
+    widths: tuple[float, ...]
+    """m, along the wall; neighbours of the same conductivities are one"""
+    rows: tuple[tuple[str, float, tuple[float, ...]], ...]
+    """Outside first: symbol of the layer, depth in m, conductivity of each column in W/(m K)."""
+
+
 class Reasons(NamedTuple):
     """Why a value is what it is."""
 
@@ -159,6 +168,7 @@ class Reasons(NamedTuple):
     influences: tuple[Influence, ...]
     faces: tuple[Face, ...] = ()
     """Of a drawn section, outside first."""
+    section: Drawn | None = None
 
 
 class Caution(NamedTuple):
@@ -199,6 +209,26 @@ class Setting(NamedTuple):
     framing_share_from: str = ""
 
 
+class RangedInput(NamedTuple):
+    """A number that is stated with a range, SI."""
+
+    quantity: str
+    """``conductivity``, ``length`` (a thickness) or ``resistance``"""
+    title: str
+    low: float
+    high: float
+
+
+class RangedValue(NamedTuple):
+    """The interval of the value that follows from stated ranges, SI."""
+
+    low: float
+    high: float
+    inputs: tuple[RangedInput, ...]
+    proven: bool
+    """Whether both ends enclose every choice in between; see ``solve.ranges``."""
+
+
 class Solved(NamedTuple):
     """The answer for one assembly under one setting."""
 
@@ -230,6 +260,8 @@ class Solved(NamedTuple):
     """The shortest sum that a reviewer can repeat; usually one step."""
     added: float = 0.0
     """What fasteners, points and lines add, as far as it is known, W/(m2 K)."""
+    ranged: RangedValue | None = None
+    """Where the assembly states ranges: the value at both ends."""
     drawn: Reasons | None = None
     """Of the drawn section, where it was solved in two dimensions."""
     unsure: float = 0.0

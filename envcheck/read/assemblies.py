@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from envcheck.errors import did_you_mean, one_of
+from envcheck.model.layers import Span
 from envcheck.model.project import (
     Assembly,
     Bridge,
@@ -31,12 +33,12 @@ def read_material(context: Context, name: str, entry: Entry) -> Material:
     """Read a material: a conductivity, a declared one to convert, or R for a thickness."""
     where = f"material {name!r}"
     kind = context.exactly_one(entry, ("conductivity", "resistance", "declared"), where)
-    conductivity, conversion = NAN, None
+    conductivity, conversion, span = NAN, None, None
     if kind != "declared":
         hint = "it belongs beside 'declared'"
         context.out_of_place(entry, ("conversion",), f"{where} without a declared value", hint)
     if kind == "conductivity":
-        conductivity = context.positive(entry, "conductivity", "conductivity")
+        conductivity, span = context.ranged(entry, "conductivity", "conductivity")
         hint = "it belongs beside 'resistance'"
         context.out_of_place(entry, ("thickness",), f"{where} with a conductivity", hint)
     elif kind == "declared":
@@ -53,6 +55,8 @@ def read_material(context: Context, name: str, entry: Entry) -> Material:
         else:
             hint = ", the thickness that the resistance is stated for"
             context.add("missing-key", entry.line, key="thickness", where=where, hint=hint)
+    if "range" in entry:
+        span = _class_band(context, name, entry, conductivity, span)
     return Material(
         id=name,
         title=entry.get("title", name),
@@ -64,7 +68,36 @@ def read_material(context: Context, name: str, entry: Entry) -> Material:
         evidence=context.evidence(entry),
         combustible=entry.get("combustible", False),
         conversion=conversion,
+        span=span,
     )
+
+
+def _class_band(
+    context: Context, name: str, entry: Entry, conductivity: float, stated: Span | None
+) -> Span | None:
+    """The band of the material's class as its range, W/(m K)."""
+    from envcheck.read.materials import rows  # few projects ask for it
+
+    context.ranges = True
+    row = rows("material_classes").get(entry.get("class", ""))
+    line = entry.lines["range"]
+    if stated is not None:
+        found, expected = "both +- and range", "one of them"
+        hint = "keep the range that the source states, and leave out 'range'"
+    elif row is None:
+        stands = entry.get("class", "")
+        found, expected = stands or "no class", one_of(rows("material_classes"))
+        meant = did_you_mean(stands, rows("material_classes")) if stands else ""
+        hint = meant or "add the 'class' of the material"
+    else:
+        low, high = float(row["low"]), float(row["high"])
+        if not conductivity < low and not conductivity > high:
+            return low, high
+        found = f"{conductivity:.4g} W/(m*K)"
+        expected = f"{low:g} to {high:g} W/(m*K), the band of class {entry['class']!r}"
+        hint = "check conductivity and class, or state the range with +-"
+    context.add("no-class-band", line, name=name, found=found, expected=expected, hint=hint)
+    return None
 
 
 def read_assembly(context: Context, name: str, entry: Entry) -> Assembly:

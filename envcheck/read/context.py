@@ -12,12 +12,13 @@ from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
 from envcheck.errors import Problem, did_you_mean, one_of, problem
+from envcheck.model.layers import Span
 from envcheck.model.names import Names
 from envcheck.model.project import Material
 from envcheck.read.dates import read_date
 from envcheck.read.materials import library_material, material_ids
 from envcheck.read.yaml_reader import Entry
-from envcheck.units import UNITS, UnitError, parse
+from envcheck.units import UNITS, UnitError, parse, states_range
 
 if TYPE_CHECKING:
     from envcheck.model.details import Detail
@@ -40,6 +41,8 @@ class Context:
         self.used: dict[str, Material] = {}
         self.details: dict[str, Detail] = {}
         self.detail_ids: frozenset[str] = frozenset()
+        self.ranges = False
+        """Whether some value of the file is stated with a range."""
 
     def add(self, kind: str, line: int | None, **fill: Any) -> None:
         """Note a problem."""
@@ -52,15 +55,32 @@ class Context:
         try:
             return parse(entry[key], quantity)
         except UnitError as error:
-            self.add(
-                error.kind,
-                entry.lines[key],
-                found=error.found,
-                expected=error.expected,
-                fix=error.fix,
-                hint="",
-            )
+            self._unit_problem(entry, key, error)
             return NAN
+
+    def ranged(self, entry: Entry, key: str, quantity: str) -> tuple[float, Span | None]:
+        """Read a positive quantity that may carry a range; NaN and None after a problem."""
+        if not states_range(entry[key]):
+            return self.positive(entry, key, quantity), None
+        from envcheck.units.ranges import parse_range
+
+        self.ranges = True
+        try:
+            value, low, high = parse_range(entry[key], quantity)
+        except UnitError as error:
+            self._unit_problem(entry, key, error)
+            return NAN, None
+        return value, (low, high)
+
+    def _unit_problem(self, entry: Entry, key: str, error: UnitError) -> None:
+        self.add(
+            error.kind,
+            entry.lines[key],
+            found=error.found,
+            expected=error.expected,
+            fix=error.fix,
+            hint="",
+        )
 
     def not_negative(self, entry: Entry, key: str, quantity: str) -> float:
         """Read a quantity that may be zero; NaN after a problem."""

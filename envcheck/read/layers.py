@@ -20,6 +20,7 @@ from envcheck.read.context import Context
 from envcheck.read.fills import read_air_space, read_cell
 from envcheck.read.framing import read_framed, with_crossed_insulation
 from envcheck.read.yaml_reader import Entry
+from envcheck.units import states_range
 
 
 def read_layers(context: Context, entries: list[Any]) -> tuple[Layer, ...]:
@@ -32,32 +33,39 @@ def read_layers(context: Context, entries: list[Any]) -> tuple[Layer, ...]:
 
 def _material(context: Context, entry: Entry) -> Layer:
     material = context.material(entry)
-    thickness = context.positive(entry, "thickness", "length")
+    thickness, span = context.ranged(entry, "thickness", "length")
     title = entry.get("title") or material.title
-    return MaterialLayer("material", title, entry.line, material, thickness)
+    return MaterialLayer("material", title, entry.line, material, thickness, span)
 
 
 def _resistance(context: Context, entry: Entry) -> Layer:
     material = context.material(entry) if "material" in entry else None
+    if states_range(entry["resistance"]):
+        resistance, span = context.ranged(entry, "resistance", "resistance")
+    else:
+        resistance, span = context.not_negative(entry, "resistance", "resistance"), None
     return ResistanceLayer(
         "resistance",
         entry.get("title") or (material.title if material else "stated resistance"),
         entry.line,
-        context.not_negative(entry, "resistance", "resistance"),
+        resistance,
         context.optional(entry, "thickness", "length") or 0.0,
         material,
         entry.get("source", ""),
         context.evidence(entry),
+        span,
     )
 
 
 def _contact(context: Context, entry: Entry) -> Layer:
+    resistance, span = context.ranged(entry, "resistance", "resistance")
     return ContactLayer(
         "contact",
         entry.get("title", "contact"),
         entry.line,
-        context.positive(entry, "resistance", "resistance"),
+        resistance,
         entry.get("source", ""),
+        span,
     )
 
 

@@ -171,6 +171,7 @@ def _build(context: Context, sections: _Sections, digest: str) -> Project:
         ),
         options=read_options(context, sections.whole("options")),
         accepted=read_answers(context, [entry for _, entry in sections.items("answers")]),
+        ranged=context.ranges,
         sha256=digest,
         lines=dict(sections.data.lines),
     )

@@ -18,6 +18,7 @@ def blocks(each: AssemblyView) -> tuple[Block, ...]:
         ("value", value),
         ("missing", "; ".join(each.missing)),
         ("bounds", each.bracket),
+        ("by stated ranges", each.ranges),
         ("films", "; ".join(each.films)),
         ("assumed", "; ".join(each.assumptions)),
     )

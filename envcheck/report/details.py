@@ -8,7 +8,7 @@ from typing import NamedTuple
 from envcheck import units
 from envcheck.model.judged import Line
 from envcheck.model.project import Assembly, Project
-from envcheck.model.solved import Beside, Solved
+from envcheck.model.solved import Beside, RangedInput, Solved
 from envcheck.report import layers, numbers, wording, workings
 from envcheck.report.inert import clean
 from envcheck.report.layers import LayerView
@@ -43,6 +43,8 @@ class AssemblyView(NamedTuple):
     unit: str
     missing: tuple[str, ...]
     bracket: str
+    ranges: str
+    """What stated ranges of its inputs make of the value; empty without any."""
     beside: tuple[BesideView, ...]
     films: tuple[str, ...]
     layers: tuple[LayerView, ...]
@@ -109,6 +111,7 @@ def assembly_view(
         unit=numbers.unit(metric, system),
         missing=tuple(map(clean, solved.missing)),
         bracket=bracket(solved, system),
+        ranges=ranges(solved, system),
         beside=tuple(_beside(beside, solved, system) for beside in solved.beside),
         films=_films(solved, system) if assembly.layers else (),
         layers=tuple(
@@ -138,6 +141,28 @@ def bracket(solved: Solved, system: str) -> str:
     low, high = numbers.interval(ends[0], ends[1], numbers.decimals(metric, system))
     width = f", {numbers.percent(solved.high / solved.low - 1.0)} apart" if solved.low else ""
     return f"{low} to {high}{width}" + (f"; {note}" if note else "")
+
+
+def ranges(solved: Solved, system: str) -> str:
+    """The interval that follows from stated ranges, and which these are."""
+    found = solved.ranged
+    if found is None:
+        return ""
+    metric = solved.setting.metric
+    quantity = numbers.quantity(metric)
+    ends = [numbers.in_system(end, quantity, system) for end in (found.low, found.high)]
+    low, high = numbers.interval(ends[0], ends[1], numbers.decimals(metric, system))
+    inputs = "; ".join(_input(each, system) for each in found.inputs)
+    proven = "" if found.proven else f"; {wording.NOT_PROVEN}"
+    return clean(f"{low} to {high} for {inputs}{proven}")
+
+
+def _input(each: RangedInput, system: str) -> str:
+    quantity = "thickness" if each.quantity == "length" else each.quantity
+    word, unit = wording.plain(quantity), units.label(quantity, system)
+    ends = (numbers.in_system(end, quantity, system) for end in (each.low, each.high))
+    low, high = (numbers.significant(end, 4) for end in ends)
+    return f"{word} of {each.title} {low} to {high} {unit}"
 
 
 def _declared(assembly: Assembly) -> str:

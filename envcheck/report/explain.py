@@ -217,8 +217,9 @@ def _reasons(
     """Why the value is what it is, and why that of the drawn section is."""
     made = []
     u_factor = solved.value if solved.setting.metric == "U_assembly" else None
+    added = 1.0 - solved.clear / solved.value if solved.clear and solved.value else 0.0
     if found is not None:
-        parts = reasons.blocks(assembly, found, u_factor, system, solved.counted)
+        parts = reasons.blocks(assembly, found, u_factor, system, solved.counted, added)
         made.append(Section(f"Why it is what it is, by {method}", parts))
     if solved.drawn is not None:
         heading = "Why it is what it is, in the drawn section"

@@ -125,6 +125,10 @@ def notes(line: Line) -> tuple[str, ...]:
     if own is not None:
         word = "within" if own.within else "over"
         found.append(f"alone it would be {word}: {compared(own)} against {limit_number(own)}")
+    if line.range_low is not None and line.range_high is not None:
+        ends = f"{compared(line.range_low)} to {compared(line.range_high)}"
+        against = limit_number(line.range_high)
+        found.append(f"by the stated ranges of its inputs {ends} against {against}")
     if line.with_exception:
         found.append(f"claimed exception: {line.with_exception}")
     return tuple(map(clean, found))

@@ -23,6 +23,10 @@ AT_LIMIT = ", at its limit"
 ROUNDED_TO_LIMIT = ", rounded to its limit"
 ON_METHOD = "the verdict hangs on the method"
 WITHIN_BY_METHOD = "by the method that decides here; another may give another verdict"
+NOT_PROVEN = (
+    "both ends are solved; between them nothing is proven, since a thicker layer of a section may "
+    "also spread heat along it"
+)
 METRICS = {
     "U_assembly": "U-factor of the assembly",
     "U_product": "U-factor of the whole product",

@@ -17,7 +17,7 @@ from envcheck.solve.methods.crossed import count_crossed
 from envcheck.solve.methods.fasteners import Correction, correct_for_fasteners
 from envcheck.solve.methods.framed import is_metal
 from envcheck.solve.methods.tapered import taper
-from envcheck.solve.methods.weighted import weighted
+from envcheck.solve.methods.weighted import HIGHEST_RATIO, weighted
 from envcheck.solve.registry import (
     Context,
     Decision,
@@ -254,10 +254,18 @@ def _bracket(
     beside = (
         Beside("parallel_path", low + added, "parallel paths of the drawn pieces"),
         Beside("isothermal_planes", high + added, "isothermal planes of the drawn pieces"),
-        Beside("combined", combined + added, "mean of both resistances (ISO 6946)"),
+        Beside("combined", combined + added, _on_mean(high / low)),
     )
     note = "parallel paths to isothermal planes of the same drawn pieces"
     return low + added, high + added, note, beside
+
+
+def _on_mean(ratio: float) -> str:
+    """What stands beside the mean of both wirings; ISO 6946:2017, 6.7.2.1 limits their ratio."""
+    words = "mean of both resistances (ISO 6946"
+    if ratio <= HIGHEST_RATIO:
+        return f"{words})"
+    return f"{words}, which excludes it here: the wirings differ by a factor of {ratio:.2f})"
 
 
 def _missing(assembly: Assembly, setting: Setting, words: str) -> Solved:

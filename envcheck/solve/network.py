@@ -45,6 +45,11 @@ def plane_wall(thickness: float, conductivity: float) -> float:
     return thickness / conductivity
 
 
+def is_nothing(resistance: float) -> bool:
+    """Whether a single resistance is 0; an array is taken to resist."""
+    return isinstance(resistance, (int, float)) and resistance == 0
+
+
 def in_series(title: str, parts: Iterable[Node]) -> Series:
     """Connect nodes one behind another."""
     nodes = tuple(parts)
@@ -54,12 +59,13 @@ def in_series(title: str, parts: Iterable[Node]) -> Series:
 def in_parallel(title: str, branches: Iterable[tuple[float, Node]]) -> Parallel:
     """Connect nodes side by side, each with its share of the area.
 
-    A branch without any resistance shorts the others: the result is 0.
+    A branch without any resistance shorts the others: the result is 0. Resistances may be arrays,
+    all of them above 0.
     """
     pairs = tuple(branches)
     shares = tuple(share for share, _ in pairs)
     nodes = tuple(node for _, node in pairs)
-    if any(share > 0 and node.value == 0 for share, node in pairs):
+    if any(is_nothing(node.value) and share > 0 for share, node in pairs):
         return Parallel(title, shares, nodes, 0.0)
     return Parallel(title, shares, nodes, parallel(shares, [node.value for node in nodes]))
 

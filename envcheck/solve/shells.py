@@ -1,12 +1,14 @@
 """Curved walls and films: resistances of cylinders, spheres, convection and contact, in K/W.
 
 Assumptions of every function: steady state, no heat generated inside, one-dimensional radial
-flow, constant conductivity. Arguments are floats in SI.
+flow, constant conductivity. Arguments are floats or arrays in SI, of any shape that broadcasts.
 """
 
 from __future__ import annotations
 
-from math import log, pi
+from math import pi
+
+from envcheck.solve.elementary import least, ln
 
 
 def cylinder_resistance(
@@ -20,7 +22,7 @@ def cylinder_resistance(
     """
     _shell(r_in, r_out, conductivity)
     _above_zero("length", length)
-    return log(r_out / r_in) / (2.0 * pi * conductivity * length)
+    return ln(r_out / r_in) / (2.0 * pi * conductivity * length)
 
 
 def sphere_resistance(r_in: float, r_out: float, conductivity: float) -> float:
@@ -58,7 +60,7 @@ def contact_resistance(contact: float, area: float) -> float:
     Errors: ValueError for a negative Rc or an area that is not above 0.
     Source: Incropera and DeWitt, 3.1.4.
     """
-    if contact < 0:
+    if least(contact) < 0:
         raise ValueError(f"contact must not be negative, got {contact}")
     _above_zero("area", area)
     return contact / area
@@ -88,10 +90,10 @@ def critical_radius(conductivity: float, h: float) -> float:
 def _shell(r_in: float, r_out: float, conductivity: float) -> None:
     _above_zero("r_in", r_in)
     _above_zero("conductivity", conductivity)
-    if r_out < r_in:
+    if least(r_out - r_in) < 0:
         raise ValueError(f"r_out must not be below r_in, got {r_out} < {r_in}")
 
 
 def _above_zero(name: str, value: float) -> None:
-    if value <= 0:
+    if least(value) <= 0:
         raise ValueError(f"{name} must be above 0, got {value}")

@@ -41,10 +41,38 @@ class Solver:
         area = element.net_area if element.bridges else None
         key = (assembly.id, setting, element.bridges, area)
         if key not in self._found:
-            self._found[key] = solve(assembly, setting, ruleset.conventions, element.bridges, area)
+            self._found[key] = self._solved(assembly, ruleset, key)
             self._keys[id(self._found[key])] = key
         self.first.setdefault(assembly.id, self._found[key])
         return self._found[key]
+
+    def _solved(self, assembly: Assembly, ruleset: RuleSet, key: _Key) -> Solved:
+        _, setting, bridges, area = key
+        solved = solve(assembly, setting, ruleset.conventions, bridges, area)
+        if self._project.ranged:
+            solved = self._with_range(assembly, solved, ruleset, key)
+        return solved
+
+    def _with_range(
+        self,
+        assembly: Assembly,
+        solved: Solved,
+        ruleset: RuleSet,
+        key: _Key,
+        tolerance: float = 0.0,
+    ) -> Solved:
+        """Add what stated ranges make of the value; each end as narrow as the value itself."""
+        from envcheck.solve.ranges import with_range
+
+        _, setting, bridges, area = key
+
+        def again(changed: Assembly) -> Solved:
+            found = solve(changed, setting, ruleset.conventions, bridges, area)
+            if tolerance and can_narrow(found, tolerance):
+                return narrow(changed, setting, ruleset.conventions, found, tolerance)
+            return found
+
+        return with_range(assembly, solved, again)
 
     def narrow(self, solved: Solved, ruleset: RuleSet, tolerance: float) -> None:
         """Put a narrower bracket in place of a solution's; the next ``solve`` gives it back."""
@@ -53,6 +81,8 @@ class Solver:
             return  # narrowed already for another element, or nothing to narrow
         assembly = self._project.assemblies[solved.assembly]
         narrowed = narrow(assembly, solved.setting, ruleset.conventions, solved, tolerance)
+        if self._project.ranged and solved.decided_by_bracket:
+            narrowed = self._with_range(assembly, narrowed, ruleset, key, tolerance)
         self._found[key] = narrowed
         self._keys[id(narrowed)] = key
         if self.first.get(assembly.id) is solved:

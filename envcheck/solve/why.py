@@ -139,10 +139,18 @@ def _weights(
 ) -> tuple[Weight, ...]:
     """Of every resistance that the wiring takes up, the pieces of a layer together."""
     later = {operand.name for step in steps[layers:] for operand in step.operands}
+    symbols = {step.symbol for step in steps}
     found: dict[str, Weight] = {}
-    for step in steps[:layers]:
-        if step.quantity == "resistance" and (step.symbol in later or step.value == 0):
-            symbol = layer_of(step.symbol)
+    for number, step in enumerate(steps):
+        if step.quantity != "resistance":
+            continue
+        symbol = step.symbol
+        if number < layers:
+            symbol = layer_of(symbol)
+            taken_up = step.symbol in later or step.value == 0
+        else:  # what a method adds to the layers, such as the rest of a taper
+            taken_up = not any(operand.name in symbols for operand in step.operands)
+        if taken_up:
             known = found.get(symbol, Weight(symbol, step.title, 0.0))
             share = known.share - adjoint.get(step.symbol, 0.0)
             found[symbol] = known._replace(share=share)

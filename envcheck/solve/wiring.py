@@ -8,6 +8,9 @@ lower it (Rayleigh's monotonicity law for resistor networks), so for the drawn r
 
 Source: ISO 6946:2017, 6.7.2 (upper and lower limit of the total thermal resistance); the handbook
 names "parallel path" and "isothermal planes" are those of ASHRAE Handbook - Fundamentals.
+
+The resistances may be numpy arrays of any shape that broadcast (a million variants of one wall);
+the widths along the wall are the same for all.
 """
 
 from __future__ import annotations
@@ -19,7 +22,7 @@ from math import prod
 from typing import NamedTuple
 
 from envcheck.model.solved import Block, Node, Operand, Resistor, Series, Step
-from envcheck.solve.network import in_parallel, in_series
+from envcheck.solve.network import in_parallel, in_series, is_nothing
 from envcheck.solve.registry import Wall
 
 FILM_TO_FILM = "sum of resistances, film to film"
@@ -168,8 +171,8 @@ def bounds(wall: Wall) -> tuple[float, float]:
     for block in blocks:
         if not block.pattern:
             total = sum(row[0].value for row in block.cells)
-            common += total
-            planes += total
+            common = common + total
+            planes = planes + total
             continue
         width = sum(block.widths)
         fractions = [w / width for w in block.widths]
@@ -178,9 +181,9 @@ def bounds(wall: Wall) -> tuple[float, float]:
         for row in block.cells:
             conductance = 0.0
             for column, cell in enumerate(row):
-                sums[column] += cell.value
-                conductance += fractions[column] / cell.value
-            planes += 1.0 / conductance
+                sums[column] = sums[column] + cell.value
+                conductance = conductance + fractions[column] / cell.value
+            planes = planes + 1.0 / conductance
     pairs = [list(zip(shares[name], columns[name], strict=True)) for name in columns]
     low = sum(
         prod(share for share, _ in path) / (common + sum(value for _, value in path))
@@ -248,7 +251,7 @@ def _sum_step(
     known = {} if known is None else known
     operands = []
     for part in tree.parts:
-        if isinstance(part, Resistor) and part.value != 0:
+        if isinstance(part, Resistor) and not is_nothing(part.value):
             operand = known.get(part.symbol)
             if operand is None:
                 operand = known[part.symbol] = Operand(part.symbol, part.value, "resistance")

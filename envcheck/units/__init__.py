@@ -11,11 +11,11 @@ from __future__ import annotations
 
 from envcheck.units.spelling import known_unit, unit_key
 from envcheck.units.table import FAHRENHEIT, FREEZING_F, KELVIN_ZERO, UNITS, Quantity
-from envcheck.units.text import UnitError, absolute, parse
+from envcheck.units.text import UnitError, absolute, parse, states_range
 
 __all__ = [
     "UNITS", "Quantity", "UnitError", "convert", "in_system", "label", "parse", "quantity_of",
-    "to_si",
+    "states_range", "to_si",
 ]  # fmt: skip
 
 

@@ -32,6 +32,7 @@ _PREFIXED = re.compile(r"(R-|RSI[ -])(\d+(?:\.\d+)?|\.\d+)", re.ASCII)
 _NAMED = re.compile(r"R(?:SI)?[ -]?\d", re.IGNORECASE | re.ASCII)
 _COMMA = re.compile(r"\d,\d", re.ASCII)
 _SEVERAL = re.compile(r"\d[ '_]\d|\d[^\d/(*-]*[ x/-]\d+(?:\.\d+)? ?(?:mm|cm|m|in|ft)?$")
+_RANGE = re.compile(r"\+ ?/? ?[-\u2212]")
 _MIXED = re.compile(r"(\d+) (\d+/\d+)", re.ASCII)
 
 
@@ -53,6 +54,11 @@ def parse(text: str, quantity: str) -> float:
     if value is None:
         raise _why_not(text, quantity)
     return _bounded(value, text, quantity)
+
+
+def states_range(text: str) -> bool:
+    """Whether a text holds a value with a range (see ``ranges``)."""
+    return "±" in text or ("+" in text[1:] and _RANGE.search(text) is not None)
 
 
 def _special(text: str, quantity: str) -> float | None:
@@ -100,6 +106,9 @@ def _why_not(text: str, quantity: str) -> UnitError:
     if mixed and quantity in LENGTHS:
         fix = f"join whole and fraction with a hyphen: {plain.replace(' ', '-', 1)!r}"
         return UnitError("not-a-number", text, expected, fix)
+    if states_range(plain):
+        fix = f"write one value: {example}"
+        return UnitError("range-not-here", text, expected, fix)
     if _NAMED.match(plain):
         if quantity != "resistance":
             found = f"{text}, a thermal resistance"

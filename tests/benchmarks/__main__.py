@@ -95,7 +95,41 @@ def main() -> int:
             print(f"{words:49} {took:7.3f} s of {budget:g} s{'  MISSED' * (took > budget)}")
         print(f"peak memory, check of 1,000: {peak_mib([*CHECK, large]):.0f} MiB")
         print(f"peak memory, C load of it:   {peak_mib([*load, large]):.0f} MiB")
+        missed += many()
     return 1 if missed else 0
+
+
+MOST_MEMORY = 300.0
+"""MiB of a process that bounds sections."""
+SECTIONS = (
+    "from tests.benchmarks.measures import mixed_sections, bound, c_stud\n"
+    "[bound(of) for of in mixed_sections()]; bound(c_stud(), 1e-4)"
+)
+
+
+def many() -> int:
+    """Print many sections, the even mesh and a sweep; give how many budgets are missed."""
+    from tests.benchmarks import measures
+
+    mixed, memory = measures.mixed_seconds(), peak_mib([sys.executable, "-c", SECTIONS])
+    mesh, swept = measures.against_even_mesh(), measures.swept()
+    ratio, share = mesh.even / mesh.ours, swept.rate / swept.ceiling
+    missed = 0
+    for words, found, budget, over in (
+        ("100 mixed sections to 0.1 %", f"{mixed:.3f} s", "10 s", mixed > 10.0),
+        ("peak memory of these", f"{memory:.0f} MiB", "300 MiB", memory > MOST_MEMORY),
+        ("even mesh / bounds at equal true error", f"{ratio:.1f}", "at least 10", ratio < 10.0),
+        ("1e6 walls / memory bandwidth", f"{share:.2f}", "at least 0.25", share < 0.25),
+    ):
+        missed += over
+        print(f"{words:42} {found:>14} of {budget}{'  MISSED' * over}")
+    print(
+        f"    even mesh: {mesh.cells} cells, {mesh.even:.3f} s, {mesh.even_error * 100:.3f} % off; "
+        f"bounds {mesh.ours:.3f} s, the worse {mesh.error * 100:.3f} % off\n"
+        f"    walls: {swept.seconds:.3f} s, {swept.rate / 1e9:.1f} of "
+        f"{swept.ceiling / 1e9:.1f} GB/s"
+    )
+    return missed
 
 
 if __name__ == "__main__":

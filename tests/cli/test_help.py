@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import subprocess
 import sys
+from pathlib import Path
 
 import pytest
 from click.testing import CliRunner
@@ -43,6 +44,22 @@ def test_help_of_check_loads_no_reader_and_no_solver() -> None:
     assert status == "0"
     assert not modules & HEAVY
     assert not {m for m in modules if m.startswith(("envcheck.read", "envcheck.solve"))}
+
+
+ROOT = Path(__file__).parent.parent.parent
+
+
+@pytest.mark.parametrize(
+    ("project", "scientific"),
+    [
+        ("projects/starter/starter.yaml", False),
+        ("projects/brannvik-warehouse/renovation.yaml", True),  # its dormer cheek hangs on it
+    ],
+)
+def test_check_loads_scipy_only_for_a_section(project: str, scientific: bool) -> None:
+    _, modules = loaded("check", str(ROOT / project))
+    assert bool(modules & {"numpy", "scipy"}) is scientific
+    assert any(m.startswith("envcheck.solve.field") for m in modules) is scientific
 
 
 @pytest.mark.parametrize("name", COMMANDS)

@@ -344,3 +344,17 @@ def test_a_declared_conductivity_is_converted_in_the_worksheet() -> None:
     assert step.value == pytest.approx(0.038450, abs=5e-7)
     assert "ISO 10456:2007, 7; a table" in step.source
     assert sum(step.quantity == "conductivity" for step in found.steps) == 2
+
+
+def test_a_mean_of_wirings_that_iso_6946_excludes_says_so() -> None:
+    # ISO 6946:2017, 6.7.2.1: not for a ratio of the limits above 1.5 (from memory).
+    steel = Profile("c", 0.092, 0.041, 0.0011, 0.0)
+    for member, excluded in (
+        (Member(STEEL, 0.041, 0.406, steel), True),
+        (Member(WOOD, 0.038, 0.406), False),
+    ):
+        of = assembly(framed("studs", 0.092, member, Fill(material=WOOL)))
+        solved = solve(of, setting(method="isothermal_planes"), Conventions())
+        note = next(each.note for each in solved.beside if each.name == "combined")
+        assert ("excludes" in note) is excluded
+        assert (solved.ratio > 1.5) is excluded

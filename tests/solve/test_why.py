@@ -19,6 +19,7 @@ from envcheck.model.project import (
     MaterialLayer,
     Member,
     Profile,
+    TaperedLayer,
 )
 from envcheck.model.ruleset import Conventions, TableRow
 from envcheck.model.solved import Reasons, Solved
@@ -277,3 +278,26 @@ def test_faces_warm_up_from_outside_to_inside() -> None:
         assert before.least <= before.greatest
         assert before.greatest < behind.greatest
     assert found.faces[0].least > 0 and found.faces[-1].greatest < 1
+
+
+def test_a_taper_has_its_own_part_of_the_resistance() -> None:
+    # U = ln(1 + R1/R0)/R1 with R0 = 0.17 + 0.1/0.025 and R1 = 0.1/0.025: by hand d ln U/d ln R0 =
+    # -(R1/(R0 + R1))/ln(1 + R1/R0), and what is missing to -1 falls to R1.
+    pir = XPS._replace(conductivity=0.025)
+    of = assembly(TaperedLayer("tapered", "PIR", 1, pir, 0.1, 0.2, "rectangle"))
+    found = why(of, "series", Conventions(tapered="integral"))
+    rest, rise = 0.17 + 4.0, 4.0
+    whole = rise / (rest + rise) / math.log1p(rise / rest)
+    shares = {weight.symbol: weight.share for weight in found.weights}
+    assert shares["R1"] == pytest.approx(whole * 4.0 / rest)
+    assert shares["R_taper"] == pytest.approx(1.0 - whole)
+    assert sum(shares.values()) == pytest.approx(1.0)
+
+
+def test_the_drawn_section_is_told_with_equal_columns_as_one() -> None:
+    told = drawn(STUDS, 1e-2).drawn.section
+    assert sum(told.widths) == pytest.approx(0.406)
+    assert len(told.widths) < 6  # bay, web, flange, bay
+    assert [symbol for symbol, _, _ in told.rows] == ["R1", "R2", "R2", "R2", "R3"]
+    assert sum(depth for _, depth, _ in told.rows) == pytest.approx(0.038 + 0.092 + 0.0127)
+    assert told.rows[2][2] == pytest.approx((0.037, 50.0, 0.037, 0.037))

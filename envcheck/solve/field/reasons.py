@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from envcheck.model.solved import Block, Face, Flow, Influence, Reasons, Resistor, Weight
+from envcheck.model.solved import Block, Drawn, Face, Flow, Influence, Reasons, Resistor, Weight
 from envcheck.solve.field.bound import Bounds
 from envcheck.solve.field.drawing import piece_rows
 from envcheck.solve.field.energies import Energies, energies
@@ -28,7 +28,23 @@ def section_reasons(wall: Wall, section: Section, found: Bounds) -> Reasons:
         tuple(_weights(wall, rows, spent)),
         _influences(wall, rows, spent),
         tuple(_faces(wall, rows, found)),
+        _drawn(rows, section),
     )
+
+
+def _drawn(rows: list[_Row], section: Section) -> Drawn:
+    """The section with neighbouring columns of the same conductivities as one."""
+    columns: list[tuple[float, ...]] = list(zip(*section.conductivities, strict=True))
+    widths: list[float] = []
+    kept: list[tuple[float, ...]] = []
+    for width, column in zip(section.widths, columns, strict=True):
+        if kept and all(abs(a - b) <= 1e-9 * b for a, b in zip(kept[-1], column, strict=True)):
+            widths[-1] += width
+        else:
+            widths.append(width)
+            kept.append(column)
+    by_row = zip(rows, zip(*kept, strict=True), strict=True)
+    return Drawn(tuple(widths), tuple((row[0].symbol, row[1], k) for row, k in by_row))
 
 
 def _faces(wall: Wall, rows: list[_Row], found: Bounds) -> Iterator[Face]:
@@ -104,5 +120,5 @@ def _stated(found: Found, cell: Resistor, share: float) -> None:
 
 def _conductivity(cell: Resistor) -> float | None:
     """W/(m K) of the material of a cell; None where its resistance comes from elsewhere."""
-    operands = [operand for step in cell.steps for operand in step.operands]
-    return next((o.value for o in operands if o.name == "k"), None)
+    operands = [o for step in cell.steps if step.quantity == "resistance" for o in step.operands]
+    return next((o.value for o in operands if o.quantity == "conductivity"), None)

@@ -7,6 +7,7 @@ from typing import NamedTuple
 from envcheck.model.project import FramedLayer
 from envcheck.model.solved import Block, Resistor
 from envcheck.solve.cells import material_cell, part_of
+from envcheck.solve.elementary import greatest
 from envcheck.solve.methods.fills import fill_resistor
 from envcheck.solve.registry import Context, Method, NotDecided
 from envcheck.solve.section import grid, profile_pieces
@@ -105,7 +106,7 @@ def _draw_profile(layer: FramedLayer, fill: Resistor, context: Context) -> Block
 
 def is_metal(layer: FramedLayer) -> bool:
     """Whether the members conduct like metal (above 1 W/(m K), more than any wood)."""
-    return layer.member.profile is not None or layer.member.material.conductivity > METAL
+    return layer.member.profile is not None or greatest(layer.member.material.conductivity) > METAL
 
 
 METAL = 1.0

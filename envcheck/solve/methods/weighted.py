@@ -7,6 +7,7 @@ from collections.abc import Callable
 from envcheck.model.layers import FramedLayer
 from envcheck.model.solved import Operand, Step
 from envcheck.solve.cautions import is_insulation
+from envcheck.solve.elementary import greatest
 from envcheck.solve.methods.framed import is_metal
 from envcheck.solve.registry import Decision, Method, NotDecided, Wall
 from envcheck.solve.wiring import isothermal_planes, layer_steps, parallel_paths, u_step
@@ -152,7 +153,7 @@ def decide_weighted(wall: Wall) -> Decision:
     layers = layer_steps(wall)
     named = () if found is None else (found,)
     steps = (*layers, *upper.steps, *lower.steps, *named, closing, u_step(resistance))
-    ratio = upper.resistance / lower.resistance
+    ratio = greatest(upper.resistance / lower.resistance)
     assumptions: tuple[str, ...] = ()
     if ratio > HIGHEST_RATIO:
         assumptions = (
