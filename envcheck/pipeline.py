@@ -41,6 +41,7 @@ from envcheck.solve.solver import Solver
 if TYPE_CHECKING:
     import pandas
 
+    from envcheck.model.advised import Advice, Change
     from envcheck.model.details import Extras, SolvedDetail
     from envcheck.model.solved import Setting
 
@@ -217,6 +218,23 @@ def why(solved: Solved) -> Reasons | None:
     from envcheck.solve.why import reasons
 
     return reasons(solved)
+
+
+def remedies(run: Run) -> tuple[Advice, ...]:
+    """What would bring each line that is over its limit, or too close to it, within it."""
+    from envcheck.advise.bench import Bench
+    from envcheck.advise.remedies import advise
+
+    metrics = {name: category.metric for name, category in categories().items()}
+    bench = Bench(run.project, run.rulesets, run.properties, metrics)
+    return advise(bench, run.judged.lines)
+
+
+def applied(text: str, changes: Sequence[Change]) -> str:
+    """Type changes into the text of a project file. Errors: NotThere."""
+    from envcheck.read.edit import edited
+
+    return edited(text, [edit for change in changes for edit in change.edits])
 
 
 def asked_by_bridges(project: Project) -> tuple[str, ...]:

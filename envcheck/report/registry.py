@@ -15,6 +15,7 @@ from importlib import import_module
 from pkgutil import iter_modules
 from typing import TYPE_CHECKING, NamedTuple
 
+from envcheck.report.answer import Answer
 from envcheck.report.view import View
 
 if TYPE_CHECKING:
@@ -40,6 +41,8 @@ class Format(NamedTuple):
     workings: bool
     render: Callable[[View], str | bytes]
     explain: Callable[[Explained], str] | None
+    answer: Callable[[Answer, int], str] | None
+    """(what another command says, width) -> text"""
 
 
 @cache
@@ -53,6 +56,12 @@ def names() -> tuple[str, ...]:
 def explaining() -> tuple[str, ...]:
     """Names of the formats that lay out the page of ``explain``."""
     return tuple(name for name in names() if format_named(name).explain is not None)
+
+
+@cache
+def answering() -> tuple[str, ...]:
+    """Names of the formats that lay out what other commands say."""
+    return tuple(name for name in names() if format_named(name).answer is not None)
 
 
 def format_named(name: str) -> Format:
@@ -71,4 +80,5 @@ def format_named(name: str) -> Format:
         workings=getattr(module, "WORKINGS", False),
         render=module.render,
         explain=getattr(module, "explain", None),
+        answer=getattr(module, "answer", None),
     )

@@ -24,11 +24,11 @@ class UnitError(ValueError):
 
 
 LENGTHS = ("length", "thickness", "run")
-_QUANTITY = re.compile(
+QUANTITY = re.compile(
     r"([+-]?(?:\d+(?:\.\d+)?|\.\d+)(?:[eE][+-]?\d{1,3})?) ?(.*)", re.DOTALL | re.ASCII
 )
-_FRACTION = re.compile(r"(?:(\d{1,5})-)?(\d{1,4})/(\d{1,4}) ?(in|ft)\b\.?", re.ASCII)
-_PREFIXED = re.compile(r"(R-|RSI[ -])(\d+(?:\.\d+)?|\.\d+)", re.ASCII)
+FRACTION = re.compile(r"(?:(\d{1,5})-)?(\d{1,4})/(\d{1,4}) ?(in|ft)\b\.?", re.ASCII)
+PREFIXED = re.compile(r"(R-|RSI[ -])(\d+(?:\.\d+)?|\.\d+)", re.ASCII)
 _NAMED = re.compile(r"R(?:SI)?[ -]?\d", re.IGNORECASE | re.ASCII)
 _COMMA = re.compile(r"\d,\d", re.ASCII)
 _SEVERAL = re.compile(r"\d[ '_]\d|\d[^\d/(*-]*[ x/-]\d+(?:\.\d+)? ?(?:mm|cm|m|in|ft)?$")
@@ -42,7 +42,7 @@ def parse(text: str, quantity: str) -> float:
 
     ``quantity`` is a key of :data:`UNITS`. Errors: UnitError with the kind of mistake.
     """
-    match = _QUANTITY.fullmatch(text.strip())
+    match = QUANTITY.fullmatch(text.strip())
     if match is not None:
         unit = match[2]
         known = known_unit(unit) if unit else None
@@ -64,11 +64,11 @@ def states_range(text: str) -> bool:
 def _special(text: str, quantity: str) -> float | None:
     """Read fractions of an inch or foot, and ``R-13`` or ``RSI 2.29``."""
     if quantity in LENGTHS:
-        match = _FRACTION.fullmatch(text)
+        match = FRACTION.fullmatch(text)
         if match is not None and int(match[3]):
             return (int(match[1] or 0) + int(match[2]) / int(match[3])) * ATOMS[match[4]]
     elif quantity == "resistance":
-        match = _PREFIXED.fullmatch(text)
+        match = PREFIXED.fullmatch(text)
         if match is not None:
             return float(match[2]) * (R_IP if match[1] == "R-" else 1.0)
     return None
@@ -118,7 +118,7 @@ def _why_not(text: str, quantity: str) -> UnitError:
     if _SEVERAL.search(plain):
         fix = f"write one number without gaps, and one unit: {example}"
         return UnitError("not-a-number", text, expected, fix)
-    match = _QUANTITY.fullmatch(plain)
+    match = QUANTITY.fullmatch(plain)
     if match is None:
         return UnitError(
             "not-a-number", text, expected, f"write one number and its unit: {example}"

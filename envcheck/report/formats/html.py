@@ -8,6 +8,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING
 
 from envcheck.report import desk, drawing
+from envcheck.report.answer import Answer
 from envcheck.report.parts import Block, Facts, Grid, Items, Page, Paragraph, Picture
 from envcheck.report.view import View
 
@@ -31,6 +32,11 @@ def render(view: View) -> str:
     digest = next((f"{h.label}: sha256 {h.text[:SHORT]}" for h in view.hashes), "")
     date = next((pair.text for pair in view.facts if pair.label == "report date"), "")
     return write(desk.page(view), f"report date {date}" if date else "", digest)
+
+
+def answer(made: Answer, width: int) -> str:
+    """Lay the page of another command out as HTML."""
+    return write(made.page)
 
 
 def explain(explained: Explained) -> str:

@@ -5,6 +5,7 @@ from __future__ import annotations
 import json
 from typing import TYPE_CHECKING
 
+from envcheck.report.answer import Answer
 from envcheck.report.rows import Figure
 from envcheck.report.view import View
 
@@ -24,6 +25,11 @@ def render(view: View) -> str:
     """Write the view as one JSON object; same view, same bytes."""
     kept = {name: plain(getattr(view, name)) for name in View._fields if name not in LAYOUT}
     return _written({"schema_version": SCHEMA_VERSION, **kept})
+
+
+def answer(made: Answer, width: int) -> str:
+    """Write the data of another command."""
+    return _written({"schema_version": SCHEMA_VERSION, **made.data})
 
 
 def explain(made: Explained) -> str:

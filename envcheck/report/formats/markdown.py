@@ -6,6 +6,7 @@ from collections.abc import Iterable
 from typing import TYPE_CHECKING
 
 from envcheck.report import outline, tabular
+from envcheck.report.answer import Answer
 from envcheck.report.inert import as_code, for_markdown
 from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Paragraph, Picture
 from envcheck.report.view import View
@@ -21,6 +22,11 @@ EXTENSION = "md"
 def render(view: View) -> str:
     """Lay the view out as Markdown."""
     return write(outline.page(view))
+
+
+def answer(made: Answer, width: int) -> str:
+    """Lay the page of another command out as Markdown."""
+    return write(made.page)
 
 
 def explain(explained: Explained) -> str:
