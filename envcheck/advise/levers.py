@@ -161,10 +161,15 @@ def _products(assembly: Assembly) -> Iterator[Lever]:
             lambda x: assembly._replace(rated=rated._replace(u_factor=x)),
             (("assemblies", assembly.id, "u_factor"),),
         )  # fmt: skip
-    if window is not None:
+    if window is not None and window.frame_width is not None and window.u_glass is not None:
+        light = window.lights[0]
+
+        def glazed(x: float) -> Assembly:
+            other = light._replace(infill=light.infill._replace(u=x))
+            return assembly._replace(window=window._replace(lights=(other,)))
+
         yield Lever(
-            "glass", assembly.title, window.u_glass, "u_factor", False, 0.01,
-            lambda x: assembly._replace(window=window._replace(u_glass=x)),
+            "glass", assembly.title, window.u_glass, "u_factor", False, 0.01, glazed,
             (("assemblies", assembly.id, "u_glass"),),
         )  # fmt: skip
 

@@ -22,6 +22,10 @@ SHY = 1e-9
 """Share by which a solved value is moved to the safe side of a limit."""
 
 
+SHORT_OF_HALF = 0.999
+"""Share of half the last printed place by which a value may lie above a limit; half is over it."""
+
+
 class Target(NamedTuple):
     """A value that a line must not exceed, SI."""
 
@@ -80,7 +84,7 @@ def _targets(bench: Bench, lines: Iterable[Line], by_rounding: bool) -> tuple[Ta
         limit = own.limit
         places = decimals_of(own_term(line.limit), ruleset)
         if by_rounding and places is not None:
-            limit += 0.5 * 10.0**-places * (1.0 - 1e-6)
+            limit += 0.5 * 10.0**-places * SHORT_OF_HALF
         found[id(line.solved), limit] = Target(line, to_si(limit, own.unit))
     return tuple(found.values())
 

@@ -14,6 +14,7 @@ from envcheck.report.by_line import place
 from envcheck.report.inert import clean
 from envcheck.report.parts import Block, Entry, Grid, Items, Page, Paragraph, Section
 from envcheck.report.view import ViewOptions, system_for
+from envcheck.units import respell
 
 LEVERS = {
     "thickness": "thickness",
@@ -112,8 +113,8 @@ def _table(each: Advice, system: str) -> Grid:
         (
             name,
             clean(f"{change.what}: {LEVERS[change.lever]}"),
-            _figure(change.before, change.quantity, system),
-            _figure(change.after, change.quantity, system, change.basis != "stock"),
+            _figure(change.before, change.quantity, system, True),
+            _figure(change.after, change.quantity, system, change.after > change.before),
             _resistance(change.resistance, system),
             _value(change.value, metric, system),
             BASES[change.basis],
@@ -136,13 +137,12 @@ def _value(value: float, metric: str, system: str) -> str:
     return numbers.fixed(shown, numbers.decimals(metric, system))
 
 
-def _figure(value: float, quantity: str, system: str, exact: bool = False) -> str:
-    """A number with its unit; a solved one to four digits, never short of what is needed."""
+def _figure(value: float, quantity: str, system: str, up: bool) -> str:
+    """A number with its unit, to five digits, never short of what is needed."""
     shown = numbers.in_system(value, quantity, system)
     if quantity == "share":
-        return numbers.percent(value, 2)
-    text = numbers.significant(shown, 4 if exact else 6)
-    return f"{text} {units.label(quantity, system)}".rstrip()
+        return f"{respell.number(100.0 * value, up)} %"
+    return f"{respell.number(shown, up)} {units.label(quantity, system)}".rstrip()
 
 
 def _added(each: Advice, system: str) -> list[str]:
@@ -162,8 +162,8 @@ def _refused(refused: Refused, metric: str, system: str) -> str:
 
 
 def _structural(found: Structural, system: str) -> str:
-    now = _figure(found.now, found.quantity, system)
-    most = _figure(found.most, found.quantity, system, exact=True)
+    now = _figure(found.now, found.quantity, system, True)
+    most = _figure(found.most, found.quantity, system, found.lever == "spacing")
     word = "from" if found.most > found.now and found.lever == "spacing" else "up to"
     return clean(f"{found.what}, {LEVERS[found.lever]}: {now} drawn; thermally, {word} {most}")
 

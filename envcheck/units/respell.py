@@ -24,10 +24,8 @@ def respelled(text: str, value: float, quantity: str, up: bool) -> str:
         factor = R_IP if prefixed[1] == "R-" else 1.0
         return prefixed[1] + number(value / factor, up)
     fraction = FRACTION.fullmatch(plain)
-    unit = fraction[4] if fraction is not None else ""
     match = QUANTITY.fullmatch(plain)
-    if match is not None:
-        unit = match[2]
+    unit = fraction[4] if fraction is not None else match[2] if match is not None else ""
     known = known_unit(unit) if unit else None
     if known is None or quantity not in known[1]:
         raise UnitError("wrong-unit", text, f"a unit of {quantity}", "state it with its unit")
@@ -35,8 +33,11 @@ def respelled(text: str, value: float, quantity: str, up: bool) -> str:
 
 
 def number(value: float, up: bool) -> str:
-    """Write a number to so many digits, never short of it: up or down as asked."""
-    exact = Decimal(f"{value:.12g}")
+    """Write a number to five digits, never short of it: up or down as asked.
+
+    What lies within a few parts in 10^7 of a rounder number is that number.
+    """
+    exact = Decimal(f"{value:.{DIGITS + 2}g}")
     place = Decimal(1).scaleb(exact.adjusted() - DIGITS + 1)
     rounded = exact.quantize(place, ROUND_CEILING if up else ROUND_FLOOR)
     text = f"{rounded:f}"
