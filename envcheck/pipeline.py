@@ -99,16 +99,17 @@ def names() -> Names:
     )
 
 
-def run(path: str, folders: Sequence[str] = (), bounds: bool = False) -> Run:
+def run(path: str, folders: Sequence[str] = (), bounds: bool = False, close: str = "") -> Run:
     """Check one project file.
 
     path: of the project, ``-`` for standard input. folders: where rule sets are looked up; else
     the nearest folder ``rules`` at or above the project file. bounds: solve every drawn section
-    in two dimensions, not only those on which a verdict hangs.
+    or box, not only those on which a verdict hangs. close: tag or assembly whose bounds shall lie
+    as close as those of a verdict that hangs on them.
     Errors: InputError with every problem of the project and of its rule sets.
     """
     with _no_cycles_to_collect():
-        return _run(path, folders, bounds)
+        return _run(path, folders, bounds, close)
 
 
 @contextmanager
@@ -123,7 +124,7 @@ def _no_cycles_to_collect() -> Iterator[None]:
             gc.enable()
 
 
-def _run(path: str, folders: Sequence[str], bounds: bool) -> Run:
+def _run(path: str, folders: Sequence[str], bounds: bool, close: str) -> Run:
     project = read_project(path, names())
     rulesets = _read_rulesets(project, default_folders(path, folders))
     project = _with_criteria(project, rulesets)
@@ -156,7 +157,7 @@ def _run(path: str, folders: Sequence[str], bounds: bool) -> Run:
             metrics,
             solver.solve,
         )
-        own = _with_narrow_brackets(judge_again, solver, ruleset, bounds)
+        own = _with_narrow_brackets(judge_again, solver, ruleset, bounds, close)
         own, taken = take_groups(own, project, ruleset, choice, measured)
         lines += own
         all_ratios += measured
@@ -197,13 +198,22 @@ def _with_criteria(project: Project, rulesets: Mapping[str, RuleSet]) -> Project
 
 
 def _with_narrow_brackets(
-    judge_again: Callable[[], list[Line]], solver: Solver, ruleset: RuleSet, bounds: bool
+    judge_again: Callable[[], list[Line]],
+    solver: Solver,
+    ruleset: RuleSet,
+    bounds: bool,
+    close: str,
 ) -> list[Line]:
     """Judge; ask for narrower brackets where a verdict hangs on them; judge again."""
+
+    def closer(line: Line) -> bool:
+        assembly = line.solved.assembly if line.solved is not None else ""
+        return undecided_by_bracket(line) or (close != "" and close in (line.element, assembly))
+
     lines = judge_again()
     for tolerance, asked in (
         (TOLERANCE, (lambda line: True) if bounds else hangs_on_bracket),
-        (CLOSE, undecided_by_bracket),
+        (CLOSE, closer),
     ):
         wanted = [line.solved for line in lines if line.solved is not None and asked(line)]
         if wanted:

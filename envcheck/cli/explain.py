@@ -17,6 +17,7 @@ from envcheck.report import registry
 @options.one_of(registry.explaining(), "text")
 @options.OUTPUT
 @options.UNITS
+@click.option("--close", is_flag=True, help="Bounds ten times as close, where that takes time.")
 def explain(
     project: str,
     subject: str,
@@ -24,6 +25,7 @@ def explain(
     format_name: str,
     output: str | None,
     units: str | None,
+    close: bool,
 ) -> int:
     """Show how one element, assembly or detail of PROJECT comes to its value and its verdict.
 
@@ -38,7 +40,7 @@ def explain(
     from envcheck.report import explain as explained
     from envcheck.report.view import ViewOptions
 
-    run = pipeline.run(project, rules, bounds=True)
+    run = pipeline.run(project, rules, bounds=True, close=subject if close else "")
     known = explained.subjects(run.project)
     if subject not in known:
         hint = (

@@ -39,7 +39,7 @@ KINDS = (
         "unknown-layer",
         "the assembly has no layer titled {name!r}",
         "{hint}",
-        "Fasteners name the title of the layer they cross.",
+        "Fasteners and drawn points name the title of the layer they lie in.",
     ),
     Kind(
         "unknown-category",
@@ -150,6 +150,31 @@ KINDS = (
         "the air space is not as deep as its cavity",
         "give it the thickness of the framed layer; what else lies there is a layer of its own",
         "A thinner space would leave a part of the cavity that nobody describes.",
+    ),
+    Kind(
+        "points-off-spacing",
+        "the drawn points do not meet the members of {layer!r} again at each repeat",
+        "draw the points at a multiple of the spacing of the members, or give chi instead",
+        "A box in three dimensions needs one repeat area for members and points.",
+    ),
+    Kind(
+        "box-without-size",
+        "the box reaches from {key} to nowhere: its second end does not lie behind the first",
+        "exchange the two ends, or check them",
+        "A box of a drawn point without a width, height or depth.",
+    ),
+    Kind(
+        "box-outside",
+        "the box reaches out of {limit}",
+        "check its ends, or cut it where its layer ends and draw the rest in the next layer",
+        "A box of a drawn point that leaves its layer or its repeat area.",
+    ),
+    Kind(
+        "too-thin-to-draw",
+        "the box of {material} is too thin to be drawn in three dimensions",
+        "use chi: state 'chi' and 'density' of the bridge from a test or a table in place of "
+        "'drawn'",
+        "Screws, pins and foils: metal that no box of reasonable size resolves.",
     ),
     Kind(
         "unknown-zone",

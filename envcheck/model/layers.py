@@ -234,6 +234,32 @@ class Fasteners(NamedTuple):
     line: int
 
 
+class DrawnBox(NamedTuple):
+    """A box of a drawn point bridge: from where to where it reaches, m."""
+
+    material: Material
+    along: tuple[float, float]
+    """Along the wall, from the axis of the member (or the middle of the repeat area)."""
+    up: tuple[float, float]
+    """Up the wall, likewise."""
+    through: tuple[float, float]
+    """From the outer face of its layer inwards."""
+    line: int
+
+
+class DrawnPoint(NamedTuple):
+    """A clip or bracket drawn as boxes on a repeat area; later boxes lie on top."""
+
+    layer: str
+    """Title of the layer that it lies in."""
+    along: float
+    """Width of the repeat area along the wall, m."""
+    up: float
+    """Its height, m."""
+    boxes: tuple[DrawnBox, ...]
+    line: int
+
+
 class Bridge(NamedTuple):
     """A linear or point bridge added to the clear field."""
 
@@ -250,6 +276,8 @@ class Bridge(NamedTuple):
     line: int
     detail: Detail | None = None
     """The drawing that gives psi."""
+    drawn: DrawnPoint | None = None
+    """Of a point bridge; its ``value`` is then NaN where no chi is stated."""
 
 
 Layer = (

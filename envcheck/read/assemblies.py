@@ -113,7 +113,7 @@ def read_assembly(context: Context, name: str, entry: Entry) -> Assembly:
         declared=_declared(context, entry["declared"]) if "declared" in entry else None,
         layers=layers,
         fasteners=tuple(_fasteners(context, f, layers) for f in entry.get("fasteners", ())),
-        bridges=tuple(_bridge(context, bridge) for bridge in entry.get("bridges", ())),
+        bridges=tuple(_bridge(context, b, kind, layers) for b in entry.get("bridges", ())),
         window=_window(context, entry) if kind in _BY_PARTS else None,
         rated=_rated(context, entry) if kind == "rated" else None,
         slab=_slab(context, entry) if kind == "slab-on-grade" else None,
@@ -181,15 +181,33 @@ def _fasteners(context: Context, entry: Entry, layers: tuple[Layer, ...]) -> Fas
     )
 
 
-def _bridge(context: Context, entry: Entry) -> Bridge:
+def _bridge(context: Context, entry: Entry, kind: str, layers: tuple[Layer, ...]) -> Bridge:
     """Read a bridge spread over the area of the assembly."""
-    if entry["kind"] == "point":
-        value = context.positive(entry, "chi", "point_transmittance")
-        amount = context.positive(entry, "density", "per_area")
-    else:
+    if entry["kind"] != "point":
         value = linear(context, entry)
         amount = context.positive(entry, "length_per_area", "per_length")
-    return bridge(context, entry, value, amount, per_area=True)
+        return bridge(context, entry, value, amount, per_area=True)
+    if "drawn" not in entry:
+        for key in ("chi", "density"):
+            if key not in entry:
+                hint = ", or draw the point"
+                context.add("missing-key", entry.line, key=key, where="the bridge", hint=hint)
+        chi = context.optional(entry, "chi", "point_transmittance")
+        density = context.optional(entry, "density", "per_area")
+        return bridge(context, entry, chi or NAN, density or NAN, per_area=True)
+    if kind != "layers":
+        context.out_of_place(
+            entry, ("drawn",), f"a bridge of kind {kind!r}", "give chi and density instead"
+        )
+    hint = "the spacing of the drawn point says how many there are"
+    context.out_of_place(entry, ("density",), "a drawn point bridge", hint)
+    from envcheck.read.points import read_point  # few projects draw clips
+
+    drawn = read_point(context, entry["drawn"], layers)
+    per_area = 1.0 / (drawn.along * drawn.up) if drawn and drawn.along and drawn.up else NAN
+    chi = context.optional(entry, "chi", "point_transmittance")
+    found = bridge(context, entry, NAN if chi is None else chi, per_area, per_area=True)
+    return found._replace(drawn=drawn)
 
 
 def linear(context: Context, entry: Entry) -> float:

@@ -211,10 +211,14 @@ def _bridge(owner: str, sheet: str, bridge: Bridge, system: str) -> tuple[str, .
     linear = bridge.kind == "line"
     quantity = "linear_transmittance" if linear else "point_transmittance"
     letter = "psi" if linear else "chi"
-    value = numbers.significant(numbers.in_system(bridge.value, quantity, system), 4)
-    shown = f"{letter} {value} {units.label(quantity, system)}"
+    words = []
     if bridge.detail is not None:
-        shown = f"{letter} of the detail {bridge.detail.id}, in the worksheet"
+        words.append(f"{letter} of the detail {bridge.detail.id}, in the worksheet")
+    elif bridge.value == bridge.value:
+        value = numbers.significant(numbers.in_system(bridge.value, quantity, system), 4)
+        words.append(f"{letter} {value} {units.label(quantity, system)}")
+    if bridge.drawn is not None:
+        words.append("drawn")
     return tuple(
         map(
             clean,
@@ -222,7 +226,7 @@ def _bridge(owner: str, sheet: str, bridge: Bridge, system: str) -> tuple[str, .
                 owner,
                 sheet,
                 bridge.title,
-                shown,
+                "; ".join(words),
                 _amount(bridge, system),
                 ", ".join(filter(None, (bridge.source, bridge.evidence))) or "no source",
             ),

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from typing import NamedTuple
 
+from envcheck.model.layers import DrawnPoint
 from envcheck.model.project import Assembly, Bridge, FramedLayer, Layer, TaperedLayer
 from envcheck.model.ruleset import Conventions
 from envcheck.model.solved import Beside, Counted, Operand, Setting, Solved, Step
@@ -62,11 +63,18 @@ def _solve_layers(
     except NotDecided as need:
         return _missing(assembly, setting, str(need))
     decision, corrections = _decide(wall)
-    corrections = (*corrections, correct_for_bridges(bridges, area))
-    added = sum(correction.value for correction in corrections)
-    value = None if decision.value is None else decision.value + added
-    unsure = sum(correction.unsure for correction in corrections)
-    low, high, note, beside = _bracket(wall, added)
+    points = drawn_points(assembly)
+    undrawn = tuple(bridge for bridge in bridges if bridge.drawn is None)
+    to_bracket = (*corrections, correct_for_bridges(undrawn, area))
+    added = sum(correction.value for correction in to_bracket)
+    unsure = sum(correction.unsure for correction in to_bracket)
+    low, high, note, beside = _bracket(wall, points, added)
+    if points and decision.by_bracket:
+        decision, corrections = _by_box(decision, high, added, note), to_bracket
+    else:
+        corrections = (*corrections, correct_for_bridges(bridges, area))
+    whole = sum(correction.value for correction in corrections)
+    value = None if decision.value is None else decision.value + whole
     if low is not None and unsure:
         low, note = low - unsure, f"{note}; {UNSURE}"
     steps = _closed(decision, corrections)
@@ -83,7 +91,7 @@ def _solve_layers(
         bracket_note=note,
         decided_by_bracket=decision.by_bracket,
         ratio=high / low if low and high else None,
-        beside=(*beside, *(b._replace(value=b.value + added) for b in decision.beside)),
+        beside=(*beside, *(b._replace(value=b.value + whole) for b in decision.beside)),
         tree=decision.tree,
         steps=steps,
         counted=counted_layers(wall, decision.replaced, notes.outside),
@@ -241,12 +249,28 @@ def _closed(decision: Decision, corrections: Sequence[Correction]) -> tuple[Step
     return (*decision.steps, *steps, total_step("U_total", clear, additions))
 
 
+def drawn_points(assembly: Assembly) -> tuple[DrawnPoint, ...]:
+    """Clips and brackets that are drawn as boxes."""
+    return tuple([bridge.drawn for bridge in assembly.bridges if bridge.drawn is not None])
+
+
+def _by_box(decision: Decision, high: float | None, added: float, note: str) -> Decision:
+    """The upper bound of the drawn box in place of that of the wall without its points."""
+    if high is None:
+        return Decision(None, missing=(f"the drawn box ({note})",))
+    step = Step("U_high", "isothermal planes of the drawn box", "", (), high - added, "u_factor",
+                note)  # fmt: skip
+    return decision._replace(value=high - added, steps=(*decision.steps, step))
+
+
 def _bracket(
-    wall: Wall, added: float
+    wall: Wall, points: Sequence[DrawnPoint], added: float
 ) -> tuple[float | None, float | None, str, tuple[Beside, ...]]:
     """Both wirings of the drawn pieces, corrections included, and the values beside them."""
     if any(isinstance(layer, TaperedLayer) for layer in wall.layers):
         return None, None, TAPERED, ()
+    if points:
+        return _box_bracket(wall, points, added)
     low, high = bounds(wall)
     if not any(block.pattern for block in wall.blocks):
         return low + added, low + added, "layers in series: both ends are one", ()
@@ -266,6 +290,26 @@ def _on_mean(ratio: float) -> str:
     if ratio <= HIGHEST_RATIO:
         return f"{words})"
     return f"{words}, which excludes it here: the wirings differ by a factor of {ratio:.2f})"
+
+
+def _box_bracket(
+    wall: Wall, points: Sequence[DrawnPoint], added: float
+) -> tuple[float | None, float | None, str, tuple[Beside, ...]]:
+    """Both wirings of the wall with its points drawn in. Loads numpy."""
+    from envcheck.solve.box import wirings
+    from envcheck.solve.field.box_drawing import box_of
+    from envcheck.solve.field.drawing import NotDrawn
+
+    try:
+        low, high = wirings(box_of(wall, points))
+    except NotDrawn as why:
+        return None, None, f"no bracket: {why}", ()
+    beside = (
+        Beside("parallel_path", low + added, "parallel paths of the drawn box, points included"),
+        Beside("isothermal_planes", high + added, "isothermal planes of the drawn box likewise"),
+    )
+    note = "parallel paths to isothermal planes of the drawn box, points included"
+    return low + added, high + added, note, beside
 
 
 def _missing(assembly: Assembly, setting: Setting, words: str) -> Solved:

@@ -66,6 +66,26 @@ def section_seconds(tolerance: float) -> float:
     return median(times[1:])
 
 
+def crossing_seconds(tolerance: float) -> float:
+    """Median time to bound a steel stud under a Z-girt in three dimensions, imports left out."""
+    from envcheck.solve.field.box_bound import bound_box
+    from tests.solve.field.boxes import crossing
+
+    times = []
+    for _ in range(3):
+        start = time.perf_counter()
+        found = bound_box(crossing(), tolerance)
+        times.append(time.perf_counter() - start)
+        assert found.stopped_by == "tolerance"
+    return median(times)
+
+
+CROSSING = (
+    "from envcheck.solve.field.box_bound import bound_box; "
+    "from tests.solve.field.boxes import crossing; bound_box(crossing(), {tolerance})"
+)
+
+
 def main() -> int:
     """Measure and print; 1 where a budget is missed."""
     with tempfile.TemporaryDirectory() as folder:
@@ -93,6 +113,14 @@ def main() -> int:
             missed += took > budget
             words = f"C-stud section to {title}, after imports"
             print(f"{words:49} {took:7.3f} s of {budget:g} s{'  MISSED' * (took > budget)}")
+        took = crossing_seconds(1e-2)
+        missed += took > 5.0
+        words = "stud x girt in three dimensions to 1 %"
+        print(f"{words:49} {took:7.3f} s of 5 s{'  MISSED' * (took > 5.0)}")
+        for words, tolerance in (("1 %", 1e-2), ("0.25 %", 2.5e-3)):
+            peak = peak_mib([sys.executable, "-c", CROSSING.format(tolerance=tolerance)])
+            missed += peak > 300
+            print(f"peak memory, stud x girt to {words}: {peak:.0f} MiB of 300")
         print(f"peak memory, check of 1,000: {peak_mib([*CHECK, large]):.0f} MiB")
         print(f"peak memory, C load of it:   {peak_mib([*load, large]):.0f} MiB")
         missed += many()

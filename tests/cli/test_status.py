@@ -26,7 +26,9 @@ def run(monkeypatch: pytest.MonkeyPatch) -> SimpleNamespace:
     """A pipeline that gives the shared fixture with the exit status asked for, or raises."""
     wanted = SimpleNamespace(status=1, error=None, asked=None)
 
-    def fake(path: str, folders: object = (), bounds: bool = False) -> SimpleNamespace:
+    def fake(
+        path: str, folders: object = (), bounds: bool = False, close: str = ""
+    ) -> SimpleNamespace:
         wanted.asked = (path, folders)
         if wanted.error is not None:
             raise wanted.error

@@ -153,7 +153,7 @@ def refine(
 def _marked(grid: Grid, columns: Array, rows: Array, column_costs: Array, row_costs: Array) -> Grid:
     """Split the columns and rows that hold most of the gap for the nodes that they cost."""
     costs = np.concatenate([column_costs, row_costs])
-    marked = _most(np.concatenate([columns, rows]), costs)
+    marked = best(np.concatenate([columns, rows]), costs)
     return refined(grid, marked[: len(columns)], marked[len(columns) :])
 
 
@@ -165,13 +165,13 @@ def _marked_each_way(
     Where one way is cut far finer than the other, its lines cost so little that the first rule
     would split them for ever while the gap lies in the other.
     """
-    return refined(grid, _most(columns, np.ones(len(columns))), _most(rows, np.ones(len(rows))))
+    return refined(grid, best(columns, np.ones(len(columns))), best(rows, np.ones(len(rows))))
 
 
-def _most(scores: Array, costs: Array) -> npt.NDArray[np.bool_]:
-    """The best scores for their costs that hold the share ``MARKED`` of all."""
+def best(scores: Array, costs: Array, share: float = MARKED) -> npt.NDArray[np.bool_]:
+    """The best scores for their costs that together hold a share of all."""
     order = np.argsort(-scores / costs)
-    needed = np.searchsorted(np.cumsum(scores[order]), MARKED * scores.sum()) + 1
+    needed = np.searchsorted(np.cumsum(scores[order]), share * scores.sum()) + 1
     marked = np.zeros(len(scores), dtype=bool)
     marked[order[:needed]] = True
     return marked

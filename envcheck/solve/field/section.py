@@ -118,13 +118,14 @@ def graded(sizes: tuple[float, ...]) -> tuple[Array, npt.NDArray[np.intp]]:
 
 def refined(grid: Grid, columns: npt.NDArray[np.bool_], rows: npt.NDArray[np.bool_]) -> Grid:
     """Halve the marked columns and rows."""
-    hx, cx = _halved(grid.hx, grid.columns, columns)
-    hy, cy = _halved(grid.hy, grid.rows, rows)
+    hx, cx = halved(grid.hx, grid.columns, columns)
+    hy, cy = halved(grid.hy, grid.rows, rows)
     return Grid(hx, hy, cx, cy)
 
 
-def _halved(
+def halved(
     sizes: Array, pieces: npt.NDArray[np.intp], marked: npt.NDArray[np.bool_]
 ) -> tuple[Array, npt.NDArray[np.intp]]:
+    """Halve the marked sizes; with the piece of each."""
     times = np.where(marked, 2, 1)
     return np.repeat(sizes / times, times), np.repeat(pieces, times)

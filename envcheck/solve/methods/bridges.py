@@ -42,7 +42,12 @@ def correct_for_bridges(
     unsure = 0.0
     for number, bridge in enumerate(bridges, 1):
         name = "psi" if bridge.kind == "line" else "chi"
-        if bridge.evidence in UNCONFIRMED:
+        if bridge.drawn is not None and bridge.value != bridge.value:
+            missing.append(
+                f"{name} of {bridge.title!r}: it is drawn, and a drawn box decides only where the "
+                "rule set takes the bounds in two or three dimensions"
+            )
+        elif bridge.evidence in UNCONFIRMED:
             missing.append(f"a confirmed source of {name} for {bridge.title!r}")
         elif not bridge.per_area and not area:
             missing.append(f"the area that the bridge {bridge.title!r} belongs to")

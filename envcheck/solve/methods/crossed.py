@@ -55,6 +55,6 @@ METHODS = (
         formula="R = 0, unless tested or solved in two or three dimensions",
         source="common practice of codes that define continuous insulation (fasteners aside), "
         "no single source; the rule set says how it counts",
-        valid="continuous members; point brackets enter by chi",
+        valid="continuous members; point brackets enter by chi or drawn as boxes",
     ),
 )

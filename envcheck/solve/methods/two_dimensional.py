@@ -1,4 +1,4 @@
-"""Two-dimensional conduction of the drawn section: the bracket decides."""
+"""Conduction of the drawn section, or box where members cross: the bracket decides."""
 
 from __future__ import annotations
 
@@ -18,13 +18,13 @@ def decide_two_dimensional(wall: Wall) -> Decision:
 METHODS = (
     Method(
         name="two_dimensional",
-        title="Two-dimensional conduction of the drawn section, bounded from both sides",
-        formula="div(k grad T) = 0 in the drawn section; U(parallel paths) <= U(cell network) <= U "
-        "<= U(node network) <= U(isothermal planes)",
+        title="Conduction of the drawn section or box, bounded from both sides",
+        formula="div(k grad T) = 0 in the drawn section (two dimensions) or box (three); "
+        "U(parallel paths) <= U(cell network) <= U <= U(node network) <= U(isothermal planes)",
         source="ISO 10211:2017 defines the model; the bounds are Dirichlet's and Thomson's "
         "principles for steady conduction, and Rayleigh's law for the two wirings",
-        valid="rectilinear sections, 1e-4 to 1e4 W/(m K); layers that cross each other keep the "
-        "bounds of the two wirings",
+        valid="rectilinear sections, 1e-4 to 1e4 W/(m K); members that cross each other at right "
+        "angles, and clips of stated size on a repeat area, as boxes; screws and pins by chi",
         decides=decide_two_dimensional,
     ),
 )
