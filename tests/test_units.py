@@ -48,6 +48,12 @@ SI = {
     "power_density": "W/m**2",
     "angle": "degree",
     "share": "",
+    "speed": "m/s",
+    "rain": "m/day",
+    "air_changes": "1/s",
+    "volume": "m**3",
+    "openings_per_length": "m",
+    "openings_per_area": "",
 }
 PAIRS = [(q, unit) for q in SI for unit in UNITS[q].spellings]
 

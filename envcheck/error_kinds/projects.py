@@ -257,6 +257,18 @@ KINDS = (
         "counts a corner twice or leaves it out.",
     ),
     Kind(
+        "contradicts",
+        "{key!r} contradicts {other!r}",
+        "{hint}",
+        "Two keys of one thing that cannot both be true.",
+    ),
+    Kind(
+        "layer-out-of-place",
+        "the layer {name!r} has no place here: {why}",
+        "{hint}",
+        "A layer that the thing it stands in cannot have.",
+    ),
+    Kind(
         "evidence-outside",
         "the evidence lies outside the project's folder",
         "copy the document into the project's folder and name it from there",

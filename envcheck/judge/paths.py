@@ -25,6 +25,7 @@ class Insulation(NamedTuple):
 
     cavity: float | None
     continuous: float | None
+    """None where it is not told apart."""
     extent: float | None = None
     why_not: str = ""
     """Why the continuous part does not count, or empty."""
@@ -36,6 +37,8 @@ def insulation_of(assembly: Assembly, element: Element, properties: Properties) 
         slab = assembly.slab
         covered = slab.top_edge_covered is not False
         return Insulation(None, slab.resistance if covered else 0.0, slab.extent)
+    if assembly.basement is not None:
+        return Insulation(None, None, None, "floor and walls of a basement are one assembly here")
     why_not = ""
     if properties.crossed:
         why_not = f"metal crosses the insulation ({properties.crossed[0]})"
@@ -52,7 +55,8 @@ def insulation_path(limit: Limit, brought: Insulation, ruleset: RuleSet) -> Path
 
     Any one alternative is enough; all of its terms must hold, none is traded against another.
     """
-    if brought.why_not and any(term.role == "ci" for alt in limit.alternatives for term in alt):
+    asks = any(term.role == "ci" for alt in limit.alternatives for term in alt)
+    if brought.why_not and (asks or brought.continuous is None):
         return PathResult("insulation", "not_available", "", limit.cell, brought.why_not)
     value = describe(brought, limit)
     strange = [t.role for alt in limit.alternatives for t in alt if t.role not in COUNTED]

@@ -96,6 +96,14 @@ class Conventions(NamedTuple):
     outside count 0, outer film stays."""
     fasteners: str = "ignored"
     """``ignored`` in continuous insulation, ``iso6946`` or ``chi``."""
+    air_voids: str = "ignored"
+    """``ignored`` or ``iso6946``"""
+    inverted_roofs: str = "ignored"
+    """Rain on inverted roofs: ``ignored`` or ``iso6946``."""
+    corrections_from: float | None = None
+    """Share of U from which the corrections of ISO 6946 count together; None = always."""
+    wind_speed: float | None = None
+    """m/s, where the outside film follows from the wind."""
     tapered: str = "integral"
     """``integral``, ``mean`` or ``minimum``; with ``tapered_mean_within`` the mean may be used."""
     tapered_mean_within: float | None = None

@@ -117,6 +117,10 @@ class AirSpaceLayer(NamedTuple):
     """``unventilated``, ``slightly`` or ``well`` (in the sense of ISO 6946)."""
     emittances: tuple[float, float]
     """Of the outer and the inner face; 0.9 where nothing is said."""
+    openings: float | None = None
+    """Area of its openings to the outside, where it is stated, in m2 ..."""
+    openings_per: str = ""
+    """... for each m of ``length`` of an upright space, or m2 of ``area`` of a level one."""
 
 
 class Fill(NamedTuple):
@@ -204,6 +208,23 @@ class MasonryLayer(NamedTuple):
     """Stated weight per area, kg/m2, for class tests; None = from the densities."""
 
 
+class TaperedPiece(NamedTuple):
+    """A part of a roof drained by several slopes."""
+
+    shape: str
+    """As of a tapered layer, or ``triangle`` with another thickness at each corner."""
+    area: float
+    """m2 in plan"""
+    least: float
+    """m"""
+    greatest: float
+    """m"""
+    middle: float | None = None
+    """Thickness at the middle corner of a ``triangle``, m."""
+    run: float | None = None
+    """Length over which the thickness rises, m."""
+
+
 class TaperedLayer(NamedTuple):
     """Insulation of varying thickness."""
 
@@ -217,6 +238,10 @@ class TaperedLayer(NamedTuple):
     """m"""
     shape: str
     """``rectangle``, ``triangle_thickest_apex``, ``triangle_thinnest_apex``."""
+    run: float | None = None
+    """Length over which the thickness rises, m."""
+    pieces: tuple[TaperedPiece, ...] = ()
+    """Of a roof drained by several slopes; ``least`` and ``greatest`` are then those of all."""
 
 
 class Fasteners(NamedTuple):

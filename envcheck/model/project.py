@@ -10,6 +10,8 @@ from dataclasses import dataclass, field
 from datetime import date
 from typing import TYPE_CHECKING, NamedTuple
 
+from envcheck.model.additions import Curved, Inverted, Voids
+from envcheck.model.ground import Basement, Slab, Suspended
 from envcheck.model.layers import (
     AirSpaceLayer,
     Bridge,
@@ -105,33 +107,14 @@ class Rated(NamedTuple):
     """False where ``document`` reads like a file that is not there."""
 
 
-class Slab(NamedTuple):
-    """A slab on the ground."""
-
-    insulation: str
-    """``none``, ``vertical``, ``horizontal`` or ``under`` (whole area)."""
-    resistance: float
-    """Of the edge insulation, m2 K/W."""
-    extent: float
-    """Depth or width of the edge insulation, m."""
-    heated: bool | None
-    """None = not stated."""
-    top_edge_covered: bool | None
-    wall_thickness: float | None
-    """Full thickness of the external wall, m (ISO 13370)."""
-    soil_conductivity: float | None
-    """W/(m K)"""
-    perimeter: float | None
-    area: float | None
-
-
 class Assembly(NamedTuple):
     """One construction: layers from outside to inside, or a product, slab or window."""
 
     id: str
     kind: str
     """``layers``, ``window``, ``curtain-wall``, ``glazing``, ``rated``, ``slab-on-grade``,
-    ``below-grade-wall``."""
+    ``below-grade-wall``, ``suspended-floor``, ``heated-basement``, ``unheated-basement``,
+    ``curved``."""
     title: str
     sheet: str
     line: int
@@ -149,6 +132,11 @@ class Assembly(NamedTuple):
     """Of a computed window."""
     glazing: Glazing | None = None
     """Of kind ``glazing``: panes and spaces without a frame."""
+    voids: tuple[Voids, ...] = ()
+    inverted: Inverted | None = None
+    suspended: Suspended | None = None
+    basement: Basement | None = None
+    curved: Curved | None = None
 
 
 # ----------------------------------------------------------------------------------- elements

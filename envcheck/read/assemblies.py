@@ -13,10 +13,11 @@ from envcheck.model.project import (
     Layer,
     Material,
     Rated,
-    Slab,
     Window,
 )
+from envcheck.read.additions import read_curved, read_inverted, read_voids
 from envcheck.read.context import MATCHES, NAN, Context
+from envcheck.read.ground import read_basement, read_slab, read_suspended
 from envcheck.read.layers import read_layers
 from envcheck.read.yaml_reader import Entry
 
@@ -116,11 +117,16 @@ def read_assembly(context: Context, name: str, entry: Entry) -> Assembly:
         bridges=tuple(_bridge(context, b, kind, layers) for b in entry.get("bridges", ())),
         window=_window(context, entry) if kind in _BY_PARTS else None,
         rated=_rated(context, entry) if kind == "rated" else None,
-        slab=_slab(context, entry) if kind == "slab-on-grade" else None,
+        slab=read_slab(context, entry) if kind == "slab-on-grade" else None,
         outside_film=_film(context, entry, "outside_film"),
         inside_film=_film(context, entry, "inside_film"),
         shgc=_plain(entry, "shgc") if kind in _BY_PARTS else None,
         glazing=_glazing(context, entry) if kind == "glazing" else None,
+        voids=tuple(read_voids(context, void, layers) for void in entry.get("voids", ())),
+        inverted=read_inverted(context, entry["inverted"], layers) if "inverted" in entry else None,
+        curved=read_curved(context, entry, layers) if kind == "curved" else None,
+        suspended=read_suspended(context, entry) if kind == "suspended-floor" else None,
+        basement=read_basement(context, entry) if kind.endswith("-basement") else None,
     )
 
 
@@ -262,35 +268,4 @@ def _rated(context: Context, entry: Entry) -> Rated:
         standard=evidence.get("standard", ""),
         document=evidence.get("document", ""),
         document_found=found,
-    )
-
-
-def _slab(context: Context, entry: Entry) -> Slab:
-    edge = entry.get("edge_insulation")
-    position, resistance, extent, covered = "none", 0.0, 0.0, None
-    if edge is not None:
-        position, covered = edge["position"], edge.get("top_edge_covered")
-        size = {"vertical": "depth", "horizontal": "width"}.get(position)
-        context.out_of_place(
-            edge,
-            tuple(key for key in ("depth", "width") if key != size),
-            f"edge insulation of position {position!r}",
-            f"use {size!r}" if size else "delete it, or mend the position",
-        )
-        for key in () if position == "none" else filter(None, ("resistance", size)):
-            if key not in edge:
-                where = f"{position} edge insulation"
-                context.add("missing-key", edge.line, key=key, where=where, hint="")
-        resistance = context.optional(edge, "resistance", "resistance") or 0.0
-        extent = context.optional(edge, size, "length") or 0.0 if size else 0.0
-    return Slab(
-        insulation=position,
-        resistance=resistance,
-        extent=extent,
-        heated=entry.get("heated"),
-        top_edge_covered=covered,
-        wall_thickness=context.optional(entry, "wall_thickness", "length"),
-        soil_conductivity=context.optional(entry, "soil_conductivity", "conductivity"),
-        perimeter=context.optional(entry, "perimeter", "length"),
-        area=context.optional(entry, "area", "area"),
     )

@@ -7,6 +7,9 @@ from envcheck.read.context import MATCHES, Context
 from envcheck.read.yaml_reader import Entry
 
 ORDINARY_EMITTANCE = 0.9
+SLIGHTLY_ABOVE, WELL_FROM = 500e-6, 1500e-6
+"""m2 of openings per m of an upright space, or per m2 of a level one: where an air space begins to
+be slightly and well ventilated; ISO 6946:2017, 6.9, from memory."""
 
 
 def read_air_space(context: Context, entry: Entry) -> AirSpaceLayer:
@@ -16,14 +19,48 @@ def read_air_space(context: Context, entry: Entry) -> AirSpaceLayer:
         context.exactly_one(entry, ("emittance", "emittances"), "the air space")
     both = entry.get("emittance", ORDINARY_EMITTANCE)
     outer, inner = stated or (both, both)
+    openings, per = _openings(context, entry)
+    ventilation = entry.get("ventilation", "unventilated")
+    if openings is not None:
+        ventilation = _by_openings(context, entry, openings, f"openings_per_{per}")
     return AirSpaceLayer(
         "air-space",
         entry.get("title", "air space"),
         entry.line,
         context.positive(entry, "thickness", "length"),
-        entry.get("ventilation", "unventilated"),
+        ventilation,
         (float(outer), float(inner)),
+        openings,
+        per,
     )
+
+
+def _openings(context: Context, entry: Entry) -> tuple[float | None, str]:
+    """The area of openings and what it is per; None where nothing is stated."""
+    keys = ("openings_per_length", "openings_per_area")
+    there = [key for key in keys if key in entry]
+    if not there:
+        return None, ""
+    key = context.exactly_one(entry, keys, "the air space") or there[0]
+    return context.not_negative(entry, key, key), key.removeprefix("openings_per_")
+
+
+def _by_openings(context: Context, entry: Entry, openings: float, key: str) -> str:
+    """The class of ventilation that the openings make; a stated one must agree."""
+    found = "slightly" if SLIGHTLY_ABOVE < openings < WELL_FROM else "unventilated"
+    found = "well" if openings >= WELL_FROM else found
+    stated = entry.get("ventilation", found)
+    if stated != found and openings == openings:
+        context.add(
+            "contradicts",
+            entry.lines[key],
+            found=f"{entry[key]} with ventilation: {stated}",
+            expected=f"{found}: above 500 up to 1500 mm2 is slightly ventilated (ISO 6946)",
+            key=key,
+            other="ventilation",
+            hint="leave out 'ventilation': it follows from the openings",
+        )
+    return found
 
 
 def read_fill(context: Context, entry: Entry, where: str, depth: float) -> Fill:

@@ -14,11 +14,11 @@ from envcheck.model.project import (
     Material,
     MaterialLayer,
     ResistanceLayer,
-    TaperedLayer,
 )
 from envcheck.read.context import Context
 from envcheck.read.fills import read_air_space, read_cell
 from envcheck.read.framing import read_framed, with_crossed_insulation
+from envcheck.read.tapered import read_tapered
 from envcheck.read.yaml_reader import Entry
 from envcheck.units import states_range
 
@@ -66,25 +66,6 @@ def _contact(context: Context, entry: Entry) -> Layer:
         resistance,
         entry.get("source", ""),
         span,
-    )
-
-
-def _tapered(context: Context, entry: Entry) -> Layer:
-    material = context.material(entry)
-    least = context.not_negative(entry, "least", "length")
-    greatest = context.positive(entry, "greatest", "length")
-    if least >= greatest:
-        limit = "the greatest thickness"
-        found = f"{entry['least']} against {entry['greatest']}"
-        context.add("too-thick", entry.lines["least"], found=found, key="least", limit=limit)
-    return TaperedLayer(
-        "tapered",
-        entry.get("title") or material.title,
-        entry.line,
-        material,
-        least,
-        greatest,
-        entry.get("shape", "rectangle"),
     )
 
 
@@ -141,5 +122,5 @@ _KINDS: dict[str, Callable[[Context, Entry], Layer]] = {
     "air-space": read_air_space,
     "framed": read_framed,
     "masonry": _masonry,
-    "tapered": _tapered,
+    "tapered": read_tapered,
 }

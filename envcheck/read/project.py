@@ -83,7 +83,8 @@ def _prune_layer(data: Entry, path: Path) -> Path:
         return path
     assembly = data["assemblies"][path[1]]
     assembly["layers"][path[3]] = None
-    assembly.pop("fasteners", None)
+    for key in ("fasteners", "voids", "inverted"):  # they name layers
+        assembly.pop(key, None)
     return ()
 
 

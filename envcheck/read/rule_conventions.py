@@ -16,7 +16,7 @@ DEFAULT = "default of envcheck"
 NOT_STATED = "not stated"
 WITHOUT_DEFAULT = (
     "methods", "framing_shares", "class_tests", "evidence", "measured", "cavity_factors",
-    "effective_layers", "f_factors", "weights",
+    "effective_layers", "f_factors", "weights", "corrections_from", "wind_speed",
 )  # fmt: skip
 """Conventions that envcheck has no value of its own for."""
 WEIGHTS = ("bre_465", "table")
@@ -33,7 +33,8 @@ MEASURED = {
 KEYS = (
     "films", "air_spaces", "methods", "cladding", "fasteners", "tapered", "crossed_insulation",
     "framing_shares", "class_tests", "evidence", "measured", "cavity_factors",
-    "effective_layers", "f_factors", "weights",
+    "effective_layers", "f_factors", "weights", "air_voids", "inverted_roofs", "corrections_from",
+    "wind_speed",
 )  # fmt: skip
 
 
@@ -60,6 +61,10 @@ def read_conventions(source: Source, problems: list[Problem]) -> Conventions:
         air_spaces=air_spaces,
         cladding=stated.get("cladding", "iso6946"),
         fasteners=stated.get("fasteners", "ignored"),
+        air_voids=stated.get("air_voids", "ignored"),
+        inverted_roofs=stated.get("inverted_roofs", "ignored"),
+        corrections_from=_stated(source, "corrections_from", "share", problems),
+        wind_speed=_stated(source, "wind_speed", "speed", problems),
         tapered=tapered.get("use", "integral"),
         tapered_mean_within=_quantity(
             source, tapered, "tapered", "mean_within", "length", problems
@@ -252,6 +257,11 @@ def _quantity(
 ) -> float | None:
     text = stated.get(name)
     return None if text is None else _parse(source, text, quantity, (key, name), problems)
+
+
+def _stated(source: Source, key: str, quantity: str, problems: list[Problem]) -> float | None:
+    text = source.stated.get(key)
+    return None if text is None else _parse(source, text, quantity, (key,), problems)
 
 
 def _number(

@@ -15,7 +15,9 @@ Path = tuple[str | int, ...]
 
 _SINGULAR = {
     "assemblies": "assembly", "elements": "element", "materials": "material",
-    "surfaces": "surface", "layers": "layer", "bridges": "bridge", "fasteners": "fasteners",
+    "surfaces": "surface", "layers": "layer", "wall_layers": "layer", "floor_layers": "layer",
+    "pieces": "piece", "voids": "air voids", "bridges": "bridge",
+    "fasteners": "fasteners",
     "extras": "extra", "zones": "zone", "rule_sets": "rule set", "exceptions": "exception",
     "answers": "answer", "facts": "fact", "tables": "table", "stock": "stock",
 }  # fmt: skip

@@ -8,7 +8,7 @@ from typing import NamedTuple
 from envcheck import units
 from envcheck.model.judged import Line
 from envcheck.model.project import Assembly, Project
-from envcheck.model.solved import Beside, RangedInput, Solved
+from envcheck.model.solved import Beside, Counted, RangedInput, Solved
 from envcheck.report import layers, numbers, wording, workings
 from envcheck.report.inert import clean
 from envcheck.report.layers import LayerView
@@ -114,14 +114,21 @@ def assembly_view(
         ranges=ranges(solved, system),
         beside=tuple(_beside(beside, solved, system) for beside in solved.beside),
         films=_films(solved, system) if assembly.layers else (),
-        layers=tuple(
-            layers.view(layer, counted, system)
-            for layer, counted in zip(assembly.layers, solved.counted, strict=True)
-        ),
+        layers=tuple(_layers(assembly, solved, system)),
         conductivity_unit=units.label("conductivity", system),
         resistance_unit=units.label("resistance", system),
         assumptions=tuple(map(clean, solved.assumptions)),
     )
+
+
+def _layers(assembly: Assembly, solved: Solved, system: str) -> Iterable[LayerView]:
+    """The layers of the assembly, then those of its other parts, which are named."""
+    for layer, counted in zip(assembly.layers, solved.counted, strict=True):
+        yield layers.view(layer, counted, system)
+    if assembly.basement is not None:
+        for name, others in assembly.basement.others:
+            for layer in others:
+                yield layers.view(layer, Counted(None, name), system)
 
 
 def shown(value: float, metric: str, system: str) -> str:

@@ -177,6 +177,8 @@ def _conventions(ruleset: RuleSet, system: str) -> Iterable[Convention]:
     yield _said(conv, "ventilated cladding", cladding, "cladding")
     fasteners = wording.FASTENERS.get(conv.fasteners, conv.fasteners)
     yield _said(conv, "fasteners", fasteners, "fasteners")
+    for topic, key, counted in _wind_and_corrections(conv):
+        yield _said(conv, topic, counted, key)
     yield _said(conv, "tapered layers", _tapered(conv, system), "tapered")
     crossed = wording.CROSSED.get(conv.crossed_insulation, conv.crossed_insulation)
     yield _said(conv, "crossed insulation", crossed, "crossed_insulation")
@@ -207,15 +209,26 @@ def _conventions(ruleset: RuleSet, system: str) -> Iterable[Convention]:
     yield Convention("rounding", rule, clean(where))
 
 
+def _wind_and_corrections(conv: Conventions) -> Iterable[tuple[str, str, str]]:
+    """Topic, key and words of the film by wind, and of the corrections beside fasteners."""
+    if conv.wind_speed is not None:
+        counted = f"by a wind of {conv.wind_speed:g} m/s (ISO 6946)"
+        yield "film outdoors", "wind_speed", counted
+    yield "air voids", "air_voids", wording.CORRECTIONS[conv.air_voids]
+    yield "rain on inverted roofs", "inverted_roofs", wording.CORRECTIONS[conv.inverted_roofs]
+    if conv.corrections_from is not None:
+        counted = f"from {numbers.percent(conv.corrections_from)} of U together"
+        yield "corrections count", "corrections_from", counted
+
+
 def _said(conv: Conventions, topic: str, counted: str, *keys: str) -> Convention:
     where = next((conv.where[key] for key in keys if key in conv.where), wording.OUR_DEFAULT)
     return Convention(topic, clean(counted), clean(where))
 
 
 def _films(conv: Conventions) -> str:
-    if conv.film_set in wording.FILM_SETS:
-        return wording.FILM_SETS[conv.film_set]
-    return f"table {conv.film_set}" if conv.film_set else "table of the rule set"
+    named = f"table {conv.film_set}" if conv.film_set else "table of the rule set"
+    return wording.FILM_SETS.get(conv.film_set, named)
 
 
 def _methods(conv: Conventions) -> Iterable[tuple[str, str]]:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from typing import NamedTuple
 
+from envcheck import units
 from envcheck.model.layers import (
     AirSpaceLayer,
     ContactLayer,
@@ -29,6 +30,11 @@ class LayerView(NamedTuple):
     note: str
 
 
+def _openings(layer: AirSpaceLayer, system: str) -> str:
+    unit = {"SI": "mm2/m", "IP": "in2/ft"}[system] + ("2" if layer.openings_per == "area" else "")
+    return f"openings {units.convert(layer.openings or 0.0, unit):.4g} {unit}"
+
+
 VENTILATION = {
     "unventilated": "unventilated air space",
     "slightly": "slightly ventilated air space",
@@ -47,11 +53,14 @@ def view(layer: Layer, counted: Counted, system: str) -> LayerView:
         source = layer.source
     elif isinstance(layer, AirSpaceLayer):
         words.insert(0, VENTILATION[layer.ventilation])
+        if layer.openings is not None:
+            words.insert(1, _openings(layer, system))
     elif isinstance(layer, TaperedLayer):
         thickness = layer.least
         conductivity, source = layer.material.conductivity, layer.material.source
         most = numbers.length(layer.greatest, system)
-        words.insert(0, f"tapered up to {most}, at its least here")
+        shapes = f" in {len(layer.pieces)} pieces" if layer.pieces else ""
+        words.insert(0, f"tapered{shapes} up to {most}, at its least here")
     elif isinstance(layer, FramedLayer):
         fill = layer.fill
         source = fill.material.source if fill.material is not None else fill.source

@@ -48,6 +48,12 @@ METHODS = {
     "c_factor": "C-factor from layers",
     "f_factor": "F-factor looked up",
     "iso13370_slab": "slab on ground by ISO 13370",
+    "iso13370_suspended": "suspended floor by ISO 13370",
+    "iso13370_basement": "heated basement by ISO 13370",
+    "iso13370_basement_floor": "floor of a heated basement by ISO 13370",
+    "iso13370_basement_wall": "walls of a heated basement by ISO 13370",
+    "iso13370_unheated": "unheated basement by ISO 13370",
+    "curved": "cylinder or sphere",
     "iso10077_window": "window by ISO 10077-1",
     "iso12631_curtain_wall": "curtain wall by ISO 12631",
     "en673_glazing": "centre of the glass by EN 673",
@@ -121,6 +127,7 @@ FASTENERS = {
     "iso6946": "correction of ISO 6946",
     "chi": "by point transmittance (chi)",
 }
+CORRECTIONS = {"ignored": "not counted", "iso6946": "correction of ISO 6946"}
 TAPERED = {
     "integral": "by the areas of equal thickness (integral)",
     "mean": "at the mean thickness",

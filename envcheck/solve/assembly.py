@@ -12,12 +12,19 @@ from envcheck.model.solved import Beside, Counted, Operand, Setting, Solved, Ste
 from envcheck.solve.cautions import cautions
 from envcheck.solve.cells import stated_cell
 from envcheck.solve.conventions import ventilated_at
+from envcheck.solve.corrections import corrections as iso6946_corrections
+from envcheck.solve.corrections import counted_from
 from envcheck.solve.counted import counted_layers, drawing_assumptions
 from envcheck.solve.methods.bridges import correct_for_bridges, total_step
 from envcheck.solve.methods.crossed import count_crossed
-from envcheck.solve.methods.fasteners import Correction, correct_for_fasteners
+from envcheck.solve.methods.fasteners import Correction
 from envcheck.solve.methods.framed import is_metal
-from envcheck.solve.methods.tapered import taper
+from envcheck.solve.methods.slightly_ventilated import (
+    INTERPOLATED,
+    Pair,
+    interpolated,
+    pair_of,
+)
 from envcheck.solve.methods.weighted import HIGHEST_RATIO, weighted
 from envcheck.solve.registry import (
     Context,
@@ -27,6 +34,7 @@ from envcheck.solve.registry import (
     drawers,
     methods,
 )
+from envcheck.solve.taper import taper
 from envcheck.solve.wiring import bounds
 
 NOT_DRAWN = "no bracket: the value comes from a table, a rating or a formula of the whole"
@@ -59,16 +67,19 @@ def _solve_layers(
     area: float | None,
 ) -> Solved:
     try:
-        wall, notes = draw(assembly, setting, conventions)
+        pair = pair_of(assembly, setting)
+        wall, notes = draw(pair.closed if pair else assembly, setting, conventions)
     except NotDecided as need:
         return _missing(assembly, setting, str(need))
-    decision, corrections = _decide(wall)
+    decision, corrections = _decide(wall, pair)
     points = drawn_points(assembly)
     undrawn = tuple(bridge for bridge in bridges if bridge.drawn is None)
     to_bracket = (*corrections, correct_for_bridges(undrawn, area))
     added = sum(correction.value for correction in to_bracket)
     unsure = sum(correction.unsure for correction in to_bracket)
-    low, high, note, beside = _bracket(wall, points, added)
+    low, high, note, beside = (
+        (None, None, INTERPOLATED, ()) if pair else _bracket(wall, points, added)
+    )
     if points and decision.by_bracket:
         decision, corrections = _by_box(decision, high, added, note), to_bracket
     else:
@@ -137,7 +148,7 @@ def _solve_whole(
         beside=decision.beside,
         tree=decision.tree,
         steps=closed,
-        counted=tuple([Counted(None)] * len(assembly.layers)),
+        counted=decision.counted or tuple([Counted(None)] * len(assembly.layers)),
         assumptions=decision.assumptions,
         cautions=(*cautions(assembly), *decision.cautions),
         hand_check=closed[decision.layer_steps :],
@@ -207,8 +218,8 @@ def _outer_side(
     return at + 1, setting.outside_film, setting.outside_film_from
 
 
-def _decide(wall: Wall) -> tuple[Decision, tuple[Correction, ...]]:
-    """The clear field by the prescribed method, and what fasteners add to it."""
+def _decide(wall: Wall, pair: Pair | None) -> tuple[Decision, tuple[Correction, ...]]:
+    """The clear field by the prescribed method, and what corrections add to it."""
     setting, conventions = wall.setting, wall.conventions
     method = methods().get(setting.method)
     if method is None or method.decides is None:
@@ -221,22 +232,26 @@ def _decide(wall: Wall) -> tuple[Decision, tuple[Correction, ...]]:
     try:
         counted, changed = (wall, {}) if two_dimensional else count_crossed(wall)
         decision = method.decides(counted)
-        fasteners = (
-            correct_for_fasteners(wall.assembly, 1.0 / decision.value, conventions, outside)
-            if decision.value is not None
-            else Correction(0.0)
-        )
+        if pair is not None:
+            opened, _ = draw(pair.opened, setting, conventions)
+            decision = interpolated(pair, decision, method.decides(count_crossed(opened)[0]))
+        found: tuple[Correction, ...] = ()
+        if decision.value is not None:
+            total = 1.0 / decision.value
+            found = iso6946_corrections(wall.assembly, total, conventions, outside)
         tapered = [layer for layer in wall.layers if isinstance(layer, TaperedLayer)]
         if len(tapered) > 1:
             titles = " and ".join(repr(layer.title) for layer in tapered)
             raise NotDecided(f"one tapered layer: {titles} together have no closed formula here")
         for layer in tapered:
             decision = taper(decision, layer, conventions)
+        if decision.value is not None:
+            found = counted_from(found, decision.value, conventions)
     except NotDecided as missing:
         return Decision(None, missing=(str(missing),)), ()
     if changed:
         decision = decision._replace(replaced={**changed, **decision.replaced})
-    return decision, (fasteners,)
+    return decision, found
 
 
 def _closed(decision: Decision, corrections: Sequence[Correction]) -> tuple[Step, ...]:

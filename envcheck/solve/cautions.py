@@ -24,8 +24,17 @@ MASONRY = ("masonry", "stone")
 """Classes of material that make a wall of masonry."""
 
 
+IN_THE_GROUND = (
+    "slab-on-grade", "below-grade-wall", "suspended-floor", "heated-basement", "unheated-basement",
+)  # fmt: skip
+
+
 def cautions(assembly: Assembly) -> tuple[Caution, ...]:
     """Cautions of one assembly, each with the reason that triggered it."""
+    if assembly.basement is not None:
+        own = assembly._replace(basement=None)
+        stacks = [own, *(own._replace(layers=layers) for _, layers in assembly.basement.others)]
+        return tuple(dict.fromkeys(caution for one in stacks for caution in cautions(one)))
     found: list[Caution] = []
     vented = ventilated_at(assembly.layers)
     insulated, burning, structural = [], [], [bridge.title for bridge in assembly.bridges]
@@ -56,7 +65,7 @@ def cautions(assembly: Assembly) -> tuple[Caution, ...]:
     if vented is not None:
         found.append(Caution("fire", f"{assembly.id}: ventilated cavity"))
     found += [Caution("structure", f"{assembly.id}: {words}") for words in structural]
-    if assembly.kind in ("slab-on-grade", "below-grade-wall"):
+    if assembly.kind in IN_THE_GROUND:
         found.append(Caution("ground", f"{assembly.id}: {assembly.title}"))
     return tuple(found)
 

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
+
 from envcheck.model.patterns import best_pattern, closeness, matches
 from envcheck.model.project import (
     AirSpaceLayer,
@@ -13,12 +15,18 @@ from envcheck.model.project import (
 )
 from envcheck.model.ruleset import Conventions, FilmRow, MethodRule
 from envcheck.model.solved import Setting
+from envcheck.solve.methods.air_space import KELVIN
 from envcheck.solve.methods.framed import is_metal
+from envcheck.solve.methods.surface_films import convection_by_wind, surface_resistance
 from envcheck.solve.registry import methods
 
 STEEP = 60.0
 """Degrees from horizontal from which a surface counts as a wall (ISO 6946:2017, 6.8: heat flow
 is horizontal within 30 degrees of the horizontal plane)."""
+
+
+EMITTANCE = 0.9
+"""Of ordinary outside surfaces, as in ISO 6946's films by wind."""
 
 
 class Resolver:
@@ -81,17 +89,33 @@ class Resolver:
         share, clause = shares[pattern]
         return share, clause or "the rule set"
 
+    def _outdoors(self, row: FilmRow) -> FilmRow:
+        """The film outdoors: that of the set, or by the wind that the rule set states."""
+        speed = self._conventions.wind_speed
+        return row if speed is None else film_by_wind(speed, self._conventions.where)
+
     def _three_films(self, adjoins: str, direction: str) -> tuple[FilmRow, FilmRow, FilmRow]:
         """Outside, inside, and outside a well-ventilated cavity."""
         asked = (adjoins, direction)
         if asked not in self._films:
             films = self._conventions.films
+            outside = _film(films, "outside", adjoins, direction)
             self._films[asked] = (
-                _film(films, "outside", adjoins, direction),
+                self._outdoors(outside) if adjoins == "outdoors" else outside,
                 _film(films, "inside", adjoins, direction),
                 _film(films, "outside", "ventilated_cladding", direction),
             )
         return self._films[asked]
+
+
+def film_by_wind(speed: float, where: Mapping[str, str]) -> FilmRow:
+    """The outside film by a wind of that speed, m/s, past an ordinary surface at 0 degC."""
+    value = surface_resistance(convection_by_wind(speed), EMITTANCE, KELVIN)
+    words = (
+        f"1 / (4 + 4 x {speed:g} + {EMITTANCE:g} x 4 x 5.67e-8 x {KELVIN:g}^3): wind of "
+        f"{speed:g} m/s, ISO 6946:2017, annex C [{where.get('wind_speed', '')}]"
+    )
+    return FilmRow("outside", "outdoors", "*", value, "", words)
 
 
 def direction_of_flow(tilt: float) -> str:
@@ -132,11 +156,7 @@ def _kin(one: str, other: str) -> bool:
 def assumed_method(assembly: Assembly, metric: str) -> tuple[str, str]:
     """The method where the rule set names none, and the words that say so."""
     if assembly.kind != "layers":
-        for name, method in methods().items():
-            served = any(kind == assembly.kind for kind, _ in method.solves)
-            if served and _kin(method.metric, metric):
-                return name, "the only method for this kind"
-        return "", f"no method gives {metric} for an assembly of kind {assembly.kind!r}"
+        return _only_method(assembly.kind, metric)
     framed = [layer for layer in assembly.layers if isinstance(layer, FramedLayer)]
     if any(is_metal(layer) for layer in framed):
         return "", "the rule set names no method for steel framing, and none is assumed"
@@ -147,6 +167,22 @@ def assumed_method(assembly: Assembly, metric: str) -> tuple[str, str]:
     return "series", "assumed: the rule set names no method (layers in series)"
 
 
+def _only_method(kind: str, metric: str) -> tuple[str, str]:
+    """The method for another kind, unless the rule set must name it."""
+    serving = [
+        method
+        for method in methods().values()
+        if any(k == kind for k, _ in method.solves) and _kin(method.metric, metric)
+    ]
+    for method in serving:
+        if method.assumed:
+            return method.name, "the only method for this kind"
+    if serving:
+        names = " or ".join(method.name for method in serving)
+        return "", f"a method for {kind!r}: the rule set does not name {names}"
+    return "", f"no method gives {metric} for an assembly of kind {kind!r}"
+
+
 def ventilated_at(layers: tuple[Layer, ...]) -> int | None:
     """Index of the innermost well-ventilated air space, or None."""
     found = [
@@ -155,6 +191,12 @@ def ventilated_at(layers: tuple[Layer, ...]) -> int | None:
         if isinstance(layer, AirSpaceLayer) and layer.ventilation == "well"
     ]
     return found[-1] if found else None
+
+
+def film_resistance(conventions: Conventions, side: str, direction: str) -> float | None:
+    """The rule set's film for another direction than that of the setting, m2 K/W, if it has any."""
+    films = conventions.films
+    return _film(films, side, "*", direction).resistance if films else None
 
 
 def _film(films: tuple[FilmRow, ...], side: str, adjoins: str, direction: str) -> FilmRow:

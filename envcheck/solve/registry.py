@@ -12,7 +12,7 @@ from typing import TYPE_CHECKING, NamedTuple
 if TYPE_CHECKING:
     from envcheck.model.project import Assembly, Layer
     from envcheck.model.ruleset import Conventions
-    from envcheck.model.solved import Beside, Block, Caution, Node, Resistor, Setting, Step
+    from envcheck.model.solved import Beside, Block, Caution, Counted, Node, Resistor, Setting, Step
 
 
 class NotDecided(Exception):
@@ -57,6 +57,8 @@ class Decision(NamedTuple):
     replaced: Mapping[int, str] = MappingProxyType({})
     """Index of a layer -> what the method counts in its place, in words."""
     by_bracket: bool = False
+    counted: tuple[Counted, ...] = ()
+    """What each layer counts, of an assembly that is solved as a whole; empty = not resolved."""
 
 
 class Method(NamedTuple):
@@ -75,6 +77,8 @@ class Method(NamedTuple):
     solves: tuple[tuple[str, Callable[..., Decision]], ...] = ()
     """Other kinds that it solves: (kind, function(assembly, setting, conventions))."""
     metric: str = "U_assembly"
+    assumed: bool = True
+    """Whether it may serve where the rule set names no method; else the rule set must name it."""
 
 
 @cache

@@ -1,8 +1,9 @@
 """The quantities, their units and the factors: data, and the only place for a factor.
 
 Every factor follows from five exact numbers: the inch 0.0254 m and the pound 0.45359237 kg
-(international yard and pound agreement, 1959), the foot of 12 inches, the International Table Btu
-1055.05585262 J (ISO 31-4:1992, annex; from memory), and 5/9 K to the Fahrenheit degree.
+(international yard and pound agreement, 1959), the foot of 12 inches (5280 to the mile), the
+International Table Btu 1055.05585262 J (ISO 31-4:1992, annex; from memory), and 5/9 K to the
+Fahrenheit degree.
 """
 
 from __future__ import annotations
@@ -117,18 +118,37 @@ UNITS: dict[str, Quantity] = {
         "Btu/(h ft2)",
     ),
     "angle": Quantity("an angle", "90 deg", ("deg",), "deg", "deg"),
+    "speed": Quantity("a speed", "4 m/s or 9 mph", ("m/s", "km/h", "mph"), "m/s", "mph"),
+    "rain": Quantity("a depth of rain per day", "2.1 mm/d", ("mm/d", "in/d"), "mm/d", "in/d"),
+    "air_changes": Quantity("air changes per hour", "0.3 /h", ("/h",), "1/h", "1/h"),
+    "volume": Quantity("a volume", "120 m3 or 4200 ft3", ("m3", "ft3"), "m3", "ft3"),
+    "openings_per_length": Quantity(
+        "an area of openings per length",
+        "1500 mm2/m or 0.7 in2/ft",
+        ("mm2/m", "cm2/m", "m2/m", "in2/ft"),
+        "m2/m",
+        "in2/ft",
+    ),
+    "openings_per_area": Quantity(
+        "an area of openings per area",
+        "700 mm2/m2 or 0.1 in2/ft2",
+        ("mm2/m2", "cm2/m2", "m2/m2", "in2/ft2"),
+        "m2/m2",
+        "in2/ft2",
+    ),
     "number": Quantity("a number", "6", (), "", ""),
 }
 """Every quantity by name. Same unit, same factor, whatever the quantity (but temperature)."""
 
 ATOMS = {
     "m": 1.0, "mm": 1e-3, "cm": 1e-2, "in": INCH, "ft": FOOT,
-    "m2": 1.0, "ft2": FOOT**2, "m3": 1.0, "ft3": FOOT**3,
+    "m2": 1.0, "mm2": 1e-6, "cm2": 1e-4, "in2": INCH**2, "ft2": FOOT**2,
+    "m3": 1.0, "ft3": FOOT**3, "s": 1.0, "km": 1e3, "mi": 5280 * FOOT,
     "W": 1.0, "J": 1.0, "kJ": 1e3, "Btu": BTU, "h": HOUR, "d": 1.0,
     "K": 1.0, "degC": 1.0, "degF": FAHRENHEIT, "kg": 1.0, "lb": POUND, "%": 1e-2, "deg": 1.0,
 }  # fmt: skip
 ALIASES = {
     "hr": "h", "F": "degF", "C": "degC", "BTU": "Btu", "btu": "Btu", "lbs": "lb", "lbm": "lb",
     "inch": "in", "inches": "in", "feet": "ft", "foot": "ft", "mK": "m*K", "m2K": "m2*K",
-    "kgK": "kg*K", "psf": "lb/ft2", "pcf": "lb/ft3", "sqft": "ft2",
+    "kgK": "kg*K", "psf": "lb/ft2", "pcf": "lb/ft3", "sqft": "ft2", "mph": "mi/h",
 }  # fmt: skip

@@ -13,6 +13,8 @@ from typing import Any
 import pytest
 import yaml
 
+from envcheck.model.additions import Curved
+from envcheck.model.ground import Basement, Ground, Slab
 from envcheck.model.project import (
     AirSpaceLayer,
     Extra,
@@ -33,6 +35,7 @@ from tests.solve.samples import (
     R_IP,
     STEEL,
     U_IP,
+    assembly,
     assert_recomputes,
     framed,
     material,
@@ -249,6 +252,73 @@ def test_solid_brick_wall() -> None:
     u_factor = value(wall, "series", outside_film=outside, inside_film=inside)
     found = {"U": u_factor, "R": 1 / u_factor}
     assert [f.name for f in checked if not agrees(f, found[f.name])] == []
+
+
+# ------------------------------------------------------------------------ ground and shells
+
+
+@pytest.mark.parametrize("figure", of_case("basement_wall"), ids=lambda figure: figure.id)
+def test_basement_wall(figure: Figure) -> None:
+    # The floor's equivalent thickness is that of the case: w chosen for a floor of no resistance.
+    given = figure.inputs
+    soil, inside = given["soil_conductivity"], given["inside"]
+    thickness = given["floor_thickness"] - soil * (inside + 0.04)
+    around_it = Ground(40.0, 100.0, thickness, soil)
+    walls = (stated("wall", given["wall_resistance"]),)
+    of = assembly(
+        stated("floor", 0.0), kind="heated-basement", inside_film=inside,
+        basement=Basement(around_it, float(given["depth"]), walls),
+    )  # fmt: skip
+    found = solved(of, "iso13370_basement_wall")
+    assert found.value is not None
+    assert agrees(figure, found.value)
+
+
+SLABS = [*of_case("slab_uninsulated"), *of_case("slab_insulated"), *of_case("slab_threshold")]
+
+
+@pytest.mark.parametrize("figure", SLABS, ids=lambda figure: figure.id)
+def test_slab(figure: Figure) -> None:
+    given = figure.inputs
+    area = 100.0
+    slab = Slab("none", 0.0, 0.0, False, None, given["wall"], given["soil_conductivity"],
+                given["perimeter_per_area"] * area, area)  # fmt: skip
+    of = assembly(stated("floor", given["floor_resistance"]), kind="slab-on-grade", slab=slab)
+    found = solved(of, "iso13370_slab", inside_film=given["inside"])
+    assert found.value is not None
+    assert agrees(figure, found.value)
+    basement = Basement(slab.ground, 1e-9, (stated("wall", 0.0),))
+    flush = assembly(
+        *of.layers, kind="heated-basement", inside_film=given["inside"], basement=basement
+    )
+    assert agrees(figure, value(flush, "iso13370_basement_floor"))
+
+
+@pytest.mark.parametrize(
+    "case", ["insulated_steam_pipe", "thick_walled_tube", "insulated_pipe_library"]
+)
+def test_pipe(case: str) -> None:
+    """Shells and films of a textbook pipe as one curved assembly, outside first."""
+    (first, *_) = checked = of_case(case)
+    shells_ = [e for e in first.inputs["elements"] if e["type"] == "cyl"]
+    films = {e["r"]: 1 / e["h"] for e in first.inputs["elements"] if e["type"] == "conv_cyl"}
+    inner, outer = shells_[0]["r1"], shells_[-1]["r2"]
+    layers = [
+        plane(f"shell {n}", material(f"shell {n}", e["conductivity"]), e["r2"] - e["r1"])
+        for n, e in enumerate(shells_)
+    ]
+    of = assembly(
+        *layers[::-1], kind="curved", curved=Curved("cylinder", "outer", inner, outer, True)
+    )
+    given = {"outside_film": films.get(outer, 0.0), "inside_film": films.get(inner, 0.0)}
+    found = solved(of, "curved", **given)
+    assert found.value is not None
+    metre = next(step.value for step in found.steps if step.symbol == "U_length")
+    figures_found = {"Q": metre * (first.inputs["t1"] - first.inputs["t2"]), "R": 1 / metre}
+    held = [f for f in checked if f.name in figures_found]
+    assert held
+    assert [f.id for f in held if not agrees(f, figures_found[f.name])] == []
+    assert_recomputes(found.steps)
 
 
 # -------------------------------------------------------------------------- every method

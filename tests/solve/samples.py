@@ -112,6 +112,8 @@ def assert_recomputes(steps: Iterable[Step]) -> None:
         assert step.symbol not in seen, f"two steps are called {step.symbol}"
         for system in ("SI",) if step.si_only else ("SI", "IP"):
             if step.expression:
+                plain = {o.name: o.value for o in step.operands}  # SI as it stands within
+                assert evaluate(step.expression, plain) == pytest.approx(step.value), step.symbol
                 values = {o.name: in_system(o.value, o.quantity, system) for o in step.operands}
                 expected = in_system(step.value, step.quantity, system)
                 found = evaluate(step.expression, values)

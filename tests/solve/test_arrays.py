@@ -27,6 +27,7 @@ from envcheck.solve.methods.air_space import (
 from envcheck.solve.methods.air_voids import void_correction
 from envcheck.solve.methods.bridges import added_by_bridge
 from envcheck.solve.methods.compressed import in_proportion
+from envcheck.solve.methods.curved import at_radius, critical, cylinder_layer, sphere_layer
 from envcheck.solve.methods.en673_glazing import (
     Gas,
     gas_conductance,
@@ -42,11 +43,9 @@ from envcheck.solve.methods.inverted_roof import rain_correction
 from envcheck.solve.methods.iso10077_window import window_geometry, window_u
 from envcheck.solve.methods.iso10456_conversion import design_conductivity
 from envcheck.solve.methods.iso13370_basement import (
-    UnheatedBasement,
     basement_floor_u,
     basement_u,
     basement_wall_u,
-    unheated_basement_u,
     wall_thickness,
 )
 from envcheck.solve.methods.iso13370_edge import edge_psi, edge_thickness, slab_with_edge
@@ -57,6 +56,8 @@ from envcheck.solve.methods.iso13370_slab import (
     slab_u,
 )
 from envcheck.solve.methods.iso13370_suspended import SuspendedFloor, suspended_u, underfloor_air_u
+from envcheck.solve.methods.iso13370_unheated import UnheatedBasement, unheated_basement_u
+from envcheck.solve.methods.slightly_ventilated import between_closed_and_open
 from envcheck.solve.methods.steel_framing import effective_resistance
 from envcheck.solve.methods.surface_films import convection_by_wind, surface_resistance
 from envcheck.solve.methods.tapered import (
@@ -142,8 +143,17 @@ FUNCTIONS: dict[str, list[tuple[Function, int]]] = {
         (basement_wall_u, 4),
         (basement_floor_u, 4),
         (basement_u, 5),
-        (lambda *given: unheated_basement_u(UnheatedBasement(*given)), 9),
     ],
+    "iso13370_basement_floor": [(basement_floor_u, 4)],
+    "iso13370_basement_wall": [(basement_wall_u, 4)],
+    "iso13370_unheated": [(lambda *given: unheated_basement_u(UnheatedBasement(*given)), 9)],
+    "curved": [
+        (lambda r, more, k: cylinder_layer(r, r, r + more, k), 3),
+        (lambda r, more, k: sphere_layer(r, r, r + more, k), 3),
+        (at_radius, 3),
+        (critical, 2),
+    ],
+    "slightly_ventilated": [(lambda a, b: between_closed_and_open(9e-4, a, b), 2)],
     "iso13370_edge": [(edge_thickness, 3), (edge_psi, 4), (slab_with_edge, 3)],
     "iso13370_slab": SLAB,
     "iso13370_suspended": [

@@ -95,6 +95,21 @@ def test_films_that_the_project_states_stand_first() -> None:
     assert (found.outside_film_from, found.inside_film_from) == ("stated in the project",) * 2
 
 
+@pytest.mark.parametrize(
+    ("speed", "printed"),
+    [(1, 0.08), (2, 0.06), (3, 0.05), (4, 0.04), (5, 0.04), (7, 0.03), (10, 0.02)],
+)
+def test_film_outdoors_by_the_wind_that_the_rule_set_states(speed: float, printed: float) -> None:
+    # ISO 6946, annex C, table of Rse by wind speed, from memory: two decimals.
+    found = resolve(assembly(BOARD), wind_speed=speed)
+    assert found.outside_film == pytest.approx(printed, abs=0.005)
+    assert f"wind of {speed:g} m/s" in found.outside_film_from
+    assert found.inside_film == 0.13
+    attic = resolve(assembly(BOARD), changed(WALL, adjoins="vented_attic"), wind_speed=speed)
+    assert attic.outside_film == 0.09
+    assert resolve(assembly(BOARD, outside_film=0.02), wind_speed=speed).outside_film == 0.02
+
+
 def test_a_set_with_outdoor_rows_alone_serves_every_neighbour() -> None:
     plain = tuple(film for film in FILMS if film.adjoins in ("*", "outdoors"))
     found = resolve(assembly(BOARD), changed(WALL, adjoins="garage"), films=plain)
@@ -197,12 +212,28 @@ def test_method_assumed_in_words(layers: tuple[Layer, ...], method: str, words: 
         ("curtain-wall", "U_product", "iso12631_curtain_wall"),
         ("glazing", "U_product", "en673_glazing"),
         ("slab-on-grade", "F_factor", "f_factor"),
-        ("slab-on-grade", "U_assembly", "iso13370_slab"),
         ("below-grade-wall", "C_factor", "c_factor"),
     ],
 )
 def test_kinds_that_one_method_serves(kind: str, metric: str, method: str) -> None:
     assert assumed_method(assembly(kind=kind), metric) == (method, "the only method for this kind")
+
+
+@pytest.mark.parametrize(
+    ("kind", "method"),
+    [
+        ("slab-on-grade", "iso13370_slab"),
+        ("suspended-floor", "iso13370_suspended"),
+        ("heated-basement", "iso13370_basement or iso13370_basement_floor"),
+        ("unheated-basement", "iso13370_unheated"),
+    ],
+)
+def test_the_ground_is_counted_only_where_the_rule_set_names_the_method(
+    kind: str, method: str
+) -> None:
+    name, words = assumed_method(assembly(kind=kind), "U_assembly")
+    assert name == ""
+    assert f"does not name {method}" in words
 
 
 def test_no_method_gives_that_metric() -> None:

@@ -11,12 +11,10 @@ from envcheck.solve.methods.air_voids import LEVELS, void_steps
 from envcheck.solve.methods.inverted_roof import rain_steps
 from envcheck.solve.methods.iso13370_basement import (
     HeatedBasement,
-    UnheatedBasement,
     basement_floor_u,
     basement_steps,
     basement_u,
     basement_wall_u,
-    unheated_basement_u,
 )
 from envcheck.solve.methods.iso13370_edge import Edge, edge_psi, edge_steps, slab_with_edge
 from envcheck.solve.methods.iso13370_slab import bare_ground_u, equivalent_thickness, slab_u
@@ -25,6 +23,7 @@ from envcheck.solve.methods.iso13370_suspended import (
     suspended_steps,
     suspended_u,
 )
+from envcheck.solve.methods.iso13370_unheated import UnheatedBasement, unheated_basement_u
 from tests.solve.samples import assert_recomputes
 
 CLAY = 1.5

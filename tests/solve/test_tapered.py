@@ -9,11 +9,12 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from envcheck.model.project import TaperedLayer
+from envcheck.model.layers import TaperedLayer, TaperedPiece
 from envcheck.model.ruleset import Conventions
 from envcheck.model.solved import Operand, Step
-from envcheck.solve.methods.tapered import SHAPES, draw_tapered, mean_thickness, taper
-from envcheck.solve.registry import Decision
+from envcheck.solve.methods.tapered import SHAPES, draw_tapered, mean_thickness
+from envcheck.solve.registry import Decision, NotDecided
+from envcheck.solve.taper import taper
 from tests.changed import changed
 from tests.solve.samples import INCH, R_IP, U_IP, assert_recomputes, context, material
 
@@ -136,3 +137,39 @@ def test_drawn_at_its_least_thickness() -> None:
     assert cell.value == pytest.approx(0.1 / 0.023)
     assert "least thickness" in cell.title
     assert_recomputes(cell.steps)
+
+
+def test_a_stated_run_that_is_too_steep_has_no_exact_value() -> None:
+    steep = layer(PIR, 0.1, 0.2)._replace(run=1.9)
+    with pytest.raises(NotDecided, match=r"at most 5 %.*5\.26 %"):
+        taper(at_least(5.0), steep, Conventions())
+    assert taper(at_least(5.0), steep, Conventions(tapered="minimum")).value == pytest.approx(0.2)
+    level = taper(at_least(5.0), steep._replace(run=2.0), Conventions())
+    assert level.value == taper(at_least(5.0), layer(PIR, 0.1, 0.2), Conventions()).value
+    piece = TaperedPiece("rectangle", 1.0, 0.1, 0.2, None, 1.0)
+    with pytest.raises(NotDecided, match="10 %"):
+        taper(at_least(5.0), steep._replace(run=None, pieces=(piece,)), Conventions())
+
+
+def test_pieces_by_every_way_of_counting() -> None:
+    # Two halves: a wedge 100 to 200 mm (mean 150) and a level part of 200 mm; mean 175 mm.
+    pieces = (
+        TaperedPiece("rectangle", 5.0, 0.1, 0.2),
+        TaperedPiece("rectangle", 5.0, 0.2, 0.2),
+    )
+    roof = layer(PIR, 0.1, 0.2)._replace(pieces=pieces)
+    assert mean_thickness(roof) == pytest.approx(0.175)
+    corner = TaperedPiece("triangle", 2.0, 0.10, 0.22, 0.13)  # a prism cut aslant: mean of corners
+    assert mean_thickness(roof._replace(pieces=(corner,))) == pytest.approx(0.15)
+    rest = 0.2 + 0.1 / 0.023
+    by = {
+        way: taper(at_least(rest), roof, Conventions(tapered=way))
+        for way in ("integral", "mean", "minimum")
+    }
+    wedge = np.log(1 + 0.1 / 0.023 / rest) / (0.1 / 0.023)
+    level = 1 / (rest + 0.1 / 0.023)
+    assert by["integral"].value == pytest.approx((wedge + level) / 2)
+    assert by["mean"].value == pytest.approx(1 / (0.2 + 0.175 / 0.023))
+    assert by["minimum"].value == pytest.approx(1 / rest)
+    for found in by.values():
+        assert_recomputes(found.steps)

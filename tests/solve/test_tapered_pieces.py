@@ -7,16 +7,20 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
+from envcheck.model.layers import TaperedLayer, TaperedPiece
+from envcheck.model.solved import Step
 from envcheck.solve.methods.tapered import tapered_triangle_thickest_apex
 from envcheck.solve.methods.tapered_pieces import (
     Piece,
-    drained_roof_steps,
     drained_roof_u,
+    piece_u,
+    pieces_way,
     tapered_triangle,
 )
-from tests.solve.samples import assert_recomputes
+from tests.solve.samples import assert_recomputes, material
 
 SIDE = 800
+PIR = material("PIR", 0.023, "insulation")
 
 
 def mean_over_triangle(r0: float, r1: float, r2: float) -> float:
@@ -47,13 +51,38 @@ def test_drained_roof_by_numbers() -> None:
     assert drained_roof_u(r0, pieces) == pytest.approx(expected, rel=1e-4)
 
 
+SHAPES = ("rectangle", "triangle_thickest_apex", "triangle_thinnest_apex", "triangle")
+
+
+def drained(*pieces: TaperedPiece) -> TaperedLayer:
+    least, greatest = min(p.least for p in pieces), max(p.greatest for p in pieces)
+    return TaperedLayer("tapered", "falls", 1, PIR, least, greatest, "rectangle", None, pieces)
+
+
 def test_worksheet_recomputes() -> None:
-    shapes = ("rectangle", "triangle_thickest_apex", "triangle_thinnest_apex", "triangle")
-    pieces = [Piece(shape, 3.0 + n, 2.0, 4.0) for n, shape in enumerate(shapes)]
-    steps = drained_roof_steps(0.5, pieces)
-    assert_recomputes(steps)
-    assert steps[-1].value == drained_roof_u(0.5, pieces)
+    pieces = [
+        TaperedPiece(shape, 3.0 + n, 0.06 + n / 100, 0.2, 0.13 if shape == "triangle" else None)
+        for n, shape in enumerate(SHAPES)
+    ]
+    level = TaperedPiece("rectangle", 2.0, 0.06, 0.06)
+    way = pieces_way(drained(*pieces, level), 0.5)
+    rest = Step("R_rest", "rest", "", (), 0.5, "resistance")
+    closing = Step("U", "roof", way.expression, way.operands, way.value, "u_factor")
+    assert_recomputes((rest, *way.before, closing))
+    # By the formulas of single pieces, each over its own least thickness.
+    k = PIR.conductivity
+    single = [
+        3.0 * piece_u(0.5, Piece("rectangle", 1.0, 0.14 / k)),
+        4.0 * piece_u(0.5 + 0.01 / k, Piece(SHAPES[1], 1.0, 0.13 / k)),
+        5.0 * piece_u(0.5 + 0.02 / k, Piece(SHAPES[2], 1.0, 0.12 / k)),
+        6.0 * piece_u(0.5 + 0.03 / k, Piece("triangle", 1.0, 0.04 / k, 0.11 / k)),
+        2.0 / 0.5,
+    ]
+    assert way.value == pytest.approx(sum(single) / 20.0)
+
+
+def test_pieces_of_one_least_thickness() -> None:
     # .549306, .735939, .362673 (R1 4) and .46008: numerical integrals over the shapes.
-    same = [Piece(shape, 1.0, 4.0) for shape in shapes[:3]] + [Piece("triangle", 1.0, 2.0, 4.0)]
+    same = [Piece(shape, 1.0, 4.0) for shape in SHAPES[:3]] + [Piece("triangle", 1.0, 2.0, 4.0)]
     mean = (0.549306 + 0.735939 + 0.362673 + 0.46008) / 4
     assert drained_roof_u(0.5, same) == pytest.approx(mean, abs=1e-4)

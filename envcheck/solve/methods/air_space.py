@@ -286,7 +286,7 @@ METHODS = (
         name="air_space",
         title="Air space",
         formula="R = 1 / (ha + E hr0), or a table of plane air spaces; half where slightly "
-        "ventilated",
+        "ventilated without stated openings (with them: slightly_ventilated)",
         source="ISO 6946:2017, annex D; ASHRAE Handbook - Fundamentals, table of plane air spaces",
         valid="closed spaces up to 0.3 m thick (formula) or within the printed rows (table); "
         "slightly ventilated: up to 0.15 m2 K/W outside of the space (ISO 6946:1996, 5.3.2)",

@@ -23,7 +23,7 @@ FULL = 0.8
 """Coefficient alpha of a fastener that crosses the whole layer."""
 LEAST_CONDUCTIVITY = 1.0
 """W/(m K); ISO 6946: no correction for fasteners that conduct less."""
-AT_MEAN = "fastener correction taken at the tapered layer's mean thickness (R1 and RT alike)"
+AT_MEAN = "{} correction taken at the tapered layer's mean thickness (R1 and RT alike)"
 
 
 class Correction(NamedTuple):
@@ -106,15 +106,11 @@ def correct_for_fasteners(
         return _by_chi(assembly)
     drawn = assembly.layers[outside:]
     left_out = {layer.title for layer in assembly.layers[:outside]}
-    tapered = [layer for layer in drawn if isinstance(layer, TaperedLayer)]
-    at_mean = r_total + sum(
-        (mean_thickness(layer) - layer.least) / layer.material.conductivity for layer in tapered
-    )
+    at_mean, assumptions = total_at_mean(drawn, r_total, "fastener")
     steps: list[Step] = []
     missing: list[str] = []
-    assumptions = [AT_MEAN] if tapered else []
     for number, one in enumerate(fasteners, 1):
-        insulation = _insulation(drawn, one.layer)
+        insulation = insulation_of(drawn, one.layer)
         if one.layer in left_out:
             words = f"fasteners through {one.layer} lie outside of what counts: no correction"
             assumptions.append(words)
@@ -137,7 +133,19 @@ def _by_chi(assembly: Assembly) -> Correction:
     return Correction(0.0, missing=(need,), assumptions=(said,))
 
 
-def _insulation(layers: tuple[Layer, ...], title: str) -> Insulation | None:
+def total_at_mean(layers: tuple[Layer, ...], r_total: float, what: str) -> tuple[float, list[str]]:
+    """RT with tapered layers at their mean thickness, and what is said of it.
+
+    layers: drawn. r_total: with tapered layers at their least thickness, m2 K/W. what: the
+    correction, in words.
+    """
+    tapered = [layer for layer in layers if isinstance(layer, TaperedLayer)]
+    added = sum((mean_thickness(x) - x.least) / x.material.conductivity for x in tapered)
+    return r_total + added, [AT_MEAN.format(what)] if tapered else []
+
+
+def insulation_of(layers: tuple[Layer, ...], title: str) -> Insulation | None:
+    """Thickness and resistance of the layer of that title; None where it has not both."""
     layer = next((layer for layer in layers if layer.title == title), None)
     if isinstance(layer, MaterialLayer):
         return Insulation(layer.thickness, layer.thickness / layer.material.conductivity)
@@ -147,6 +155,15 @@ def _insulation(layers: tuple[Layer, ...], title: str) -> Insulation | None:
         thickness = mean_thickness(layer)
         return Insulation(thickness, thickness / layer.material.conductivity)
     return None
+
+
+def resistance_of(layers: tuple[Layer, ...], title: str) -> float | None:
+    """Resistance of the layer of that title, m2 K/W; None where it has none of its own."""
+    layer = next((layer for layer in layers if layer.title == title), None)
+    if isinstance(layer, ResistanceLayer):
+        return layer.resistance
+    insulation = insulation_of(layers, title)
+    return None if insulation is None else insulation.resistance
 
 
 def _steps(number: str, fasteners: Fasteners, layer: Insulation, r_total: float) -> list[Step]:

@@ -1,21 +1,29 @@
-"""Basements by ISO 13370: floor and wall of a heated one, the whole of an unheated one."""
+"""Heated basements by ISO 13370: floor, walls, and both together."""
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from math import pi
 from typing import NamedTuple
 
-from envcheck.model.solved import Operand, Step
+from envcheck.model.project import Assembly, Layer
+from envcheck.model.ruleset import Conventions
+from envcheck.model.solved import Operand, Setting, Step
+from envcheck.solve.conventions import film_resistance
 from envcheck.solve.elementary import ln_of_one_plus, smaller
-from envcheck.solve.methods.iso13370_slab import characteristic_dimension, slab_u
+from envcheck.solve.ground_layers import bare_wall, ground_numbers, measured_said, plain_layers
+from envcheck.solve.methods.iso13370_slab import (
+    FILM_SAID,
+    GROUND_FILM,
+    characteristic_dimension,
+    slab_u,
+    thickness_step,
+)
 from envcheck.solve.network import series
-from envcheck.solve.registry import Method
+from envcheck.solve.registry import Decision, Method, NotDecided
 
 SOURCE = "ISO 13370:2007, 9.3"
-AIR = 0.33
-"""Heat capacity of air by volume, Wh/(m3 K), as ISO 13370 prints it."""
-CHANGES = 0.3
-"""1/h: air changes of an unheated basement where nothing else is known; ISO 13370, from memory."""
+WALL_FILM = "room film of the walls by the heat flow through a wall, of the floor by that down"
 
 
 def wall_thickness(soil: float, inside: float, wall: float, outside: float) -> float:
@@ -58,41 +66,6 @@ def basement_u(area: float, perimeter: float, depth: float, floor_u: float, wall
     return (area * floor_u + wall * wall_u) / (area + wall)
 
 
-class UnheatedBasement(NamedTuple):
-    """An unheated basement below a heated building; floats or arrays."""
-
-    area: float
-    """A, m2"""
-    perimeter: float
-    """P, m"""
-    depth: float
-    """z of the floor below ground, m"""
-    height: float
-    """h of the ground floor above ground, m"""
-    ground_floor: float
-    """Uf between the building and the basement, W/(m2 K)"""
-    floor: float
-    """Ubf of the basement's floor, W/(m2 K)"""
-    wall_below: float
-    """Ubw of its walls below ground, W/(m2 K)"""
-    wall_above: float
-    """Uw of its walls above ground, W/(m2 K)"""
-    changes: float = CHANGES
-    """n, air changes, 1/h"""
-
-
-def unheated_basement_u(of: UnheatedBasement) -> float:
-    """U between a building and the outside by an unheated basement, W/(m2 K).
-
-    1/U = 1/Uf + A / (A Ubf + z P Ubw + h P Uw + 0.33 n V), V = A (h + z). Source: ISO 13370:2007,
-    9.4.
-    """
-    volume = of.area * (of.height + of.depth)
-    walls = of.perimeter * (of.depth * of.wall_below + of.height * of.wall_above)
-    outwards = of.area * of.floor + walls + AIR * of.changes * volume
-    return 1.0 / (1.0 / of.ground_floor + of.area / outwards)
-
-
 class HeatedBasement(NamedTuple):
     """A heated basement: its equivalent thicknesses and its size. Floats."""
 
@@ -119,7 +92,7 @@ def basement_steps(of: HeatedBasement) -> tuple[Step, ...]:
     wall_u = basement_wall_u(of.depth, of.wall, of.floor, of.soil)
     k, z = Operand("k", of.soil, "conductivity"), Operand("z", of.depth, "run")
     area, perimeter = Operand("A", of.area, "area"), Operand("P", of.perimeter, "run")
-    size, d_t = Operand("B", dimension, "length"), Operand("d_t", of.floor, "length")
+    size, d_t = Operand("B", dimension, "run"), Operand("d_t", of.floor, "length")
     below = Operand("d_tz", thickness, "length")
     walls = (Operand("d_w", of.wall, "length"), Operand("d_s", slab, "length"))
     closing = (area, Operand("U_bf", floor_u, "u_factor"), z, perimeter)
@@ -129,7 +102,7 @@ def basement_steps(of: HeatedBasement) -> tuple[Step, ...]:
     value = basement_u(of.area, of.perimeter, of.depth, floor_u, wall_u)
     return (
         Step("B", "characteristic dimension of the floor", "{A} / (0.5 * {P})", (area, perimeter),
-             dimension, "length", SOURCE, True),
+             dimension, "run", SOURCE),
         Step("d_tz", "equivalent thickness of the floor and half the depth", "{d_t} + 0.5 * {z}",
              (d_t, z), thickness, "length", SOURCE, True),
         Step("U_bf", "floor of the basement", formula, (k, size, below), floor_u, "u_factor",
@@ -145,13 +118,122 @@ def basement_steps(of: HeatedBasement) -> tuple[Step, ...]:
     )  # fmt: skip
 
 
+class Parts(NamedTuple):
+    """A basement read and drawn: its numbers, and the steps that lead to them."""
+
+    of: HeatedBasement
+    steps: tuple[Step, ...]
+    layers: int
+    """How many of the steps lead to single layers."""
+    assumptions: tuple[str, ...]
+
+
+def parts_of(
+    assembly: Assembly, floor: tuple[Layer, ...], setting: Setting, conventions: Conventions
+) -> Parts:
+    """Draw the floor (none is bare ground) and the walls of a basement.
+
+    Errors: NotDecided with everything that is missing.
+    """
+    basement = assembly.basement
+    if basement is None:
+        raise NotDecided("the depth, the walls and the ground of the basement")
+    depth = ("the depth of the basement's floor below the ground outside", basement.depth)
+    given = ground_numbers(basement.ground, conventions, "floor", depth=depth)
+    prefix = "R" if floor == assembly.layers else "F"
+    r_f = _layers(assembly, floor, setting, conventions, prefix, "R_f", "floor of the basement")
+    walls = basement.walls
+    r_w = _layers(assembly, walls, setting, conventions, "W", "R_w", "wall of the basement")
+    stated = assembly.inside_film
+    down, across = (
+        setting.inside_film if film is None else film
+        for film in (
+            stated if stated is not None else film_resistance(conventions, "inside", way)
+            for way in ("down", "horizontal")
+        )
+    )
+    d_t = thickness_step("d_t", given, down, r_f[-1])
+    d_w = _wall_step(given.soil, across, r_w[-1])
+    of = HeatedBasement(
+        given.soil, basement.depth or 0.0, d_t.value, d_w.value, given.area, given.perimeter
+    )
+    layers = (*r_f[:-1], *r_w[:-1])
+    steps = (*layers, r_f[-1], r_w[-1], d_t, d_w)
+    said = (FILM_SAID, WALL_FILM, measured_said(basement.ground, conventions))
+    return Parts(of, steps, len(layers), said)
+
+
+def _layers(
+    assembly: Assembly,
+    layers: tuple[Layer, ...],
+    setting: Setting,
+    conventions: Conventions,
+    prefix: str,
+    symbol: str,
+    what: str,
+) -> tuple[Step, ...]:
+    if not layers:
+        return (Step(symbol, f"{what}: bare ground", "", (), 0.0, "resistance", "project"),)
+    drawn = bare_wall(assembly._replace(layers=layers), setting, conventions, prefix)
+    return plain_layers(drawn, symbol, what)
+
+
+def _wall_step(soil: float, film: float, wall: Step) -> Step:
+    operands = (
+        Operand("k", soil, "conductivity"),
+        Operand("R_siw", film, "resistance"),
+        Operand(wall.symbol, wall.value, "resistance"),
+        Operand("R_se", GROUND_FILM, "resistance"),
+    )
+    value = wall_thickness(soil, film, wall.value, GROUND_FILM)
+    title = "equivalent thickness of the walls"
+    expression = "{k} * ({R_siw} + {R_w} + {R_se})"
+    return Step("d_w", title, expression, operands, value, "length", SOURCE)
+
+
+def _solver(wanted: tuple[str, ...]) -> Callable[[Assembly, Setting, Conventions], Decision]:
+    """A solver whose worksheet ends with the last of the wanted symbols."""
+
+    def solve(assembly: Assembly, setting: Setting, conventions: Conventions) -> Decision:
+        parts = parts_of(assembly, assembly.layers, setting, conventions)
+        closing = [step for step in basement_steps(parts.of) if step.symbol in wanted]
+        steps = (*parts.steps, *closing)
+        value, said = steps[-1].value, parts.assumptions
+        return Decision(value, steps=steps, layer_steps=parts.layers, assumptions=said)
+
+    return solve
+
+
+FLOOR_STEPS = ("B", "d_tz", "U_bf")
+WALL_STEPS = ("d_s", "U_bw")
+VALID = "ground of one conductivity, one depth all round, homogeneous layers"
 METHODS = (
     Method(
         name="iso13370_basement",
-        title="Heated and unheated basements",
-        formula="Ubf of a slab with dt + z/2;  Ubw = 2 k / (pi z) (1 + 0.5 dt / (dt + z)) "
-        "ln(z / dw + 1);  unheated: 1/U = 1/Uf + A / (A Ubf + z P Ubw + h P Uw + 0.33 n V)",
-        source="ISO 13370:2007, 9.3 and 9.4",
-        valid="ground of one conductivity, one depth all round; not yet joined to an assembly",
+        title="Heated basement, floor and walls together",
+        formula="U = (A Ubf + z P Ubw) / (A + z P), Ubf and Ubw of its floor and walls",
+        source=SOURCE,
+        valid=VALID,
+        solves=(("heated-basement", _solver((*FLOOR_STEPS, *WALL_STEPS, "U"))),),
+        assumed=False,
+    ),
+    Method(
+        name="iso13370_basement_floor",
+        title="Heated basement, floor",
+        formula="Ubf of a slab with dt + z/2 in place of dt",
+        source=SOURCE,
+        valid=VALID,
+        solves=(("heated-basement", _solver(FLOOR_STEPS)),),
+        assumed=False,
+    ),
+    Method(
+        name="iso13370_basement_wall",
+        title="Heated basement, walls",
+        formula="Ubw = 2 k / (pi z) (1 + 0.5 dt / (dt + z)) ln(z / dw + 1); where dw < dt it "
+        "takes the place of dt",
+        source=SOURCE,
+        valid=VALID,
+        solves=(("heated-basement", _solver(WALL_STEPS)),),
+        assumed=False,
     ),
 )

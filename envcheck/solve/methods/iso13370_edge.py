@@ -88,7 +88,6 @@ METHODS = (
         "U = U0 + 2 psi / B'",
         source=SOURCE,
         valid="insulation or low-density foundations along the edge, thinner than they are deep or "
-        "wide; only the better one of two counts; not joined to the slab, whose edge insulation is "
-        "stated without its thickness",
+        "wide; of vertical and horizontal insulation only the better one counts",
     ),
 )

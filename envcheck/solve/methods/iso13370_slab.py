@@ -6,9 +6,16 @@ from math import pi
 
 from envcheck.model.project import Assembly, Slab
 from envcheck.model.ruleset import Conventions
-from envcheck.model.solved import Operand, Resistor, Setting, Step
+from envcheck.model.solved import Operand, Setting, Step
 from envcheck.solve.elementary import ln_of_one_plus
-from envcheck.solve.ground_layers import bare_wall, bridged
+from envcheck.solve.ground_layers import (
+    GroundNumbers,
+    bare_wall,
+    ground_numbers,
+    measured_said,
+    plain_layers,
+)
+from envcheck.solve.methods.iso13370_edge import Edge, edge_steps, slab_with_edge
 from envcheck.solve.network import series
 from envcheck.solve.registry import Decision, Method, NotDecided
 
@@ -18,6 +25,10 @@ GROUND_FILM = 0.04
 FILM_SAID = (
     "the ground's own surface is counted with 0.04 m2 K/W (ISO 13370), the room's with the film of "
     "the rule set"
+)
+EDGE_COUNTED = (
+    "edge insulation of the slab is counted: linear transmittances of the junction of wall and "
+    "floor must then be those without it"
 )
 EDGE_SAID = (
     "edge insulation of the slab is not counted, which can only raise U: ISO 13370 asks for its "
@@ -75,71 +86,76 @@ def slab_u(soil_conductivity: float, dimension: float, thickness: float) -> floa
 
 
 def solve_slab(assembly: Assembly, setting: Setting, conventions: Conventions) -> Decision:
-    """Solve a slab on ground of homogeneous layers.
+    """Solve a slab on ground of homogeneous layers, with insulation along its edge.
 
     Errors: NotDecided with everything that is missing: perimeter, area, soil, wall thickness.
     """
     slab = assembly.slab
     if slab is None:
         raise NotDecided("perimeter, area, wall thickness and soil of the slab")
-    perimeter, area, wall_thickness, soil = _numbers(slab)
-    wall = bare_wall(assembly, setting, conventions)
-    crossed = bridged(wall.blocks)
-    if crossed:
-        raise NotDecided(f"a slab without the bridged layer {crossed[0]!r}")
-    cells = [block.cells[0][0] for block in wall.blocks]
-    floor = sum(cell.value for cell in cells)
-    dimension = characteristic_dimension(area, perimeter)
-    thickness = equivalent_thickness(wall_thickness, soil, setting.inside_film, floor)
-    value = slab_u(soil, dimension, thickness)
-    operands = (Operand("A", area, "area"), Operand("P", perimeter, "run"))
-    layers = tuple(step for cell in cells for step in cell.steps)
-    steps = (
-        *layers,
-        _floor_step(cells, floor),
-        Step(
-            "B", "characteristic dimension of the floor", "{A} / (0.5 * {P})", operands,
-            dimension, "run", SOURCE,
-        ),
-        _thickness_step(wall_thickness, soil, setting.inside_film, floor, thickness),
-        _closing_step(soil, dimension, thickness, value),
+    given = ground_numbers(slab.ground, conventions, "slab")
+    layers = plain_layers(bare_wall(assembly, setting, conventions), "R_f", "floor")
+    thickness = thickness_step("d_t", given, setting.inside_film, layers[-1])
+    size = dimension_step(given)
+    edge = edge_of(slab)
+    closing = _closing_step(given.soil, size.value, thickness.value, "U_0" if edge else "U")
+    steps = (*layers, size, thickness, closing)
+    if edge:
+        steps += edge_steps(edge, given.soil, thickness.value)
+        steps += (_with_edge(closing, steps[-1], size),)
+    said = _assumptions(slab, measured_said(slab.ground, conventions))
+    value = steps[-1].value
+    return Decision(value, steps=steps, layer_steps=len(layers) - 1, assumptions=said)
+
+
+def edge_of(slab: Slab) -> Edge | None:
+    """The insulation along the edge, where it can be counted.
+
+    Errors: NotDecided where it resists no more than the soil that it displaces.
+    """
+    if slab.insulation not in ("vertical", "horizontal") or slab.resistance <= 0:
+        return None
+    if slab.thickness is None:
+        return None
+    if slab.soil_conductivity and slab.resistance <= slab.thickness / slab.soil_conductivity:
+        raise NotDecided("edge insulation that resists more than the soil that it displaces")
+    return Edge(slab.insulation == "vertical", slab.extent, slab.resistance, slab.thickness)
+
+
+def dimension_step(given: GroundNumbers) -> Step:
+    """The step to B'."""
+    return Step(
+        "B", "characteristic dimension of the floor", "{A} / (0.5 * {P})", given.size,
+        characteristic_dimension(given.area, given.perimeter), "run", SOURCE,
     )  # fmt: skip
-    return Decision(value, steps=steps, layer_steps=len(layers), assumptions=_assumptions(slab))
 
 
-def _floor_step(cells: list[Resistor], floor: float) -> Step:
-    operands = tuple(Operand(cell.symbol, cell.value, "resistance") for cell in cells)
-    expression = " + ".join(f"{{{operand.name}}}" for operand in operands)
-    return Step("R_f", "layers of the floor", expression, operands, floor, "resistance")
-
-
-def _thickness_step(wall: float, soil: float, film: float, floor: float, value: float) -> Step:
+def thickness_step(symbol: str, given: GroundNumbers, film: float, floor: Step) -> Step:
+    """The step to an equivalent thickness. film: Rsi, m2 K/W. floor: the step to Rf."""
     operands = (
-        Operand("w", wall, "length"),
-        Operand("k", soil, "conductivity"),
+        Operand("w", given.wall, "length"),
+        Operand("k", given.soil, "conductivity"),
         Operand("R_si", film, "resistance"),
-        Operand("R_f", floor, "resistance"),
+        Operand(floor.symbol, floor.value, "resistance"),
         Operand("R_se", GROUND_FILM, "resistance"),
     )
-    expression = "{w} + {k} * ({R_si} + {R_f} + {R_se})"
-    return Step("d_t", "equivalent thickness", expression, operands, value, "length", SOURCE)
+    expression = f"{{w}} + {{k}} * ({{R_si}} + {{{floor.symbol}}} + {{R_se}})"
+    value = equivalent_thickness(given.wall, given.soil, film, floor.value)
+    return Step(symbol, "equivalent thickness", expression, operands, value, "length", SOURCE)
 
 
-def _numbers(slab: Slab) -> tuple[float, float, float, float]:
-    needed = {
-        "the exposed perimeter of the slab (perimeter)": slab.perimeter,
-        "the area of the slab (area)": slab.area,
-        "the full thickness of the external wall (wall_thickness)": slab.wall_thickness,
-        "the conductivity of the soil (soil_conductivity)": slab.soil_conductivity,
-    }
-    missing = [name for name, value in needed.items() if value is None]
-    if missing:
-        raise NotDecided("; ".join(missing))
-    perimeter, area, wall_thickness, soil = (value or 0.0 for value in needed.values())
-    return perimeter, area, wall_thickness, soil
+def _with_edge(bare: Step, psi: Step, size: Step) -> Step:
+    operands = (
+        Operand(bare.symbol, bare.value, "u_factor"),
+        Operand(psi.symbol, psi.value, "linear_transmittance"),
+        Operand(size.symbol, size.value, "run"),
+    )
+    value = slab_with_edge(bare.value, psi.value, size.value)
+    title = "U-factor of the slab with its edge insulation"
+    return Step("U", title, "{U_0} + 2 * {psi} / {B}", operands, value, "u_factor", psi.source)
 
 
-def _closing_step(soil: float, dimension: float, thickness: float, value: float) -> Step:
+def _closing_step(soil: float, dimension: float, thickness: float, symbol: str) -> Step:
     operands = (
         Operand("k", soil, "conductivity"),
         Operand("B", dimension, "run"),
@@ -151,13 +167,14 @@ def _closing_step(soil: float, dimension: float, thickness: float, value: float)
     else:
         title = "U-factor of the slab (dt below B')"
         expression = "2 * {k} / (3.14159265 * {B} + {d_t}) * ln(3.14159265 * {B} / {d_t} + 1)"
-    return Step("U", title, expression, operands, value, "u_factor", SOURCE, True)
+    value = slab_u(soil, dimension, thickness)
+    return Step(symbol, title, expression, operands, value, "u_factor", SOURCE, True)
 
 
-def _assumptions(slab: Slab) -> tuple[str, ...]:
-    said = [FILM_SAID]
+def _assumptions(slab: Slab, measured: str) -> tuple[str, ...]:
+    said = [FILM_SAID, measured]
     if slab.insulation in ("vertical", "horizontal") and slab.resistance > 0:
-        said.append(EDGE_SAID)
+        said.append(EDGE_SAID if slab.thickness is None else EDGE_COUNTED)
     if slab.insulation == "under":
         said.append("insulation under the slab counts as the layers list it")
     return tuple(said)
@@ -170,7 +187,8 @@ METHODS = (
         formula="dt < B': U = 2 k / (pi B' + dt) ln(pi B'/dt + 1); else U = k / (0.457 B' + dt)",
         source=SOURCE,
         valid="slab at about ground level, homogeneous layers over its whole area; hardcore below "
-        "counts as soil; no ground water, no edge insulation",
+        "counts as soil; no ground water",
         solves=(("slab-on-grade", solve_slab),),
+        assumed=False,
     ),
 )

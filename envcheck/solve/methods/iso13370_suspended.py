@@ -4,15 +4,38 @@ from __future__ import annotations
 
 from typing import NamedTuple
 
-from envcheck.model.solved import Operand, Step
-from envcheck.solve.methods.iso13370_slab import bare_ground_u
-from envcheck.solve.registry import Method
+from envcheck.model.ground import Suspended
+from envcheck.model.project import Assembly
+from envcheck.model.ruleset import Conventions
+from envcheck.model.solved import Operand, Setting, Step
+from envcheck.solve.cells import stated_cell
+from envcheck.solve.ground_layers import (
+    GroundNumbers,
+    bare_wall,
+    bridged,
+    ground_numbers,
+    measured_said,
+)
+from envcheck.solve.methods.iso13370_slab import (
+    bare_ground_u,
+    dimension_step,
+    thickness_step,
+)
+from envcheck.solve.methods.weighted import decide_weighted
+from envcheck.solve.methods.wirings import decide_series
+from envcheck.solve.registry import Decision, Method, NotDecided
+from envcheck.solve.renaming import renamed
 
 SOURCE = "ISO 13370:2007, 9.2"
 SHIELDING = {"sheltered": 0.02, "average": 0.05, "exposed": 0.10}
 """fw of the wind by the surroundings: city centre, suburb, open country; ISO 13370, from memory."""
 AIR = 1450.0
 """J/(m3 K), the constant that ISO 13370 prints for air that the wind drives through openings."""
+
+
+DEEPEST = 0.5
+"""m; ISO 13370: how far the ground of the space may lie below the ground outside."""
+BELOW = "room film on both faces of the floor: the heat flows down into still air (ISO 13370)"
 
 
 class SuspendedFloor(NamedTuple):
@@ -59,11 +82,11 @@ def suspended_u(of: SuspendedFloor) -> float:
 def suspended_steps(of: SuspendedFloor) -> tuple[Step, ...]:
     """Worksheet to ``U`` of a suspended floor. Floats."""
     ground, air = bare_ground_u(of.soil, of.dimension, of.ground), underfloor_air_u(of)
-    size = Operand("B", of.dimension, "length")
+    size = Operand("B", of.dimension, "run")
     below = (Operand("k", of.soil, "conductivity"), size, Operand("d_g", of.ground, "length"))
     around = (
         Operand("h", of.height, "length"), Operand("U_w", of.wall, "u_factor"),
-        Operand("e", of.openings, "length"), Operand("v", of.wind, "number"),
+        Operand("e", of.openings, "openings_per_length"), Operand("v", of.wind, "speed"),
         Operand("f_w", of.shielding, "number"), size,
     )  # fmt: skip
     u_ground, u_air = Operand("U_g", ground, "u_factor"), Operand("U_x", air, "u_factor")
@@ -74,7 +97,7 @@ def suspended_steps(of: SuspendedFloor) -> tuple[Step, ...]:
             below, ground, "u_factor", SOURCE, True,
         ),
         Step(
-            "U_x", "from the space below the floor by its walls and openings (v in m/s)",
+            "U_x", "from the space below the floor by its walls and openings",
             "(2 * {h} * {U_w} + 1450 * {e} * {v} * {f_w}) / {B}",
             around, air, "u_factor", SOURCE, True,
         ),
@@ -86,6 +109,74 @@ def suspended_steps(of: SuspendedFloor) -> tuple[Step, ...]:
     )  # fmt: skip
 
 
+def solve_suspended(assembly: Assembly, setting: Setting, conventions: Conventions) -> Decision:
+    """Solve a suspended floor: its layers, the ground below, the wind through its openings.
+
+    Errors: NotDecided with everything that is missing, or where the ground lies too deep.
+    """
+    below = assembly.suspended
+    if below is None:
+        raise NotDecided("the space below the suspended floor")
+    given = _numbers(below, conventions)
+    if below.depth > DEEPEST:
+        raise NotDecided(
+            f"ground at most {DEEPEST:g} m below the ground outside: this formula of ISO 13370 "
+            f"holds no further, and {below.depth:.4g} m are stated"
+        )
+    floor = floor_between(assembly, setting, conventions)
+    size = dimension_step(given)
+    ground = stated_cell("R_g", "insulation on the ground", below.ground_resistance, "project")
+    d_g = thickness_step("d_g", given, setting.inside_film, ground.steps[0])
+    of = SuspendedFloor(
+        dimension=size.value,
+        floor=floor.value or 0.0,
+        soil=given.soil,
+        ground=d_g.value,
+        height=below.height or 0.0,
+        wall=below.wall_u or 0.0,
+        openings=below.openings or 0.0,
+        wind=below.wind or 0.0,
+        shielding=SHIELDING[below.shielding],
+    )
+    steps = (*floor.steps, size, *ground.steps, d_g, *suspended_steps(of))
+    said = (BELOW, measured_said(below.ground, conventions), *floor.assumptions, _wind(below))
+    return Decision(suspended_u(of), steps=steps, layer_steps=floor.layer_steps, assumptions=said)
+
+
+def _numbers(below: Suspended, conventions: Conventions) -> GroundNumbers:
+    shielding = SHIELDING.get(below.shielding)
+    return ground_numbers(
+        below.ground,
+        conventions,
+        "floor",
+        height=("the height of the floor above the ground outside", below.height),
+        wall_u_factor=("the U-factor of the walls of the space below", below.wall_u),
+        openings_per_length=("the ventilation openings of the space below", below.openings),
+        wind_speed=("the mean speed of the wind", below.wind),
+        shielding=("how the openings are shielded from the wind", shielding),
+    )
+
+
+def floor_between(assembly: Assembly, setting: Setting, conventions: Conventions) -> Decision:
+    """The floor between room and space: its last steps are R_fl and U_f."""
+    wall = bare_wall(assembly, setting, conventions)
+    film, where = setting.inside_film, setting.inside_film_from
+    outside = film if assembly.outside_film is None else assembly.outside_film
+    stated = where if assembly.outside_film is None else "stated in the project"
+    wall = wall._replace(
+        outside=stated_cell("Ro", "film below the floor", outside, stated),
+        inside=stated_cell("Ri", "inside film", film, where),
+    )
+    decide = decide_weighted if bridged(wall.blocks) else decide_series
+    decision = decide(wall)
+    return decision._replace(steps=renamed(decision.steps, {"R": "R_fl", "U": "U_f"}))
+
+
+def _wind(below: Suspended) -> str:
+    factor = f"{SHIELDING[below.shielding]:g}"
+    return f"wind shielding factor {factor} ({below.shielding}); ISO 13370, from memory"
+
+
 METHODS = (
     Method(
         name="iso13370_suspended",
@@ -94,6 +185,8 @@ METHODS = (
         "Ux = 2 h Uw / B' + 1450 e v fw / B'",
         source=SOURCE,
         valid="spaces whose ground lies at most 0.5 m below the ground outside, ventilated by the "
-        "wind; not yet joined to an assembly",
+        "wind; walls of the space of one U-factor",
+        solves=(("suspended-floor", solve_suspended),),
+        assumed=False,
     ),
 )

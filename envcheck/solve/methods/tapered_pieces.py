@@ -9,9 +9,10 @@ from __future__ import annotations
 from collections.abc import Sequence
 from typing import NamedTuple
 
+from envcheck.model.layers import TaperedLayer, TaperedPiece
 from envcheck.model.solved import Operand, Step
 from envcheck.solve.elementary import ln_of_one_plus
-from envcheck.solve.methods.tapered import SHAPES, SOURCE
+from envcheck.solve.methods.tapered import SHAPES, SOURCE, Way
 from envcheck.solve.registry import Method
 
 
@@ -37,14 +38,16 @@ class Piece(NamedTuple):
     area: float
     """m2 in plan"""
     r1: float
-    """Greatest resistance beyond the least, above 0, m2 K/W; of ``triangle``: at the middle
+    """Greatest resistance beyond the least, m2 K/W; of ``triangle``: at the middle
     corner."""
     r2: float = 0.0
     """Of ``triangle``: at the thickest corner, m2 K/W."""
 
 
 def piece_u(r0: float, piece: Piece) -> float:
-    """U of one piece, W/(m2 K). r0: R0, m2 K/W."""
+    """U of one piece, W/(m2 K). r0: R0, m2 K/W. A level piece has an ``r1`` of 0."""
+    if isinstance(piece.r1, float) and piece.r1 == 0.0:
+        return 1.0 / r0
     if piece.shape == "triangle":
         return tapered_triangle(r0, piece.r1, piece.r2)
     return SHAPES[piece.shape].u_factor(r0, piece.r1)
@@ -61,38 +64,84 @@ def drained_roof_u(r0: float, pieces: Sequence[Piece]) -> float:
 
 
 GENERAL = (
-    "2 * ({R_taper} * ({R_rest} + {R_2}) * ln(1 + {R_2} / {R_rest}) - {R_2} * "
-    "({R_rest} + {R_taper}) * ln(1 + {R_taper} / {R_rest})) / ({R_taper} * {R_2} * "
-    "({R_2} - {R_taper}))"
+    "2 * ({R_taper} * ({R_rest} + {R_top}) * ln(1 + {R_top} / {R_rest}) - {R_top} * "
+    "({R_rest} + {R_taper}) * ln(1 + {R_taper} / {R_rest})) / ({R_taper} * {R_top} * "
+    "({R_top} - {R_taper}))"
 )
-"""The general triangle for the worksheet, R_taper being R1; the other shapes as in a taper."""
+"""The general triangle for the worksheet, R_taper being R1 and R_top R2."""
 
 
-def drained_roof_steps(r0: float, pieces: Sequence[Piece]) -> tuple[Step, ...]:
-    """Worksheet to ``U`` of a roof of several pieces. Floats."""
+def pieces_way(layer: TaperedLayer, rest: float) -> Way:
+    """A layer in pieces counted exactly, with the steps to each piece. rest: R0, m2 K/W."""
     steps: list[Step] = []
     closing: list[Operand] = []
-    for number, piece in enumerate(pieces, 1):
-        title = f"piece {number}, {piece.shape.replace('_', ' ')}"
-        operands = [Operand("R_rest", r0, "resistance"), Operand("R_taper", piece.r1, "resistance")]
-        if piece.shape == "triangle":
-            operands.append(Operand("R_2", piece.r2, "resistance"))
-        value = piece_u(r0, piece)
-        expression = GENERAL if piece.shape == "triangle" else SHAPES[piece.shape].expression
-        steps.append(
-            Step(f"U_{number}", title, expression, tuple(operands), value, "u_factor", SOURCE)
-        )  # fmt: skip
+    total = 0.0
+    for number, piece in enumerate(layer.pieces, 1):
+        made = _piece_steps(layer, rest, piece, str(number))
+        steps += made
+        total += piece.area * made[-1].value
         closing.append(Operand(f"A_{number}", piece.area, "area"))
-        closing.append(Operand(f"U_{number}", value, "u_factor"))
-    numbers = range(1, len(pieces) + 1)
+        closing.append(Operand(f"U_{number}", made[-1].value, "u_factor"))
+    numbers = range(1, len(layer.pieces) + 1)
     flow = " + ".join(f"{{A_{n}}} * {{U_{n}}}" for n in numbers)
     area = " + ".join(f"{{A_{n}}}" for n in numbers)
-    total = drained_roof_u(r0, pieces)
-    title = "whole roof by area"
-    steps.append(
-        Step("U", title, f"({flow}) / ({area})", tuple(closing), total, "u_factor", SOURCE)
-    )
-    return tuple(steps)
+    value = total / sum(piece.area for piece in layer.pieces)
+    words = "by the areas of equal thickness, piece by piece"
+    return Way("integral", words, f"({flow}) / ({area})", value, tuple(closing), tuple(steps))
+
+
+def _piece_steps(layer: TaperedLayer, rest: float, piece: TaperedPiece, number: str) -> list[Step]:
+    """Steps to the U of one piece, the last of them."""
+    title = f"piece {number}, {piece.shape.replace('_', ' ')}"
+    steps: list[Step] = []
+    base = Operand("R_rest", rest, "resistance")
+    if piece.least > layer.least:
+        step = _rise(f"R_rest{number}", f"{title}: at its least thickness", layer, layer.least,
+                     piece.least, base)  # fmt: skip
+        steps.append(step)
+        base = Operand(step.symbol, step.value, "resistance")
+    rises = [("R_taper", piece.greatest)]
+    if piece.middle is not None:
+        rises = [("R_taper", piece.middle), ("R_top", piece.greatest)]
+    names = {"R_rest": base.name}
+    operands = [base]
+    for symbol, thickness in rises if piece.greatest > piece.least else ():
+        words = f"{title}: {thickness * 1000:.4g} mm beyond {piece.least * 1000:.4g} mm"
+        names[symbol] = f"{symbol}{number}"
+        steps.append(_rise(names[symbol], words, layer, piece.least, thickness))
+        operands.append(Operand(names[symbol], steps[-1].value, "resistance"))
+    expression = "1 / {R_rest}"
+    if len(operands) > 1:
+        general = piece.middle is not None
+        expression = GENERAL if general else SHAPES[piece.shape].expression
+    for symbol, name in names.items():
+        expression = expression.replace(f"{{{symbol}}}", f"{{{name}}}")
+    r1, r2 = (*(operand.value for operand in operands[1:]), 0.0, 0.0)[:2]
+    value = piece_u(base.value, Piece(piece.shape, piece.area, r1, r2))
+    steps.append(Step(f"U_{number}", title, expression, tuple(operands), value, "u_factor", SOURCE))
+    return steps
+
+
+def _rise(
+    symbol: str,
+    title: str,
+    layer: TaperedLayer,
+    low: float,
+    high: float,
+    base: Operand | None = None,
+) -> Step:
+    """A thickness beyond another as a resistance, added to a base where there is one."""
+    k = layer.material.conductivity
+    operands = [
+        Operand("d_high", high, "length"),
+        Operand("d_low", low, "length"),
+        Operand("k", k, "conductivity"),
+    ]
+    expression, value = "({d_high} - {d_low}) / {k}", (high - low) / k
+    if base is not None:
+        operands.insert(0, base)
+        expression, value = f"{{{base.name}}} + {expression}", base.value + value
+    return Step(symbol, title, expression, tuple(operands), value, "resistance")
 
 
 METHODS = (
@@ -103,7 +152,6 @@ METHODS = (
         "one: U = 2 (R1 (R0 + R2) ln(1 + R2/R0) - R2 (R0 + R1) ln(1 + R1/R0)) / "
         "(R1 R2 (R2 - R1))",
         source=SOURCE,
-        valid="slopes of at most 5 %; each piece falls in one direction; not yet joined to an "
-        "assembly",
+        valid="slopes of at most 5 %; each piece falls in one direction",
     ),
 )
