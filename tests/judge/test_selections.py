@@ -19,7 +19,7 @@ from envcheck import pipeline
 from envcheck.judge.select import select, select_envelope
 from envcheck.judge.selection import Outcome, Selection
 from envcheck.model.project import Element, Fact, Options, Project, Site, ZoneStated
-from envcheck.model.ruleset import Limit, RuleSet
+from envcheck.model.ruleset import Limit, RuleSet, Term
 from envcheck.read.rulesets import read_ruleset
 
 CASES = Path(__file__).parent.parent / "cases"
@@ -79,14 +79,17 @@ def outcome_of(selection: Selection, case: dict[str, Any]) -> Outcome | None:
 
 
 def figures(limit: Limit) -> list[str]:
-    def word(text: str, role: str, metric: str) -> str:
-        return f"{metric} {text}".strip() if metric else text + role.replace("cavity", "")
+    return [" + ".join(map(word, alternative)) for alternative in limit.alternatives]
 
-    return [
-        " + ".join(word(t.text.rstrip("0").rstrip(".") if "." in t.text else t.text, t.role, t.metric)
-                   for t in alternative)
-        for alternative in limit.alternatives
-    ]  # fmt: skip
+
+def word(term: Term) -> str:
+    if term.metric:
+        return f"{term.metric} {term.text}"
+    return trimmed(term.text) + term.role.replace("cavity", "")
+
+
+def trimmed(text: str) -> str:
+    return text.rstrip("0").rstrip(".") if text[-1].isdigit() and "." in text else text
 
 
 @pytest.mark.parametrize(("name", "case"), BY_HAND, ids=names)
@@ -111,9 +114,7 @@ def test_limit_that_a_person_finds(name: str, case: dict[str, Any]) -> None:
     if "limit" in case:
         assert limit.cell == case["limit"]
     if "figures" in case:
-        typed = [f.rstrip("0").rstrip(".") if f[-1].isdigit() and "." in f else f
-                 for f in case["figures"]]  # fmt: skip
-        assert figures(limit) == typed
+        assert figures(limit) == [trimmed(f) for f in case["figures"]]
     assert any(n.by_official for n in limit.notes) == (case.get("official") == "yes")
     assert limit.threshold_cell == case.get("threshold", "")
     if "extent_m" in case:
