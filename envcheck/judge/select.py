@@ -42,6 +42,8 @@ class _Index:
     """Of the project asked for last."""
     done: dict[tuple[object, ...], Selection] = field(default_factory=dict)
     """What was selected for that project."""
+    met: dict[tuple[int, Value], bool] = field(default_factory=dict)
+    """Whether a condition of the rule set (by identity) holds for a value."""
 
 
 _INDEXES: dict[int, _Index] = {}
@@ -173,7 +175,7 @@ def _selection(
         printed = f" for zone {zone.printed}" if zone.printed else ""
         why = f"no row of {ruleset.title} covers {category_in_words(category)}{printed}"
         return stopped("not_in_table", why)
-    outcomes = tuple(_outcome(key, levels, ruleset, facts) for key, levels in groups)
+    outcomes = tuple(_outcome(key, levels, index, facts) for key, levels in groups)
     trail += _row_trail(outcomes, facts)
     by = {(o.metric, o.path): o for o in reversed(outcomes)}
     return Selection(ruleset.id, category, zone.printed, "selected", "", outcomes, tuple(trail), by)
@@ -182,18 +184,19 @@ def _selection(
 def _outcome(
     key: tuple[str, str, str],
     levels: tuple[tuple[Limit, ...], ...],
-    ruleset: RuleSet,
+    index: _Index,
     facts: Mapping[str, Known],
 ) -> Outcome:
     """Go from the most specific rows down until rows hold, or could hold if a fact were known."""
     metric, path, applies_to = key
-    out: list[tuple[Limit, str]] = []
+    ruleset = index.ruleset
+    out: list[tuple[Limit, Condition | None]] = []
 
     def outcome(state: str, limit: Limit | None = None, why: str = "") -> Outcome:
         return Outcome(metric, path, state, limit, (), (), why, applies_to, tuple(out))
 
     for level, limits in enumerate(levels):
-        holding, undecided, lacking = _hold(limits, ruleset, facts, out)
+        holding, undecided, lacking = _hold(limits, index, facts, out)
         if undecided:
             missing = tuple(_missing(name, ruleset, facts[name]) for name in lacking)
             every = (*holding, *undecided)
@@ -204,7 +207,7 @@ def _outcome(
             limit, why = interpolate(holding, over, facts[over], ruleset)
             return outcome("found" if limit is not None else "not_in_table", limit, why)
         if len(holding) == 1:
-            out += [(x, LESS_SPECIFIC) for rest in levels[level + 1 :] for x in rest]
+            out += [(x, None) for rest in levels[level + 1 :] for x in rest]
             return outcome("found", holding[0])
         if holding:
             rows = " and ".join(f"{x.clause}, {x.label}: {x.cell}" for x in holding)
@@ -213,44 +216,46 @@ def _outcome(
     return outcome("not_in_table", why=f"no row holds for {stated}" if stated else "no row holds")
 
 
-LESS_SPECIFIC = "speaks of more than this category"
-
-
 def _hold(
     limits: tuple[Limit, ...],
-    ruleset: RuleSet,
+    index: _Index,
     facts: Mapping[str, Known],
-    out: list[tuple[Limit, str]],
+    out: list[tuple[Limit, Condition | None]],
 ) -> tuple[list[Limit], list[Limit], list[str]]:
     """Split limits into those that hold and those that lack facts; ``out`` takes the others."""
     holding: list[Limit] = []
     undecided: list[Limit] = []
     lacking: dict[str, None] = {}
     for limit in limits:
-        unknown, against = _unknown(limit, ruleset, facts)
+        unknown, against = _unknown(limit, index, facts)
         if against is not None:
-            name = against.dimension.replace("_", " ")
-            out.append((limit, f"asks for {name} {against.text}"))
+            out.append((limit, against))
             continue
         (undecided if unknown else holding).append(limit)
-        lacking |= dict.fromkeys(unknown)
+        if unknown:
+            lacking |= dict.fromkeys(unknown)
     return holding, undecided, list(lacking)
 
 
 def _unknown(
-    limit: Limit, ruleset: RuleSet, facts: Mapping[str, Known]
+    limit: Limit, index: _Index, facts: Mapping[str, Known]
 ) -> tuple[tuple[str, ...], Condition | None]:
     """Facts that the limit still asks for; or the condition by which a known fact rules it out."""
-    unknown = []
+    unknown: tuple[str, ...] = ()
     for condition in limit.when:
         fact = facts[condition.dimension]
-        if fact.value is None or not fact.usable:
-            unknown.append(condition.dimension)
-        elif not (
-            ruleset.dimensions[condition.dimension].interpolate or holds(condition, fact.value)
-        ):
+        value = fact.value
+        if value is None or not fact.usable:
+            unknown += (condition.dimension,)
+            continue
+        key = (id(condition), value)
+        met = index.met.get(key)
+        if met is None:
+            free = index.ruleset.dimensions[condition.dimension].interpolate
+            met = index.met[key] = free or holds(condition, value)
+        if not met:
             return (), condition
-    return tuple(unknown), None
+    return unknown, None
 
 
 def _missing(name: str, ruleset: RuleSet, known: Known) -> MissingFact:
@@ -309,8 +314,31 @@ def _row_trail(outcomes: tuple[Outcome, ...], facts: Mapping[str, Known]) -> lis
             chosen = f"{condition.dimension.replace('_', ' ')} {in_words(fact)}"
             why = f"the row asks for {condition.text} ({fact.where})"
             trail.append(Choice("condition", chosen, why))
+        trail += _no_other(outcome, facts)
         trail += [Choice("footnote", f"[{n.mark}]", _note_in_words(n)) for n in limit.notes]
     return list(dict.fromkeys(trail))
+
+
+NAMED = 3
+"""Rows that are named where a trail says why no other row holds."""
+
+
+def _no_other(outcome: Outcome, facts: Mapping[str, Known]) -> list[Choice]:
+    """Why no other row gives the limit: each with the condition that is not met."""
+    found = []
+    for limit, against in outcome.ruled_out[:NAMED]:
+        row = f'"{limit.label}" {limit.cell}'
+        if against is None:
+            found.append(f"{row} speaks of more than this category")
+            continue
+        name = against.dimension.replace("_", " ")
+        is_ = in_words(facts[against.dimension])
+        found.append(f"{row} asks for {name} {against.text}, which is {is_}")
+    more = len(outcome.ruled_out) - NAMED
+    if more > 0:
+        found.append(f"{more} more rows do not hold either")
+    what = METRICS.get(outcome.metric, outcome.metric)
+    return [Choice("no other row", what, "; ".join(dict.fromkeys(found)))] if found else []
 
 
 def _note_in_words(note: Note) -> str:

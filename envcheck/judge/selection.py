@@ -9,7 +9,7 @@ from typing import NamedTuple
 from envcheck.model import metrics
 from envcheck.model.judged import Choice
 from envcheck.model.patterns import in_words
-from envcheck.model.ruleset import Limit
+from envcheck.model.ruleset import Condition, Limit
 
 METRICS = {name: metric.words for name, metric in metrics.METRICS.items()}
 """Metrics in words."""
@@ -56,8 +56,9 @@ class Outcome(NamedTuple):
     """Why there is no limit, in words."""
     applies_to: str = "each_component"
     """What the limit holds for: two may hold at once, for each part and for the mean."""
-    ruled_out: tuple[tuple[Limit, str], ...] = ()
-    """Rows of the same kind that do not hold, each with its reason."""
+    ruled_out: tuple[tuple[Limit, Condition | None], ...] = ()
+    """Rows of the same kind that do not hold, each with the condition that is not met; None where
+    it speaks of more than the category."""
 
 
 class Selection(NamedTuple):

@@ -114,6 +114,11 @@ class Cell(NamedTuple):
     refers: str = ""
     """``left``, ``above``, ``unchanged`` or ``see ROW``."""
 
+    @property
+    def plain(self) -> bool:
+        """One reading, no footnotes, no other cell."""
+        return not self.marks and not self.refers and len(self.branches) == 1
+
 
 def split_marks(text: str) -> tuple[str, tuple[str, ...]]:
     """Take the footnote marks off a text: ``30[g]`` -> ``30``, ``(g,)``.
@@ -127,6 +132,26 @@ def split_marks(text: str) -> tuple[str, tuple[str, ...]]:
     if "[" in plain or "]" in plain or not marks:
         raise CellError("lost-bracket")
     return plain.strip(), tuple(dict.fromkeys(marks))
+
+
+def known_cell(text: str, grammar: Grammar) -> Cell:
+    """Read a cell, or give it as read before: printed tables repeat their figures."""
+    known = _READ.get(grammar)
+    if known is None:
+        if len(_READ) >= MOST_KEPT:
+            _READ.clear()
+        known = _READ[grammar] = {}
+    found = known.get(text)
+    if found is None:
+        if len(known) >= MOST_KEPT:
+            known.clear()
+        found = known[text] = read_cell(text, grammar)
+    return found
+
+
+MOST_KEPT = 1000
+_READ: dict[Grammar, dict[str, Cell]] = {}
+"""Cells read so far; the same text means the same under the same grammar."""
 
 
 def read_cell(text: str, grammar: Grammar) -> Cell:

@@ -9,7 +9,7 @@ from envcheck.errors import Problem, problem
 from envcheck.model.ruleset import Condition, Limit
 from envcheck.read.table_entry import CellKey, Table
 
-Group = tuple[str, tuple[str, ...], str, str]
+Group = tuple[tuple[str, ...], str, str]
 
 
 def check_coverage(
@@ -49,10 +49,15 @@ def _intervals(
 ) -> None:
     """Intervals of the same element and metric leave no hole between them and no open end."""
     groups: dict[Group, dict[Condition, int]] = defaultdict(dict)
+    met: set[tuple[int, str, str]] = set()
     for limits in cells.values():
         for limit in limits:
+            place = (limit.line, limit.metric, limit.path)
+            if len(limits) == 1 and place in met:  # the same row in another zone
+                continue
+            met.add(place)
             own = next((c for c in limit.when if c.dimension == name), None)
-            key = (limit.zone, limit.categories, limit.metric, limit.path)
+            key = (limit.categories, limit.metric, limit.path)
             groups[key].setdefault(own or Condition(name), limit.line)
     seen: set[str] = set()
     for found in groups.values():

@@ -19,15 +19,21 @@ MOST = 200
 
 def check_overlaps(limits: Iterable[Limit], document: Document, problems: list[Problem]) -> None:
     """Report limits for the same zone, category, metric and path whose conditions overlap."""
-    groups: dict[tuple[str, str, str, str, str, bool], list[Limit]] = defaultdict(list)
+    groups: dict[tuple[str, tuple[str, ...], str, str, str, bool], list[Limit]] = defaultdict(list)
     for x in limits:
-        for category in x.categories:
-            key = (x.zone, category, x.metric, x.path, x.applies_to, x.otherwise)
-            groups[key].append(x)
+        groups[x.zone, x.categories, x.metric, x.path, x.applies_to, x.otherwise].append(x)
+    by_category: dict[tuple[str, str, str, str, str, bool], list[list[Limit]]] = defaultdict(list)
+    for (zone, categories, *rest), group in groups.items():
+        for category in categories:
+            by_category[zone, category, *rest].append(group)  # type: ignore[index]
     seen: set[tuple[str, int, str, int]] = set()
-    for group in groups.values():
-        if len(group) == 1:
+    met: set[tuple[int, ...]] = set()
+    for parts in by_category.values():
+        group = parts[0] if len(parts) == 1 else [x for part in parts for x in part]
+        rows = tuple([id(x.when) for x in group])
+        if len(group) == 1 or rows in met:  # the same rows in another zone
             continue
+        met.add(rows)
         for a, b in _pairs(group):
             places = (a.file, a.line, b.file, b.line)
             if places in seen or not _both_hold(a.when, b.when):

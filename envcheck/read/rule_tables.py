@@ -15,7 +15,7 @@ from typing import Any, NamedTuple
 from envcheck.errors import Problem, one_of, problem
 from envcheck.model.days import ordinal
 from envcheck.model.ruleset import Condition, Limit, Note, Term
-from envcheck.read.cells import Branch, Cell, CellError, read_cell
+from envcheck.read.cells import Branch, Cell, CellError, known_cell
 from envcheck.read.condition_text import period_of
 from envcheck.read.footnotes import (
     MOST_READINGS,
@@ -52,13 +52,15 @@ class Expansion:
     table: Table
     problems: list[Problem]
     heads: list[Head]
-    spots: dict[tuple[str, int], Spot | None] = field(default_factory=dict)
+    spots: dict[str, list[Spot | None]] = field(default_factory=dict)
+    """By row pattern, one for each head."""
     covers: dict[tuple[str, str], tuple[Cover, ...]] = field(default_factory=dict)
     footnotes: dict[str, Footnote | None] = field(default_factory=dict)
     plain: dict[tuple[str, ...], tuple[Note, ...]] = field(default_factory=dict)
     """Footnotes by marks, where they only are printed."""
     above: dict[int, tuple[str, str]] = field(default_factory=dict)
     first: int = 0
+    id: str = ""
 
 
 @dataclass(slots=True)
@@ -71,6 +73,7 @@ class Line:
     triggers: dict[str, tuple[Term, str]] = field(default_factory=dict)
     """Head of a target -> its threshold, and how it is printed."""
     words: str = ""
+    covers: dict[str, tuple[Cover, ...]] = field(default_factory=dict)
 
 
 def expand(table: Table, problems: list[Problem]) -> dict[CellKey, tuple[Limit, ...]]:
@@ -80,7 +83,7 @@ def expand(table: Table, problems: list[Problem]) -> dict[CellKey, tuple[Limit, 
     heads = [h for h in found if h is not None]
     check_zones(table, heads, problems)
     cells: dict[CellKey, tuple[Limit, ...]] = {}
-    expansion = Expansion(table, problems, heads, first=table.sheet.columns[0].at)
+    expansion = Expansion(table, problems, heads, first=table.sheet.columns[0].at, id=table.id)
     before = len(problems)
     seen: dict[tuple[str, tuple[tuple[str, str], ...]], int] = {}
     ends = _days(table)
@@ -149,20 +152,24 @@ def _until(
 def _row_limits(e: Expansion, line: Line) -> Iterator[tuple[CellKey, tuple[Limit, ...]]]:
     table, row = e.table, line.row
     blank_is_fine = table.settings.get("blank") == "not_printed"
-    for head in e.heads:
+    spots = e.spots.get(line.pattern)
+    if spots is None:
+        found = [spot_of(table, row, h, line.pattern, e.problems) for h in e.heads]
+        spots = e.spots[line.pattern] = found
+    for head, spot in zip(e.heads, spots, strict=True):
         if head.trigger_of:
-            _threshold(e, line, head)
+            _threshold(e, line, head, spot)
+    plain = not (row.marks or line.triggers or table.inherited)
     left: tuple[str, str] = ("", "")
-    for head in e.heads:
+    for head, spot in zip(e.heads, spots, strict=True):
         if head.trigger_of:
             continue
-        spot = _spot(e, line, head)
         if spot is None:
             left = ("", "")
             continue
         place = head.column.at
         text = row.cells[place - e.first]
-        if text in ("<", "^"):
+        if text in _MERGED:
             merged = left if text == "<" else e.above.get(place, ("", ""))
             if merged[1] != spot.metric:
                 e.problems.append(at(table, row, head, "merged-across-quantities", text))
@@ -171,22 +178,59 @@ def _row_limits(e: Expansion, line: Line) -> Iterator[tuple[CellKey, tuple[Limit
         left = e.above[place] = (text, spot.metric)
         if not text and blank_is_fine:
             continue
-        cell = _cell(e, line, head, spot, text)
-        if cell is not None and cell.refers != "unchanged":
-            key = (table.id, row.key, row.when, head.column.heads)
+        cell = spot.cells.get(text) or _cell(e, line, head, spot, text)
+        if cell is None or cell.refers == "unchanged":
+            continue
+        key = (e.id, row.key, row.when, head.column.heads)
+        if plain and spot.plain and not head.when and not head.marks and cell.plain:
+            yield key, _plain(e, line, head, spot, cell)
+        else:
             yield key, _limits(e, line, head, spot, cell)
 
 
-def _spot(e: Expansion, line: Line, head: Head) -> Spot | None:
-    key = (line.pattern, head.column.at)
-    if key not in e.spots:
-        e.spots[key] = spot_of(e.table, line.row, head, line.pattern, e.problems)
-    return e.spots[key]
+_MERGED = ("<", "^")
 
 
-def _threshold(e: Expansion, line: Line, head: Head) -> None:
+def _plain(e: Expansion, line: Line, head: Head, spot: Spot, cell: Cell) -> tuple[Limit, ...]:
+    """Most cells: one reading, no footnotes, no conditions but the row's."""
+    row, branch = line.row, cell.branches[0]
+    zone = row.key if spot.zones_down else head.zone
+    name = f"{spot.prefix}{zone}/{row.key}/{spot.metric}"
+    if line.words:
+        name = f"{name}[{line.words}]"
+    return tuple(
+        [
+            Limit(
+                name, spot.ruleset, e.id, spot.clause, zone, row.key, row.label, categories,
+                spot.metric, spot.sense, spot.unit, cell.text, branch.kind, branch.alternatives,
+                when, spot.path, spot.applies_to, (), row.src, spot.file, row.line,
+            )
+            for categories, when in _covers(e, line, spot)
+        ]
+    )  # fmt: skip
+
+
+def _covers(e: Expansion, line: Line, spot: Spot) -> tuple[Cover, ...]:
+    """Categories that the row covers, with its conditions and those of their names."""
+    known = line.covers.get(spot.element_key)
+    if known is not None:
+        return known
+    key = (line.row.key, spot.element_key)
+    covers = e.covers.get(key)
+    if covers is None:
+        covers = covers_of(e.table, line.row, spot.element, e.problems) or ()
+        e.covers[key] = covers
+    own = tuple(
+        Cover(cover.categories, joined)
+        for cover in covers
+        if (joined := join(line.when, cover.when) if cover.when else line.when) is not None
+    )
+    line.covers[spot.element_key] = own
+    return own
+
+
+def _threshold(e: Expansion, line: Line, head: Head, spot: Spot | None) -> None:
     """Read the threshold of a row; its target stands in another column."""
-    spot = _spot(e, line, head)
     text = line.row.cells[head.column.at - e.first]
     cell = None if spot is None else _cell(e, line, head, spot, text)
     if cell is None or cell.branches[0].kind != "number":
@@ -195,15 +239,13 @@ def _threshold(e: Expansion, line: Line, head: Head) -> None:
 
 
 def _cell(e: Expansion, line: Line, head: Head, spot: Spot, text: str) -> Cell | None:
-    cell = spot.cells.get(text)
-    if cell is None:
-        try:
-            cell = read_cell(text, spot.grammar)
-        except CellError as error:
-            p = at(e.table, line.row, head, error.kind, text, error.expected, error.fix)
-            e.problems.append(p)
-            return None
-        spot.cells[text] = cell
+    """Read a cell that this row and column have not met yet."""
+    try:
+        cell = known_cell(text, spot.grammar)
+    except CellError as error:
+        p = at(e.table, line.row, head, error.kind, text, error.expected, error.fix)
+        e.problems.append(p)
+        return None
     if cell.refers == "unchanged" and not e.table.unchanged:
         e.problems.append(at(e.table, line.row, head, "unchanged-without-base", text))
         return None
@@ -211,6 +253,7 @@ def _cell(e: Expansion, line: Line, head: Head, spot: Spot, text: str) -> Cell |
         expected = f"one number of the row's own metric, {spot.metric}"
         e.problems.append(at(e.table, line.row, head, "cell-not-executed", text, expected))
         return None
+    spot.cells[text] = cell
     return cell
 
 
@@ -226,18 +269,12 @@ def _has_own_number(branch: Branch) -> bool:
 
 def _limits(e: Expansion, line: Line, head: Head, spot: Spot, cell: Cell) -> tuple[Limit, ...]:
     """The limits of a cell: one, or one for each case that footnotes, slash or names make."""
-    key = (line.row.key, spot.element_key)
-    covers = e.covers.get(key)
-    if covers is None:
-        covers = covers_of(e.table, line.row, spot.element, e.problems) or ()
-        e.covers[key] = covers
+    zone = line.row.key if spot.zones_down else head.zone
     found: tuple[Limit, ...] = ()
-    for cover in covers:
-        when = (*line.when, *head.when) if head.when else line.when
-        joined = join(when, cover.when) if cover.when else when
+    for categories, when in _covers(e, line, spot):
+        joined = join(when, head.when) if head.when else when
         if joined is not None:
-            zone = line.row.key if spot.zones_down else head.zone
-            found += _covered(e, Case(line, head, spot, cell, zone, cover.categories, joined))
+            found += _covered(e, Case(line, head, spot, cell, zone, categories, joined))
     return found
 
 

@@ -41,6 +41,11 @@ class Spot(NamedTuple):
     cells: dict[str, Cell]
     """Cells read so far, by text."""
 
+    @property
+    def plain(self) -> bool:
+        """Nothing but a figure is asked of the cell."""
+        return not self.special
+
 
 def spot_of(
     table: Table, row: Row, head: Head, pattern: str, problems: list[Problem]

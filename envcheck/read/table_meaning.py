@@ -190,9 +190,10 @@ def head_periods(table: Table, problems: list[Problem]) -> dict[str, Condition]:
     found = {h: c for h, s in stated.items() if (c := period(table, s, problems)) is not None}
     ordered = sorted(found.items(), key=lambda item: item[1].low or 0)
     for (head, first), (other, second) in pairwise(ordered):
-        if first.high is None and second.low is not None:
-            found[head] = period_of(DATE_TESTED, first.low, second.low)
-        elif first.high is not None and second.low is not None and second.low < first.high:
+        if second.low is None or (first.high is not None and first.high <= second.low):
+            continue
+        found[head] = period_of(DATE_TESTED, first.low, second.low)
+        if first.high is not None:
             words = f"{head} {first.text} and {other} {second.text}"
             line = line_of_table(table)
             problems.append(problem("dates-overlap", table.document.name, line, found=words))

@@ -15,6 +15,7 @@ import time
 from pathlib import Path
 from statistics import median
 
+from tests.benchmarks import rules
 from tests.benchmarks.generate import project
 
 ROOT = Path(__file__).parent.parent.parent
@@ -121,6 +122,14 @@ def main() -> int:
             peak = peak_mib([sys.executable, "-c", CROSSING.format(tolerance=tolerance)])
             missed += peak > 300
             print(f"peak memory, stud x girt to {words}: {peak:.0f} MiB of 300")
+        cells, ready, chosen = rules.measure()
+        for words, took in (
+            (f"rule set of {cells:,} cells, ready", ready),
+            ("selection for 1,000 elements from it", chosen),
+        ):
+            missed += took > rules.READY
+            over = "  MISSED" * (took > rules.READY)
+            print(f"{words:49} {took:7.3f} s of {rules.READY:g} s{over}")
         print(f"peak memory, check of 1,000: {peak_mib([*CHECK, large]):.0f} MiB")
         print(f"peak memory, C load of it:   {peak_mib([*load, large]):.0f} MiB")
         missed += many()
