@@ -176,7 +176,7 @@ def _selection(
         why = f"no row of {ruleset.title} covers {category_in_words(category)}{printed}"
         return stopped("not_in_table", why)
     outcomes = tuple(_outcome(key, levels, index, facts) for key, levels in groups)
-    trail += _row_trail(outcomes, facts)
+    trail += _row_trail(outcomes, facts, ruleset)
     by = {(o.metric, o.path): o for o in reversed(outcomes)}
     return Selection(ruleset.id, category, zone.printed, "selected", "", outcomes, tuple(trail), by)
 
@@ -296,13 +296,17 @@ def _not_in_force(ruleset: RuleSet, project: Project) -> str:
     )
 
 
-def _row_trail(outcomes: tuple[Outcome, ...], facts: Mapping[str, Known]) -> list[Choice]:
+def _row_trail(
+    outcomes: tuple[Outcome, ...], facts: Mapping[str, Known], ruleset: RuleSet
+) -> list[Choice]:
     trail: list[Choice] = []
     for outcome in outcomes:
         limit = outcome.limit
         what = METRICS.get(outcome.metric, outcome.metric)
         if limit is None:
-            trail.append(Choice("row", f"{what}: none", outcome.why))
+            among = dict.fromkeys(f'"{x.label}" {x.cell}' for x in outcome.candidates)
+            open_ = f"; open between {' and '.join(among)}" if len(among) > 1 else ""
+            trail.append(Choice("row", f"{what}: none", outcome.why + open_))
             continue
         covers = ", ".join(map(category_in_words, limit.categories))
         why = f'{limit.clause}, row "{limit.label}", covers {covers}; {what} {limit.cell}'
@@ -314,6 +318,10 @@ def _row_trail(outcomes: tuple[Outcome, ...], facts: Mapping[str, Known]) -> lis
             chosen = f"{condition.dimension.replace('_', ' ')} {in_words(fact)}"
             why = f"the row asks for {condition.text} ({fact.where})"
             trail.append(Choice("condition", chosen, why))
+        if limit.path and ruleset.paths_clause:
+            trail.append(
+                Choice("path", limit.path, f"{ruleset.paths_clause}: either path is enough")
+            )
         trail += _no_other(outcome, facts)
         trail += [Choice("footnote", f"[{n.mark}]", _note_in_words(n)) for n in limit.notes]
     return list(dict.fromkeys(trail))

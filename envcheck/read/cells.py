@@ -149,6 +149,8 @@ def known_cell(text: str, grammar: Grammar) -> Cell:
     return found
 
 
+LONGEST = 300
+"""Characters of a cell; no printed one is longer."""
 MOST_KEPT = 1000
 _READ: dict[Grammar, dict[str, Cell]] = {}
 """Cells read so far; the same text means the same under the same grammar."""
@@ -156,6 +158,8 @@ _READ: dict[Grammar, dict[str, Cell]] = {}
 
 def read_cell(text: str, grammar: Grammar) -> Cell:
     """Read a cell. Errors: CellError."""
+    if len(text) > LONGEST:
+        raise CellError("unreadable-cell", f"at most {LONGEST} characters")
     plain, marks = split_marks(text)
     plain = " ".join(plain.split())
     if not plain:

@@ -7,7 +7,7 @@ from datetime import date
 
 from envcheck import units
 from envcheck.model.ruleset import Condition, Dimension
-from envcheck.read.cells import CellError
+from envcheck.read.cells import LONGEST, CellError
 from envcheck.read.dates import read_date
 
 _INTERVAL = re.compile(r"([\[(])\s*([\d.,]*)\s*[,;]\s*([\d.,]*)\s*([\])])")
@@ -27,6 +27,8 @@ def read_condition(
     plain = text.strip()
     if words:
         return _words(plain, dimension, words)
+    if len(plain) > LONGEST:
+        raise CellError("unreadable-condition", _EXAMPLE)
     interval = _INTERVAL.fullmatch(plain)
     if interval is not None:
         low = _bound(interval[2], unit, decimal)
@@ -51,7 +53,7 @@ def read_period(text: str, dimension: str) -> Condition:
 
     Errors: CellError.
     """
-    plain = text.strip()
+    plain = text.strip()[:LONGEST]
     period = _PERIOD.fullmatch(plain)
     first, end = (period[1], period[2]) if period is not None else (plain, "")
     try:

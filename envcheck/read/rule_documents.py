@@ -18,6 +18,8 @@ from envcheck.read.schema import check
 from envcheck.read.yaml_reader import Entry, line_of, read_yaml
 
 MEANING = "ruleset.yaml"
+LARGEST = 2_000_000
+"""Bytes of a ``ruleset.yaml``; figures stand in its sheets."""
 _ID = re.compile(r"[a-z0-9][a-z0-9-]*")
 _NOTHING = ("", "null", "~")
 
@@ -117,8 +119,12 @@ def read_document(folder: Path, problems: list[Problem]) -> Document | None:
     except InputError as error:
         problems += error.problems
         return None
-    data, found = read_yaml(raw, shown, text_only=True)
-    problems += found
+    if len(raw) > LARGEST:
+        found, expected = f"{len(raw)} bytes", f"at most {LARGEST} bytes"
+        problems.append(problem("file-too-large", shown, None, found=found, expected=expected))
+        return None
+    data, wrong = read_yaml(raw, shown, text_only=True)
+    problems += wrong
     if data is None:
         return None
     wrong = check(data, "rules", shown)

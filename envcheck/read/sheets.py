@@ -21,6 +21,9 @@ LARGEST = 2_000_000
 """Bytes; no printed table is larger."""
 MOST_CELLS = 250_000
 """Cells of one sheet; the largest printed table has some thousands."""
+MOST_COLUMNS = 1000
+MOST_PROBLEMS = 200
+"""Of one sheet; more are not looked for."""
 WHEN = "when:"
 _PLAIN = re.compile(r"[\w-][\w.-]*\.csv")
 
@@ -75,6 +78,9 @@ class _Line(NamedTuple):
 
 def read_text(path: Path, shown: str, problems: list[Problem]) -> str | None:
     """Read a file as UTF-8, with or without a byte order mark; None after a problem."""
+    if path.is_symlink() and path.resolve().parent != path.parent.resolve():
+        problems.append(problem("sheet-outside", shown, None, found="a link to another folder"))
+        return None
     try:
         data = path.read_bytes()
     except OSError as error:
@@ -137,11 +143,15 @@ def read_sheet(
         body = body[: body.index(second)]
         lines = heads + body
     width = len(heads[0].cells)
-    ragged = [line for line in lines if len(line.cells) != width]
-    for line in ragged:
-        found, expected = f"{len(line.cells)} columns", f"{width}, as in the first row"
-        problems.append(problem("ragged-row", shown, line.number, found=found, expected=expected))
-    if any(line in ragged for line in heads):
+    if width > MOST_COLUMNS:
+        found, expected = f"{width} columns", f"at most {MOST_COLUMNS}"
+        problems.append(problem("file-too-large", shown, 1, found=found, expected=expected))
+        return None
+    ragged = {line.number: len(line.cells) for line in lines if len(line.cells) != width}
+    for number, count in list(ragged.items())[:MOST_PROBLEMS]:
+        found, expected = f"{count} columns", f"{width}, as in the first row"
+        problems.append(problem("ragged-row", shown, number, found=found, expected=expected))
+    if any(line.number in ragged for line in heads):
         return None
     dimensions = _reserved(heads[0], shown, separator, problems)
     if dimensions is None:
@@ -153,7 +163,7 @@ def read_sheet(
     columns = _columns(heads, first, width - 1, shown, problems)
     if len({column.heads for column in columns}) < len(columns):
         return None
-    rows = (_row(line, dimensions, shown, problems) for line in body if line not in ragged)
+    rows = (_row(line, dimensions, shown, problems) for line in body if line.number not in ragged)
     return Sheet(shown, columns, tuple(row for row in rows if row is not None), dimensions)
 
 
