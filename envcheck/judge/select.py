@@ -320,7 +320,7 @@ def _row_trail(
             trail.append(Choice("condition", chosen, why))
         if limit.path and ruleset.paths_clause:
             trail.append(
-                Choice("path", limit.path, f"{ruleset.paths_clause}: either path is enough")
+                Choice("path", limit.path, f"either path is enough ({ruleset.paths_clause})")
             )
         trail += _no_other(outcome, facts)
         trail += [Choice("footnote", f"[{n.mark}]", _note_in_words(n)) for n in limit.notes]
