@@ -41,26 +41,22 @@ def compare(value: float, term: Term, limit: Limit, ruleset: RuleSet) -> Compari
 
 
 def own_term(limit: Limit) -> Term:
-    """The number of a cell that speaks of the row's own metric.
+    """The number of a cell that speaks of the row's own metric; of several the easiest.
 
     A cell may offer others beside it (``0.30 or ER 34``): those are never compared with it. The
     reader makes sure that there is one.
     """
-    for alternative in limit.alternatives:
-        term = alternative[0]
-        if len(alternative) == 1 and term.metric in ("", limit.metric):
-            return term
-    raise ValueError(f"{limit.id}: {limit.cell!r} holds no number of its own metric")
-
-
-def other_ways(limit: Limit) -> str:
-    """What a cell offers beside its own metric, as printed; empty where nothing."""
-    return " or ".join(
-        term.metric + " " + term.text
+    own = [
+        alternative[0]
         for alternative in limit.alternatives
-        for term in alternative
-        if term.metric not in ("", limit.metric)
-    )
+        if len(alternative) == 1 and alternative[0].metric in ("", limit.metric)
+    ]
+    if not own:
+        raise ValueError(f"{limit.id}: {limit.cell!r} holds no number of its own metric")
+    if len(own) == 1:
+        return own[0]
+    easiest = max if limit.sense == "max" else min
+    return easiest(own, key=lambda term: term.number)
 
 
 @cache

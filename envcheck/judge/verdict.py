@@ -12,8 +12,9 @@ from envcheck.judge.before import (
     lacks_depth,
     lacks_evidence,
 )
-from envcheck.judge.compare import compare, other_ways, own_term
+from envcheck.judge.compare import compare, own_term
 from envcheck.judge.paths import insulation_of, insulation_path
+from envcheck.judge.ratings import adjusted, by_rating
 from envcheck.judge.selection import INSULATION, METRICS
 from envcheck.judge.values import of_metric, value_of
 from envcheck.model.judged import Choice, Comparison, Line, PathResult
@@ -100,10 +101,17 @@ def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Lin
     value = value_of(limit.metric, case.assembly, solved)
     if missing is None and value is None:
         missing = f"missing: {_named(limit.metric)} of {case.assembly.id}"
+    how = ""
+    if missing is None and value is not None and case.ruleset.adjustments:
+        value, how, unknown = adjusted(case, limit.metric, value)
+        missing = f"missing: {unknown}" if unknown else None
     labels = _labels(case, limit)
     if limit.metric == R_INSULATION:
         return _by_labels(line, labels)
+    rating = by_rating(case, limit)
     if missing is not None or value is None:
+        if rating is not None and rating[0] == "pass":
+            return line._replace(verdict="pass", reasons=(rating[1],))
         return _without_value(line, missing or "", limit, labels)
     comparison = compare(value, own_term(limit), limit, case.ruleset)
     own = PathResult(
@@ -113,7 +121,8 @@ def _compare(case: Case, line: Line, limit: Limit, solved: Solved | None) -> Lin
         limit.cell,
         "",
     )
-    verdict, reasons = _outcome(comparison, labels, other_ways(limit))
+    verdict, reasons = _outcome(comparison, labels, rating)
+    reasons = (how, *reasons) if how else reasons
     if verdict == "fail" and _within_bounds(case, value, limit, solved):
         verdict, reasons = "too_close", (BETWEEN_BRIDGES, *reasons)
     line = line._replace(
@@ -153,7 +162,7 @@ def _with_range(case: Case, line: Line, limit: Limit, solved: Solved | None) -> 
 
 
 def _outcome(
-    comparison: Comparison, labels: PathResult | None, others: str
+    comparison: Comparison, labels: PathResult | None, rating: tuple[str, str] | None
 ) -> tuple[str, tuple[str, ...]]:
     """Any one path may pass; what only a person can decide is never a failure."""
     reasons = _reasons(comparison, labels)
@@ -161,9 +170,9 @@ def _outcome(
         return "pass", reasons
     if labels is not None and labels.state == "not_decided":
         return "official_decides", reasons
-    if others:
-        why = f"over by its own metric; the cell also offers {others}, which is not judged here"
-        return "not_decided", (why, *reasons)
+    if rating is not None:
+        verdict, why = rating
+        return verdict, (why if verdict == "pass" else f"{why}; over by its own metric", *reasons)
     return "fail", reasons
 
 
@@ -174,6 +183,8 @@ def _named(metric: str) -> str:
 def _labels(case: Case, limit: Limit) -> PathResult | None:
     """The R-value path, where the table prints one for this element."""
     other = case.selection.limit(R_INSULATION, INSULATION)
+    if other is None and limit.metric == R_INSULATION:  # a table of labelled values alone
+        other = limit
     if other is None or other.kind != "number" or case.assembly.kind in PRODUCTS:
         return None
     brought = insulation_of(case.assembly, case.element, case.properties)
