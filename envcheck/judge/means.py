@@ -8,7 +8,10 @@ from math import fsum
 from envcheck.judge.building import area_weighted_mean
 from envcheck.judge.compare import compare, own_term
 from envcheck.judge.sums import COMPARED, Taken, lacks, part
+from envcheck.judge.values import of_metric
+from envcheck.judge.weights import weight_of
 from envcheck.model.judged import Group, Line
+from envcheck.model.metrics import METRICS
 from envcheck.model.patterns import matches
 from envcheck.model.project import Project, RuleSetChoice
 from envcheck.model.ruleset import Averaging, Limit, RuleSet
@@ -74,9 +77,20 @@ def _mean(
         return Taken(group._replace(waits=waits), tuple(members), None, (why,))
     limit = members[0].limit
     assert limit is not None
+    weights = [weight_of(project.elements[x.element], limit, project, ruleset) for x in members]
+    open_ = tuple(why for _, why in weights if why)
+    if METRICS[limit.metric].reciprocal and rule.individual_cap is not None:
+        open_ = (*open_, f"the official's word on the individual cap of {rule.clause}")
+    if open_:
+        why = f"the mean {name!r} waits for {open_[0]}"
+        return Taken(group._replace(waits=open_), tuple(members), None, (why,))
     cap, over_cap = _individual_cap(members, project, limit, rule)
-    value = area_weighted_mean([p.amount for p in parts], [p.value for p in parts])
-    comparison = compare(value, own_term(limit), limit, ruleset)
+    areas = [p.amount * weight for p, (weight, _) in zip(parts, weights, strict=True)]
+    if not fsum(areas):
+        why = f"the mean {name!r} weighs all its areas 0"
+        return Taken(group._replace(waits=(why,)), tuple(members), None, (why,))
+    mean = area_weighted_mean(areas, [p.value for p in parts])
+    comparison = compare(of_metric(limit.metric, mean), own_term(limit), limit, ruleset)
     within = comparison.within and not over_cap
     group = group._replace(state="pass" if within else "fail", cap=cap)
     reason = f"area-weighted mean of {name!r} by {rule.clause}; worst member {group.worst.element}"

@@ -6,6 +6,7 @@ from typing import NamedTuple
 
 from envcheck.judge.compare import own_term
 from envcheck.model.judged import Comparison, Group, Line, Part
+from envcheck.model.metrics import METRICS
 from envcheck.model.project import Element, Project
 from envcheck.units import to_si
 
@@ -61,6 +62,8 @@ def part(line: Line, project: Project) -> Part:
     assert limit is not None and value is not None and size is not None
     term = own_term(limit)
     number = to_si(term.number, limit.unit) if limit.unit else term.number
+    if METRICS[limit.metric].reciprocal:  # parts are summed as heat flows
+        number = 1.0 / number if number else 0.0
     return Part(
         line.element,
         element.assembly,

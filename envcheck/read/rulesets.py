@@ -277,6 +277,12 @@ def _remarks(
         for table in document.get("tables") or ():
             if table.get("status") == "guidance":
                 found.append(f"{document.id}: {table['clause']} is guidance and is not judged")
+        unknown = [n for n, c in (document.get("elements") or {}).items() if c == []]
+        if unknown:
+            words = f"{', '.join(unknown)}: envcheck knows no such element; not judged"
+            found.append(f"{document.id}: {words}")
+    whole = dict.fromkeys(x.clause for x in limits if x.applies_to == "whole_envelope")
+    found += [f"{clause} limits the envelope as a whole; it is not judged" for clause in whole]
     means = dict.fromkeys(x.clause for x in limits if x.applies_to == "area_weighted_mean")
     found += [
         f"{clause} limits an area-weighted mean: each element is held against it by itself unless "

@@ -127,3 +127,49 @@ def test_a_total_resistance_is_one_over_the_u_factor(tmp_path: Path) -> None:
 def test_a_table_of_labelled_values_alone_is_judged(tmp_path: Path) -> None:
     (line,) = lines(tmp_path, "wall.wood_frame", "W").values()
     assert line.metric == "R_insulation" and line.verdict in ("pass", "fail")
+
+
+MEAN = """averaging:
+  - {clause: "8", scope: ["wall.*"], metric: R_total, permits: area_weighted_mean}
+"""
+TWO = """  E1: {assembly: W, category: wall.mass, sheet: A-2, net_area: 10 m2, mean: all}
+  E2: {assembly: W2, category: wall.mass, sheet: A-2, net_area: 30 m2, mean: all, adjoins: ADJOINS}
+"""
+THIN = """  W2: {title: Thin, sheet: A-1, layers: [
+      {kind: material, title: wool, material: wool, thickness: 40 mm}]}
+elements:
+"""
+
+
+@pytest.mark.parametrize(
+    ("weights", "adjoins", "mean"),
+    [
+        # U = 1 / 2.67 = 0.374532 and 1 / (0.04 / 0.04 + 0.17) = 0.854701; 10 and 30 m2:
+        # R = 1 / ((3.74532 + 25.64103) / 40) = 1.361176
+        ("", "outdoors", 1.361176),
+        # toward the unheated: inner film on both sides, U2 = 1 / 1.26 = 0.793651, weight 0.5:
+        # R = 1 / ((3.74532 + 11.904762) / 25) = 1.597436
+        ("[{factor: \"0.5\", for: unheated, when: {adjoins: unheated}}]", "unheated", 1.597436),
+        ("[{factor: \"0.5\", for: within 5 m of the edge}]", "outdoors", None),
+    ],
+)  # fmt: skip
+def test_a_mean_of_resistances_is_a_mean_of_heat_flows(
+    tmp_path: Path, weights: str, adjoins: str, mean: float | None
+) -> None:
+    town = tmp_path / "rules" / "town"
+    town.mkdir(parents=True)
+    rules = RULES + MEAN
+    if weights:
+        rules = rules.replace("heads: {Limit: {}},", f"heads: {{Limit: {{}}}}, weights: {weights},")
+        rules = rules.replace("light: {", "adjoins: {values: [outdoors, unheated]}, light: {")
+    (town / "ruleset.yaml").write_text(rules, encoding="utf-8")
+    (town / "t.csv").write_text(SHEET, encoding="utf-8")
+    head = PROJECT.replace("UFACTOR", "1.5")
+    head = head[: head.index("elements:\n")]
+    path = tmp_path / "project.yaml"
+    path.write_text(head + THIN + TWO.replace("ADJOINS", adjoins), encoding="utf-8")
+    found = pipeline.run(str(path)).judged.lines
+    if mean is None:
+        assert {line.verdict for line in found} == {"not_decided"}
+        return
+    assert [line.comparison.value for line in found if line.comparison] == pytest.approx([mean] * 2)

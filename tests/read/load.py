@@ -15,13 +15,25 @@ from time import perf_counter
 from envcheck.errors import InputError
 from envcheck.model.ruleset import RuleSet
 from envcheck.pipeline import names
-from envcheck.read.rule_documents import known_ids
+from envcheck.read.rule_documents import known_ids, read_document
 from envcheck.read.rulesets import read_ruleset
+from envcheck.read.sheets import read_sheet
 
 
-def printed_cells(ruleset: RuleSet) -> int:
-    """Number of printed cells: limits that stand in the same place are one."""
-    return len({(x.file, x.line, x.zone, x.row, x.metric, x.path, x.label) for x in ruleset.limits})
+def printed_cells(name: str, folder: Path) -> int:
+    """Number of typed cells of a rule set's own sheets; blanks and unchanged ones are left out."""
+    document = read_document(folder / name, [])
+    assert document is not None
+    count = 0
+    for entry in document.get("tables") or ():
+        like = next((t for t in document.get("tables") if t["id"] == entry.get("like")), {})
+        settings = {**like, **entry}
+        rows, separator = int(settings.get("header_rows", "1")), document.get("separator") or ","
+        path = document.folder / settings["file"]
+        sheet = read_sheet(path, settings["file"], separator, rows, [])
+        cells = [cell for row in (sheet.rows if sheet is not None else ()) for cell in row.cells]
+        count += sum(cell not in ("", ".") for cell in cells)
+    return count
 
 
 def summary(ruleset: RuleSet) -> str:
@@ -30,7 +42,7 @@ def summary(ruleset: RuleSet) -> str:
     official = sum(any(n.by_official for n in x.notes) for x in ruleset.limits)
     metrics = ", ".join(dict.fromkeys(x.metric for x in ruleset.limits))
     return (
-        f"{printed_cells(ruleset)} cells, {len(ruleset.limits)} limits "
+        f"{len(ruleset.limits)} limits "
         f"({kinds['number']} figures, {kinds['no_requirement']} NR, {kinds['not_covered']} none), "
         f"{official} for the official; {metrics}; {len(ruleset.remarks)} remarks"
     )
@@ -50,7 +62,9 @@ def load(folders: Iterable[str]) -> int:
                 for problem in error.problems:
                     print(f"    {problem}")
                 continue
-            print(f"{name}: {summary(ruleset)} [{(perf_counter() - start) * 1000:.0f} ms]")
+            print(
+                f"{name}: {printed_cells(name, folder)} cells, {summary(ruleset)} [{(perf_counter() - start) * 1000:.0f} ms]"
+            )
             for remark in ruleset.remarks:
                 print(f"    remark: {remark}")
     return failed
