@@ -62,9 +62,8 @@ def load(folders: Iterable[str]) -> int:
                 for problem in error.problems:
                     print(f"    {problem}")
                 continue
-            print(
-                f"{name}: {printed_cells(name, folder)} cells, {summary(ruleset)} [{(perf_counter() - start) * 1000:.0f} ms]"
-            )
+            took, cells = (perf_counter() - start) * 1000, printed_cells(name, folder)
+            print(f"{name}: {cells} cells, {summary(ruleset)} [{took:.0f} ms]")
             for remark in ruleset.remarks:
                 print(f"    remark: {remark}")
     return failed
