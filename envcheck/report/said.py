@@ -7,6 +7,8 @@ from envcheck.model.ruleset import Limit
 from envcheck.report import numbers, wording
 from envcheck.report.inert import clean
 
+NOT_HERE = "does not apply"
+"""What a footnote did that does not hold for this element."""
 SOURCES = {"E": "example value"}
 """Marks in the column ``src`` of a table, in words."""
 
@@ -61,6 +63,7 @@ def limit_source(limit: Limit | None, ruleset: str) -> str:
         parts.append(f"printed in {limit.ruleset}")
     if limit.replaced:
         parts.append(f"in place of {limit.replaced}")
+    parts += [f"footnote {n.mark}: {n.did}" for n in limit.notes if n.did and n.did != NOT_HERE]
     if limit.src:
         parts.append(SOURCES.get(limit.src, f"source {limit.src}"))
     return clean(", ".join(filter(None, parts)))
