@@ -19,26 +19,34 @@ class Metric(NamedTuple):
     the element, whatever its kind) or empty: read off a product, or of a group or the building."""
     reciprocal: bool = False
     """The value is one over the U-factor."""
+    symbol: str = ""
+    """Letters before a value; empty: none but its name."""
 
 
 METRICS = {
-    "U_assembly": Metric("U", "u_factor", "max", "U-factor", "own"),
-    "U_product": Metric("U", "u_factor", "max", "U-factor of the whole product", "own"),
-    "U_glazing": Metric("U", "u_factor", "max", "U-factor of the glazing"),
-    "U_curtain_wall": Metric("U", "u_factor", "max", "U-factor of the curtain wall", "heat_flow"),
-    "U_mean": Metric("U", "u_factor", "max", "area-weighted mean U-factor"),
-    "K_global": Metric("U", "u_factor", "max", "global coefficient of the envelope"),
-    "C_factor": Metric("C", "u_factor", "max", "C-factor", "own"),
-    "F_factor": Metric("F", "linear_transmittance", "max", "F-factor", "own"),
-    "R_insulation": Metric("R", "resistance", "min", "R-value of the insulation"),
-    "R_total": Metric("R", "resistance", "min", "total R-value", "heat_flow", True),
-    "R_construction": Metric("R", "resistance", "min", "construction R-value", "heat_flow", True),
-    "RSI_effective": Metric("R", "resistance", "min", "effective RSI", "heat_flow", True),
-    "R_without_framing": Metric("R", "resistance", "min", "R-value without framing"),
-    "R_old_and_new": Metric("R", "resistance", "min", "R-value of old and new layers"),
-    "SHGC": Metric("", "number", "max", "SHGC"),
-    "VT": Metric("", "number", "min", "visible transmittance"),
-    "VT_per_SHGC": Metric("", "number", "min", "visible transmittance over SHGC"),
+    "U_assembly": Metric("U", "u_factor", "max", "U-factor", "own", symbol="U"),
+    "U_product": Metric("U", "u_factor", "max", "U-factor of the whole product", "own", symbol="U"),
+    "U_glazing": Metric("U", "u_factor", "max", "U-factor of the glazing", symbol="Ug"),
+    "U_curtain_wall": Metric(
+        "U", "u_factor", "max", "U-factor of the curtain wall", "heat_flow", symbol="Ucw"
+    ),
+    "U_mean": Metric("U", "u_factor", "max", "area-weighted mean U-factor", symbol="Um"),
+    "K_global": Metric("U", "u_factor", "max", "global coefficient of the envelope", symbol="K"),
+    "C_factor": Metric("C", "u_factor", "max", "C-factor", "own", symbol="C"),
+    "F_factor": Metric("F", "linear_transmittance", "max", "F-factor", "own", symbol="F"),
+    "R_insulation": Metric("R", "resistance", "min", "R-value of the insulation", symbol="R"),
+    "R_total": Metric("R", "resistance", "min", "total R-value", "heat_flow", True, symbol="R"),
+    "R_construction": Metric(
+        "R", "resistance", "min", "construction R-value", "heat_flow", True, symbol="R"
+    ),
+    "RSI_effective": Metric(
+        "R", "resistance", "min", "effective RSI", "heat_flow", True, symbol="RSI"
+    ),
+    "R_without_framing": Metric("R", "resistance", "min", "R-value without framing", symbol="R"),
+    "R_old_and_new": Metric("R", "resistance", "min", "R-value of old and new layers", symbol="R"),
+    "SHGC": Metric("", "number", "max", "SHGC", symbol="SHGC"),
+    "VT": Metric("", "number", "min", "visible transmittance", symbol="VT"),
+    "VT_per_SHGC": Metric("", "number", "min", "visible transmittance over SHGC", symbol="VT/SHGC"),
     "solar_admittance": Metric("", "number", "max", "solar admittance"),
     "solar_absorptance": Metric("", "number", "max", "solar absorptance"),
 }

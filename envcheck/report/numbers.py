@@ -8,22 +8,11 @@ from decimal import ROUND_CEILING, ROUND_FLOOR, ROUND_HALF_UP, Decimal
 from functools import lru_cache
 
 from envcheck import units
+from envcheck.model.metrics import METRICS
 
-QUANTITIES = {
-    "U_assembly": "u_factor",
-    "U_product": "u_factor",
-    "C_factor": "u_factor",
-    "F_factor": "linear_transmittance",
-    "R_insulation": "resistance",
-}
+QUANTITIES = {name: metric.quantity for name, metric in METRICS.items()}
 """Metric -> quantity of ``units``; every other metric is a plain number."""
-SYMBOLS = {
-    "U_assembly": "U",
-    "U_product": "U",
-    "C_factor": "C",
-    "F_factor": "F",
-    "R_insulation": "R",
-}
+SYMBOLS = {name: metric.symbol or metric.words for name, metric in METRICS.items()}
 DECIMALS = {
     ("u_factor", "IP"): 4,
     ("u_factor", "SI"): 3,

@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from functools import lru_cache
 
+from envcheck.model import metrics
+
 VERDICTS = {
     "pass": "within",
     "fail": "over its limit",
@@ -27,14 +29,12 @@ NOT_PROVEN = (
     "both ends are solved; between them nothing is proven, since a thicker layer of a section may "
     "also spread heat along it"
 )
-METRICS = {
+METRICS = {name: metric.words for name, metric in metrics.METRICS.items()} | {
     "U_assembly": "U-factor of the assembly",
-    "U_product": "U-factor of the whole product",
     "C_factor": "C-factor (no films, no soil)",
     "F_factor": "F-factor of the slab edge",
     "R_insulation": "rated R-value of the insulation",
     "SHGC": "solar heat gain coefficient",
-    "VT": "visible transmittance",
 }
 METHODS = {
     "series": "layers in series",
