@@ -36,7 +36,7 @@ def expand(table: Table, problems: list[Problem]) -> dict[CellKey, tuple[Limit, 
     heads = [h for h in found if h is not None]
     check_zones(table, heads, problems)
     cells: dict[CellKey, tuple[Limit, ...]] = {}
-    expansion = Expansion(table, problems, heads, first=table.sheet.columns[0].at, id=table.id)
+    expansion = Expansion(table, problems, heads)
     before = len(problems)
     seen: dict[tuple[str, tuple[tuple[str, str], ...]], int] = {}
     ends = _days(table)
@@ -63,8 +63,7 @@ def _line(e: Expansion, row: Row, ends: Mapping[tuple[str, object], float]) -> L
         return None
     if ends:
         when = tuple(_until(c, row, e.table, ends) for c in when)
-    words = ",".join([f"{c.dimension}={c.text}" for c in when])
-    return Line(row, pattern, when, words=words)
+    return Line(row, pattern, when)
 
 
 # ------------------------------------------------------------------------------- rows by date
