@@ -8,6 +8,7 @@ from collections.abc import Iterable, Mapping
 from envcheck.errors import Problem, problem
 from envcheck.model.ruleset import Condition, Limit
 from envcheck.read.table_entry import CellKey, Table
+from envcheck.read.table_meaning import head_of
 
 Group = tuple[tuple[str, ...], str, str]
 
@@ -15,11 +16,11 @@ Group = tuple[tuple[str, ...], str, str]
 def check_coverage(
     table: Table, cells: Mapping[CellKey, tuple[Limit, ...]], problems: list[Problem]
 ) -> None:
-    """Report what a sheet's own conditions leave open, unless ``uncovered_allowed`` says why."""
-    if table.unchanged or not table.sheet.when:
+    """Report what rows and heads of a sheet leave open, unless ``uncovered_allowed`` says why."""
+    if table.unchanged:
         return
     allowed = table.settings.get("uncovered_allowed") or {}
-    for name in table.sheet.when:
+    for name in (*table.sheet.when, *_of_heads(table)):
         dimension = table.dimensions[name]
         if name in allowed or dimension.kind == "date" or dimension.interpolate:
             continue
@@ -27,6 +28,16 @@ def check_coverage(
             _words(table, name, cells, problems)
         else:
             _intervals(table, name, cells, problems)
+
+
+def _of_heads(table: Table) -> tuple[str, ...]:
+    """Dimensions on which heads state intervals, and the sheet has no column for."""
+    levels = table.settings.get("head_levels") or [table.settings.get("heads") or {}]
+    if not any(isinstance(level, Mapping) for level in levels):
+        return ()
+    found = (head_of(table, column, {}, []) for column in table.sheet.columns)
+    names = (c.dimension for head in found if head is not None for c in head.when if not c.words)
+    return tuple(n for n in dict.fromkeys(names) if n not in table.sheet.when)
 
 
 def _words(
@@ -49,11 +60,12 @@ def _intervals(
 ) -> None:
     """Intervals of the same element and metric leave no hole between them and no open end."""
     groups: dict[Group, dict[Condition, int]] = defaultdict(dict)
+    by_row = name in table.sheet.when
     met: set[tuple[int, str, str]] = set()
     for limits in cells.values():
         for limit in limits:
             place = (limit.line, limit.metric, limit.path)
-            if len(limits) == 1 and place in met:  # the same row in another zone
+            if by_row and len(limits) == 1 and place in met:  # the same row in another zone
                 continue
             met.add(place)
             own = next((c for c in limit.when if c.dimension == name), None)

@@ -331,3 +331,29 @@ def test_a_table_may_hold_for_a_time(tmp_path: Path) -> None:
     ruleset = town(tmp_path, dated + YES, SHEET.replace("[a]", ""))
     assert chosen(ruleset, "wall.mass", "2019-12-31").verdict_of("U_assembly") == "not_in_table"
     assert one(ruleset, "wall.mass").cell == "0.30"
+
+
+@pytest.mark.parametrize(
+    ("second", "gap"),
+    [("[12,19)", "what lies below [12,19)"), ("[0,18)", "what lies between [0,18) and >=19"),
+     ("<19", "")],
+)  # fmt: skip
+def test_heads_may_leave_no_gap_either(tmp_path: Path, second: str, gap: str) -> None:
+    meaning = f"""tables:
+  - id: T1
+    file: t.csv
+    clause: Table 1
+    orientation: none
+    heads: {{Warm: {{room: ">=19"}}, Cool: {{room: "{second}"}}}}
+    rows: {{"*": {{metric: U_assembly}}}}
+dimensions: {{room: {{type: number, unit: C}}}}
+"""
+    sheet = "row,label,Warm,Cool,src\nwall.mass,Walls,0.24,0.35,P\n"
+    if not gap:
+        assert one(town(tmp_path, meaning, sheet), "wall.mass", room=19.0).cell == "0.24"
+        return
+    with pytest.raises(InputError) as caught:
+        town(tmp_path, meaning, sheet)
+    assert [p.found for p in caught.value.problems] == [gap]
+    allowed = meaning.replace("    rows:", "    uncovered_allowed: {room: as printed}\n    rows:")
+    assert len(town(tmp_path, allowed, sheet).limits) == 2
