@@ -8,11 +8,12 @@ from contextlib import contextmanager, suppress
 from dataclasses import dataclass, replace
 from functools import cache, partial
 from pathlib import Path
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, NamedTuple
 
 from envcheck.errors import InputError, Problem
 from envcheck.judge import crosschecks
 from envcheck.judge.building import closings, ratios
+from envcheck.judge.classes import Class
 from envcheck.judge.groups import take_groups
 from envcheck.judge.lines import (
     classes_of,
@@ -24,10 +25,11 @@ from envcheck.judge.lines import (
     undecided_by_bracket,
     weighed,
 )
+from envcheck.judge.swaps import differing, swaps, turned
 from envcheck.judge.zones import zone_problems
-from envcheck.model.judged import Finding, Group, Judged, Line, Ratio
+from envcheck.model.judged import Change, Group, Judged, Line, Ratio, Turn
 from envcheck.model.names import Names
-from envcheck.model.project import Project
+from envcheck.model.project import Project, RuleSetChoice
 from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Properties, Reasons, Solved
 from envcheck.read.materials import categories
@@ -136,32 +138,17 @@ def _run(path: str, folders: Sequence[str], bounds: bool, close: str) -> Run:
     }
     metrics = {name: category.metric for name, category in categories().items()}
     solver = Solver(project, metrics)
-    lines: list[Line] = []
-    all_ratios: list[Ratio] = []
-    groups: list[Group] = []
-    found: list[Finding] = []
-    for choice in project.rule_sets:
-        ruleset = rulesets[choice.id]
-        classes = classes_of(project, ruleset, made_of)
-        if choice.decides:
-            found += merged(c.finding for c in classes.values() if c.finding is not None)
-        measured = ratios(project, ruleset, {tag: c.category for tag, c in classes.items()})
-        judge_again = partial(
-            judge_lines,
-            project,
-            ruleset,
-            choice,
-            made_of,
-            classes,
-            measured,
-            metrics,
-            solver.solve,
-        )
-        own = _with_narrow_brackets(judge_again, solver, ruleset, bounds, close)
-        own, taken = take_groups(own, project, ruleset, choice, measured)
-        lines += own
-        all_ratios += measured
-        groups += taken
+    judge_by = partial(_judged_by, project, made_of, metrics, solver, bounds, close)
+    by_set = {choice.id: judge_by(choice, rulesets[choice.id]) for choice in project.rule_sets}
+    lines = [line for each in by_set.values() for line in each.lines]
+    all_ratios = [ratio for each in by_set.values() for ratio in each.ratios]
+    groups = [group for each in by_set.values() for group in each.groups]
+    found = [
+        finding
+        for choice in project.rule_sets
+        if choice.decides
+        for finding in merged(c.finding for c in by_set[choice.id].classes.values() if c.finding)
+    ]
     closed = closings(project)
     solver.drawn_only(rulesets[project.rule_sets[0].id])
     facts = crosschecks.Facts(
@@ -176,6 +163,7 @@ def _run(path: str, folders: Sequence[str], bounds: bool, close: str) -> Run:
         solved_details(project, asked_by_bridges(project)) if project.details else {},
     )
     findings = (*found, *crosschecks.findings(facts))
+    changes, turns = _compared(project, rulesets, by_set, judge_by)
     judged = Judged(
         lines=tuple(lines),
         findings=findings,
@@ -183,6 +171,8 @@ def _run(path: str, folders: Sequence[str], bounds: bool, close: str) -> Run:
         groups=tuple(groups),
         closings=closed,
         remarks=remarks(project, rulesets),
+        changes=tuple(changes),
+        turns=tuple(turns),
     )
     return Run(project, rulesets, judged, made_of, solver.first, exit_status(judged))
 
@@ -195,6 +185,56 @@ def _with_criteria(project: Project, rulesets: Mapping[str, RuleSet]) -> Project
     from envcheck.solve.climate_zone import with_criteria  # only where a rule set asks
 
     return replace(project, site=with_criteria(project.site, named))
+
+
+class _Outcome(NamedTuple):
+    """A project judged by one rule set."""
+
+    lines: list[Line]
+    groups: list[Group]
+    ratios: tuple[Ratio, ...]
+    classes: dict[str, Class]
+
+
+def _judged_by(
+    project: Project,
+    made_of: Mapping[str, Properties],
+    metrics: Mapping[str, str],
+    solver: Solver,
+    bounds: bool,
+    close: bool,
+    choice: RuleSetChoice,
+    ruleset: RuleSet,
+) -> _Outcome:
+    classes = classes_of(project, ruleset, made_of)
+    measured = ratios(project, ruleset, {tag: c.category for tag, c in classes.items()})
+    judge_again = partial(
+        judge_lines, project, ruleset, choice, made_of, classes, measured, metrics, solver.solve
+    )
+    own = _with_narrow_brackets(judge_again, solver, ruleset, bounds, close)
+    own, groups = take_groups(own, project, ruleset, choice, measured)
+    return _Outcome(own, groups, measured, classes)
+
+
+def _compared(
+    project: Project,
+    rulesets: Mapping[str, RuleSet],
+    by_set: Mapping[str, _Outcome],
+    judge_by: Callable[[RuleSetChoice, RuleSet], _Outcome],
+) -> tuple[list[Change], list[Turn]]:
+    """Hold the first rule set that decides against each other one, convention by convention."""
+    changes: list[Change] = []
+    turns: list[Turn] = []
+    if len(project.rule_sets) < 2:
+        return changes, turns
+    first, *others = sorted(project.rule_sets, key=lambda choice: not choice.decides)
+    for other in others:
+        changes += differing(by_set[first.id].lines, by_set[other.id].lines)
+        for one, two in ((first, other), (other, first)):
+            for name, variant in swaps(rulesets[one.id], rulesets[two.id]):
+                swapped = judge_by(one, variant).lines
+                turns += turned(by_set[one.id].lines, swapped, name, one.id, two.id)
+    return changes, turns
 
 
 def _with_narrow_brackets(

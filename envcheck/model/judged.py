@@ -239,6 +239,35 @@ class Group(NamedTuple):
         return max(self.parts, key=lambda part: part.drawn - part.table)
 
 
+class Change(NamedTuple):
+    """A line whose verdict differs between two rule sets."""
+
+    ruleset: str
+    other: str
+    element: str
+    metric: str
+    before: str
+    """Verdict under the first ..."""
+    after: str
+    """... and under the other."""
+    why: tuple[str, ...]
+    """What differs, in plain words."""
+
+
+class Turn(NamedTuple):
+    """A verdict that one convention of another rule set turns, by itself."""
+
+    ruleset: str
+    """Judged by this one ..."""
+    other: str
+    """... with one convention of this one."""
+    convention: str
+    element: str
+    metric: str
+    before: str
+    after: str
+
+
 CLOSES_WITHIN = 0.005
 """Share of the gross area by which parts may miss it; drawings are dimensioned to the inch."""
 
@@ -269,3 +298,7 @@ class Judged:
     closings: tuple[Closing, ...]
     remarks: tuple[str, ...]
     """Trade-offs offered and not computed, drafts that do not decide ..."""
+    changes: tuple[Change, ...] = ()
+    """Lines that differ between the first rule set and another."""
+    turns: tuple[Turn, ...] = ()
+    """Lines that one convention of the other turns."""

@@ -2,11 +2,11 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Sequence
 
 from envcheck.report import wording
 from envcheck.report.header import RuleSetView
-from envcheck.report.parts import Block, Grid, Paragraph, Section
+from envcheck.report.parts import Grid, Paragraph, Section
 from envcheck.report.rows import Row
 
 TONES = {"fail": "bad", "pass": "good", "no_requirement": "good"}
@@ -70,22 +70,3 @@ def _value(row: Row) -> str:
     if row.verdict == "too_close" and row.low.text:
         return f"{row.symbol} {between(row)}"
     return f"{row.symbol} {row.value.text or '-'}"
-
-
-def differing(rows: Iterable[Row], rule_sets: Sequence[RuleSetView]) -> tuple[Section, ...]:
-    """Lines whose verdicts differ between rule sets; nothing of a single rule set."""
-    if len(rule_sets) < 2:
-        return ()
-    found: dict[tuple[str, str], dict[str, Row]] = {}
-    for row in rows:
-        found.setdefault((row.tag, row.symbol), {})[row.rule_set] = row
-    names = [rules.id for rules in rule_sets]
-    cells = tuple(
-        (tag, symbol, *(by[name].verdict_text if name in by else "no line" for name in names))
-        for (tag, symbol), by in found.items()
-        if len({by[name].verdict if name in by else "" for name in names}) > 1
-    )
-    heads = ("tag", "value", *names)
-    wrap = tuple(range(2, len(heads)))
-    block: Block = Grid(heads, cells, (), wrap) if cells else Paragraph(wording.NOTHING)
-    return (Section("Verdicts that differ between the rule sets", (block,)),)

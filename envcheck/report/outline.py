@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
 
-from envcheck.report import assembly_page, by_line, main_table, trade_off, wording
+from envcheck.report import assembly_page, by_line, changes, main_table, trade_off, wording
 from envcheck.report.by_line import place
 from envcheck.report.details import AssemblyView
 from envcheck.report.header import RuleSetView
@@ -50,7 +50,7 @@ def tables(view: View) -> tuple[Section, ...]:
             main_table.section(rows_of[rules.id], rules, several, view.bounds)
             for rules in view.rule_sets
         ),
-        *main_table.differing(view.rows, view.rule_sets),
+        *changes.sections(view.rows, view.rule_sets, view.changes, view.turns),
     )
 
 

@@ -8,7 +8,16 @@ from itertools import starmap
 from typing import NamedTuple
 
 from envcheck import units
-from envcheck.model.judged import Comparison, Group, Line, Part, PathResult
+from envcheck.model.judged import (
+    Change,
+    Comparison,
+    Group,
+    Judged,
+    Line,
+    Part,
+    PathResult,
+    Turn,
+)
 from envcheck.model.project import Element, Project
 from envcheck.model.solved import Step
 from envcheck.report import hand_check, numbers, said, wording
@@ -82,6 +91,8 @@ class Row(NamedTuple):
     verdict: str
     verdict_text: str
     open: bool
+    elsewhere: str
+    """Its verdict under other rule sets, or with one of their conventions, where that differs."""
     reasons: tuple[str, ...]
     notes: tuple[str, ...]
     paths: tuple[PathRow, ...]
@@ -97,10 +108,13 @@ def build(
     project: Project,
     system: str,
     trails: bool = True,
-    groups: Iterable[Group] = (),
+    judged: Judged | None = None,
 ) -> tuple[Row, ...]:
-    """Make the rows in the order of ``lines``; ``trails`` asks why each limit was selected."""
-    written = _Written(trails, groups)
+    """Make the rows in the order of ``lines``; ``trails`` asks why each limit was selected.
+
+    judged: where lines stand in sums, or differ between rule sets.
+    """
+    written = _Written(trails, judged)
     return tuple(_row(line, project, system, written) for line in lines)
 
 
@@ -110,10 +124,17 @@ class _Written:
     Assemblies of the same layers, and one assembly under rule sets of the same films, share a sum.
     """
 
-    def __init__(self, trails: bool, groups: Iterable[Group]) -> None:
+    def __init__(self, trails: bool, judged: Judged | None) -> None:
         self.trails = trails
+        self._elsewhere: dict[tuple[str, str, str], list[str]] = {}
+        others: tuple[Change | Turn, ...] = ()
+        if judged is not None:
+            others = (*judged.changes, *judged.turns)
+        for each in others:
+            known = self._elsewhere.setdefault((each.ruleset, each.element, each.metric), [])
+            known.append(said.elsewhere(each))
         self._parts: dict[tuple[str, str, str], list[tuple[Group, Part]]] = {}
-        for group in groups:
+        for group in judged.groups if judged is not None else ():
             for part in group.parts:
                 key = (group.ruleset, part.element, part.metric)
                 self._parts.setdefault(key, []).append((group, part))
@@ -144,6 +165,10 @@ class _Written:
             numbers.heat_flow(x, system) for x in (found[0][1].drawn, found[0][1].table)
         )
         return names, Figure(drawn, flow), Figure(table, flow)
+
+    def elsewhere(self, line: Line) -> str:
+        """What other rule sets, or one of their conventions, make of a line."""
+        return "; ".join(self._elsewhere.get((line.ruleset, line.element, line.metric), ()))
 
     def source(self, line: Line) -> str:
         """Where the limit stands in print."""
@@ -188,6 +213,7 @@ def _row(line: Line, project: Project, system: str, written: _Written) -> Row:
         verdict=line.verdict,
         verdict_text=said.verdict_text(line),
         open=line.open,
+        elsewhere=written.elsewhere(line),
         reasons=tuple(map(clean, line.reasons)),
         notes=said.notes(line),
         paths=tuple(path_row(path, line.metric) for path in line.paths),

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from envcheck.model.judged import Comparison, Line
+from envcheck.model.judged import Change, Comparison, Line, Turn
 from envcheck.model.ruleset import Limit
 from envcheck.report import numbers, wording
 from envcheck.report.inert import clean
@@ -83,6 +83,12 @@ def verdict_text(line: Line) -> str:
         text = wording.OVER_WITH if line.verdict == "fail" else text
         text += f" ({group(line.group_kind, line.group)})"
     return text + _only_just(line) if line.verdict == "pass" else text
+
+
+def elsewhere(each: Change | Turn) -> str:
+    """What another rule set, or one convention of it, makes of a line."""
+    by = f"{each.other}: " if isinstance(each, Change) else f"{each.convention} of {each.other}: "
+    return clean(by + wording.VERDICTS[each.after])
 
 
 def group(kind: str, name: str) -> str:

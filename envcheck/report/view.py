@@ -13,9 +13,20 @@ from envcheck import __version__
 from envcheck.model.judged import Judged, Line
 from envcheck.model.project import Project
 from envcheck.model.ruleset import RuleSet
-from envcheck.report import building, cautions, details, header, items, rows, schedules, wording
+from envcheck.report import (
+    building,
+    cautions,
+    changes,
+    details,
+    header,
+    items,
+    rows,
+    schedules,
+    wording,
+)
 from envcheck.report.building import Building
 from envcheck.report.cautions import CautionText
+from envcheck.report.changes import ChangeView, TurnView
 from envcheck.report.details import AssemblyView
 from envcheck.report.header import RuleSetView
 from envcheck.report.items import FindingView, Item
@@ -58,6 +69,10 @@ class View(NamedTuple):
     claims: tuple[Item, ...]
     findings: tuple[FindingView, ...]
     building: Building
+    changes: tuple[ChangeView, ...]
+    """Lines that differ between the first rule set and others."""
+    turns: tuple[TurnView, ...]
+    """Conventions that turn a verdict by themselves."""
     assumptions: tuple[str, ...]
     remarks: tuple[str, ...]
     assemblies: tuple[AssemblyView, ...]
@@ -90,7 +105,7 @@ def build(
     system = system_for(project, rulesets, options)
     rulesets = dict(sorted(rulesets.items(), key=lambda pair: not header.decides(pair[1], project)))
     ordered = in_order(judged.lines, rulesets)
-    made = rows.build(ordered, project, system, options.details, judged.groups)
+    made = rows.build(ordered, project, system, options.details, judged)
     findings = items.findings(judged.findings)
     return View(
         title=header.title(project),
@@ -106,6 +121,8 @@ def build(
         claims=items.claims(project),
         findings=findings,
         building=building.build(judged, project, system),
+        changes=changes.changes(judged.changes),
+        turns=changes.turns(judged.turns),
         assumptions=items.assumptions(judged.lines),
         remarks=items.remarks(judged.remarks),
         assemblies=(

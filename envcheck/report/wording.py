@@ -79,6 +79,7 @@ RATIOS = {
     "window_wall_ratio": "fenestration / gross above-grade wall",
     "skylight_roof_ratio": "skylights / gross roof",
 }
+NO_TURN = "none: no verdict turns by one convention of another rule set alone"
 GROUPS = {"mean": "mean", "trade_off": "trade-off"}
 """Lines judged together, by kind."""
 ELECTED = "the project elects it: its lines carry this verdict"

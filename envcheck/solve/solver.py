@@ -3,14 +3,26 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
+from typing import Any
 
 from envcheck.model.project import Assembly, Bridge, Element, Project
-from envcheck.model.ruleset import RuleSet
+from envcheck.model.ruleset import Conventions, RuleSet
 from envcheck.model.solved import Setting, Solved
 from envcheck.solve.assembly import solve
 from envcheck.solve.bracket import can_narrow, narrow
 from envcheck.solve.conventions import Resolver
 
+RESOLVED: dict[str, Any] = {
+    "films": (),
+    "film_set": "",
+    "methods": (),
+    "framing_shares": (),
+    "class_tests": (),
+    "accepted_evidence": {},
+    "dimensions_measured": "",
+    "where": {},
+}
+"""Conventions that a setting holds already, or that fix no value."""
 _Key = tuple[str, Setting, tuple[Bridge, ...], float | None]
 
 
@@ -26,7 +38,7 @@ class Solver:
         self._found: dict[_Key, Solved] = {}
         self._keys: dict[int, _Key] = {}
         """Of each solution, by its identity."""
-        self._resolvers: dict[str, Resolver] = {}
+        self._resolvers: list[tuple[Conventions, Resolver]] = []
         self.first: dict[str, Solved] = {}
         """By assembly id: its first solution, for what the report lists."""
 
@@ -34,9 +46,7 @@ class Solver:
         self, element: Element, assembly: Assembly, category: str, metric: str, ruleset: RuleSet
     ) -> Solved:
         """Solve the assembly of one element by one rule set's conventions."""
-        resolver = self._resolvers.get(ruleset.id)
-        if resolver is None:
-            resolver = self._resolvers[ruleset.id] = Resolver(ruleset.conventions, ruleset.id)
+        resolver = self._resolver(ruleset.conventions)
         setting = resolver.resolve(element, assembly, category, metric)
         area = element.net_area if element.bridges else None
         key = (assembly.id, setting, element.bridges, area)
@@ -73,6 +83,24 @@ class Solver:
             return found
 
         return with_range(assembly, solved, again)
+
+    def _resolver(self, conventions: Conventions) -> Resolver:
+        """The resolver of some conventions; those that count alike share their solutions."""
+        for known, resolver in self._resolvers:
+            if known is conventions:
+                return resolver
+        counted = conventions._replace(**RESOLVED)
+        number = next(
+            (
+                n
+                for n, (known, _) in enumerate(self._resolvers)
+                if known._replace(**RESOLVED) == counted
+            ),
+            len(self._resolvers),
+        )
+        resolver = Resolver(conventions, f"conventions {number}")
+        self._resolvers.append((conventions, resolver))
+        return resolver
 
     def narrow(self, solved: Solved, ruleset: RuleSet, tolerance: float) -> None:
         """Put a narrower bracket in place of a solution's; the next ``solve`` gives it back."""

@@ -63,6 +63,7 @@ HEADS = (
     *SUMS,
     "verdict",
     "verdict in words",
+    "verdict elsewhere",
     "why",
     "hand check",
 )
@@ -106,6 +107,7 @@ def _cells(row: Row) -> dict[str, str]:
         "sums": row.group,
         "verdict": row.verdict,
         "verdict in words": row.verdict_text,
+        "verdict elsewhere": row.elsewhere,
         "why": "; ".join((*row.reasons, *row.notes)),
         "hand check": row.hand_check,
     }
