@@ -1,4 +1,4 @@
-"""What stands before a comparison: class, limit, renewal, area caps, evidence, depth, claims."""
+"""What stands before a comparison: class, limit, area caps, evidence, depth, claims."""
 
 from __future__ import annotations
 
@@ -56,25 +56,6 @@ def by_limit(case: Case, metric: str, limit: Limit | None) -> tuple[str, str] | 
     by_official = [note for note in limit.notes if note.by_official]
     if by_official:
         return "official_decides", f"footnote {by_official[0].mark}: {by_official[0].text}"
-    return None
-
-
-def by_renewal(case: Case) -> tuple[str, str] | None:
-    """Verdict and reason where an alteration does not reach the trigger."""
-    trigger = case.ruleset.trigger
-    if trigger is None or case.project.scope != "alteration":
-        return None
-    share = case.element.renewed
-    if share is None:
-        return "not_decided", (
-            f"missing: the share of {case.element.tag} that is renewed ({trigger.clause}), "
-            f"on {case.element.sheet or 'its drawing'}"
-        )
-    if share <= trigger.share:
-        return "no_requirement", (
-            f"{share * 100:.3g} % renewed, not more than {trigger.share * 100:.3g} % "
-            f"({trigger.clause}): reported only"
-        )
     return None
 
 

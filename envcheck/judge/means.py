@@ -7,15 +7,13 @@ from math import fsum
 
 from envcheck.judge.building import area_weighted_mean
 from envcheck.judge.compare import compare, own_term
-from envcheck.judge.sums import COMPARED, Taken, lacks, part
+from envcheck.judge.sums import COMPARED, OVER_R, Taken, by_itself, lacks, part
 from envcheck.judge.values import of_metric
 from envcheck.judge.weights import weight_of
-from envcheck.model.judged import Group, Line
-from envcheck.model.metrics import METRICS
+from envcheck.model.judged import Group, Line, Part
 from envcheck.model.patterns import matches
 from envcheck.model.project import Project, RuleSetChoice
-from envcheck.model.ruleset import Averaging, Limit, RuleSet
-from envcheck.units import convert
+from envcheck.model.ruleset import Averaging, RuleSet
 
 
 def means(
@@ -33,7 +31,7 @@ def means(
     groups: dict[tuple[str, str], list[Line]] = {}
     for line in lines:
         name = project.elements[line.element].mean_with
-        limit = line.limit if name else None
+        limit = line.limit if name and not by_itself(line) else None
         if limit is not None and limit.kind == "number" and _kind(limit.metric) in permitted:
             groups.setdefault((name, _kind(limit.metric)), []).append(line)
     return [
@@ -56,7 +54,17 @@ def _mean(
     elected: bool,
 ) -> Taken:
     rule = _permitted(members, ruleset)
-    parts = tuple(part(line, project) for line in members if not lacks(line, project))
+    weights = [
+        weight_of(project.elements[line.element], line.limit, project, ruleset)
+        for line in members
+        if line.limit is not None
+    ]
+    parts = tuple(
+        weighted._replace(amount=weighted.amount * factor)
+        for line, (factor, _) in zip(members, weights, strict=True)
+        if not lacks(line, project)
+        for weighted in [part(line, project)]
+    )
     group = Group(
         kind="mean",
         name=name,
@@ -71,30 +79,47 @@ def _mean(
     )
     if isinstance(rule, str):
         return Taken(group._replace(waits=(rule,)), tuple(members), None, (rule,))
-    waits = tuple(why for line in members if (why := lacks(line, project)))
+    waits = _waits(members, weights, parts, rule, project)
     if waits:
         why = f"the mean {name!r} waits for {waits[0]}"
         return Taken(group._replace(waits=waits), tuple(members), None, (why,))
     limit = members[0].limit
     assert limit is not None
-    weights = [weight_of(project.elements[x.element], limit, project, ruleset) for x in members]
-    open_ = tuple(why for _, why in weights if why)
-    if METRICS[limit.metric].reciprocal and rule.individual_cap is not None:
-        open_ = (*open_, f"the official's word on the individual cap of {rule.clause}")
-    if open_:
-        why = f"the mean {name!r} waits for {open_[0]}"
-        return Taken(group._replace(waits=open_), tuple(members), None, (why,))
-    cap, over_cap = _individual_cap(members, project, limit, rule)
-    areas = [p.amount * weight for p, (weight, _) in zip(parts, weights, strict=True)]
-    if not fsum(areas):
-        why = f"the mean {name!r} weighs all its areas 0"
-        return Taken(group._replace(waits=(why,)), tuple(members), None, (why,))
-    mean = area_weighted_mean(areas, [p.value for p in parts])
-    comparison = compare(of_metric(limit.metric, mean), own_term(limit), limit, ruleset)
+    cap, over_cap = _individual_cap(members, project, rule)
+    cap = "; ".join((cap, *_weighed(members, weights)))
+    value = area_weighted_mean([p.amount for p in parts], [p.value for p in parts])
+    shown = of_metric(limit.metric, value) if limit.metric in OVER_R else value
+    comparison = compare(shown, own_term(limit), limit, ruleset)
     within = comparison.within and not over_cap
     group = group._replace(state="pass" if within else "fail", cap=cap)
     reason = f"area-weighted mean of {name!r} by {rule.clause}; worst member {group.worst.element}"
     return Taken(group, tuple(members), comparison, (reason, *((cap,) if over_cap else ())))
+
+
+def _waits(
+    members: Sequence[Line],
+    weights: Sequence[tuple[float, str]],
+    parts: Sequence[Part],
+    rule: Averaging,
+    project: Project,
+) -> tuple[str, ...]:
+    """What a permitted mean waits for; empty where it can be taken."""
+    waits = [why for line in members if (why := lacks(line, project))]
+    waits += dict.fromkeys(why for _, why in weights if why)
+    if members[0].metric in OVER_R and rule.individual_cap is not None:
+        waits.append(f"the official's word on the individual cap of {rule.clause}")
+    if not waits and not any(each.amount for each in parts):
+        waits.append("areas that count: it weighs all of them 0")
+    return tuple(waits)
+
+
+def _weighed(members: Sequence[Line], weights: Sequence[tuple[float, str]]) -> list[str]:
+    """Areas that do not count in full, in words."""
+    return [
+        f"the area of {line.element} counts {factor:g}"
+        for line, (factor, _) in zip(members, weights, strict=True)
+        if factor != 1.0
+    ]
 
 
 def _permitted(members: Sequence[Line], ruleset: RuleSet) -> Averaging | str:
@@ -109,13 +134,10 @@ def _permitted(members: Sequence[Line], ruleset: RuleSet) -> Averaging | str:
     return f"{ruleset.title} permits no mean for these elements"
 
 
-def _individual_cap(
-    members: Sequence[Line], project: Project, limit: Limit, rule: Averaging
-) -> tuple[str, bool]:
+def _individual_cap(members: Sequence[Line], project: Project, rule: Averaging) -> tuple[str, bool]:
     """What the individual cap says, and whether a member is over it."""
     if rule.individual_cap is None:
         return "no individual cap", False
-    bound = rule.individual_cap * own_term(limit).number
     over = []
     for line in members:
         element, each = project.elements[line.element], part(line, project)
@@ -124,8 +146,8 @@ def _individual_cap(
             and rule.cap_exempt_area is not None
             and each.amount <= rule.cap_exempt_area + 1e-9
         )
-        printed = convert(each.value, limit.unit) if limit.unit else each.value
-        if line.verdict in COMPARED and printed > bound * (1 + 1e-12) and not exempt:
+        above = each.value > rule.individual_cap * each.limit * (1 + 1e-12)
+        if line.verdict in COMPARED and above and not exempt:
             over.append(line.element)
     words = f"no member above {rule.individual_cap:g} x the limit ({rule.clause})"
     if over:

@@ -13,7 +13,9 @@ from envcheck.units import to_si
 COMPARED = ("pass", "fail")
 """Verdicts that a comparison gives, and that a group may replace."""
 BY_LENGTH = "F_factor"
-HEAT_FLOW = ("U_assembly", "U_product", "C_factor", "F_factor", "R_insulation")
+OVER_R = tuple(name for name, metric in METRICS.items() if metric.reciprocal)
+"""Metrics that are one over a U-factor: their lines enter sums by it."""
+HEAT_FLOW = ("U_assembly", "U_product", "C_factor", "F_factor", "R_insulation", *OVER_R)
 """Metrics of lines that a sum of heat flows must speak of."""
 
 
@@ -25,6 +27,11 @@ class Taken(NamedTuple):
     comparison: Comparison | None
     """The group's; None where something stands in the way."""
     reasons: tuple[str, ...]
+
+
+def by_itself(line: Line) -> bool:
+    """Whether a limit holds at any point, whatever a mean or a sum makes of the element."""
+    return line.limit is not None and line.limit.applies_to in ("any_point", "whole_envelope")
 
 
 def amount(element: Element, metric: str) -> float | None:
@@ -56,15 +63,13 @@ def lacks(line: Line, project: Project) -> str:
 
 
 def part(line: Line, project: Project) -> Part:
-    """A decided line as a part of a sum."""
+    """A decided line as a part of a sum; a total R-value enters as one over it."""
     element, limit = project.elements[line.element], line.limit
     value, size = deciding_value(line), amount(element, line.metric)
     assert limit is not None and value is not None and size is not None
     term = own_term(limit)
     number = to_si(term.number, limit.unit) if limit.unit else term.number
-    if METRICS[limit.metric].reciprocal:  # parts are summed as heat flows
-        number = 1.0 / number if number else 0.0
-    return Part(
+    printed = Part(
         line.element,
         element.assembly,
         line.metric,
@@ -75,3 +80,6 @@ def part(line: Line, project: Project) -> Part:
         term.text,
         limit.unit,
     )
+    if line.metric not in OVER_R:
+        return printed
+    return printed._replace(metric="U_assembly", limit=1.0 / number, printed="", unit="")

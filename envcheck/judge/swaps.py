@@ -9,6 +9,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Iterator, Mapping
 from typing import Any
 
+from envcheck.judge.sums import by_itself
 from envcheck.judge.words import method
 from envcheck.model.judged import Change, Comparison, Line, Turn
 from envcheck.model.patterns import in_words
@@ -93,8 +94,12 @@ def differing(lines: Iterable[Line], others: Iterable[Line]) -> list[Change]:
     return changes
 
 
-def _by_line(lines: Iterable[Line]) -> dict[tuple[str, str], Line]:
-    return {(line.element, KIN.get(line.metric, line.metric)): line for line in lines}
+def _by_line(lines: Iterable[Line]) -> dict[tuple[str, str, str], Line]:
+    """By element, quantity, and whether the limit holds at any point."""
+    return {
+        (line.element, KIN.get(line.metric, line.metric), "point" if by_itself(line) else ""): line
+        for line in lines
+    }
 
 
 def _why(line: Line, other: Line) -> tuple[str, ...]:

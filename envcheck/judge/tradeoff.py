@@ -11,14 +11,19 @@ from math import fsum
 
 from envcheck.judge.charges import charges, uncounted
 from envcheck.judge.facts import fact_of
-from envcheck.judge.sums import COMPARED, HEAT_FLOW, Taken, lacks, part
+from envcheck.judge.sums import COMPARED, HEAT_FLOW, OVER_R, Taken, by_itself, lacks, part
 from envcheck.model.judged import Comparison, Group, Line, Part, Ratio
 from envcheck.model.patterns import in_words, matches
 from envcheck.model.project import Project, RuleSetChoice
 from envcheck.model.ruleset import RuleSet, TradeOff
 from envcheck.units import convert, label
 
-TERMS = {"U_A": ("U_assembly", "U_product"), "C_A": ("C_factor",), "F_P": ("F_factor",)}
+TERMS = {
+    "U_A": ("U_assembly", "U_product"),
+    "C_A": ("C_factor",),
+    "F_P": ("F_factor",),
+    "A_over_R": OVER_R,
+}
 """Term of a rule -> metrics whose lines it sums."""
 SAME = 1e-12
 """Share by which two sums may differ and still be equal: binary noise."""
@@ -43,7 +48,7 @@ def trade_offs(
     by_class: dict[str, list[Line]] = {name: [] for name in _classes(rule, ruleset)}
     unknown: list[Line] = []
     for line in lines:
-        if line.metric in HEAT_FLOW and _belongs(line, rule):
+        if line.metric in HEAT_FLOW and _belongs(line, rule) and not by_itself(line):
             name = _class(line, rule, project, ruleset)
             if name is None:
                 unknown.append(line)
@@ -179,5 +184,9 @@ def _not_offered(lines: Sequence[Line], ruleset: RuleSet, choice: RuleSetChoice)
     group = Group(
         "trade_off", "", ruleset.id, choice.decides, "", True, "not_decided", (), 0.0, 0.0, (why,)
     )
-    members = tuple(x for x in lines if x.metric in HEAT_FLOW and x.verdict in COMPARED)
+    members = tuple(
+        line
+        for line in lines
+        if line.metric in HEAT_FLOW and line.verdict in COMPARED and not by_itself(line)
+    )
     return Taken(group, members, None, (why,))

@@ -2,12 +2,12 @@
 
 from __future__ import annotations
 
+from envcheck.judge.alterations import by_threshold, by_trigger
 from envcheck.judge.before import (
     Case,
     by_area_cap,
     by_class,
     by_limit,
-    by_renewal,
     claim_of,
     lacks_depth,
     lacks_evidence,
@@ -39,8 +39,8 @@ def judge(case: Case, metric: str, solved: Solved | None) -> Line:
     """Judge one element in one metric.
 
     The questions are asked in a fixed order and the first that stands in the way gives the
-    verdict: the class, the limit, the share renewed, a claimed exception, an area cap, the
-    evidence, the value, the comparison.
+    verdict: the class, the limit, the share renewed, the value before the work, a claimed
+    exception, an area cap, the evidence, the value, the comparison.
     """
     limit = case.selection.limit(metric)
     line = Line(
@@ -56,10 +56,14 @@ def judge(case: Case, metric: str, solved: Solved | None) -> Line:
         comparison=None,
         trail=_trail(case),
     )
-    for answer in (by_class(case), by_limit(case, metric, limit), by_renewal(case)):
+    renewal = by_trigger(case.element, case.project, case.ruleset)
+    for answer in (by_class(case), by_limit(case, metric, limit), renewal):
         if answer is not None:
             return line._replace(verdict=answer[0], reasons=(answer[1],))
     assert limit is not None
+    kept = by_threshold(case.element, limit, case.ruleset)
+    if kept is not None:
+        return line._replace(verdict=kept[0], reasons=(kept[1],))
     compared = _compare(case, line, limit, solved)
     closing = by_area_cap(case)
     if closing is not None:

@@ -219,6 +219,8 @@ class Element(NamedTuple):
     note: str = ""
     wall_height: float | None = None
     """m; for the share of a wall below grade."""
+    existing: Declared | None = None
+    """Value before an alteration."""
 
 
 class ExceptionClaim(NamedTuple):

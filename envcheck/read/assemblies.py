@@ -111,7 +111,7 @@ def read_assembly(context: Context, name: str, entry: Entry) -> Assembly:
         title=entry["title"],
         sheet=entry.get("sheet", ""),
         line=entry.line,
-        declared=_declared(context, entry["declared"]) if "declared" in entry else None,
+        declared=read_declared(context, entry["declared"]) if "declared" in entry else None,
         layers=layers,
         fasteners=tuple(_fasteners(context, f, layers) for f in entry.get("fasteners", ())),
         bridges=tuple(_bridge(context, b, kind, layers) for b in entry.get("bridges", ())),
@@ -150,7 +150,8 @@ def _plain(entry: Entry, key: str) -> float | None:
     return float(entry[key]) if key in entry else None
 
 
-def _declared(context: Context, entry: Entry) -> Declared | None:
+def read_declared(context: Context, entry: Entry) -> Declared | None:
+    """Read a value as a drawing prints it: exactly one quantity, and its sheet."""
     key = context.exactly_one(entry, tuple(_DECLARED), "the declared value")
     if not key:
         return None

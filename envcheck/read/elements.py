@@ -7,7 +7,7 @@ from collections.abc import Iterable, Mapping
 from typing import Any
 
 from envcheck.model.project import Bridge, Element, ExceptionClaim, Fact, Opening, Surface
-from envcheck.read.assemblies import bridge, linear
+from envcheck.read.assemblies import bridge, linear, read_declared
 from envcheck.read.context import Context
 from envcheck.read.materials import categories
 from envcheck.read.yaml_reader import Entry
@@ -123,6 +123,7 @@ def read_element(
         bridges=tuple(_bridge(context, item) for item in entry.get("bridges", ())),
         note=entry.get("note", ""),
         wall_height=_wall_height(context, entry),
+        existing=read_declared(context, entry["existing"]) if "existing" in entry else None,
     )
 
 

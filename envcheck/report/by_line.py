@@ -93,7 +93,8 @@ def _beside(row: Row, told: Container[str]) -> list[str]:
     """Reasons and notes of a settled line, but for a path that is printed anyway."""
     if not (row.reasons or row.notes):
         return []
-    reasons = [] if row.verdict == "no_requirement" and row.against else row.reasons
+    printed = row.against and not row.against.startswith(("<", ">"))  # the cell says so itself
+    reasons = [] if row.verdict == "no_requirement" and printed else row.reasons
     said = ("R-value path", "by the R-value path") if row.paths else ()
     return [*(text for text in reasons if not text.startswith(said)), *notes(row, told)]
 

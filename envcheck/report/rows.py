@@ -18,6 +18,7 @@ from envcheck.model.judged import (
     PathResult,
     Turn,
 )
+from envcheck.model.metrics import METRICS
 from envcheck.model.project import Element, Project
 from envcheck.model.solved import Step
 from envcheck.report import hand_check, numbers, said, wording
@@ -157,8 +158,11 @@ class _Written:
 
     def in_sums(self, line: Line, system: str) -> tuple[str, Figure, Figure]:
         """Groups of a line, and what it adds to their sums."""
-        found = self._parts.get((line.ruleset, line.element, line.metric), ())
-        if not found or not (flow := numbers.flow_unit(line.metric, system)):
+        point = line.limit is not None and line.limit.applies_to == "any_point"
+        known = METRICS.get(line.metric)
+        metric = "U_assembly" if known is not None and known.reciprocal else line.metric
+        found = self._parts.get((line.ruleset, line.element, metric), ()) if not point else ()
+        if not found or not (flow := numbers.flow_unit(metric, system)):
             return "", NO_FIGURE, NO_FIGURE
         names = "; ".join(said.group(group.kind, group.name) for group, _ in found)
         drawn, table = (
@@ -215,7 +219,7 @@ def _row(line: Line, project: Project, system: str, written: _Written) -> Row:
         open=line.open,
         elsewhere=written.elsewhere(line),
         reasons=tuple(map(clean, line.reasons)),
-        notes=said.notes(line),
+        notes=(*said.notes(line), *before(element, line, system)),
         paths=tuple(path_row(path, line.metric) for path in line.paths),
         hand_check=written.sum(line, system, value),
         trail=tuple(starmap(_choice, line.trail)) if written.trails else (),
@@ -244,6 +248,16 @@ def amount(element: Element | None, system: str) -> Figure:
     if element.count is not None:
         return Figure(numbers.trimmed(element.count, 2), "count")
     return NO_FIGURE
+
+
+def before(element: Element | None, line: Line, system: str) -> tuple[str, ...]:
+    """The value before an alteration, beside that of a line on heat flow."""
+    stated = element.existing if element is not None else None
+    if stated is None or not numbers.flow_unit(line.metric, system):
+        return ()
+    letter = "" if stated.quantity == "resistance" else f"{numbers.symbol(line.metric)} "
+    sheet = f" ({stated.sheet})" if stated.sheet else ""
+    return (clean(f"before the work: {letter}{stated.text}{sheet}"),)
 
 
 def value_of(line: Line, system: str) -> Figure:

@@ -59,6 +59,8 @@ def limit_source(limit: Limit | None, ruleset: str) -> str:
     if limit.zone and limit.zone != "*":
         parts.append(limit.zone)
     parts += [_condition(when.dimension, when.text) for when in limit.when]
+    if limit.applies_to == "any_point":
+        parts.append("at any point")
     if limit.ruleset != ruleset:
         parts.append(f"printed in {limit.ruleset}")
     if limit.replaced:

@@ -118,12 +118,69 @@ def test_a_line_carried_by_its_r_value_path_closes_the_sum() -> None:
     assert (group.state, group.waits) == ("not_decided", (f"the value of {first.element}",))
 
 
+def test_a_total_resistance_enters_by_one_over_it() -> None:
+    first = LINES[0]
+    limit, solved = first.limit, first.solved
+    assert limit is not None and solved is not None
+    # 1 / 0.36 = 2.78 m2 K/W drawn, 4.00 by the table: 100 m2 / 4.00 = 25 W/K in place of 30 W/K
+    term = limit.alternatives[0][0]._replace(number=4.0, text="4.00")
+    asked = limit._replace(
+        metric="R_total", sense="min", unit="m2 K/W", cell="4.00", alternatives=((term,),)
+    )
+    lines = [first._replace(metric="R_total", limit=asked), *LINES[1:]]
+    offered = RULESET.tradeoff
+    assert offered is not None
+    rules = RULESET._replace(tradeoff=offered._replace(terms=("U_A", "A_over_R")))
+    _, (group,) = take_groups(lines, DONE.project, rules, ELECTED, ())
+    assert (group.drawn, group.table) == (pytest.approx(78.0), pytest.approx(81.0 - 5.0))
+    only_u = RULESET._replace(tradeoff=offered._replace(terms=("U_A",)))
+    _, (without,) = take_groups(lines, DONE.project, only_u, ELECTED, ())
+    assert without.left_out == (("S-MW", "R total is no term of the sum"),)
+
+
+def test_a_mean_of_total_resistances_is_one_over_that_of_u_factors() -> None:
+    from envcheck.judge.means import means
+    from envcheck.model.ruleset import Averaging
+
+    first = LINES[0]
+    limit, solved = first.limit, first.solved
+    assert limit is not None and solved is not None
+    # half R 20, half R 10 (U 0.05 and 0.10): the mean is 1 / 0.075 = 13.3, never 15
+    term = limit.alternatives[0][0]._replace(number=14.0, text="14.0")
+    asked = limit._replace(
+        metric="R_total", sense="min", unit="m2 K/W", cell="14.0", alternatives=((term,),)
+    )
+    lines = [
+        first._replace(element=tag, metric="R_total", limit=asked, verdict="pass",
+                       solved=changed(solved, value=value))
+        for tag, value in (("S-MW", 0.05), ("S-WI", 0.10))
+    ]  # fmt: skip
+    elements = {
+        tag: element._replace(net_area=50.0, mean_with="half")
+        for tag, element in DONE.project.elements.items()
+    }
+    rules = RULESET._replace(averaging=(Averaging("H6", ("wall.*",), "R_total"),))
+    (taken,) = means(lines, changed(DONE.project, elements=elements), rules, ELECTED, ())
+    assert taken.comparison is not None
+    assert taken.comparison.value == pytest.approx(13.333, abs=1e-3)
+    assert taken.group.state == "fail"
+
+
 def test_a_bracket_that_decides_enters_by_its_high_end() -> None:
     first = LINES[0]
     assert first.solved is not None
     between = changed(first.solved, value=0.31, low=0.30, high=0.32, decided_by_bracket=True)
     group = total([first._replace(solved=between), *LINES[1:]], DONE.project)
     assert group.parts[0].value == 0.32
+
+
+def test_a_cap_at_any_point_stands_beside_the_sum() -> None:
+    first = LINES[0]
+    assert first.limit is not None
+    point = first._replace(limit=first.limit._replace(applies_to="any_point"), verdict="fail")
+    made, (group,) = take_groups([point, *LINES], DONE.project, RULESET, ELECTED, ())
+    assert group == total(LINES, DONE.project)
+    assert made[0] == point
 
 
 def test_a_class_that_nobody_states_closes_every_sum() -> None:

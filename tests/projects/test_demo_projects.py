@@ -352,3 +352,9 @@ def test_an_elected_trade_off_of_the_review_waits(tmp_path: Path) -> None:
     # the store is semi-heated: the code offers it no sum
     assert (lines["T-W6"].verdict, lines["T-R4"].verdict) == ("fail", "pass")
     assert done.exit_status == 1
+
+
+def test_the_old_value_of_the_yard_wall_is_the_bare_brick() -> None:
+    stated = run(RENOVATION).project.elements["Y-S1"].existing
+    assert stated is not None
+    assert stated.value == pytest.approx(1 / (0.13 + 0.04 + BRICK), abs=0.005)
