@@ -27,7 +27,7 @@ from envcheck.judge.lines import (
 )
 from envcheck.judge.swaps import differing, swaps, turned
 from envcheck.judge.zones import zone_problems
-from envcheck.model.judged import Change, Group, Judged, Line, Ratio, Turn
+from envcheck.model.judged import Difference, Group, Judged, Line, Ratio, Turn
 from envcheck.model.names import Names
 from envcheck.model.project import Project, RuleSetChoice
 from envcheck.model.ruleset import RuleSet
@@ -202,7 +202,7 @@ def _judged_by(
     metrics: Mapping[str, str],
     solver: Solver,
     bounds: bool,
-    close: bool,
+    close: str,
     choice: RuleSetChoice,
     ruleset: RuleSet,
 ) -> _Outcome:
@@ -221,9 +221,9 @@ def _compared(
     rulesets: Mapping[str, RuleSet],
     by_set: Mapping[str, _Outcome],
     judge_by: Callable[[RuleSetChoice, RuleSet], _Outcome],
-) -> tuple[list[Change], list[Turn]]:
+) -> tuple[list[Difference], list[Turn]]:
     """Hold the first rule set that decides against each other one, convention by convention."""
-    changes: list[Change] = []
+    changes: list[Difference] = []
     turns: list[Turn] = []
     if len(project.rule_sets) < 2:
         return changes, turns

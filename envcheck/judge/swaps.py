@@ -11,7 +11,7 @@ from typing import Any
 
 from envcheck.judge.sums import by_itself
 from envcheck.judge.words import method
-from envcheck.model.judged import Change, Comparison, Line, Turn
+from envcheck.model.judged import Comparison, Difference, Line, Turn
 from envcheck.model.patterns import in_words
 from envcheck.model.ruleset import Conventions, RuleSet, TableRow
 
@@ -78,7 +78,7 @@ def turned(
     ]
 
 
-def differing(lines: Iterable[Line], others: Iterable[Line]) -> list[Change]:
+def differing(lines: Iterable[Line], others: Iterable[Line]) -> list[Difference]:
     """Lines whose verdicts differ under the other rule set, and what differs in them."""
     found, there = _by_line(lines), _by_line(others)
     changes = []
@@ -86,7 +86,7 @@ def differing(lines: Iterable[Line], others: Iterable[Line]) -> list[Change]:
         other = there.get(key)
         if other is not None and other.verdict != line.verdict:
             changes.append(
-                Change(
+                Difference(
                     line.ruleset, other.ruleset, line.element, line.metric,
                     line.verdict, other.verdict, _why(line, other),
                 )

@@ -239,7 +239,7 @@ class Group(NamedTuple):
         return max(self.parts, key=lambda part: part.drawn - part.table)
 
 
-class Change(NamedTuple):
+class Difference(NamedTuple):
     """A line whose verdict differs between two rule sets."""
 
     ruleset: str
@@ -298,7 +298,7 @@ class Judged:
     closings: tuple[Closing, ...]
     remarks: tuple[str, ...]
     """Trade-offs offered and not computed, drafts that do not decide ..."""
-    changes: tuple[Change, ...] = ()
+    changes: tuple[Difference, ...] = ()
     """Lines that differ between the first rule set and another."""
     turns: tuple[Turn, ...] = ()
     """Lines that one convention of the other turns."""

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Sequence
 from typing import NamedTuple
 
-from envcheck.model.judged import Change, Turn
+from envcheck.model.judged import Difference, Turn
 from envcheck.report import numbers, wording
 from envcheck.report.header import RuleSetView
 from envcheck.report.inert import clean
@@ -40,7 +40,7 @@ class TurnView(NamedTuple):
     after: str
 
 
-def changes(found: Iterable[Change]) -> tuple[ChangeView, ...]:
+def changes(found: Iterable[Difference]) -> tuple[ChangeView, ...]:
     """Write the lines that differ."""
     return tuple(
         ChangeView(

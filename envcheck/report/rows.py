@@ -9,8 +9,8 @@ from typing import NamedTuple
 
 from envcheck import units
 from envcheck.model.judged import (
-    Change,
     Comparison,
+    Difference,
     Group,
     Judged,
     Line,
@@ -128,7 +128,7 @@ class _Written:
     def __init__(self, trails: bool, judged: Judged | None) -> None:
         self.trails = trails
         self._elsewhere: dict[tuple[str, str, str], list[str]] = {}
-        others: tuple[Change | Turn, ...] = ()
+        others: tuple[Difference | Turn, ...] = ()
         if judged is not None:
             others = (*judged.changes, *judged.turns)
         for each in others:

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from envcheck.model.judged import Change, Comparison, Line, Turn
+from envcheck.model.judged import Comparison, Difference, Line, Turn
 from envcheck.model.ruleset import Limit
 from envcheck.report import numbers, wording
 from envcheck.report.inert import clean
@@ -87,9 +87,13 @@ def verdict_text(line: Line) -> str:
     return text + _only_just(line) if line.verdict == "pass" else text
 
 
-def elsewhere(each: Change | Turn) -> str:
+def elsewhere(each: Difference | Turn) -> str:
     """What another rule set, or one convention of it, makes of a line."""
-    by = f"{each.other}: " if isinstance(each, Change) else f"{each.convention} of {each.other}: "
+    by = (
+        f"{each.other}: "
+        if isinstance(each, Difference)
+        else f"{each.convention} of {each.other}: "
+    )
     return clean(by + wording.VERDICTS[each.after])
 
 

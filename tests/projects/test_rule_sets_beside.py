@@ -13,7 +13,7 @@ from typing import Any
 import pytest
 
 from envcheck import pipeline
-from envcheck.model.judged import Change, Turn
+from envcheck.model.judged import Difference, Turn
 from envcheck.report import view
 from envcheck.solve import solver
 
@@ -43,7 +43,7 @@ def beside(tmp_path_factory: pytest.TempPathFactory) -> Any:
     return run
 
 
-def by_tag(found: tuple[Change, ...]) -> dict[str, tuple[str, str]]:
+def by_tag(found: tuple[Difference, ...]) -> dict[str, tuple[str, str]]:
     return {change.element: (change.before, change.after) for change in found}
 
 
