@@ -7,15 +7,18 @@ and what it rests on follows.
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
+from typing import TYPE_CHECKING
 
-from envcheck.report import assembly_page, by_line, changes, main_table, trade_off, wording
+from envcheck.report import by_line, changes, main_table, wording
 from envcheck.report.by_line import place
-from envcheck.report.details import AssemblyView
 from envcheck.report.header import RuleSetView
 from envcheck.report.items import FindingView, Item
 from envcheck.report.parts import Block, Entry, Facts, Items, Page, Pair, Paragraph, Section
 from envcheck.report.rows import Row
 from envcheck.report.view import View
+
+if TYPE_CHECKING:
+    from envcheck.report.details import AssemblyView
 
 SAID_BY_LINES = {
     "exception-without-evidence": "claimed by",
@@ -72,7 +75,7 @@ def beside_the_lines(view: View) -> tuple[Section, ...]:
         *_findings(view.findings, _sheets(view), _deciding(view)),
         *(Section(each.heading, (each.grid,)) for each in view.schedules),
         *_building(view),
-        *(trade_off.section(g) for g in view.building.groups if g.kind == "trade_off"),
+        *_trade_offs(view),
     )
 
 
@@ -93,6 +96,15 @@ def what_it_rests_on(view: View) -> tuple[Section, ...]:
         Section("Not judged on this page", (_plain(view.not_judged or (wording.NOTHING,)),)),
         _close(view),
     )
+
+
+def _trade_offs(view: View) -> tuple[Section, ...]:
+    groups = [group for group in view.building.groups if group.kind == "trade_off"]
+    if not groups:
+        return ()
+    from envcheck.report import trade_off
+
+    return tuple(map(trade_off.section, groups))
 
 
 def _rows_of(view: View) -> dict[str, list[Row]]:
@@ -249,6 +261,8 @@ def _if_any(heading: str, block: Items) -> tuple[Section, ...]:
 
 
 def _assembly(each: AssemblyView) -> Section:
+    from envcheck.report import assembly_page
+
     return Section(f"Assembly {each.assembly}: {each.title}", assembly_page.blocks(each))
 
 

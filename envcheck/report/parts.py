@@ -2,9 +2,10 @@
 
 from __future__ import annotations
 
-from typing import NamedTuple
+from typing import TYPE_CHECKING, NamedTuple
 
-from envcheck.report.ladder import Ladder
+if TYPE_CHECKING:
+    from envcheck.report.ladder import Ladder
 
 
 class Pair(NamedTuple):

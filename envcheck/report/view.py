@@ -7,32 +7,24 @@ input gives the same view, since nothing here asks for the clock or the environm
 from __future__ import annotations
 
 from collections.abc import Mapping
-from typing import NamedTuple
+from typing import TYPE_CHECKING, NamedTuple
 
 from envcheck import __version__
 from envcheck.model.judged import Judged, Line
 from envcheck.model.project import Project
 from envcheck.model.ruleset import RuleSet
-from envcheck.report import (
-    building,
-    cautions,
-    changes,
-    details,
-    header,
-    items,
-    rows,
-    schedules,
-    wording,
-)
+from envcheck.report import building, cautions, changes, header, items, rows, wording
 from envcheck.report.building import Building
 from envcheck.report.cautions import CautionText
 from envcheck.report.changes import ChangeView, TurnView
-from envcheck.report.details import AssemblyView
 from envcheck.report.header import RuleSetView
 from envcheck.report.items import FindingView, Item
 from envcheck.report.parts import Pair
 from envcheck.report.rows import Row
-from envcheck.report.schedules import Schedule
+
+if TYPE_CHECKING:
+    from envcheck.report.details import AssemblyView
+    from envcheck.report.schedules import Schedule
 
 
 class ViewOptions(NamedTuple):
@@ -107,6 +99,7 @@ def build(
     ordered = in_order(judged.lines, rulesets)
     made = rows.build(ordered, project, system, options.details, judged)
     findings = items.findings(judged.findings)
+    assemblies, lists = _details(project, made, judged, system, options)
     return View(
         title=header.title(project),
         lead=header.lead(project, rulesets.values(), judged.lines),
@@ -125,12 +118,8 @@ def build(
         turns=changes.turns(judged.turns),
         assumptions=items.assumptions(judged.lines),
         remarks=items.remarks(judged.remarks),
-        assemblies=(
-            details.build(project, judged.lines, system, options.workings)
-            if options.details
-            else ()
-        ),
-        schedules=schedules.build(project, made, judged, system) if options.details else (),
+        assemblies=assemblies,
+        schedules=lists,
         cautions=cautions.gather(project, rulesets, judged),
         not_judged=header.not_judged(rulesets),
         deferral=wording.DEFERRAL,
@@ -140,6 +129,20 @@ def build(
         colour=options.colour,
         width=options.width,
         bounds=options.bounds,
+    )
+
+
+def _details(
+    project: Project, made: tuple[Row, ...], judged: Judged, system: str, options: ViewOptions
+) -> tuple[tuple[AssemblyView, ...], tuple[Schedule, ...]]:
+    """Assemblies and lists to tick off, loaded only where they are asked for."""
+    if not options.details:
+        return (), ()
+    from envcheck.report import details, schedules
+
+    return (
+        details.build(project, judged.lines, system, options.workings),
+        schedules.build(project, made, judged, system),
     )
 
 
