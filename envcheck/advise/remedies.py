@@ -194,7 +194,22 @@ def _change(
         edits=lever.edits(x),
         verdicts=tuple((line.ruleset, line.element, line.verdict) for line in after),
         breaks=_breaks(bench.project, lever, assembly, after, before),
+        cost=_cost(bench.project, lever, assembly.id, x),
     )
+
+
+def _cost(project: Project, lever: Lever, assembly: str, size: float) -> float | None:
+    """What a size in stock costs beyond the drawn one, over all elements of the assembly."""
+    if lever.kind != "thickness" or lever.material is None:
+        return None
+    sizes = dict(project.options.stock).get(lever.material.id, ())
+    costs = dict(project.options.costs).get(lever.material.id, ())
+    by_size = {round(each, 6): cost for each, cost in zip(sizes, costs, strict=False)}
+    before, after = by_size.get(round(lever.now, 6)), by_size.get(round(size, 6))
+    areas = [x.net_area for x in project.elements.values() if x.assembly == assembly]
+    if before is None or after is None or not all(areas):
+        return None
+    return (after - before) * sum(area for area in areas if area is not None)
 
 
 def _next_in_stock(project: Project, lever: Lever, least: float) -> float | None:

@@ -6,6 +6,12 @@ from envcheck.errors import Kind
 
 KINDS = (
     Kind(
+        "costs-differ",
+        "costs and thicknesses in stock do not pair",
+        "give one cost for each thickness of 'stock', in the same order",
+        "Costs of a material whose number is not that of its thicknesses in stock.",
+    ),
+    Kind(
         "unknown-material",
         "the material {name!r} is not known",
         "{hint}",

@@ -43,7 +43,7 @@ class Change(NamedTuple):
     breaks: tuple[str, ...] = ()
     """What it makes worse, in words."""
     cost: float | None = None
-    """Of all elements that use the assembly, in the project's currency."""
+    """Beyond the drawn size, of all elements that use the assembly, in the project's currency."""
 
 
 class Refused(NamedTuple):

@@ -301,6 +301,9 @@ class Options(NamedTuple):
 
     stock: tuple[tuple[str, tuple[float, ...]], ...] = ()
     """Material id -> thicknesses in stock, m."""
+    costs: tuple[tuple[str, tuple[float, ...]], ...] = ()
+    """Material id -> cost of each of them per m2."""
+    currency: str = ""
 
 
 @dataclass(frozen=True, slots=True)

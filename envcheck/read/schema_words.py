@@ -19,7 +19,7 @@ _SINGULAR = {
     "pieces": "piece", "voids": "air voids", "bridges": "bridge",
     "fasteners": "fasteners",
     "extras": "extra", "zones": "zone", "rule_sets": "rule set", "exceptions": "exception",
-    "answers": "answer", "facts": "fact", "tables": "table", "stock": "stock",
+    "answers": "answer", "facts": "fact", "tables": "table", "stock": "stock", "costs": "costs",
 }  # fmt: skip
 _TYPE_WORDS = {
     "string": "text", "number": "a number", "integer": "a whole number", "array": "a list",

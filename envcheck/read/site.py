@@ -86,18 +86,33 @@ def _temperature(context: Context, entry: Entry, key: str) -> float | None:
 
 
 def read_options(context: Context, entry: Entry) -> Options:
-    """Read stock thicknesses, m, by material."""
-    stock = entry.get("stock", Entry(entry.line))
+    """Read stock thicknesses, m, by material, and what they cost per m2."""
+    stock = _by_material(context, entry, "stock", "length")
+    costs = _by_material(context, entry, "costs", "per_area")
+    sizes = {name: len(each) for name, each in stock}
+    for name, each in costs:
+        if len(each) != sizes.get(name, 0):
+            line = entry["costs"].lines[name]
+            found = f"{len(each)} costs for {sizes.get(name, 0)} thicknesses of {name}"
+            context.add("costs-differ", line, found=found)
+    return Options(stock, costs, entry.get("currency", ""))
+
+
+def _by_material(
+    context: Context, entry: Entry, key: str, quantity: str
+) -> tuple[tuple[str, tuple[float, ...]], ...]:
+    """Lists of quantities by the id of a material."""
+    lists = entry.get(key, Entry(entry.line))
     found = []
-    for name, texts in stock.items():
-        named = Entry(stock.lines[name])
-        named["material"], named.lines["material"] = name, stock.lines[name]
+    for name, texts in lists.items():
+        named = Entry(lists.lines[name])
+        named["material"], named.lines["material"] = name, lists.lines[name]
         context.material(named)
-        sizes = Entry(texts.line)
+        numbered = Entry(texts.line)
         for place, text in enumerate(texts):
-            sizes[str(place)], sizes.lines[str(place)] = text, texts.lines[place]
-        found.append((name, tuple(context.positive(sizes, key, "length") for key in sizes)))
-    return Options(tuple(found))
+            numbered[str(place)], numbered.lines[str(place)] = text, texts.lines[place]
+        found.append((name, tuple(context.positive(numbered, x, quantity) for x in numbered)))
+    return tuple(found)
 
 
 def read_answers(context: Context, entries: list[Entry]) -> tuple[tuple[str, str], ...]:

@@ -76,6 +76,7 @@ def _section(project: Project, each: Advice, system: str) -> Section:
             _table(each, system),
             Paragraph(f"R in {unit}; {numbers.symbol(metric)} in {numbers.unit(metric, system)}."),
         ]
+        blocks += _costs(project, each)
         worse = {text: None for change in each.changes for text in change.breaks}
         if worse:
             blocks.append(Paragraph(f"Beside it: {clean('; '.join(worse))}."))
@@ -124,6 +125,17 @@ def _table(each: Advice, system: str) -> Grid:
     letter = numbers.symbol(metric)
     heads = ("change", "what", "drawn", "needed", "layer R", letter, "reaches")
     return Grid(heads, rows, (2, 3, 4, 5), (1, 6))
+
+
+def _costs(project: Project, each: Advice) -> list[Block]:
+    texts = [
+        f"{name} {numbers.fixed(change.cost, 2)} {project.options.currency}".rstrip()
+        for name, change in zip(names(each), each.changes, strict=True)
+        if change.cost is not None
+    ]
+    if not texts:
+        return []
+    return [Paragraph(clean(f"Cost beyond the drawn size, all its elements: {'; '.join(texts)}."))]
 
 
 def _resistance(value: float | None, system: str) -> str:

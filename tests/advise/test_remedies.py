@@ -114,6 +114,26 @@ def test_nothing_is_advised_where_nothing_is_over() -> None:
     assert advice(PERMIT) == ()
 
 
+def test_a_stock_size_has_its_cost_beyond_the_drawn_one(tmp_path: Path) -> None:
+    """2 in against 1.5 in: 0.50 /ft2 on 1,398 ft2 of E-W3 are 699; on 3,266 ft2 of W1 1,633."""
+    text = REVIEW.read_text("utf-8").replace(
+        "options:\n",
+        "options:\n  costs: {xps: [1.1 /ft2, 1.6 /ft2, 2.1 /ft2, 2.6 /ft2, 3.1 /ft2]}\n",
+    )
+    shutil.copytree(REVIEW.parent / "evidence", tmp_path / "evidence")
+    project = tmp_path / "priced.yaml"
+    project.write_text(text, encoding="utf-8")
+    costs = {
+        (each.assembly, found.basis): found.cost
+        for each in advice(project)
+        for found in each.changes
+        if found.lever == "thickness"
+    }
+    assert costs["W3", "stock"] == pytest.approx(699.0)
+    assert costs["W1", "stock"] == pytest.approx(1633.0)
+    assert costs["W3", "limit"] is None
+
+
 # ------------------------------------------------------------------------------- applied
 
 

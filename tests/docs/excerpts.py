@@ -18,7 +18,7 @@ from envcheck.cli import envcheck as program
 from envcheck.errors import InputError
 from tests.docs.pages import DOCS, PROJECT, ROOT, blocks, write_rule_sets
 
-PAGES = ("hand-check.md", "project-format.md")
+PAGES = ("hand-check.md", "project-format.md", "reports.md")
 BLOCK = re.compile(r"(<!-- printed:? ([^\n]+) -->\n```\n)(.*?)(```)", re.DOTALL)
 
 
