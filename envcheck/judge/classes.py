@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import NamedTuple
 
-from envcheck.model.judged import Choice, Finding
+from envcheck.model.judged import CERTAIN, Choice, Finding
 from envcheck.model.patterns import in_words, matches
 from envcheck.model.project import Assembly, Element
 from envcheck.model.ruleset import ClassTest, RuleSet
@@ -99,6 +99,7 @@ def _finding(element: Element, seen: str, other: str, test: ClassTest, settles: 
         f"by {test.clause} it is {in_words(other)}, and is judged as such (category {other})",
         settles,
         title="The layers do not bear out the class",
+        sure=CERTAIN,
     )
 
 

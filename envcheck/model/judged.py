@@ -108,6 +108,11 @@ class Line(NamedTuple):
         return self.verdict not in SETTLED
 
 
+CERTAIN, LIKELY, LOOK = "certain", "likely", "to be looked at"
+"""How sure a finding is: what the file says contradicts itself or the rule; the usual meaning of
+what was seen; a thing that may well be as it should."""
+
+
 class Finding(NamedTuple):
     """What a cross-check saw."""
 
@@ -126,6 +131,8 @@ class Finding(NamedTuple):
     """The project's answer, where it gives one."""
     title: str = ""
     """What the check looks for, in a few words."""
+    sure: str = ""
+    """``certain``, ``likely`` or ``to be looked at``."""
 
     @property
     def unsettled(self) -> bool:

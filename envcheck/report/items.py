@@ -33,6 +33,7 @@ class FindingView(NamedTuple):
     suggests: str
     settles: str
     answered: str
+    sure: str
 
 
 def summary(judged: Judged) -> str:
@@ -103,6 +104,7 @@ def findings(found: Iterable[Finding]) -> tuple[FindingView, ...]:
             suggests=clean(finding.suggests),
             settles=clean(finding.settles),
             answered=clean(finding.answered),
+            sure=finding.sure,
         )
         for finding in sorted(found, key=lambda f: rank.get(f.severity, len(rank)))
     )

@@ -206,8 +206,9 @@ def _finding(
     names = each.subject.split(", ")
     words = SAID_BY_LINES.get(each.check)
     said = words is not None and all(words in reasons.get(name, "") for name in names)
+    sure = f" ({each.sure})" if each.sure else ""
     lines = (
-        f"suggests: {each.suggests}" if each.suggests else "",
+        f"suggests{sure}: {each.suggests}" if each.suggests else "",
         f"settles it: {each.settles}" if each.settles else "",
         f"answered by the project: {each.answered}" if each.answered else "",
     )

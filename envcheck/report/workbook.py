@@ -15,6 +15,7 @@ from envcheck.model.solved import Step
 from envcheck.report import numbers, wording, worksheet
 from envcheck.report.details import AssemblyView
 from envcheck.report.groups import GroupView, PartView
+from envcheck.report.items import FindingView
 from envcheck.report.parts import Grid, Pair
 from envcheck.report.rows import Row
 from envcheck.report.view import View
@@ -370,7 +371,7 @@ def _notes(view: View) -> Sheet:
     ]
     rows += [(), (Head("Findings"),)]
     rows += [
-        (x.subject, x.sheet, f"{x.severity_text}: {x.seen}", x.suggests, x.settles, x.answered)
+        (x.subject, x.sheet, f"{x.severity_text}: {x.seen}", _suggests(x), x.settles, x.answered)
         for x in view.findings
     ] or [(wording.NOTHING,)]
     rows += [(), (Head("The building"),)]
@@ -382,3 +383,9 @@ def _notes(view: View) -> Sheet:
     rows += [(), (Head("Not judged here"),)]
     rows += [(text,) for text in view.not_judged or (wording.NOTHING,)]
     return Sheet("Notes", tuple(rows), (30, 12, 90, 60, 50, 40))
+
+
+def _suggests(finding: FindingView) -> str:
+    """What a finding suggests, and how sure that is."""
+    sure = f" ({finding.sure})" if finding.sure else ""
+    return f"suggests{sure}: {finding.suggests}" if finding.suggests else ""

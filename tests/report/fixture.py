@@ -446,7 +446,7 @@ JUDGED = Judged(
         Finding("unused-assembly", "N", "W9", "A-509", "no element uses it", "delete it", ""),
         Finding(
             "declared-differs", "E", "W1", "A-501", "the drawing says 0.049, computed 0.0647",
-            "the labels were added up", "the drawing and the report with one value",
+            "the labels were added up", "the drawing and the report with one value", sure="likely",
         ),
         Finding("areas-open", "W", "North", "A-201", "81 ft2 missing", "", "", "soffit, see A-203"),
     ),

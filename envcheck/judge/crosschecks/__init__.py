@@ -1,7 +1,7 @@
 """Cross-checks: the mistakes that submittals make, each found by one function.
 
 A file in this folder with a tuple ``CHECKS`` is found; there is no list to keep. A check says what
-was seen, what it suggests, and what would settle it; it never changes a verdict.
+was seen, what it suggests, how sure that is, and what would settle it; it never changes a figure.
 """
 
 from __future__ import annotations
@@ -46,6 +46,8 @@ class Check(NamedTuple):
     id: str
     title: str
     run: Callable[[Facts], Iterable[Finding]]
+    sure: str
+    """How sure its findings are, where they do not say so themselves."""
 
 
 @cache
@@ -61,7 +63,9 @@ def findings(facts: Facts) -> tuple[Finding, ...]:
     found = [(check, finding) for check in checks() for finding in check.run(facts)]
     return tuple(
         finding._replace(
-            answered=answers.get(f"{finding.check} {finding.subject}", ""), title=check.title
+            answered=answers.get(f"{finding.check} {finding.subject}", ""),
+            title=check.title,
+            sure=finding.sure or check.sure,
         )
         for check, finding in found
     )

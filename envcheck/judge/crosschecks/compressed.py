@@ -7,7 +7,7 @@ from collections.abc import Iterator
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.readings import full_label
 from envcheck.judge.words import length, resistance, system, u_factor
-from envcheck.model.judged import Finding
+from envcheck.model.judged import CERTAIN, Finding
 from envcheck.model.project import Assembly, FramedLayer
 from envcheck.model.solved import Solved
 
@@ -64,4 +64,4 @@ def _in_place(layer: FramedLayer, number: int, solved: Solved | None) -> float |
     return layer.fill.installed_label
 
 
-CHECKS = (Check("batt-compressed", "Insulation thicker than its cavity", batt_compressed),)
+CHECKS = (Check("batt-compressed", "Insulation thicker than its cavity", batt_compressed, CERTAIN),)

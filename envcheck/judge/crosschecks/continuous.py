@@ -7,7 +7,7 @@ from collections.abc import Iterator, Sequence
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.readings import fill_resistance
 from envcheck.judge.words import length, lines_by_assembly, method, resistance, system, u_factor
-from envcheck.model.judged import Finding, Line
+from envcheck.model.judged import CERTAIN, Finding, Line
 from envcheck.model.project import Assembly, FramedLayer
 from envcheck.model.solved import Solved
 
@@ -101,4 +101,6 @@ def _bracket(solved: Solved | None, units: str) -> list[str]:
     return [f"the whole as drawn lies between {ends}"]
 
 
-CHECKS = (Check("continuous-crossed", "Metal crosses continuous insulation", continuous_crossed),)
+CHECKS = (
+    Check("continuous-crossed", "Metal crosses continuous insulation", continuous_crossed, CERTAIN),
+)

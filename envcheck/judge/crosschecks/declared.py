@@ -9,7 +9,7 @@ from envcheck.judge.crosschecks.labels import is_label
 from envcheck.judge.figures import disagreement
 from envcheck.judge.readings import explain
 from envcheck.judge.words import lines_by_assembly, percent
-from envcheck.model.judged import Finding, Line
+from envcheck.model.judged import CERTAIN, LIKELY, Finding, Line
 from envcheck.model.solved import Solved
 
 
@@ -46,9 +46,15 @@ def declared_differs(facts: Facts) -> Iterator[Finding]:
             f"{declared.text} on the drawing, {found.computed} computed ({percent(found.off)})",
             suggests,
             f"the computed value on {sheet or 'the drawing'}, or layers that give the drawn one",
+            sure=CERTAIN if reading is None else LIKELY,
         )
 
 
 CHECKS = (
-    Check("declared-differs", "Value on the drawing is not the computed value", declared_differs),
+    Check(
+        "declared-differs",
+        "Value on the drawing is not the computed value",
+        declared_differs,
+        CERTAIN,
+    ),
 )

@@ -10,7 +10,7 @@ from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.crosschecks.surfaces import surface_of
 from envcheck.judge.readings import plain_resistance
 from envcheck.judge.words import area, system, thermal
-from envcheck.model.judged import Finding, Line
+from envcheck.model.judged import CERTAIN, Finding, Line
 from envcheck.model.project import Assembly, Element, Opening, Surface
 
 
@@ -165,4 +165,6 @@ def _u_factor(facts: Facts, assembly: Assembly, field: Line) -> float | None:
     return None if solved is None else solved.value
 
 
-CHECKS = (Check("drawn-not-entered", "Mark on the drawing without element", drawn_not_entered),)
+CHECKS = (
+    Check("drawn-not-entered", "Mark on the drawing without element", drawn_not_entered, CERTAIN),
+)

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from envcheck.judge.crosschecks import Check, Facts
-from envcheck.model.judged import Finding
+from envcheck.model.judged import CERTAIN, Finding
 from envcheck.model.project import Project
 from envcheck.model.ruleset import Edition
 
@@ -78,6 +78,8 @@ def date_missing(facts: Facts) -> Iterator[Finding]:
 
 
 CHECKS = (
-    Check("permit-date-missing", "Date of the permit application missing", date_missing),
-    Check("edition-superseded", "Edition or amendment outside its dates", edition_superseded),
+    Check("permit-date-missing", "Date of the permit application missing", date_missing, CERTAIN),
+    Check(
+        "edition-superseded", "Edition or amendment outside its dates", edition_superseded, CERTAIN
+    ),
 )

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from envcheck.judge.crosschecks import Check, Facts
-from envcheck.model.judged import Finding
+from envcheck.model.judged import CERTAIN, Finding
 
 
 def without_evidence(facts: Facts) -> Iterator[Finding]:
@@ -45,6 +45,11 @@ def document_missing(facts: Facts) -> Iterator[Finding]:
 
 
 CHECKS = (
-    Check("exception-without-evidence", "Exception claimed without evidence", without_evidence),
-    Check("document-not-found", "Evidence that is not in the folder", document_missing),
+    Check(
+        "exception-without-evidence",
+        "Exception claimed without evidence",
+        without_evidence,
+        CERTAIN,
+    ),
+    Check("document-not-found", "Evidence that is not in the folder", document_missing, CERTAIN),
 )

@@ -7,7 +7,7 @@ from collections.abc import Iterator
 from envcheck.judge.compare import compare, own_term, rounded
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.words import listed, system, trimmed
-from envcheck.model.judged import Finding, Line
+from envcheck.model.judged import CERTAIN, LIKELY, Finding, Line
 from envcheck.model.patterns import in_words
 from envcheck.model.project import Assembly, Element, Window
 from envcheck.units import in_system, label
@@ -125,6 +125,6 @@ def _centre(facts: Facts, name: str) -> float | None:
 
 
 CHECKS = (
-    Check("opaque-as-glazing", "Opaque panel entered as glazing", opaque_as_glazing),
-    Check("centre-of-glass", "Centre of glass for the whole product", centre_of_glass),
+    Check("opaque-as-glazing", "Opaque panel entered as glazing", opaque_as_glazing, LIKELY),
+    Check("centre-of-glass", "Centre of glass for the whole product", centre_of_glass, CERTAIN),
 )

@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING
 
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.words import length, percent, resistance, system
-from envcheck.model.judged import Finding
+from envcheck.model.judged import CERTAIN, LIKELY, Finding
 from envcheck.model.solved import Solved
 
 if TYPE_CHECKING:
@@ -103,7 +103,7 @@ def cut_too_near(facts: Facts) -> Iterator[Finding]:
 
 
 CHECKS = (
-    Check("flank-differs", "Detail shows another assembly", flank_differs),
-    Check("flank-length", "Detail measured the other way", flank_length),
-    Check("cut-too-near", "Cut too near to the junction", cut_too_near),
+    Check("flank-differs", "Detail shows another assembly", flank_differs, LIKELY),
+    Check("flank-length", "Detail measured the other way", flank_length, LIKELY),
+    Check("cut-too-near", "Cut too near to the junction", cut_too_near, CERTAIN),
 )

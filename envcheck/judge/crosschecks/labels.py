@@ -7,7 +7,7 @@ from collections.abc import Iterator
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.figures import disagreement
 from envcheck.judge.words import lines_by_assembly, percent
-from envcheck.model.judged import Finding
+from envcheck.model.judged import LIKELY, Finding
 from envcheck.model.project import Assembly, FramedLayer
 
 WITHIN = 0.02
@@ -56,5 +56,10 @@ def label_as_wall(facts: Facts) -> Iterator[Finding]:
 
 
 CHECKS = (
-    Check("label-as-wall", "Cavity label passed off as the value of the assembly", label_as_wall),
+    Check(
+        "label-as-wall",
+        "Cavity label passed off as the value of the assembly",
+        label_as_wall,
+        LIKELY,
+    ),
 )

@@ -7,7 +7,7 @@ from collections.abc import Iterator
 from envcheck.judge.compare import rounded
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.words import lines_by_assembly, method, tags
-from envcheck.model.judged import Comparison, Finding, Line
+from envcheck.model.judged import CERTAIN, Comparison, Finding, Line
 
 
 def hangs_on_method(facts: Facts) -> Iterator[Finding]:
@@ -82,4 +82,4 @@ def _side(low: Comparison, high: Comparison) -> str:
     return "on both sides of it"
 
 
-CHECKS = (Check("hangs-on-method", "Verdict hangs on the method", hangs_on_method),)
+CHECKS = (Check("hangs-on-method", "Verdict hangs on the method", hangs_on_method, CERTAIN),)

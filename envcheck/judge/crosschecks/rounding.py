@@ -7,7 +7,7 @@ from collections.abc import Iterator
 from envcheck.judge.compare import rounded
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.words import lines_by_assembly, tags
-from envcheck.model.judged import Finding, Line
+from envcheck.model.judged import CERTAIN, Finding, Line
 
 
 def within_by_rounding(facts: Facts) -> Iterator[Finding]:
@@ -43,4 +43,6 @@ def _finding(facts: Facts, assembly: str, lines: list[Line]) -> Finding:
     )
 
 
-CHECKS = (Check("within-by-rounding", "Within the limit by rounding only", within_by_rounding),)
+CHECKS = (
+    Check("within-by-rounding", "Within the limit by rounding only", within_by_rounding, CERTAIN),
+)

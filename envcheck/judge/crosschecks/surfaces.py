@@ -6,7 +6,7 @@ from collections.abc import Iterator
 
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.words import MOST_TAGS, area, listed, system
-from envcheck.model.judged import Closing, Finding
+from envcheck.model.judged import CERTAIN, LOOK, Closing, Finding
 from envcheck.model.project import Element, Project
 
 
@@ -129,8 +129,8 @@ def area_cap_unknown(facts: Facts) -> Iterator[Finding]:
 
 
 CHECKS = (
-    Check("area-cap-unknown", "Area cap that could not be checked", area_cap_unknown),
-    Check("surface-does-not-close", "Areas do not add up to the surface", does_not_close),
-    Check("surface-without-element", "Surface without elements", without_element),
-    Check("element-without-surface", "Element on no surface", without_surface),
+    Check("area-cap-unknown", "Area cap that could not be checked", area_cap_unknown, CERTAIN),
+    Check("surface-does-not-close", "Areas do not add up to the surface", does_not_close, CERTAIN),
+    Check("surface-without-element", "Surface without elements", without_element, CERTAIN),
+    Check("element-without-surface", "Element on no surface", without_surface, LOOK),
 )

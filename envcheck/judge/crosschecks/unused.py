@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from envcheck.judge.crosschecks import Check, Facts
-from envcheck.model.judged import Finding
+from envcheck.model.judged import LIKELY, Finding
 
 
 def assembly_unused(facts: Facts) -> Iterator[Finding]:
@@ -27,4 +27,4 @@ def assembly_unused(facts: Facts) -> Iterator[Finding]:
         )
 
 
-CHECKS = (Check("assembly-unused", "Assembly that nothing uses", assembly_unused),)
+CHECKS = (Check("assembly-unused", "Assembly that nothing uses", assembly_unused, LIKELY),)

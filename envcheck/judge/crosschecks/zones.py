@@ -6,7 +6,7 @@ from collections.abc import Iterator
 
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.zones import contradicted
-from envcheck.model.judged import Finding
+from envcheck.model.judged import LOOK, Finding
 
 
 def zone_differs(facts: Facts) -> Iterator[Finding]:
@@ -28,4 +28,4 @@ def zone_differs(facts: Facts) -> Iterator[Finding]:
             )
 
 
-CHECKS = (Check("zone-differs", "Stated zone and climate criteria disagree", zone_differs),)
+CHECKS = (Check("zone-differs", "Stated zone and climate criteria disagree", zone_differs, LOOK),)
