@@ -256,6 +256,18 @@ KINDS = (
         "A bridge names a detail that is not drawn.",
     ),
     Kind(
+        "unknown-junction",
+        "the kind of junction {name!r} is not known",
+        "{hint}",
+        "The list of junctions names a kind that envcheck does not know.",
+    ),
+    Kind(
+        "unknown-bridge",
+        "no bridge of this file has the title {name!r}",
+        "{hint}",
+        "A junction is said to be counted by a bridge that is not there.",
+    ),
+    Kind(
         "detail-measured",
         "the bridge comes from a detail with other dimensions than its element",
         "state 'measured' alike for both, with the lengths of the flanks and the areas to match",

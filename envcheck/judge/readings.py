@@ -36,6 +36,12 @@ WORDS = {
 """Values beside the one that decides, as the slip that they are here."""
 
 
+STILL_AIR = 0.18
+"""m2 K/W; unventilated, 25 mm or more, heat flowing sideways: ISO 6946:2017, Table 8."""
+U_IP = 5.678263
+"""W/(m2 K) in one Btu/(h ft2 F), by the exact definitions of the units."""
+
+
 class Reading(NamedTuple):
     """A way of counting that gives another value."""
 
@@ -87,6 +93,39 @@ def readings(
             yield Reading(words, value)
     if solved.value and films and 1.0 / solved.value > films:
         yield Reading("surface films were left out", 1.0 / (1.0 / solved.value - films))
+    if solved.value:
+        yield from _by_other_rules(assembly, solved)
+
+
+def _by_other_rules(assembly: Assembly, solved: Solved) -> Iterator[Reading]:
+    """What the metric leaves out counted in, and figures of the other system of units."""
+    value, setting = solved.value or 1.0, solved.setting
+    if setting.metric == "C_factor":
+        added = setting.outside_film + setting.inside_film
+        words = "surface films were added, which a C-factor leaves out"
+        yield Reading(words, 1.0 / (1.0 / value + added))
+        yield Reading(words, 1.0 / (1.0 / value + setting.inside_film))
+    for space, words in ((0.0, ""), (STILL_AIR, " with a space of still air")):
+        cladding = _cladding(assembly, solved)
+        if cladding is not None:
+            what = f"the cladding outside the ventilated space was counted{words}"
+            yield Reading(what, 1.0 / (1.0 / value + cladding + space))
+    for factor in (U_IP, 1.0 / U_IP):
+        yield Reading("the figure is that of the other system of units", value * factor)
+
+
+def _cladding(assembly: Assembly, solved: Solved) -> float | None:
+    """What the layers outside a well-ventilated space would add, films changed, m2 K/W."""
+    spaces = [
+        number
+        for number, layer in enumerate(assembly.layers)
+        if isinstance(layer, AirSpaceLayer) and layer.ventilation == "well"
+    ]
+    film = next((step.value for step in solved.steps if step.symbol == "Ro"), None)
+    if not spaces or film is None:
+        return None
+    outside = [plain_resistance(layer) for layer in assembly.layers[: spaces[-1]]]
+    return sum(value or 0.0 for value in outside) + solved.setting.outside_film - film
 
 
 def _labels(properties: Properties, films: float, units: str) -> Iterator[Reading]:

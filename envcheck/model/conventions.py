@@ -70,6 +70,22 @@ class ClassTest(NamedTuple):
         return reached != self.below
 
 
+class SpaceTest(NamedTuple):
+    """The output that must bear out how a space is conditioned."""
+
+    fact: str
+    """The fact that claims it: ``space_category`` ..."""
+    value: str
+    """... and the word that it claims: ``semiheated``."""
+    measure: str
+    """The fact that bears it out: ``heating_output``, W/m2."""
+    at_least: float | None
+    below: float | None
+    words: str
+    """``at least 3.4 Btu/(h*ft2)``"""
+    clause: str
+
+
 class TableRow(NamedTuple):
     """One row of a coefficient table: cavity factors, effective layers, F-factors, air spaces.
 
@@ -108,6 +124,11 @@ class Conventions(NamedTuple):
     """``integral``, ``mean`` or ``minimum``; with ``tapered_mean_within`` the mean may be used."""
     tapered_mean_within: float | None = None
     """m of variation up to which the mean thickness may be used."""
+    tapered_least: float | None = None
+    """m; least thickness that the code asks for."""
+    penetration_cap: float | None = None
+    """Share of the area that metal may take through continuous insulation, 0..1."""
+    space_tests: tuple[SpaceTest, ...] = ()
     crossed_insulation: str = "zero"
     """Insulation crossed by continuous metal: ``zero``, ``counted`` or ``two_dimensional``."""
     framing_shares: tuple[tuple[str, float, str], ...] = ()

@@ -39,6 +39,8 @@ class Material(NamedTuple):
     """How the conductivity follows from a declared one; None where it is stated as it counts."""
     span: Span | None = None
     """Stated range of the conductivity, W/(m K)."""
+    band: Span | None = None
+    """Conductivities that are usual in its class, W/(m K)."""
 
 
 class Profile(NamedTuple):
@@ -72,6 +74,8 @@ class MaterialLayer(NamedTuple):
     """m"""
     span: Span | None = None
     """Stated range of the thickness, m."""
+    removable: bool = False
+    """It lies on ceiling tiles that can be lifted."""
 
 
 class ResistanceLayer(NamedTuple):
@@ -90,6 +94,11 @@ class ResistanceLayer(NamedTuple):
     evidence: str
     span: Span | None = None
     """Stated range of the resistance, m2 K/W."""
+    value_basis: str = ""
+    """What the resistance holds beside the layer: ``includes_framing``, ``includes_films``,
+    ``includes_air_space``; ``bare`` or empty = nothing."""
+    removable: bool = False
+    """It lies on ceiling tiles that can be lifted."""
 
 
 class ContactLayer(NamedTuple):
@@ -136,6 +145,8 @@ class Fill(NamedTuple):
     air: AirSpaceLayer | None = None
     source: str = ""
     evidence: str = ""
+    value_basis: str = ""
+    """What the stated resistance holds beside the fill; see ``ResistanceLayer``."""
 
 
 class Member(NamedTuple):

@@ -54,6 +54,7 @@ __all__ = [
     "Fill",
     "FramedLayer",
     "Glazing",
+    "Junction",
     "Layer",
     "MasonryLayer",
     "Material",
@@ -223,6 +224,22 @@ class Element(NamedTuple):
     """Value before an alteration."""
 
 
+class Junction(NamedTuple):
+    """A kind of junction that the building has."""
+
+    id: str
+    title: str
+    sheet: str
+    length: float | None
+    """m"""
+    counted_as: str
+    """Title of the bridge that counts it; empty = none does."""
+    reason: str
+    band: tuple[float, float]
+    """Usual psi of its kind, W/(m K)."""
+    line: int
+
+
 class ExceptionClaim(NamedTuple):
     """A clause that somebody claims for an element."""
 
@@ -334,6 +351,8 @@ class Project:
     options: Options
     accepted: tuple[tuple[str, str], ...] = ()
     """Findings that the project answers: (finding id and tag, the answer)."""
+    junctions: tuple[Junction, ...] = ()
+    """Kinds of junctions, counted or not."""
     ranged: bool = False
     """Some value of it is stated with a range."""
     sha256: str = ""

@@ -11,7 +11,14 @@ from datetime import date
 from types import MappingProxyType
 from typing import NamedTuple
 
-from envcheck.model.conventions import ClassTest, Conventions, FilmRow, MethodRule, TableRow
+from envcheck.model.conventions import (
+    ClassTest,
+    Conventions,
+    FilmRow,
+    MethodRule,
+    SpaceTest,
+    TableRow,
+)
 
 __all__ = [
     "Adjustment",
@@ -29,6 +36,7 @@ __all__ = [
     "Note",
     "OtherMetric",
     "RuleSet",
+    "SpaceTest",
     "TableRow",
     "Term",
     "TradeOff",

@@ -19,6 +19,7 @@ from envcheck.read.additions import read_curved, read_inverted, read_voids
 from envcheck.read.context import MATCHES, NAN, Context
 from envcheck.read.ground import read_basement, read_slab, read_suspended
 from envcheck.read.layers import read_layers
+from envcheck.read.materials import class_band
 from envcheck.read.yaml_reader import Entry
 
 _BY_PARTS = ("window", "curtain-wall")
@@ -70,6 +71,7 @@ def read_material(context: Context, name: str, entry: Entry) -> Material:
         combustible=entry.get("combustible", False),
         conversion=conversion,
         span=span,
+        band=class_band(entry["class"]) if "class" in entry else None,
     )
 
 

@@ -67,6 +67,10 @@ def read_fill(context: Context, entry: Entry, where: str, depth: float) -> Fill:
     """Read what fills a cavity of this depth, m: one of material, label, resistance, air space."""
     kind = context.exactly_one(entry, ("material", "label", "resistance", "air_space"), where)
     source, evidence = entry.get("source", ""), context.evidence(entry)
+    basis = entry.get("value_basis", "")
+    if kind not in ("label", "resistance", ""):
+        hint = "it belongs beside 'label' or 'resistance'"
+        context.out_of_place(entry, ("value_basis",), f"a fill by {kind}", hint)
     if kind not in ("label", ""):
         product = ("product_thickness", "label_in_place")
         context.out_of_place(entry, product, f"a fill by {kind}", "it belongs beside 'label'")
@@ -76,7 +80,13 @@ def read_fill(context: Context, entry: Entry, where: str, depth: float) -> Fill:
         return Fill(air=_air_in_cavity(context, entry["air_space"], depth), source=source)
     if kind == "resistance":
         value = context.positive(entry, "resistance", "resistance")
-        return Fill(label=value, installed_label=value, source=source, evidence=evidence)
+        return Fill(
+            label=value,
+            installed_label=value,
+            source=source,
+            evidence=evidence,
+            value_basis=basis,
+        )
     if kind == "label":
         return Fill(
             label=context.positive(entry, "label", "resistance"),
@@ -84,6 +94,7 @@ def read_fill(context: Context, entry: Entry, where: str, depth: float) -> Fill:
             installed_label=context.optional(entry, "label_in_place", "resistance"),
             source=source,
             evidence=evidence,
+            value_basis=basis,
         )
     return Fill()
 

@@ -35,7 +35,9 @@ def _material(context: Context, entry: Entry) -> Layer:
     material = context.material(entry)
     thickness, span = context.ranged(entry, "thickness", "length")
     title = entry.get("title") or material.title
-    return MaterialLayer("material", title, entry.line, material, thickness, span)
+    return MaterialLayer(
+        "material", title, entry.line, material, thickness, span, entry.get("removable", False)
+    )
 
 
 def _resistance(context: Context, entry: Entry) -> Layer:
@@ -54,6 +56,8 @@ def _resistance(context: Context, entry: Entry) -> Layer:
         entry.get("source", ""),
         context.evidence(entry),
         span,
+        entry.get("value_basis", ""),
+        entry.get("removable", False),
     )
 
 

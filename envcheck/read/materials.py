@@ -56,7 +56,15 @@ def library_material(name: str) -> Material | None:
         source=row["source"],
         evidence="table",
         combustible=row["combustible"] == "true",
+        band=(float(row["low"]), float(row["high"])),
     )
+
+
+@lru_cache(maxsize=32)
+def class_band(name: str) -> tuple[float, float] | None:
+    """Usual conductivities of a class of materials, W/(m K); None for a class without."""
+    row = rows("material_classes").get(name)
+    return None if row is None else (float(row["low"]), float(row["high"]))
 
 
 def profile_ids() -> tuple[str, ...]:

@@ -9,7 +9,14 @@ from typing import Any, TypeVar
 
 from envcheck.errors import InputError
 from envcheck.model.names import Names
-from envcheck.model.project import Assembly, Element, Fact, Project, RuleSetChoice
+from envcheck.model.project import (
+    Assembly,
+    Element,
+    Fact,
+    Junction,
+    Project,
+    RuleSetChoice,
+)
 from envcheck.read.assemblies import read_assembly, read_material
 from envcheck.read.context import Context
 from envcheck.read.elements import (
@@ -26,7 +33,7 @@ from envcheck.read.site import read_answers, read_options, read_site
 from envcheck.read.yaml_reader import Entry, read_yaml
 
 _Thing = TypeVar("_Thing")
-_NAMED = {"materials", "assemblies", "details", "surfaces", "elements"}
+_NAMED = {"materials", "assemblies", "details", "surfaces", "elements", "junctions"}
 
 
 def read_project(path: str, names: Names) -> Project:
@@ -171,6 +178,7 @@ def _build(context: Context, sections: _Sections, digest: str) -> Project:
             read_exception(context, entry, entries) for _, entry in sections.items("exceptions")
         ),
         options=read_options(context, sections.whole("options")),
+        junctions=_junctions(context, sections, built, elements),
         accepted=read_answers(context, [entry for _, entry in sections.items("answers")]),
         ranged=context.ranges,
         sha256=digest,
@@ -184,6 +192,21 @@ def _read_details(context: Context, sections: _Sections, assemblies: dict[str, A
 
     context.detail_ids = frozenset(sections.names("details"))
     context.details = sections.each("details", lambda n, e: read_detail(context, n, e, assemblies))
+
+
+def _junctions(
+    context: Context,
+    sections: _Sections,
+    assemblies: dict[str, Assembly],
+    elements: dict[str, Element],
+) -> tuple[Junction, ...]:
+    if "junctions" not in sections.data:
+        return ()
+    from envcheck.read.junctions import bridge_titles, read_junction
+
+    titles = bridge_titles(assemblies.values(), elements.values())
+    found = sections.each("junctions", lambda n, e: read_junction(context, n, e, titles))
+    return tuple(found.values())
 
 
 def _check_measured(

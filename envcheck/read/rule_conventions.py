@@ -8,7 +8,7 @@ from typing import Any, NamedTuple
 from envcheck.errors import Problem, did_you_mean, one_of, problem
 from envcheck.model.names import Names
 from envcheck.model.patterns import fits_any
-from envcheck.model.ruleset import ClassTest, Conventions, FilmRow, MethodRule, TableRow
+from envcheck.model.ruleset import ClassTest, Conventions, FilmRow, MethodRule, SpaceTest, TableRow
 from envcheck.read.coefficient_tables import built_in, film_sets, own_table
 from envcheck.read.rule_documents import Document
 
@@ -17,6 +17,7 @@ NOT_STATED = "not stated"
 WITHOUT_DEFAULT = (
     "methods", "framing_shares", "class_tests", "evidence", "measured", "cavity_factors",
     "effective_layers", "f_factors", "weights", "corrections_from", "wind_speed",
+    "penetration_cap", "space_tests",
 )  # fmt: skip
 """Conventions that envcheck has no value of its own for."""
 WEIGHTS = ("bre_465", "table")
@@ -34,7 +35,7 @@ KEYS = (
     "films", "air_spaces", "methods", "cladding", "fasteners", "tapered", "crossed_insulation",
     "framing_shares", "class_tests", "evidence", "measured", "cavity_factors",
     "effective_layers", "f_factors", "weights", "air_voids", "inverted_roofs", "corrections_from",
-    "wind_speed",
+    "wind_speed", "penetration_cap", "space_tests",
 )  # fmt: skip
 
 
@@ -69,6 +70,9 @@ def read_conventions(source: Source, problems: list[Problem]) -> Conventions:
         tapered_mean_within=_quantity(
             source, tapered, "tapered", "mean_within", "length", problems
         ),
+        tapered_least=_quantity(source, tapered, "tapered", "least", "length", problems),
+        penetration_cap=_penetration_cap(source, problems),
+        space_tests=_space_tests(source, problems),
         crossed_insulation=stated.get("crossed_insulation", "zero"),
         framing_shares=_shares(source, problems),
         tables=tables,
@@ -114,6 +118,29 @@ def _methods(source: Source, problems: list[Problem]) -> tuple[MethodRule, ...]:
         clause, refused = rule.get("clause", ""), tuple(rule.get("refused", ()))
         rules.append(MethodRule(rule["category"], rule["method"], clause, refused, weight))
     return tuple(rules)
+
+
+def _penetration_cap(source: Source, problems: list[Problem]) -> float | None:
+    """Share of the area that metal may take through continuous insulation, 0..1."""
+    text = source.stated.get("penetration_cap")
+    return None if text is None else _parse(source, text, "share", ("penetration_cap",), problems)
+
+
+def _space_tests(source: Source, problems: list[Problem]) -> tuple[SpaceTest, ...]:
+    """Outputs that must bear out how a space is conditioned; a bound may be left out."""
+    tests = []
+    for i, test in enumerate(source.stated.get("space_tests") or ()):
+        ends = [
+            _parse(source, test[key], "power_density", ("space_tests", i, key), problems)
+            if key in test
+            else None
+            for key in ("at_least", "below")
+        ]
+        bounds = [(word, test[word]) for word in ("at_least", "below") if word in test]
+        words = " and ".join(f"{word.replace('_', ' ')} {text}" for word, text in bounds)
+        names = (test["fact"], test["value"], test["measure"])
+        tests.append(SpaceTest(*names, ends[0], ends[1], words, test.get("clause", "")))
+    return tuple(tests)
 
 
 def _class_tests(source: Source, problems: list[Problem]) -> tuple[ClassTest, ...]:

@@ -194,6 +194,12 @@ def _conventions(ruleset: RuleSet, system: str) -> Iterable[Convention]:
         elif test.measure in ("heat_capacity", "weight"):
             counted += f", counted {wording.plain(test.counted)}"
         yield Convention("class test", clean(counted), clean(test.clause))
+    for space in conv.space_tests:
+        counted = f"{wording.plain(space.fact)} {space.value}: {wording.plain(space.measure)} "
+        yield Convention("space test", clean(counted + space.words), clean(space.clause))
+    if conv.penetration_cap is not None:
+        cap = f"continuous up to {conv.penetration_cap * 100:.3g} % of metal through it"
+        yield _said(conv, "pierced insulation", cap, "penetration_cap")
     evidence: dict[tuple[str, ...], list[str]] = {}
     for category, kinds in conv.accepted_evidence.items():
         evidence.setdefault(kinds, []).append(in_words(category))
@@ -252,6 +258,8 @@ def _methods(conv: Conventions) -> Iterable[tuple[str, str]]:
 
 def _tapered(conv: Conventions, system: str) -> str:
     text = wording.TAPERED.get(conv.tapered, conv.tapered)
+    if conv.tapered_least is not None:
+        text += f"; no thinner than {numbers.length(conv.tapered_least, system)}"
     if conv.tapered_mean_within is None:
         return text
     return f"{text}; the mean where it varies by no more than " + numbers.length(

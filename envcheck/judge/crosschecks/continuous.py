@@ -27,12 +27,13 @@ def continuous_crossed(facts: Facts) -> Iterator[Finding]:
     units = system(facts.project, facts.rulesets)
     for assembly in facts.project.assemblies.values():
         for layer in assembly.layers:
-            if isinstance(layer, FramedLayer) and layer.crosses_insulation and _metal(layer):
+            if isinstance(layer, FramedLayer) and layer.crosses_insulation and is_metal(layer):
                 resting = lines.get(assembly.id, ())
                 yield _finding(facts, assembly, layer, resting, units)
 
 
-def _metal(layer: FramedLayer) -> bool:
+def is_metal(layer: FramedLayer) -> bool:
+    """Whether the members conduct like metal."""
     return layer.member.profile is not None or layer.member.material.conductivity > METAL
 
 

@@ -1,0 +1,107 @@
+"""Conductivities outside the band of their class: mostly a unit or a decimal that slipped."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from typing import NamedTuple
+
+from envcheck.judge.crosschecks import Check, Facts
+from envcheck.judge.words import length, resistance, system, trimmed
+from envcheck.model.judged import LIKELY, LOOK, Finding
+from envcheck.model.layers import FramedLayer, Layer, ResistanceLayer, Span
+from envcheck.units import in_system, label
+
+INSULATION: Span = (0.015, 0.065)
+"""W/(m K); the band of class insulation in ``data/material_classes.csv``, held by a test."""
+FAR = 2.0
+"""Times beyond the band from which nobody makes such a product."""
+SLIPS = (
+    (5.678, "a resistance in the other system of units"),
+    (12.0, "inches taken for feet in a conductivity"),
+    (6.933, "Btu in/(h ft2 F) taken for W/(m K)"),
+    (1.7307, "Btu/(h ft F) taken for W/(m K)"),
+    (10.0, "a slipped decimal"),
+)
+"""Factors of slips (exact definitions of the units, rounded), the likeliest first."""
+
+
+class Doubt(NamedTuple):
+    """A conductivity that is outside its band."""
+
+    subject: str
+    sheet: str
+    seen: str
+    conductivity: float
+    """W/(m K)"""
+    band: Span
+
+
+def implausible(facts: Facts) -> Iterator[Finding]:
+    """Own materials, and stated resistances over their thickness, against the band of a class."""
+    units = system(facts.project, facts.rulesets)
+    for doubt in (*_materials(facts, units), *_layers(facts, units)):
+        low, high = doubt.band
+        if low * (1 - 1e-9) <= doubt.conductivity <= high * (1 + 1e-9):
+            continue
+        far = not low / FAR <= doubt.conductivity <= high * FAR
+        yield Finding(
+            "conductivity-implausible",
+            "E" if far else "N",
+            doubt.subject,
+            doubt.sheet,
+            f"{doubt.seen}; {_shown(low, units)} to {_shown(high, units)} is usual in its class",
+            _slip(doubt),
+            "the value with its unit on the data sheet, or the class of the material",
+            sure=LIKELY if far else LOOK,
+        )
+
+
+def _shown(conductivity: float, units: str) -> str:
+    value = trimmed(in_system(conductivity, "conductivity", units), 4)
+    return f"{value} {label('conductivity', units)}"
+
+
+def _slip(doubt: Doubt) -> str:
+    low, high = doubt.band
+    for factor, words in SLIPS:
+        for value in (doubt.conductivity * factor, doubt.conductivity / factor):
+            if low <= value <= high:
+                return f"it looks like {words}"
+    return "value or class is wrong"
+
+
+def _materials(facts: Facts, units: str) -> Iterator[Doubt]:
+    for each in facts.project.materials.values():
+        if each.band is not None:
+            seen = f"{each.title} conducts {_shown(each.conductivity, units)}"
+            yield Doubt(each.id, "", seen, each.conductivity, each.band)
+
+
+def _layers(facts: Facts, units: str) -> Iterator[Doubt]:
+    for assembly in facts.project.assemblies.values():
+        for layer in assembly.layers:
+            stated = _stated(layer)
+            if stated is None:
+                continue
+            value, depth, band = stated
+            k = depth / value
+            seen = f"{layer.title}: {resistance(value, units)} in {length(depth, units)}"
+            seen += f" would conduct {_shown(k, units)}"
+            yield Doubt(assembly.id, assembly.sheet, seen, k, band)
+
+
+def _stated(layer: Layer) -> tuple[float, float, Span] | None:
+    """A stated resistance, m2 K/W, the thickness that it is of, m, and the band of its class."""
+    if isinstance(layer, ResistanceLayer):
+        material = layer.material
+        band = material.band if material is not None else None
+        bare = layer.value_basis in ("", "bare")
+        if layer.resistance > 0 and layer.thickness > 0 and band is not None and bare:
+            return layer.resistance, layer.thickness, band
+    if isinstance(layer, FramedLayer) and layer.fill.label is not None:
+        depth = layer.fill.product_thickness or layer.thickness
+        return layer.fill.label, depth, INSULATION
+    return None
+
+
+CHECKS = (Check("conductivity-implausible", "Conductivity outside its class", implausible, LIKELY),)
