@@ -23,6 +23,7 @@ TABLES = {
     "films.csv": ("resistance",),
     "air_spaces.csv": ("thickness", "emittance", "resistance"),
     "material_classes.csv": ("low", "high"),
+    "junctions.csv": ("high",),
     "gases.csv": ("density", "viscosity", "conductivity", "specific_heat"),
     "conversion_temperature.csv": ("conductivity", "per_kelvin"),
     "conversion_moisture.csv": ("per_share", "most"),
@@ -90,6 +91,12 @@ def test_material(row: Row) -> None:
     assert 100 <= float(row["specific_heat"]) <= 2500
     assert row["combustible"] in ("true", "false")
     assert row["title"]
+
+
+def test_junctions_are_apart_and_their_bands_in_order() -> None:
+    assert len(by_id("junctions.csv")) == len(rows("junctions.csv"))
+    for row in rows("junctions.csv"):
+        assert -0.5 < float(row["low"]) < float(row["high"]) < 2 and row["title"], row
 
 
 def test_every_class_has_a_material() -> None:

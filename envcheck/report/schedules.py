@@ -38,6 +38,7 @@ def build(
         _openings(project, deciding),
         _ground(project, deciding, system),
         _bridges(project, system),
+        _not_counted(project, system),
         _areas(project, deciding, system),
     )
     return tuple(each for each in made if each.grid.rows)
@@ -205,6 +206,22 @@ def _bridges(project: Project, system: str) -> Schedule:
     ]
     heads = ("of", "sheet", "bridge", "value", "amount", "source")
     return Schedule("Linear and point bridges that count", Grid(heads, tuple(table), (3,), (5, 2)))
+
+
+def _not_counted(project: Project, system: str) -> Schedule:
+    """Kinds of junctions that the building has and no bridge counts."""
+    table = tuple(
+        (
+            clean(junction.title),
+            clean(junction.sheet),
+            _run(junction.length, system) if junction.length is not None else "not stated",
+            clean(junction.reason) or "none is stated",
+        )
+        for junction in project.junctions
+        if not junction.counted_as
+    )
+    heads = ("junction", "sheet", "length", "reason")
+    return Schedule("Bridges present and not counted", Grid(heads, table, (2,), (3, 0)))
 
 
 def _bridge(owner: str, sheet: str, bridge: Bridge, system: str) -> tuple[str, ...]:

@@ -45,7 +45,7 @@ def _heat(junction: Junction, units: str) -> str:
     if junction.length is None:
         return ""
     most = in_system(junction.band[1] * junction.length, "point_transmittance", units)
-    return f", up to {most:.3g} {label('conductance', units)}"
+    return f", up to {most:.3g} {label('point_transmittance', units)}"
 
 
 def _psi(value: float, units: str) -> str:

@@ -14,6 +14,7 @@ from envcheck.model.project import Assembly
 
 FRAMED = ("wall.steel_frame", "wall.wood_frame", "floor.framed", "floor.steel_joist", "roof.rafter")
 """Classes with insulation between members."""
+WOOD = "wall.wood_frame"
 FOR_WOOD = ("parallel_path", "series")
 """Methods that overlook the heat that runs sideways into metal."""
 
@@ -62,7 +63,7 @@ def _holds_framing(assembly: Assembly) -> bool:
 
 
 def metal_as_wood(facts: Facts) -> Iterator[Finding]:
-    """Metal members whose value comes from plain parallel paths."""
+    """Metal members in the class of wood, or whose value comes from plain parallel paths."""
     for name, lines in lines_by_assembly(facts.lines, facts.project).items():
         assembly = facts.project.assemblies[name]
         metal = [
@@ -70,32 +71,35 @@ def metal_as_wood(facts: Facts) -> Iterator[Finding]:
             for layer in assembly.layers
             if isinstance(layer, FramedLayer) and not layer.crosses_insulation and is_metal(layer)
         ]
-        asked = [x for x in lines if x.solved is not None and x.solved.setting.method in FOR_WOOD]
+        asked = [line for line in lines if line.category == WOOD or _for_wood(line)]
         if metal and asked:
             yield _metal(facts, assembly, metal[0], asked)
 
 
+def _for_wood(line: Line) -> bool:
+    return line.solved is not None and line.solved.setting.method in FOR_WOOD
+
+
 def _metal(facts: Facts, assembly: Assembly, layer: FramedLayer, lines: Sequence[Line]) -> Finding:
     line, solved = lines[0], lines[0].solved
-    assert solved is not None, "only solved lines are looked at"
-    suggests = [f"{method(solved.setting.method)} miss the heat that metal draws from the sides"]
-    if solved.low is not None and solved.high is not None:
+    seen = f"metal members ({layer.title}) entered as {in_words(line.category)}"
+    if solved is not None and _for_wood(line):
+        seen += f", counted by {method(solved.setting.method)} ({solved.setting.method_from})"
+    suggests = ["parallel paths, which serve wood, miss the heat that metal draws from the sides"]
+    if solved is not None and solved.low is not None and solved.high is not None:
         units = system(facts.project, facts.rulesets)
         ends = f"{u_factor(solved.low, units)} and {u_factor(solved.high, units)}"
         suggests.append(f"the drawn pieces lie between {ends}")
-    if line.low is not None and line.high is not None and line.low.within != line.high.within:
-        suggests.append("the limit lies between them")
-    clause = solved.setting.method_from or "no clause"
+        if line.low is not None and line.high is not None and line.low.within != line.high.within:
+            suggests.append("the limit lies between them")
     return Finding(
         "metal-as-wood",
         "E",
         assembly.id,
         assembly.sheet,
-        f"metal members ({layer.title}) counted by {method(solved.setting.method)} ({clause}), as "
-        f"{in_words(line.category)}",
+        seen,
         "; ".join(suggests),
         "the class of a metal frame with the method that the code has for it, a table or a test",
-        sure=CERTAIN if line.category != "wall.steel_frame" else LIKELY,
     )
 
 

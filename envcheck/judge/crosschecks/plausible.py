@@ -43,16 +43,16 @@ def implausible(facts: Facts) -> Iterator[Finding]:
         low, high = doubt.band
         if low * (1 - 1e-9) <= doubt.conductivity <= high * (1 + 1e-9):
             continue
-        far = not low / FAR <= doubt.conductivity <= high * FAR
+        too_good, too_poor = doubt.conductivity < low / FAR, doubt.conductivity > high * FAR
         yield Finding(
             "conductivity-implausible",
-            "E" if far else "N",
+            "E" if too_good else "W" if too_poor else "N",
             doubt.subject,
             doubt.sheet,
             f"{doubt.seen}; {_shown(low, units)} to {_shown(high, units)} is usual in its class",
             _slip(doubt),
             "the value with its unit on the data sheet, or the class of the material",
-            sure=LIKELY if far else LOOK,
+            sure=LIKELY if too_good or too_poor else LOOK,
         )
 
 
@@ -99,8 +99,10 @@ def _stated(layer: Layer) -> tuple[float, float, Span] | None:
         if layer.resistance > 0 and layer.thickness > 0 and band is not None and bare:
             return layer.resistance, layer.thickness, band
     if isinstance(layer, FramedLayer) and layer.fill.label is not None:
-        depth = layer.fill.product_thickness or layer.thickness
-        return layer.fill.label, depth, INSULATION
+        fill = layer.fill
+        as_filled = fill.installed_label == fill.label and fill.product_thickness is None
+        if not as_filled:  # a resistance stated for the whole cavity may be that of air
+            return fill.label or 0.0, fill.product_thickness or layer.thickness, INSULATION
     return None
 
 

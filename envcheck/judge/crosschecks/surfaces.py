@@ -73,6 +73,8 @@ def without_element(facts: Facts) -> Iterator[Finding]:
         )
 
 
+MOST_OF_IT = 2
+"""Kinds of surfaces from which on a whole building seems to be described."""
 KINDS = {"roof": "roof", "floor": "floor", "slab": "floor"}
 """First word of a category -> kind of the surface it lies in; any other lies in a wall."""
 
@@ -104,6 +106,30 @@ def without_surface(facts: Facts) -> Iterator[Finding]:
         )
 
 
+PARTS = {"wall": ("wall.",), "roof": ("roof.",), "floor or slab": ("floor.", "slab.")}
+"""Parts that every building has -> starts of their categories."""
+
+
+def part_missing(facts: Facts) -> Iterator[Finding]:
+    """A part of the envelope without an element, where most of a new building is drawn."""
+    project = facts.project
+    kinds = {surface.kind for surface in project.surfaces.values()}
+    if project.scope != "new" or len(kinds) < MOST_OF_IT:
+        return
+    categories = [element.category for element in project.elements.values()]
+    for part, starts in PARTS.items():
+        if not any(category.startswith(starts) for category in categories):
+            yield Finding(
+                "part-missing",
+                "N",
+                part,
+                "",
+                f"surfaces of kind {listed(sorted(kinds))} are drawn, no element is a {part}",
+                "that part of the envelope was left out, or the project is a part of a building",
+                "its elements, or a word in the title that says what is submitted",
+            )
+
+
 RATIO_OF = {"window_wall_ratio": "windows to walls", "skylight_roof_ratio": "skylights to roofs"}
 
 
@@ -132,5 +158,6 @@ CHECKS = (
     Check("area-cap-unknown", "Area cap that could not be checked", area_cap_unknown, CERTAIN),
     Check("surface-does-not-close", "Areas do not add up to the surface", does_not_close, CERTAIN),
     Check("surface-without-element", "Surface without elements", without_element, CERTAIN),
+    Check("part-missing", "Part of the envelope missing", part_missing, LOOK),
     Check("element-without-surface", "Element on no surface", without_surface, LOOK),
 )

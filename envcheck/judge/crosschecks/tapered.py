@@ -10,7 +10,8 @@ from envcheck.judge.words import length, lines_by_assembly, system
 from envcheck.model.judged import CERTAIN, LIKELY, Finding
 from envcheck.model.layers import MaterialLayer, ResistanceLayer, TaperedLayer
 
-NAMED = re.compile(r"\b(tapered|taper|average|avg|mean thickness)\b", re.I)
+TAPER = re.compile(r"\btaper(ed)?\b", re.I)
+MEAN = re.compile(r"\b(average|avg|mean)\b", re.I)
 
 
 def taper_as_plain(facts: Facts) -> Iterator[Finding]:
@@ -22,12 +23,14 @@ def taper_as_plain(facts: Facts) -> Iterator[Finding]:
         for layer in assembly.layers:
             if not isinstance(layer, MaterialLayer | ResistanceLayer):
                 continue
-            if not NAMED.search(layer.title):
+            material, mean = layer.material, bool(MEAN.search(layer.title))
+            insulating = material is None or material.material_class == "insulation"
+            if not insulating or not (mean or TAPER.search(layer.title)):
                 continue
             where = conventions.where.get("tapered", "")
             yield Finding(
                 "taper-as-plain",
-                "N" if permitted else "E",
+                "N" if permitted else "E" if mean else "W",
                 name,
                 assembly.sheet,
                 f"{layer.title!r} is entered as a layer of one thickness",
