@@ -68,7 +68,7 @@ def printed(folder: Path, name: str, expected: dict[str, Any]) -> str:
     at = next((number for number, line in enumerate(lines) if words in line), None)
     if at is None or "finding" not in expected:
         return lines[at] if at is not None else ""
-    return f"{lines[at]} {lines[at + 1]}"
+    return f"{lines[at]}; {lines[at + 1]}"
 
 
 def caught_by(expected: dict[str, Any]) -> str:
