@@ -44,6 +44,7 @@ if TYPE_CHECKING:
     import pandas
 
     from envcheck.model.advised import Advice, Change
+    from envcheck.model.compared import Compared
     from envcheck.model.details import Extras, SolvedDetail
     from envcheck.model.solved import Setting
 
@@ -278,6 +279,34 @@ def remedies(run: Run) -> tuple[Advice, ...]:
     metrics = {name: category.metric for name, category in categories().items()}
     bench = Bench(run.project, run.rulesets, run.properties, metrics)
     return advise(bench, run.judged.lines)
+
+
+def compared(old: Run, new: Run) -> Compared:
+    """Hold two revisions of a project, or two projects, against each other."""
+    from envcheck.advise.compare import compare
+    from envcheck.advise.revisions import Revision
+
+    return compare(
+        Revision(old.project, old.rulesets, old.judged),
+        Revision(new.project, new.rulesets, new.judged),
+    )
+
+
+def run_both(old: str, new: str, folders: Sequence[str] = ()) -> tuple[Run, Run]:
+    """Check two project files, each by its own rule sets.
+
+    Errors: InputError with every problem of both, each with its own file.
+    """
+    runs: list[Run] = []
+    problems: list[Problem] = []
+    for path in (old, new):
+        try:
+            runs.append(run(path, folders))
+        except InputError as error:
+            problems += error.problems
+    if problems:
+        raise InputError(dict.fromkeys(problems))
+    return runs[0], runs[1]
 
 
 def applied(text: str, changes: Sequence[Change]) -> str:

@@ -12,6 +12,7 @@ COMMANDS = {
     "check": ("envcheck.cli.check:check", "Hold a project against its limit tables."),
     "explain": ("envcheck.cli.explain:explain", "Show the worksheet of one element or assembly."),
     "remedy": ("envcheck.cli.remedy:remedy", "Say what would bring lines within their limits."),
+    "compare": ("envcheck.cli.compare:compare", "Say what changed between two revisions."),
     "new": ("envcheck.cli.new:new", "Write a commented project to start from."),
     "schema": ("envcheck.cli.schema:schema", "Print the schema of a file format."),
     "materials": ("envcheck.cli.materials:materials", "Search the materials that come along."),

@@ -315,6 +315,18 @@ class Bridge(NamedTuple):
     drawn: DrawnPoint | None = None
     """Of a point bridge; its ``value`` is then NaN where no chi is stated."""
 
+    @property
+    def value_quantity(self) -> str:
+        """Quantity of psi or chi."""
+        return "linear_transmittance" if self.kind == "line" else "point_transmittance"
+
+    @property
+    def amount_quantity(self) -> str:
+        """Quantity of the amount; a count has none."""
+        if self.per_area:
+            return "per_length" if self.kind == "line" else "per_area"
+        return "run" if self.kind == "line" else ""
+
 
 Layer = (
     MaterialLayer

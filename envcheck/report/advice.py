@@ -56,7 +56,24 @@ def build(
         f"{header.title(project)}: remedies",
         (Section("", (lead,)), *sections, Section("", (Paragraph(wording.DEFERRAL),))),
     )
-    return Answer(page, {"units": "SI", "advice": [_data(each) for each in advice]})
+    data: dict[str, object] = {"units": "SI", "advice": [_data(each) for each in advice]}
+    return Answer(page, data, _flat(advice))
+
+
+def _flat(advice: Sequence[Advice]) -> Grid:
+    """A row for each change, numbers SI."""
+    heads = ("change", "assembly", "part", "lever", "quantity", "before [SI]", "after [SI]",
+             "value after [SI]", "reaches", "beside it")  # fmt: skip
+    return Grid(
+        heads,
+        tuple(
+            (name, each.assembly, change.what, change.lever, change.quantity,
+             repr(change.before), repr(change.after), repr(change.value), change.basis,
+             "; ".join(change.breaks))
+            for each in advice
+            for name, change in zip(names(each), each.changes, strict=True)
+        ),
+    )  # fmt: skip
 
 
 def names(advice: Advice) -> tuple[str, ...]:

@@ -4,11 +4,13 @@ from __future__ import annotations
 
 from typing import NamedTuple
 
-from envcheck.report.parts import Page
+from envcheck.report.parts import Grid, Page
 
 
 class Answer(NamedTuple):
-    """A page and its data; formats lay out the one or write the other."""
+    """A page, its data and one table of it; a format lays out one of them."""
 
     page: Page
     data: dict[str, object]
+    table: Grid
+    """For spreadsheets: one meaning per column."""

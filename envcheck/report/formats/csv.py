@@ -4,8 +4,10 @@ from __future__ import annotations
 
 import csv
 import io
+import re
 
 from envcheck import units
+from envcheck.report.answer import Answer
 from envcheck.report.inert import for_csv
 from envcheck.report.rows import Figure, Row
 from envcheck.report.view import View
@@ -23,6 +25,7 @@ _BY_UNIT = {
     for letters, quantity in _VALUES
     for system in ("SI", "IP")
 }
+NUMBER = re.compile(r"[+-]?\d+(\.\d+)?")
 _NUMBER = "SHGC or VT [-]"
 VALUE_HEADS = (*_BY_UNIT.values(), _NUMBER)
 AMOUNTS = {
@@ -82,6 +85,19 @@ def render(view: View) -> str:
     writer.writeheader()
     writer.writerows(map(_cells, view.rows))
     return buffer.getvalue()
+
+
+def answer(made: Answer, width: int) -> str:
+    """Write the table of another command; text is guarded, a number stays one."""
+    buffer = io.StringIO()
+    writer = csv.writer(buffer, lineterminator="\n")
+    writer.writerow(made.table.heads)
+    writer.writerows(tuple(map(_guarded, row)) for row in made.table.rows)
+    return buffer.getvalue()
+
+
+def _guarded(cell: str) -> str:
+    return cell if NUMBER.fullmatch(cell) else for_csv(cell)
 
 
 def _cells(row: Row) -> dict[str, str]:
