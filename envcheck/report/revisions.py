@@ -12,11 +12,11 @@ from envcheck.model.ruleset import RuleSet
 from envcheck.report import numbers, rows, said, wording
 from envcheck.report.answer import Answer
 from envcheck.report.by_line import grouped, place
-from envcheck.report.revisions_data import data, table
 from envcheck.report.differences import KINDS, NONE, Words
 from envcheck.report.header import title
 from envcheck.report.inert import clean
 from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, Paragraph, Section
+from envcheck.report.revisions_data import data, table
 from envcheck.report.view import ViewOptions, system_for
 
 UNTOLD = "nothing in the two project files tells it: the mean or sum that it stands in changed"
