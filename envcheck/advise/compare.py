@@ -80,25 +80,37 @@ def _renamed(kind: str, names: Mapping[str, str]) -> list[Difference]:
 def _paired(
     old: Iterable[Line], new: Iterable[Line], pairs: Mapping[str, str]
 ) -> tuple[Pairs, list[Line], list[Line]]:
-    """Lines of both by rule set, element and metric; then a lone other metric of an element."""
-    waiting = {(x.ruleset, x.element, x.metric): x for x in new}
+    """Lines of both by rule set, element, metric and scope; then a lone other line of an element.
+
+    One element may have several lines on one metric: its own, and that of a mean.
+    """
+    waiting: dict[tuple[str, ...], list[Line]] = {}
+    for line in new:
+        waiting.setdefault(_key(line, line.ruleset), []).append(line)
     together, left = [], []
     for line in old:
-        name = pairs.get(line.ruleset, line.ruleset)
-        twin = waiting.pop((name, line.element, line.metric), None)
-        if twin is None:
-            left.append(line)
+        twins = waiting.get(_key(line, pairs.get(line.ruleset, line.ruleset)))
+        if twins:
+            together.append((line, twins.pop(0)))
         else:
-            together.append((line, twin))
+            left.append(line)
+    added = [line for lines in waiting.values() for line in lines]
     dropped = []
     for line in left:
         name = pairs.get(line.ruleset, line.ruleset)
-        others = [key for key in waiting if key[:2] == (name, line.element)]
-        if len(others) == 1 and sum(x.element == line.element for x in left) == 1:
-            together.append((line, waiting.pop(others[0])))
+        others = [x for x in added if (x.ruleset, x.element) == (name, line.element)]
+        mine = [x for x in left if (x.ruleset, x.element) == (line.ruleset, line.element)]
+        if len(others) == len(mine) == 1:
+            together.append((line, others[0]))
+            added.remove(others[0])
         else:
             dropped.append(line)
-    return together, dropped, list(waiting.values())
+    return together, dropped, added
+
+
+def _key(line: Line, ruleset: str) -> tuple[str, ...]:
+    scope = line.limit.applies_to if line.limit is not None else "each_component"
+    return ruleset, line.element, line.metric, scope
 
 
 def _findings(

@@ -15,26 +15,29 @@ SAME = 1e-9
 """Share by which two numbers may differ and still be one number typed in two units."""
 PASSED_OVER = frozenset({"line", "text", "columns", "rows", "seen", "quantity", "sha256"})
 """Places in the file, and what follows from other fields."""
+STACKS = frozenset({"layers", "walls", "floor"})
+"""Fields whose parts stand in order, outside first."""
 QUANTITIES = {
     **dict.fromkeys(
         ("thickness", "web", "flange", "lip", "product_thickness", "width", "spacing", "shell",
          "least", "greatest", "diameter", "penetration", "frame_width", "left", "right", "bottom",
-         "top", "panes", "stock", "wall_thickness", "height"), "thickness",
+         "top", "panes", "stock", "wall_thickness", "along", "up", "through", "inner_radius",
+         "outer_radius", "middle"), "thickness",
     ),
     **dict.fromkeys(
         ("perimeter", "depth_below_grade", "insulated_depth", "wall_height", "extent", "edge",
-         "length", "altitude", "elevation"), "run",
+         "length", "altitude", "elevation", "height", "depth", "run"), "run",
     ),
     **dict.fromkeys(("net_area", "gross_area", "below_grade_area", "area"), "area"),
     **dict.fromkeys(
         ("resistance", "label", "installed_label", "cell_resistance", "outside_film",
-         "inside_film", "film"), "resistance",
+         "inside_film", "film", "ground_resistance"), "resistance",
     ),
     **dict.fromkeys(
         ("share", "web_share", "joint_share", "grouted_share", "renewed", "framing_share"),
         "share",
     ),
-    **dict.fromkeys(("u_factor", "u"), "u_factor"),
+    **dict.fromkeys(("u_factor", "u", "wall_u"), "u_factor"),
     **dict.fromkeys(
         ("indoor_temperature", "outdoor_temperature", "mean_temperature"), "temperature"
     ),
@@ -51,7 +54,9 @@ def same(one: object, other: object) -> bool:
     if isinstance(one, bool) or isinstance(other, bool):
         return one is other
     if isinstance(one, int | float) and isinstance(other, int | float):
-        return math.isclose(one, other, rel_tol=SAME, abs_tol=1e-12)
+        return math.isclose(one, other, rel_tol=SAME, abs_tol=1e-12) or (
+            one != one and other != other
+        )
     if isinstance(one, tuple) and isinstance(other, tuple):
         if getattr(one, "_fields", None) != getattr(other, "_fields", None):
             return False
@@ -99,7 +104,7 @@ def _of_field(
     if _holds_records(a) or _holds_records(b):
         assert isinstance(a, tuple)
         assert isinstance(b, tuple)
-        aligned = in_order if field == "layers" else by_name
+        aligned = in_order if field in STACKS else by_name
         for one, other in aligned(a, b):
             yield from _of_parts(kind, name, where, field, one, other)
         return
@@ -117,7 +122,7 @@ def _of_parts(
         yield Difference(kind, name, (*where, label(one or other)), "", what, one, other)
     elif type(one) is not type(other):
         yield Difference(kind, name, (*where, label(one)), "", "replaced", one, other)
-    elif field == "layers" and same(one, other):
+    elif field in STACKS and same(one, other):
         yield Difference(kind, name, (*where, label(one)), "", "moved", one, other)
     else:
         yield from of_records(kind, name, one, other, (*where, label(other)))

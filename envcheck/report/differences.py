@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from datetime import date
+from math import isnan
 
 from envcheck import units
 from envcheck.model.compared import Difference
@@ -195,6 +196,8 @@ class Words:
         amount = quantity(bridge.amount, bridge.amount_quantity, self.system)
         if bridge.detail is not None:
             value = f"from detail {bridge.detail.id}"
+        elif isnan(bridge.value):
+            value = "from its drawing"
         return f"{bridge.title}, {letter} {value}, {amount}"
 
 
@@ -204,7 +207,7 @@ def quantity(value: float, name: str, system: str) -> str:
         return numbers.percent(value, 2)
     if name == "temperature":
         return numbers.temperature(value, system)
-    if not name:
-        return numbers.significant(value, DIGITS)
+    if not name or isnan(value):
+        return "not stated" if isnan(value) else numbers.significant(value, DIGITS)
     shown = numbers.significant(numbers.in_system(value, name, system), DIGITS)
     return f"{shown} {units.label(name, system)}".rstrip()

@@ -254,6 +254,15 @@ def test_the_same_file_changes_nothing() -> None:
     assert (found.changed, found.differences, found.unchanged) == ((), (), 39)
 
 
+@pytest.mark.parametrize("name", ["cap-beside-a-mean", "mean-over-cap", "weights", "threshold"])
+def test_lines_of_one_element_on_one_metric_are_told_apart(name: str) -> None:
+    """A component's own line and that of a mean stand side by side."""
+    path = ROOT / f"tests/cases/building/{name}.yaml"
+    run = pipeline.run(str(path))
+    found = pipeline.compared(run, run)
+    assert (found.changed, found.added, found.dropped) == ((), (), ())
+
+
 def test_another_spelling_changes_nothing(revise: object) -> None:
     found = revise(  # type: ignore[operator]
         ("thickness: 2.5 in", "thickness: 63.5 mm"),
@@ -349,6 +358,8 @@ def test_numbers_are_the_same_whatever_their_last_binary_digit() -> None:
     assert same(0.1 + 0.2, 0.3)
     assert not same(0.3, 0.3001)
     assert not same(1, True)
+    assert same(float("nan"), float("nan"))
+    assert not same(float("nan"), 0.0)
     assert same((1.0, ("a",)), (1, ("a",)))
 
 
