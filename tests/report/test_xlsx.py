@@ -11,11 +11,12 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from envcheck import formulas
-from envcheck.report import registry, view, workbook
+from envcheck.report import registry, view
 from envcheck.report.formats.xlsx import lines
 from envcheck.report.registry import MissingExtra
 from envcheck.report.view import ViewOptions
-from envcheck.report.workbook import Head
+from envcheck.report.workbook.cells import Head
+from envcheck.report.workbook.lists import number
 from tests.report.fixture import JUDGED, PROJECT, RULESETS
 
 
@@ -81,9 +82,9 @@ def test_without_its_library_the_format_names_the_extra(monkeypatch: pytest.Monk
 
 @given(st.text(alphabet="=+-@'0123456789.eE ", max_size=12))
 def test_only_printed_numbers_become_numbers(text: str) -> None:
-    found = workbook.number(text)
+    found = number(text)
     assert found == text or text.lstrip("+-")[0].isdigit()
-    assert workbook.number("=1+1") == "=1+1" and workbook.number("-0.5") == -0.5
+    assert number("=1+1") == "=1+1" and number("-0.5") == -0.5
 
 
 def test_rows_are_as_high_as_their_longest_text() -> None:

@@ -9,7 +9,7 @@ from typing import TYPE_CHECKING
 from envcheck.report import workbook
 from envcheck.report.registry import MissingExtra
 from envcheck.report.view import View
-from envcheck.report.workbook import Cell, Formula, Head, Input, Sheet
+from envcheck.report.workbook.cells import Cell, Formula, Head, Input, Sheet
 
 if TYPE_CHECKING:
     from xlsxwriter.format import Format
