@@ -5,8 +5,8 @@ Formats that are printed and read away from the terminal lay this page out.
 
 from __future__ import annotations
 
-from envcheck.report import main_table, outline, wording
-from envcheck.report.parts import Facts, Page, Paragraph, Section
+from envcheck.report import by_line, main_table, outline, wording
+from envcheck.report.parts import Facts, Items, Page, Paragraph, Section
 from envcheck.report.view import View
 
 OVER = "Lines over their limit, and open lines"
@@ -24,9 +24,23 @@ def page(view: View) -> Page:
             *outline.tables(view),
             *outline.why_over(view),
             *outline.beside_the_lines(view),
+            *_trails(view),
             *outline.what_it_rests_on(view),
         ),
     )
+
+
+def _trails(view: View) -> tuple[Section, ...]:
+    """How the limit of each line was found; lines of one trail together."""
+    entries = by_line.grouped(
+        (
+            by_line.place(row.tag, row.sheet),
+            f"{row.symbol} {row.limit}" if row.limit else f"{row.symbol}: no limit found",
+            tuple(f"{pair.label}: {pair.text}" for pair in row.trail),
+        )
+        for row in view.rows
+    )
+    return (Section("How each limit was found", (Items(entries),)),) if entries else ()
 
 
 def _unsettled(view: View) -> tuple[Section, ...]:
