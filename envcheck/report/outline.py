@@ -19,6 +19,7 @@ from envcheck.report.view import View
 
 if TYPE_CHECKING:
     from envcheck.report.details import AssemblyView
+    from envcheck.report.workings import Workings
 
 SAID_BY_LINES = {
     "exception-without-evidence": "claimed by",
@@ -89,7 +90,7 @@ def what_it_rests_on(view: View) -> tuple[Section, ...]:
             Section(_heading("Line by line", rules, several), (_by_line(rows_of[rules.id], told),))
             for rules in view.rule_sets
         ),
-        *map(_assembly, view.assemblies),
+        *_assemblies(view.assemblies),
         *_if_any("Assumed", _plain(view.assumptions)),
         *_if_any("Remarks", _plain(view.remarks)),
         Section("Cautions", (_cautions(view),)),
@@ -261,10 +262,22 @@ def _if_any(heading: str, block: Items) -> tuple[Section, ...]:
     return (Section(heading, (block,)),) if block.entries else ()
 
 
-def _assembly(each: AssemblyView) -> Section:
+def _assemblies(assemblies: Iterable[AssemblyView]) -> Iterable[Section]:
+    """A section for each; workings that are letter by letter those of an earlier one are not said
+    again."""
     from envcheck.report import assembly_page
 
-    return Section(f"Assembly {each.assembly}: {each.title}", assembly_page.blocks(each))
+    shown: dict[Workings, str] = {}
+    for each in assemblies:
+        first = shown.setdefault(each.workings, each.assembly) if each.workings else each.assembly
+        blocks = assembly_page.blocks(each if first == each.assembly else _unworked(each))
+        if first != each.assembly:
+            blocks = (*blocks, Paragraph(f"Ladder and worksheet are those of {first}."))
+        yield Section(f"Assembly {each.assembly}: {each.title}", blocks)
+
+
+def _unworked(each: AssemblyView) -> AssemblyView:
+    return each._replace(workings=None)
 
 
 def _cautions(view: View) -> Items:
