@@ -104,7 +104,6 @@ def _by_other_rules(assembly: Assembly, solved: Solved) -> Iterator[Reading]:
         added = setting.outside_film + setting.inside_film
         words = "surface films were added, which a C-factor leaves out"
         yield Reading(words, 1.0 / (1.0 / value + added))
-        yield Reading(words, 1.0 / (1.0 / value + setting.inside_film))
     for space, words in ((0.0, ""), (STILL_AIR, " with a space of still air")):
         cladding = _cladding(assembly, solved)
         if cladding is not None:

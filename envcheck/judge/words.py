@@ -92,6 +92,13 @@ def lines_by_assembly(lines: Iterable[Line], project: Project) -> dict[str, list
     return found
 
 
+def names(title: str, *words: str) -> bool:
+    """Whether a title holds one of these words or groups of words, whole and in any case."""
+    plain = "".join(letter if letter.isalnum() else " " for letter in title.casefold())
+    padded = f" {' '.join(plain.split())} "
+    return any(f" {word} " in padded for word in words)
+
+
 def tags(lines: Iterable[Line]) -> str:
     """Tags of the lines, each once."""
     return listed(list(dict.fromkeys(line.element for line in lines)))

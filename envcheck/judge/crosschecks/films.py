@@ -2,16 +2,15 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Iterator
 
 from envcheck.judge.crosschecks import Check, Facts
-from envcheck.judge.words import lines_by_assembly, resistance, system
+from envcheck.judge.words import lines_by_assembly, names, resistance, system
 from envcheck.model.judged import CERTAIN, LIKELY, Finding
 from envcheck.model.layers import ContactLayer, MaterialLayer, ResistanceLayer
 from envcheck.model.project import Assembly
 
-NAMED = re.compile(r"\b(films?|surface (resistance|film)|still air|outside air|inside air)\b", re.I)
+NAMED = ("film", "films", "surface resistance", "still air", "outside air", "inside air")
 LEAST, MOST = 0.02, 0.2
 """m2 K/W; between the films of a windy outer and of a sheltered inner face."""
 DIRECTIONS = {"up": (0.09, 0.112), "horizontal": (0.115, 0.135), "down": (0.155, 0.18)}
@@ -29,7 +28,7 @@ def film_as_layer(facts: Facts) -> Iterator[Finding]:
         for layer in dict.fromkeys((*layers[:1], *layers[-1:])):
             if not isinstance(layer, ResistanceLayer | ContactLayer):
                 continue
-            if not LEAST <= layer.resistance <= MOST or not NAMED.search(layer.title):
+            if not LEAST <= layer.resistance <= MOST or not names(layer.title, *NAMED):
                 continue
             below = assembly.kind == BELOW_GRADE
             yield Finding(

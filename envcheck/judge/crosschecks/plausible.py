@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from typing import NamedTuple
 
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.words import length, resistance, system, trimmed
@@ -25,69 +24,26 @@ SLIPS = (
 """Factors of slips (exact definitions of the units, rounded), the likeliest first."""
 
 
-class Doubt(NamedTuple):
-    """A conductivity that is outside its band."""
-
-    subject: str
-    sheet: str
-    seen: str
-    conductivity: float
-    """W/(m K)"""
-    band: Span
-
-
 def implausible(facts: Facts) -> Iterator[Finding]:
     """Own materials, and stated resistances over their thickness, against the band of a class."""
     units = system(facts.project, facts.rulesets)
-    for doubt in (*_materials(facts, units), *_layers(facts, units)):
-        low, high = doubt.band
-        if low * (1 - 1e-9) <= doubt.conductivity <= high * (1 + 1e-9):
-            continue
-        too_good, too_poor = doubt.conductivity < low / FAR, doubt.conductivity > high * FAR
-        yield Finding(
-            "conductivity-implausible",
-            "E" if too_good else "W" if too_poor else "N",
-            doubt.subject,
-            doubt.sheet,
-            f"{doubt.seen}; {_shown(low, units)} to {_shown(high, units)} is usual in its class",
-            _slip(doubt),
-            "the value with its unit on the data sheet, or the class of the material",
-            sure=LIKELY if too_good or too_poor else LOOK,
-        )
-
-
-def _shown(conductivity: float, units: str) -> str:
-    value = trimmed(in_system(conductivity, "conductivity", units), 4)
-    return f"{value} {label('conductivity', units)}"
-
-
-def _slip(doubt: Doubt) -> str:
-    low, high = doubt.band
-    for factor, words in SLIPS:
-        for value in (doubt.conductivity * factor, doubt.conductivity / factor):
-            if low <= value <= high:
-                return f"it looks like {words}"
-    return "value or class is wrong"
-
-
-def _materials(facts: Facts, units: str) -> Iterator[Doubt]:
     for each in facts.project.materials.values():
-        if each.band is not None:
+        if each.band is not None and _outside(each.conductivity, each.band):
             seen = f"{each.title} conducts {_shown(each.conductivity, units)}"
-            yield Doubt(each.id, "", seen, each.conductivity, each.band)
-
-
-def _layers(facts: Facts, units: str) -> Iterator[Doubt]:
+            yield _finding(each.id, "", seen, each.conductivity, each.band, units)
     for assembly in facts.project.assemblies.values():
         for layer in assembly.layers:
             stated = _stated(layer)
-            if stated is None:
+            if stated is None or not _outside(stated[1] / stated[0], stated[2]):
                 continue
             value, depth, band = stated
-            k = depth / value
             seen = f"{layer.title}: {resistance(value, units)} in {length(depth, units)}"
-            seen += f" would conduct {_shown(k, units)}"
-            yield Doubt(assembly.id, assembly.sheet, seen, k, band)
+            seen += f" would conduct {_shown(depth / value, units)}"
+            yield _finding(assembly.id, assembly.sheet, seen, depth / value, band, units)
+
+
+def _outside(conductivity: float, band: Span) -> bool:
+    return not band[0] * (1 - 1e-9) <= conductivity <= band[1] * (1 + 1e-9)
 
 
 def _stated(layer: Layer) -> tuple[float, float, Span] | None:
@@ -102,8 +58,38 @@ def _stated(layer: Layer) -> tuple[float, float, Span] | None:
         fill = layer.fill
         as_filled = fill.installed_label == fill.label and fill.product_thickness is None
         if not as_filled:  # a resistance stated for the whole cavity may be that of air
-            return fill.label or 0.0, fill.product_thickness or layer.thickness, INSULATION
+            return layer.fill.label, fill.product_thickness or layer.thickness, INSULATION
     return None
+
+
+def _finding(
+    subject: str, sheet: str, seen: str, conductivity: float, band: Span, units: str
+) -> Finding:
+    low, high = band
+    too_good, too_poor = conductivity < low / FAR, conductivity > high * FAR
+    return Finding(
+        "conductivity-implausible",
+        "E" if too_good else "W" if too_poor else "N",
+        subject,
+        sheet,
+        f"{seen}; {_shown(low, units)} to {_shown(high, units)} is usual in its class",
+        _slip(conductivity, band),
+        "the value with its unit on the data sheet, or the class of the material",
+        sure=LIKELY if too_good or too_poor else LOOK,
+    )
+
+
+def _shown(conductivity: float, units: str) -> str:
+    value = trimmed(in_system(conductivity, "conductivity", units), 4)
+    return f"{value} {label('conductivity', units)}"
+
+
+def _slip(conductivity: float, band: Span) -> str:
+    """The slip of units that explains a conductivity, W/(m K), the likeliest first."""
+    for factor, words in SLIPS:
+        if not (_outside(conductivity * factor, band) and _outside(conductivity / factor, band)):
+            return f"it looks like {words}"
+    return "value or class is wrong"
 
 
 CHECKS = (Check("conductivity-implausible", "Conductivity outside its class", implausible, LIKELY),)

@@ -2,16 +2,15 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Iterator
 
 from envcheck.judge.crosschecks import Check, Facts
-from envcheck.judge.words import length, lines_by_assembly, system
+from envcheck.judge.words import length, lines_by_assembly, names, system
 from envcheck.model.judged import CERTAIN, LIKELY, Finding
 from envcheck.model.layers import MaterialLayer, ResistanceLayer, TaperedLayer
 
-TAPER = re.compile(r"\btaper(ed)?\b", re.I)
-MEAN = re.compile(r"\b(average|avg|mean)\b", re.I)
+TAPER = ("taper", "tapered")
+MEAN = ("average", "avg", "mean")
 
 
 def taper_as_plain(facts: Facts) -> Iterator[Finding]:
@@ -23,9 +22,9 @@ def taper_as_plain(facts: Facts) -> Iterator[Finding]:
         for layer in assembly.layers:
             if not isinstance(layer, MaterialLayer | ResistanceLayer):
                 continue
-            material, mean = layer.material, bool(MEAN.search(layer.title))
+            material, mean = layer.material, names(layer.title, *MEAN)
             insulating = material is None or material.material_class == "insulation"
-            if not insulating or not (mean or TAPER.search(layer.title)):
+            if not insulating or not (mean or names(layer.title, *TAPER)):
                 continue
             where = conventions.where.get("tapered", "")
             yield Finding(

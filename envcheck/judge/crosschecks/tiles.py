@@ -2,18 +2,18 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Iterator
 
 from envcheck.judge.crosschecks import Check, Facts
 from envcheck.judge.readings import recomputed
-from envcheck.judge.words import system, u_factor
+from envcheck.judge.words import names, system, u_factor
 from envcheck.model.judged import LIKELY, LOOK, Finding
 from envcheck.model.layers import MaterialLayer, ResistanceLayer
 from envcheck.model.project import Assembly
 from envcheck.model.solved import Solved
 
-NAMED = re.compile(r"\b(ceiling tiles?|suspended ceiling|drop(ped)? ceiling|lay-in)\b", re.I)
+TILES = ("ceiling tile", "ceiling tiles")
+CEILINGS = ("suspended ceiling", "drop ceiling", "dropped ceiling", "lay in")
 
 
 def on_tiles(facts: Facts) -> Iterator[Finding]:
@@ -44,7 +44,7 @@ def _above_tiles(assembly: Assembly) -> tuple[str, str] | None:
     for upper, lower in zip(assembly.layers, assembly.layers[1:], strict=False):
         material = getattr(upper, "material", None)
         insulating = material is not None and material.material_class == "insulation"
-        if insulating and NAMED.search(lower.title):
+        if insulating and names(lower.title, *TILES, *CEILINGS):
             return upper.title, lower.title
     return None
 
