@@ -7,6 +7,7 @@ output went away. Nothing else ends with 1, except 3 where the user asked ``--fa
 
 from __future__ import annotations
 
+import errno
 import gc
 import os
 import sys
@@ -19,6 +20,10 @@ CLOSED_PIPE = 141
 """What a shell reports for a program whose output was no longer wanted (128 + SIGPIPE)."""
 
 
+FULL = (errno.ENOSPC, errno.EDQUOT, errno.EFBIG)
+"""A full disk, a quota, a file that may not grow."""
+
+
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run the command line and give the exit status; never raises, whatever the input."""
     try:
@@ -27,6 +32,8 @@ def main(arguments: Sequence[str] | None = None) -> int:
         return INTERRUPTED
     except BrokenPipeError:
         return _closed_pipe()
+    except OSError as error:
+        return _full(error) if error.errno in FULL else _fault(error)
     except Exception as error:
         return _fault(error)
 
@@ -69,6 +76,13 @@ def _run(arguments: list[str]) -> int:
         if "_ENVCHECK_COMPLETE" in os.environ:
             return INPUT if done.code else 0
         return _closed_pipe()
+
+
+def _full(error: OSError) -> int:
+    """Say that there was no room for the output; what it still holds is given up."""
+    print(f"Error: output cannot be written ({error.strerror})", file=sys.stderr)
+    _closed_pipe()
+    return INPUT
 
 
 def _closed_pipe() -> int:

@@ -281,6 +281,14 @@ def remedies(run: Run) -> tuple[Advice, ...]:
     return advise(bench, run.judged.lines)
 
 
+def only(run: Run, patterns: Sequence[str]) -> Run:
+    """The lines of elements whose tags fit, with their exit status. Errors: InputError."""
+    from envcheck.judge.only import only as kept
+
+    project, judged = kept(run.project, run.judged, patterns)
+    return replace(run, project=project, judged=judged, exit_status=exit_status(judged))
+
+
 def compared(old: Run, new: Run) -> Compared:
     """Hold two revisions of a project, or two projects, against each other."""
     from envcheck.advise.compare import compare
@@ -293,10 +301,7 @@ def compared(old: Run, new: Run) -> Compared:
 
 
 def run_both(old: str, new: str, folders: Sequence[str] = ()) -> tuple[Run, Run]:
-    """Check two project files, each by its own rule sets.
-
-    Errors: InputError with every problem of both, each with its own file.
-    """
+    """Check two files, each by its own rule sets. Errors: InputError with the problems of both."""
     runs: list[Run] = []
     problems: list[Problem] = []
     for path in (old, new):

@@ -3,12 +3,18 @@
 from __future__ import annotations
 
 from datetime import datetime
+from typing import TYPE_CHECKING
 
 import click
 
-from envcheck.cli import options
+from envcheck.cli import completing, options
+from envcheck.cli.progress import progress
 from envcheck.cli.writing import deliver
 from envcheck.report import registry
+
+if TYPE_CHECKING:
+    from envcheck.report.registry import Format
+    from envcheck.report.view import ViewOptions
 
 OVER, OPEN = 1, 3
 
@@ -35,6 +41,19 @@ OVER, OPEN = 1, 3
     show_default=True,
     help="With 'open', exit status 1 also where lines are only open.",
 )
+@click.option(
+    "--only",
+    multiple=True,
+    metavar="TAG",
+    shell_complete=completing.tags,
+    help="Show only the lines of this tag or pattern ('N-*'); may be given several times. The "
+    "whole building is judged; summary and exit status speak of these lines.",
+)
+@click.option(
+    "--watch",
+    is_flag=True,
+    help="Check again whenever the project or its rule sets change, until Ctrl-C.",
+)
 def check(
     project: str,
     rules: tuple[str, ...],
@@ -46,6 +65,8 @@ def check(
     bounds: bool,
     details: bool,
     fail_on: str,
+    only: tuple[str, ...],
+    watch: bool,
 ) -> int:
     """Hold every element of PROJECT against its limit and print a row per line.
 
@@ -55,20 +76,45 @@ def check(
     A worked line:
       envcheck check library.yaml --rules rules --units SI --output report.txt
     """
+    if watch and project == "-":
+        raise click.UsageError("--watch needs a project file, not standard input")
+
+    def once() -> int:
+        from envcheck.report.view import ViewOptions
+
+        form = registry.format_named(format_name)
+        asked = ViewOptions(
+            units=units or "",
+            date=date.date().isoformat() if date else "",
+            colour=options.colour(color, output),
+            width=options.width(output),
+            details=details or form.details,
+            workings=form.workings,
+            bounds=bounds,
+            only=only,
+        )
+        status = _checked(project, rules, form, asked, output)
+        return OVER if status == OPEN and fail_on == "open" else status
+
+    if not watch:
+        return once()
+    from envcheck.cli.watching import until_interrupted
+
+    return until_interrupted(project, rules, once)
+
+
+def _checked(
+    project: str, rules: tuple[str, ...], form: Format, asked: ViewOptions, output: str | None
+) -> int:
+    """One check: run it, lay it out, write it; its exit status."""
     from envcheck import pipeline
     from envcheck.report import view
 
-    run = pipeline.run(project, rules, bounds)
-    form = registry.format_named(format_name)
-    asked = view.ViewOptions(
-        units=units or "",
-        date=date.date().isoformat() if date else "",
-        colour=options.colour(color, output),
-        width=options.width(output),
-        details=details or form.details,
-        workings=form.workings,
-        bounds=bounds,
-    )
-    made = options.rendered(form, view.build(run.project, run.rulesets, run.judged, asked))
+    with progress(f"checking {project}"):
+        run = pipeline.run(project, rules, asked.bounds)
+        if asked.only:
+            total = sum(line.decides for line in run.judged.lines)
+            run, asked = pipeline.only(run, asked.only), asked._replace(total=total)
+        made = options.rendered(form, view.build(run.project, run.rulesets, run.judged, asked))
     deliver(made, output, (project,))
-    return OVER if run.exit_status == OPEN and fail_on == "open" else run.exit_status
+    return run.exit_status

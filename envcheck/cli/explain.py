@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import click
 
-from envcheck.cli import options
+from envcheck.cli import completing, options
 from envcheck.cli.writing import deliver
 from envcheck.errors import InputError, did_you_mean, one_of, problem
 from envcheck.report import registry
@@ -12,7 +12,7 @@ from envcheck.report import registry
 
 @click.command()
 @options.PROJECT
-@click.argument("subject", metavar="TAG_OR_ASSEMBLY")
+@click.argument("subject", metavar="TAG_OR_ASSEMBLY", shell_complete=completing.subjects)
 @options.RULES
 @options.one_of(registry.explaining(), "text")
 @options.OUTPUT

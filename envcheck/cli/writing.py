@@ -33,13 +33,19 @@ def deliver(made: str | bytes, output: str | None, inputs: tuple[str, ...] = ())
 
 
 def _show(made: str | bytes) -> None:
-    if isinstance(made, str):
-        sys.stdout.write(made)
-    elif sys.stdout.isatty():
+    if not isinstance(made, str) and sys.stdout.isatty():
         raise click.ClickException("a terminal cannot show this format. Fix: add --output FILE")
-    else:
-        sys.stdout.buffer.write(made)
-    sys.stdout.flush()
+    try:
+        if isinstance(made, str):
+            sys.stdout.write(made)
+        else:
+            sys.stdout.buffer.write(made)
+        sys.stdout.flush()
+    except BrokenPipeError:
+        raise
+    except OSError as error:
+        reason = error.strerror or str(error)
+        raise click.ClickException(f"standard output: cannot be written ({reason})") from error
 
 
 def write_whole(made: str | bytes, target: Path) -> None:

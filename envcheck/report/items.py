@@ -36,13 +36,17 @@ class FindingView(NamedTuple):
     sure: str
 
 
-def summary(judged: Judged) -> str:
-    """Count the lines that decide and say what the report does not do."""
+def summary(judged: Judged, only: tuple[str, ...] = (), total: int = 0) -> str:
+    """Count the lines that decide and say what the report does not do.
+
+    only, total: the tags that are shown, where not all are, and the number of all lines.
+    """
     lines = [line for line in judged.lines if line.decides]
     over = sum(line.verdict == "fail" for line in lines)
     waiting = sum(line.open for line in lines)
     stop = sum(finding.unsettled for finding in judged.findings)
-    counts = f"{wording.plural(len(lines), 'line')}: {over} over their limit, {waiting} open"
+    shown = f" of {total} shown (only {clean(', '.join(only))})" if only else ""
+    counts = f"{wording.plural(len(lines), 'line')}{shown}: {over} over their limit, {waiting} open"
     if stop:
         counts += f"; {wording.plural(stop, 'finding')} to be settled"
     return f"{counts}. {wording.APPROVES_NOTHING}"

@@ -43,6 +43,10 @@ class ViewOptions(NamedTuple):
     """Of each assembly also its ladder, paths and worksheet."""
     bounds: bool = False
     """A column with the bounds of the drawn model."""
+    only: tuple[str, ...] = ()
+    """Patterns of the tags that are shown, where not all are ..."""
+    total: int = 0
+    """... and the number of all lines that decide."""
 
 
 class View(NamedTuple):
@@ -108,7 +112,7 @@ def build(
         rule_sets=tuple(
             header.rule_set(each, judged.lines, project, system) for each in rulesets.values()
         ),
-        summary=items.summary(judged),
+        summary=items.summary(judged, options.only, options.total),
         rows=made,
         open_items=items.open_items(made, judged),
         claims=items.claims(project),
