@@ -6,8 +6,8 @@ the docs. Ids are stable: people look them up and scripts match them.
 
 from __future__ import annotations
 
-from envcheck.error_kinds import files, projects, rule_sets, sheets
+from envcheck.error_kinds import drawings, files, projects, rule_sets, sheets
 from envcheck.errors import Kind
 
-_ALL = (*files.KINDS, *projects.KINDS, *rule_sets.KINDS, *sheets.KINDS)
+_ALL = (*files.KINDS, *projects.KINDS, *drawings.KINDS, *rule_sets.KINDS, *sheets.KINDS)
 KINDS: dict[str, Kind] = {kind.id: kind for kind in _ALL}

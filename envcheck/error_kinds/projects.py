@@ -201,61 +201,6 @@ KINDS = (
         "A part larger than what it lies in.",
     ),
     Kind(
-        "piece-without-size",
-        "the piece {title!r} has no size along {key!r}",
-        "write where it starts and where it ends: {key}: [10 mm, 12 mm]",
-        "A piece of a drawing that ends where it starts, or before.",
-    ),
-    Kind(
-        "piece-hidden",
-        "the piece {title!r} lies wholly under later ones: {over}",
-        "move it behind them in the list, or delete it; later pieces lie on top",
-        "Nothing of the piece is seen in the drawing, so that it would count nothing.",
-    ),
-    Kind(
-        "corner-contact",
-        "good conductors touch in a corner only: {pieces}",
-        "let them overlap by their thickness where they are joined, or part them",
-        "Two pieces that conduct 20 times better than what lies beside them meet in a point: the "
-        "heat through a point has no definite value.",
-    ),
-    Kind(
-        "detail-gap",
-        "nothing is drawn in a part of the detail",
-        "draw a piece or air there; cut planes lie at the edges of the drawing only",
-        "What is left open would pass no heat, and nobody says that it does not.",
-    ),
-    Kind(
-        "air-meets-air",
-        "outdoor and indoor air meet with nothing between them",
-        "draw the piece that parts them, or check the x and y of both",
-        "A hole in the drawn envelope, or air drawn over air.",
-    ),
-    Kind(
-        "cut-without-flank",
-        "the {edge} edge of the detail cuts the envelope, and no flank is stated there",
-        "add the assembly and its length to 'flanks' with 'cut: {edge}'",
-        "The heat through every assembly that is cut off is taken from the flow of the detail.",
-    ),
-    Kind(
-        "flank-without-cut",
-        "the {edge} edge does not cut the envelope from outdoor to indoor air just once",
-        "draw both airs up to that edge, or name the edge that cuts the assembly",
-        "The U-factor of a flank is that of the layers between both airs at its cut.",
-    ),
-    Kind(
-        "cut-twice",
-        "two flanks are cut off at the {edge} edge",
-        "keep one, or name the edge that cuts the other",
-        "One edge of a detail cuts one assembly.",
-    ),
-    Kind(
-        "unknown-detail",
-        "the detail {name!r} is not in this file",
-        "{hint}",
-        "A bridge names a detail that is not drawn.",
-    ),
-    Kind(
         "unknown-junction",
         "the kind of junction {name!r} is not known",
         "{hint}",
@@ -266,13 +211,6 @@ KINDS = (
         "no bridge of this file has the title {name!r}",
         "{hint}",
         "A junction is said to be counted by a bridge that is not there.",
-    ),
-    Kind(
-        "detail-measured",
-        "the bridge comes from a detail with other dimensions than its element",
-        "state 'measured' alike for both, with the lengths of the flanks and the areas to match",
-        "A linear transmittance belongs to outside or to inside dimensions; with the other ones it "
-        "counts a corner twice or leaves it out.",
     ),
     Kind(
         "contradicts",

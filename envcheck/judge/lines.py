@@ -117,8 +117,9 @@ def undecided_by_bracket(line: Line) -> bool:
 
 
 def hangs_on_bracket(line: Line) -> bool:
-    """Whether the limit lies inside the bracket, which decides or flags the choice of method."""
-    return undecided_by_bracket(line) or "method" in line.flags
+    """Whether the bracket decides, or the limit inside of it flags the choice of method."""
+    decides = line.solved is not None and line.solved.decided_by_bracket
+    return decides or undecided_by_bracket(line) or "method" in line.flags
 
 
 def exit_status(judged: Judged) -> int:

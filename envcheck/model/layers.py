@@ -217,6 +217,10 @@ class MasonryLayer(NamedTuple):
     """Stated resistance of the cell (air or fill) over its depth, m2 K/W."""
     weight: float | None = None
     """Stated weight per area, kg/m2, for class tests; None = from the densities."""
+    length: float | None = None
+    """Of one unit with its joint, m; None = not stated, and the unit is not drawn to scale."""
+    cells: int = 2
+    """Cells beside each other in one unit."""
 
 
 class TaperedPiece(NamedTuple):
@@ -253,6 +257,41 @@ class TaperedLayer(NamedTuple):
     """Length over which the thickness rises, m."""
     pieces: tuple[TaperedPiece, ...] = ()
     """Of a roof drained by several slopes; ``least`` and ``greatest`` are then those of all."""
+
+
+class SectionPiece(NamedTuple):
+    """A rectangle of a drawn section: a solid material, or air."""
+
+    title: str
+    line: int
+    left: float
+    """m along the wall, from the left side of the drawing"""
+    right: float
+    outer: float
+    """m from the outer face of the drawing"""
+    inner: float
+    material: Material | None
+    """None where it is air."""
+    air: AirSpaceLayer | None = None
+    """As thick as the piece is deep; it conducts like its resistance over that depth."""
+
+
+class SectionLayer(NamedTuple):
+    """A drawn rectangle of rectangles that repeats along the wall."""
+
+    kind: str
+    title: str
+    line: int
+    thickness: float
+    """Depth from the outer face to the inner face, m."""
+    repeat: float
+    """Width of the drawing along the wall, m."""
+    symmetric: bool
+    """Both sides are planes of symmetry; else the drawing repeats."""
+    orientation: str
+    """How the pieces run: ``vertical`` or ``horizontal``."""
+    pieces: tuple[SectionPiece, ...]
+    """Later ones lie on top of earlier ones; together they leave nothing of the drawing open."""
 
 
 class Fasteners(NamedTuple):
@@ -335,6 +374,7 @@ Layer = (
     | AirSpaceLayer
     | FramedLayer
     | MasonryLayer
+    | SectionLayer
     | TaperedLayer
 )
 """Every layer has a kind, a title and a line; the order in an assembly is from outside in."""

@@ -29,6 +29,8 @@ from envcheck.model.layers import (
     Member,
     Profile,
     ResistanceLayer,
+    SectionLayer,
+    SectionPiece,
     TaperedLayer,
 )
 from envcheck.model.windows import Glazing, Window
@@ -67,6 +69,8 @@ __all__ = [
     "Rated",
     "ResistanceLayer",
     "RuleSetChoice",
+    "SectionLayer",
+    "SectionPiece",
     "Site",
     "Slab",
     "Surface",
@@ -138,6 +142,8 @@ class Assembly(NamedTuple):
     suspended: Suspended | None = None
     basement: Basement | None = None
     curved: Curved | None = None
+    drawn: bool = False
+    """A layer is a drawn section."""
 
 
 # ----------------------------------------------------------------------------------- elements

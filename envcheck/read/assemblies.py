@@ -41,6 +41,7 @@ def read_material(context: Context, name: str, entry: Entry) -> Material:
         context.out_of_place(entry, ("conversion",), f"{where} without a declared value", hint)
     if kind == "conductivity":
         conductivity, span = context.ranged(entry, "conductivity", "conductivity")
+        conductivity = context.conducts(entry, "conductivity", conductivity)
         hint = "it belongs beside 'resistance'"
         context.out_of_place(entry, ("thickness",), f"{where} with a conductivity", hint)
     elif kind == "declared":
@@ -53,7 +54,8 @@ def read_material(context: Context, name: str, entry: Entry) -> Material:
     elif kind == "resistance":
         resistance = context.positive(entry, "resistance", "resistance")
         if "thickness" in entry:
-            conductivity = context.positive(entry, "thickness", "length") / resistance
+            thickness = context.positive(entry, "thickness", "length")
+            conductivity = context.conducts(entry, "thickness", thickness / resistance)
         else:
             hint = ", the thickness that the resistance is stated for"
             context.add("missing-key", entry.line, key="thickness", where=where, hint=hint)
@@ -107,6 +109,16 @@ def read_assembly(context: Context, name: str, entry: Entry) -> Assembly:
     """Read one construction of any kind."""
     kind = entry.get("kind", "layers")
     layers = read_layers(context, entry["layers"]) if "layers" in entry else ()
+    if kind == "section":  # one drawn layer, and from here on layers like all others
+        from envcheck.read.drawn import read_section
+
+        kind, layers = "layers", (read_section(context, entry, layers),)
+    films = {key: _film(context, entry, key) for key in ("outside_film", "inside_film")}
+    drawn = kind == "layers" and any(layer.kind == "section" for layer in layers)
+    if drawn:
+        from envcheck.read.drawn_checks import check_films
+
+        check_films(context, entry, films)
     return Assembly(
         id=name,
         kind=kind,
@@ -120,8 +132,8 @@ def read_assembly(context: Context, name: str, entry: Entry) -> Assembly:
         window=_window(context, entry) if kind in _BY_PARTS else None,
         rated=_rated(context, entry) if kind == "rated" else None,
         slab=read_slab(context, entry) if kind == "slab-on-grade" else None,
-        outside_film=_film(context, entry, "outside_film"),
-        inside_film=_film(context, entry, "inside_film"),
+        outside_film=films["outside_film"],
+        inside_film=films["inside_film"],
         shgc=_plain(entry, "shgc") if kind in _BY_PARTS else None,
         glazing=_glazing(context, entry) if kind == "glazing" else None,
         voids=tuple(read_voids(context, void, layers) for void in entry.get("voids", ())),
@@ -129,6 +141,7 @@ def read_assembly(context: Context, name: str, entry: Entry) -> Assembly:
         curved=read_curved(context, entry, layers) if kind == "curved" else None,
         suspended=read_suspended(context, entry) if kind == "suspended-floor" else None,
         basement=read_basement(context, entry) if kind.endswith("-basement") else None,
+        drawn=drawn,
     )
 
 

@@ -26,6 +26,8 @@ if TYPE_CHECKING:
 NAN = float("nan")
 MATCHES = 1e-6
 """Lengths closer than this, m, are taken as equal."""
+LEAST, MOST = 1e-4, 1e4
+"""W/(m K) between which a conductivity can be meant."""
 
 
 class Context:
@@ -96,6 +98,18 @@ class Context:
             self.add("not-positive", line, found=entry[key], expected=expected, key=key)
             return NAN
         return value
+
+    def conductivity(self, entry: Entry, key: str) -> float:
+        """Read a conductivity that a solid or a void can have; NaN after a problem."""
+        return self.conducts(entry, key, self.positive(entry, key, "conductivity"))
+
+    def conducts(self, entry: Entry, key: str, value: float) -> float:
+        """Refuse a conductivity, W/(m K), that nothing has: more often a slip of the unit."""
+        if not (value < LEAST or value > MOST):
+            return value
+        expected = f"{LEAST:g} to {MOST:g} W/(m*K); this is {value:.3g} W/(m*K)"
+        self.out_of_range(entry, key, expected, "check number and unit")
+        return NAN
 
     def optional(self, entry: Entry, key: str, quantity: str) -> float | None:
         """Read a positive quantity that may be left out."""

@@ -14,11 +14,6 @@ be slightly and well ventilated; ISO 6946:2017, 6.9, from memory."""
 
 def read_air_space(context: Context, entry: Entry) -> AirSpaceLayer:
     """Read an air space, as a layer or within a cavity."""
-    stated = entry.get("emittances")
-    if stated and "emittance" in entry:
-        context.exactly_one(entry, ("emittance", "emittances"), "the air space")
-    both = entry.get("emittance", ORDINARY_EMITTANCE)
-    outer, inner = stated or (both, both)
     openings, per = _openings(context, entry)
     ventilation = entry.get("ventilation", "unventilated")
     if openings is not None:
@@ -29,7 +24,7 @@ def read_air_space(context: Context, entry: Entry) -> AirSpaceLayer:
         entry.line,
         context.positive(entry, "thickness", "length"),
         ventilation,
-        (float(outer), float(inner)),
+        emittances(context, entry),
         openings,
         per,
     )
@@ -61,6 +56,16 @@ def _by_openings(context: Context, entry: Entry, openings: float, key: str) -> s
             hint="leave out 'ventilation': it follows from the openings",
         )
     return found
+
+
+def emittances(context: Context, entry: Entry) -> tuple[float, float]:
+    """Emittances of the outer and the inner face of an air space."""
+    stated = entry.get("emittances")
+    if stated and "emittance" in entry:
+        context.exactly_one(entry, ("emittance", "emittances"), "the air space")
+    both = entry.get("emittance", ORDINARY_EMITTANCE)
+    outer, inner = stated or (both, both)
+    return float(outer), float(inner)
 
 
 def read_fill(context: Context, entry: Entry, where: str, depth: float) -> Fill:

@@ -62,11 +62,9 @@ def _member(context: Context, entry: Entry, thickness: float, share: float | Non
         found = f"{entry.get('width', 'the flange')} at {entry['spacing']}"
         context.add("framing-too-wide", entry.lines["spacing"], found=found)
         spacing = NAN
-    elif profile is not None and spacing is not None and profile.shape == "Z":
-        reach = 3 * profile.flange - 2 * profile.thickness
-        if reach > spacing:
-            found = f"flanges of {profile.flange * 1000:.4g} mm to both sides at {entry['spacing']}"
-            context.add("framing-too-wide", entry.lines["spacing"], found=found)
+    elif profile is not None and spacing is not None and _reach(profile) > spacing:
+        found = f"{_reach(profile) * 1000:.4g} mm from edge to edge at {entry['spacing']}"
+        context.add("framing-too-wide", entry.lines["spacing"], found=found)
     if "material" in entry:
         material = context.material(entry)
     elif profile is not None:
@@ -75,6 +73,15 @@ def _member(context: Context, entry: Entry, thickness: float, share: float | Non
         material = Material("", "", NAN)
         context.exactly_one(entry, ("profile", "material"), "the member")
     return Member(material, width, spacing, profile)
+
+
+def _reach(profile: Profile) -> float:
+    """Width along the wall that a profile needs, centred on its inner flange or crown, m."""
+    if profile.shape == "Z":
+        return 3 * profile.flange - 2 * profile.thickness
+    if profile.shape == "hat":
+        return profile.flange + 2 * max(profile.lip - profile.thickness, 0.0)
+    return profile.flange
 
 
 def _steel(context: Context) -> Material:

@@ -26,6 +26,10 @@ from envcheck.units import states_range
 def read_layers(context: Context, entries: list[Any]) -> tuple[Layer, ...]:
     """Read layers from outside to inside; those that the schema refused are None."""
     layers = [_KINDS[entry["kind"]](context, entry) for entry in entries if entry is not None]
+    if any(layer.kind == "section" for layer in layers):
+        from envcheck.read.drawn_checks import check_beside  # few projects draw sections
+
+        check_beside(context, layers)
     if any(isinstance(layer, FramedLayer) for layer in layers):
         return with_crossed_insulation(layers)
     return tuple(layers)
@@ -109,7 +113,15 @@ def _masonry(context: Context, entry: Entry) -> Layer:
         grout,
         cell,
         context.optional(entry, "weight", "area_weight"),
+        context.optional(entry, "length", "length"),
+        entry.get("cells", 2),
     )
+
+
+def _section(context: Context, entry: Entry) -> Layer:
+    from envcheck.read.drawn import read_section
+
+    return read_section(context, entry, read_layers(context, entry.get("layers", [])))
 
 
 def _part(context: Context, entry: Entry, key: str) -> tuple[Material | None, float]:
@@ -126,5 +138,6 @@ _KINDS: dict[str, Callable[[Context, Entry], Layer]] = {
     "air-space": read_air_space,
     "framed": read_framed,
     "masonry": _masonry,
+    "section": _section,
     "tapered": read_tapered,
 }

@@ -124,7 +124,7 @@ def assembly_view(
 def _layers(assembly: Assembly, solved: Solved, system: str) -> Iterable[LayerView]:
     """The layers of the assembly, then those of its other parts, which are named."""
     for layer, counted in zip(assembly.layers, solved.counted, strict=True):
-        yield layers.view(layer, counted, system)
+        yield from layers.views(layer, counted, system)
     if assembly.basement is not None:
         for name, others in assembly.basement.others:
             for layer in others:

@@ -12,6 +12,8 @@ from envcheck.model.layers import (
     Layer,
     MaterialLayer,
     ResistanceLayer,
+    SectionLayer,
+    SectionPiece,
     TaperedLayer,
 )
 from envcheck.model.solved import Counted
@@ -42,6 +44,30 @@ VENTILATION = {
 }
 
 
+def views(layer: Layer, counted: Counted, system: str) -> tuple[LayerView, ...]:
+    """One layer, and the pieces of a drawn section below it."""
+    whole = view(layer, counted, system)
+    if not isinstance(layer, SectionLayer):
+        return (whole,)
+    return (whole, *(_piece(piece, system) for piece in layer.pieces))
+
+
+def _piece(piece: SectionPiece, system: str) -> LayerView:
+    """A piece with its place: x from the left side, y from the outer face."""
+    left, right, outer, inner = (numbers.place(edge, system) for edge in piece[2:6])
+    conductivity, source = None, ""
+    if piece.material is not None:
+        conductivity, source = piece.material.conductivity, piece.material.source
+    return LayerView(
+        title=clean(f"- {piece.title}"),
+        thickness=numbers.place(piece.inner - piece.outer, system),
+        conductivity=numbers.conductivity(conductivity, system),
+        resistance="",
+        source=clean(source) or ("by the rule for air spaces" if piece.air else "no source"),
+        note=f"x {left} to {right}, y {outer} to {inner}",
+    )
+
+
 def view(layer: Layer, counted: Counted, system: str) -> LayerView:
     """One layer in the units of a system; bridged layers have no resistance of their own."""
     conductivity, source = None, ""
@@ -64,6 +90,10 @@ def view(layer: Layer, counted: Counted, system: str) -> LayerView:
     elif isinstance(layer, FramedLayer):
         fill = layer.fill
         source = fill.material.source if fill.material is not None else fill.source
+    elif isinstance(layer, SectionLayer):
+        width = numbers.length(layer.repeat, system)
+        words.insert(0, f"drawing, {width} wide")
+        source = "see its pieces"
     else:
         source = layer.material.source
     return LayerView(

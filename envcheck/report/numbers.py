@@ -125,6 +125,12 @@ def length(value: float, system: str) -> str:
     return f"{trimmed(shown, 4 if system == 'IP' else 1)} {units.label('thickness', system)}"
 
 
+def place(value: float, system: str) -> str:
+    """Write a place on a drawing with its unit, fine enough for a sheet of metal."""
+    shown = in_system(value, "thickness", system)
+    return f"{trimmed(shown, 4 if system == 'IP' else 2)} {units.label('thickness', system)}"
+
+
 def conductivity(value: float | None, system: str) -> str:
     """Write a conductivity without its unit, to four significant digits."""
     return "" if value is None else significant(in_system(value, "conductivity", system), 4)

@@ -34,6 +34,7 @@ from envcheck.solve.registry import (
     drawers,
     methods,
 )
+from envcheck.solve.repeat import on_one_repeat
 from envcheck.solve.taper import taper
 from envcheck.solve.wiring import bounds
 
@@ -184,7 +185,7 @@ def draw(assembly: Assembly, setting: Setting, conventions: Conventions) -> tupl
         conventions,
         stated_cell("Ro", "outside film", film, film_from),
         stated_cell("Ri", "inside film", setting.inside_film, setting.inside_film_from),
-        blocks,
+        on_one_repeat(blocks),
         layers,
     )
     if film + setting.inside_film == 0 and not any(r.value for b in blocks for r in b.cells[0]):

@@ -10,6 +10,7 @@ from envcheck.model.project import (
     Material,
     MaterialLayer,
     ResistanceLayer,
+    SectionLayer,
     TaperedLayer,
 )
 from envcheck.model.solved import Caution
@@ -74,6 +75,8 @@ def insulation_of(layer: Layer) -> bool:
     """Whether a layer is insulation or holds insulation between its members."""
     if isinstance(layer, FramedLayer | MasonryLayer):
         return layer.fill.label is not None or is_insulation(layer.fill.material)
+    if isinstance(layer, SectionLayer):
+        return any(is_insulation(piece.material) for piece in layer.pieces)
     if not isinstance(layer, MaterialLayer | TaperedLayer | ResistanceLayer):
         return False
     return is_insulation(layer.material)
@@ -90,6 +93,8 @@ def is_combustible(layer: Layer) -> bool:
         return layer.material.combustible
     if isinstance(layer, FramedLayer | MasonryLayer):
         return layer.fill.material is not None and layer.fill.material.combustible
+    if isinstance(layer, SectionLayer):
+        return any(p.material is not None and p.material.combustible for p in layer.pieces)
     if not isinstance(layer, TaperedLayer | ResistanceLayer) or layer.material is None:
         return False
     return layer.material.combustible
@@ -98,6 +103,10 @@ def is_combustible(layer: Layer) -> bool:
 def _is_masonry(layer: Layer) -> bool:
     if isinstance(layer, MaterialLayer | ResistanceLayer):
         return layer.material is not None and layer.material.material_class in MASONRY
+    if isinstance(layer, SectionLayer):
+        return any(
+            p.material is not None and p.material.material_class in MASONRY for p in layer.pieces
+        )
     return isinstance(layer, MasonryLayer)
 
 

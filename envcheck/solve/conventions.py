@@ -20,6 +20,7 @@ from envcheck.solve.methods.framed import is_metal
 from envcheck.solve.methods.surface_films import convection_by_wind, surface_resistance
 from envcheck.solve.registry import methods
 
+DRAWN = "a drawn section is solved as it is drawn"
 STEEP = 60.0
 """Degrees from horizontal from which a surface counts as a wall (ISO 6946:2017, 6.8: heat flow
 is horizontal within 30 degrees of the horizontal plane)."""
@@ -44,7 +45,12 @@ class Resolver:
         category: the class it is judged in. metric: what the limit speaks of (``U_assembly``).
         """
         rule = self._rule(category, assembly.kind, metric)
-        if rule is not None:
+        if assembly.drawn and metric in ("U_assembly", "U_product"):
+            method, method_from = "two_dimensional", DRAWN
+            refused, weight = () if rule is None else rule.refused, None
+            if rule is not None and method in refused:
+                method_from = rule.clause
+        elif rule is not None:
             method, method_from = rule.method, rule.clause
             refused, weight = rule.refused, rule.weight
         else:

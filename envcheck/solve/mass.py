@@ -14,8 +14,10 @@ from envcheck.model.project import (
     MaterialLayer,
     Profile,
     ResistanceLayer,
+    SectionLayer,
     TaperedLayer,
 )
+from envcheck.solve.methods.drawn_section import visible_areas
 from envcheck.solve.methods.framed import area_shares
 from envcheck.solve.methods.masonry import column_shares
 from envcheck.solve.methods.tapered import mean_thickness
@@ -71,6 +73,8 @@ def mass_of(layer: Layer) -> Mass:
         return _framed(layer)
     if isinstance(layer, MasonryLayer):
         return _masonry(layer)
+    if isinstance(layer, SectionLayer):
+        return _drawn(layer)
     assert isinstance(layer, AirSpaceLayer | ContactLayer), f"a layer of kind {layer.kind!r}"
     return NOTHING
 
@@ -111,6 +115,14 @@ def _framed(layer: FramedLayer) -> Mass:
     if layer.fill.material is not None:
         parts.append(solid(layer.fill.material, cavity * layer.thickness))
     return together(parts)
+
+
+def _drawn(layer: SectionLayer) -> Mass:
+    """What is seen of each piece, spread over the wall; air weighs nothing."""
+    pieces = zip(layer.pieces, visible_areas(layer), strict=True)
+    return together(
+        [solid(p.material, area / layer.repeat) for p, area in pieces if p.material is not None]
+    )
 
 
 def _masonry(layer: MasonryLayer) -> Mass:

@@ -12,6 +12,7 @@ from envcheck.model.project import (
     Material,
     MaterialLayer,
     ResistanceLayer,
+    SectionLayer,
     TaperedLayer,
 )
 from envcheck.model.ruleset import TableRow
@@ -113,6 +114,8 @@ def _materials(layer: Layer) -> list[Material]:
         found = [layer.member.material, layer.fill.material, *extras]
     elif isinstance(layer, MasonryLayer):
         found = [layer.material, layer.fill.material, layer.mortar, layer.grout]
+    elif isinstance(layer, SectionLayer):
+        found = [piece.material for piece in layer.pieces]
     return [material for material in found if material is not None]
 
 

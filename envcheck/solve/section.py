@@ -7,6 +7,7 @@ from itertools import pairwise
 from typing import NamedTuple
 
 from envcheck.model.project import Profile
+from envcheck.model.rectangles import cut
 
 
 class Piece(NamedTuple):
@@ -63,27 +64,11 @@ def grid(
     Returns the column widths, the row depths (m) and, for each row and column, whether a piece
     covers that cell.
     """
-    columns = _cuts([edge for piece in pieces for edge in (piece.left, piece.right)], repeat)
-    rows = _cuts([edge for piece in pieces for edge in (piece.outer, piece.inner)], depth)
-    covered = [
-        [
-            any(
-                piece.left < (left + right) / 2 < piece.right
-                and piece.outer < (outer + inner) / 2 < piece.inner
-                for piece in pieces
-            )
-            for left, right in pairwise(columns)
-        ]
-        for outer, inner in pairwise(rows)
-    ]
-    return _sizes(columns), _sizes(rows), covered
+    drawn = cut(pieces, repeat, depth)
+    covered = [[number >= 0 for number in row] for row in drawn.top]
+    return sizes(drawn.columns), sizes(drawn.rows), covered
 
 
-def _cuts(edges: Sequence[float], length: float) -> list[float]:
-    """Sorted positions from 0 to ``length``, closer ones than a nanometre merged."""
-    inside = {round(edge, 9) for edge in edges if 1e-9 < edge < length - 1e-9}
-    return [0.0, *sorted(inside), length]
-
-
-def _sizes(cuts: Sequence[float]) -> list[float]:
-    return [end - start for start, end in pairwise(cuts)]
+def sizes(lines: Sequence[float]) -> list[float]:
+    """What lies between the lines of a cut, m."""
+    return [end - start for start, end in pairwise(lines)]

@@ -2,7 +2,7 @@
 
 ``<!-- printed: COMMAND; from: A; to: B -->`` holds the lines from the first that begins with A up
 to the one that begins with B; ``<!-- printed: COMMAND; lines: A -->`` those that begin with A.
-Runs of spaces count as one. ``<!-- printed broken.yaml -->`` holds the messages about that file.
+Runs of spaces count as one. ``<!-- printed FILE.yaml -->`` holds the messages about that file.
 """
 
 from __future__ import annotations
@@ -24,7 +24,7 @@ BLOCK = re.compile(r"(<!-- printed:? ([^\n]+) -->\n```\n)(.*?)(```)", re.DOTALL)
 
 def printed(asked: str) -> str:
     """What the program prints for the mark of a block."""
-    return messages() if asked == "broken.yaml" else excerpt(asked)
+    return messages(asked) if asked.endswith(".yaml") and " " not in asked else excerpt(asked)
 
 
 def excerpt(asked: str) -> str:
@@ -50,16 +50,16 @@ def _begins(line: str, words: str) -> bool:
     return " ".join(line.lstrip(" -").split()).startswith(words)
 
 
-def messages() -> str:
-    """Every message about the broken project of the format page."""
-    ((_, text),) = blocks(PROJECT, "broken project broken.yaml")
+def messages(name: str) -> str:
+    """Every message about a broken project of the format page."""
+    ((_, text),) = blocks(PROJECT, f"broken project {re.escape(name)}")
     here = Path.cwd()
     with TemporaryDirectory() as folder:
         os.chdir(folder)
         try:
             write_rule_sets(Path("rules"))
-            Path("broken.yaml").write_text(text, encoding="utf-8")
-            arguments = ["check", "broken.yaml"]
+            Path(name).write_text(text, encoding="utf-8")
+            arguments = ["check", name]
             result = CliRunner().invoke(program, arguments, standalone_mode=False)
         finally:
             os.chdir(here)

@@ -174,6 +174,15 @@ def test_layers_have_a_value(folder: Path, category: str, layers: str) -> None:
     assert line.solved.value is not None and 0 < line.solved.value < 10
 
 
+def test_the_drawn_panel_is_bounded(folder: Path) -> None:
+    (part,) = [text for text in PARTS if "kind: section" in text]
+    solved = run(folder, with_part(part)).solved["P1"]
+    assert not solved.missing
+    assert solved.low is not None
+    assert solved.value == solved.high
+    assert solved.low < solved.high < 1.001 * solved.low
+
+
 def test_every_kind_of_layer_and_assembly_is_shown() -> None:
     schema = json.loads(schema_text("project"))["$defs"]
     shown = "".join(text for _, text in LAYERS)

@@ -197,6 +197,7 @@ NO_FUNCTION = {
     "rated": "the stated value itself",
     "effective_layer": "looked up row by row, never computed",
     "two_dimensional": "solved section by section",
+    "drawn_section": "cut into layers and air spaces, which stand above; solved section by section",
 }
 SHELLS: list[tuple[Function, int]] = [
     (lambda r, d, k, length: shells.cylinder_resistance(r, r + d, k, length), 4),

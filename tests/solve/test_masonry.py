@@ -11,6 +11,8 @@ from math import exp
 import pytest
 
 from envcheck.model.project import Fill, MasonryLayer, Slab
+from envcheck.solve.field.bound import bound
+from envcheck.solve.field.drawing import NotDrawn, section_of
 from envcheck.solve.methods.masonry import column_shares
 from envcheck.solve.wiring import bounds
 from tests.solve.drawn import solved, value, wall_of
@@ -141,3 +143,52 @@ def test_solid_units_in_the_ground_count_as_a_plane_layer() -> None:
     assert floors[0] == pytest.approx(floors[1])
     wall = solved(assembly(solid(mortar=False), kind="below-grade-wall"), "c_factor")
     assert wall.value == pytest.approx(0.77 / 0.2)
+
+
+# ------------------------------------------------------------------------- units drawn to scale
+
+# Two cores of 155 mm between webs of 30 mm in a unit of 400 mm: webs 90/400 of the area.
+TO_SCALE = MasonryLayer(
+    "masonry", "block", 1, 0.2, material("block", 1.0, "masonry"), 0.03, 0.225,
+    Fill(material("fill", 0.05, "insulation")), None, 0.0, 0.0, None, None, None, 0.4, 2,
+)  # fmt: skip
+
+
+def test_a_unit_of_stated_length_is_the_drawn_block() -> None:
+    """Value of quadratic triangles by scikit-fem 12.0.2 for the same block drawn in full."""
+    of = section_of(wall_of(TO_SCALE))
+    assert of.widths == pytest.approx((0.03, 0.155, 0.03, 0.155, 0.03))
+    found = bound(of, 2e-4)
+    assert found.low <= 1.164652 <= found.high
+
+
+def test_length_and_number_of_cells_leave_the_wirings_alone() -> None:
+    not_to_scale = bounds(wall_of(TO_SCALE._replace(length=None)))
+    for cells in (1, 2, 3):
+        assert bounds(wall_of(TO_SCALE._replace(cells=cells))) == pytest.approx(not_to_scale)
+
+
+def test_joints_are_one_beside_the_unit() -> None:
+    of = section_of(wall_of(TO_SCALE._replace(mortar=MORTAR, joint_share=0.05)))
+    assert of.widths[0] == pytest.approx(0.05 * 0.4)
+    assert [row[0] for row in of.conductivities] == pytest.approx([0.9] * 3)
+    assert sum(of.widths) == pytest.approx(0.4)
+
+
+@pytest.mark.parametrize(
+    ("change", "words"),
+    [
+        ({"length": None}, "length of the units of 'block' is not stated"),
+        ({"grout": GROUT, "grouted_share": 0.1}, "which cells of 'block' are grouted"),
+    ],
+)
+def test_units_that_are_not_drawn_say_why(change: dict[str, object], words: str) -> None:
+    with pytest.raises(NotDrawn, match=words):
+        section_of(wall_of(TO_SCALE._replace(**change)))
+
+
+def test_solid_units_with_joints_are_drawn() -> None:
+    solid = TO_SCALE._replace(web_share=1.0, shell=0.1, mortar=MORTAR, joint_share=0.05)
+    of = section_of(wall_of(solid))
+    assert of.widths == pytest.approx((0.38, 0.02))
+    assert of.conductivities[0] == pytest.approx((1.0, 0.9))

@@ -6,7 +6,7 @@ from collections.abc import Sequence
 from itertools import accumulate, pairwise
 from typing import NamedTuple
 
-from envcheck.model.layers import DrawnPoint, TaperedLayer
+from envcheck.model.layers import DrawnPoint, SectionLayer, TaperedLayer
 from envcheck.model.solved import Block
 from envcheck.solve.box import Box
 from envcheck.solve.field.drawing import NotDrawn, piece_rows
@@ -78,6 +78,7 @@ def box_of(wall: Wall, points: Sequence[DrawnPoint] = ()) -> Box:
         tuple(planes),
         wall.outside.value,
         wall.inside.value,
+        *_repeats(wall),
     )
     axes = [
         sum(members.get(way, sizes)) / 2
@@ -90,6 +91,16 @@ def box_of(wall: Wall, points: Sequence[DrawnPoint] = ()) -> Box:
         for image in _images(cell, sum(widths), sum(heights))
     ]
     return _with_cells(box, found) if found else box
+
+
+def _repeats(wall: Wall) -> tuple[bool, bool]:
+    """Whether the box repeats along the wall and up it; not where a drawing is symmetric."""
+    halves = {
+        layer.orientation
+        for layer in wall.layers
+        if isinstance(layer, SectionLayer) and layer.symmetric
+    }
+    return WAYS[0] not in halves, WAYS[1] not in halves
 
 
 def _tiled(own: tuple[float, ...] | None, repeat: float | None) -> list[float]:

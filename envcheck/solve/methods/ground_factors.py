@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from math import isclose
 
-from envcheck.model.project import Assembly, FramedLayer, MasonryLayer, Slab
+from envcheck.model.project import Assembly, FramedLayer, MasonryLayer, SectionLayer, Slab
 from envcheck.model.ruleset import Conventions, TableRow
 from envcheck.model.solved import Operand, Setting, Step
 from envcheck.solve.ground_layers import bare_wall
@@ -82,7 +82,7 @@ def solve_c_factor(assembly: Assembly, setting: Setting, conventions: Convention
     if metal:
         raise NotDecided(f"a C-factor of the metal-framed layer {metal[0]!r}: test or table")
     wall = bare_wall(assembly, setting, conventions)
-    planes = any(isinstance(layer, MasonryLayer) for layer in assembly.layers)
+    planes = any(isinstance(layer, MasonryLayer | SectionLayer) for layer in assembly.layers)
     wired = isothermal_planes(wall) if planes else parallel_paths(wall)
     if wired.resistance <= 0:
         raise NotDecided("a layer with a resistance")

@@ -41,17 +41,44 @@ def draw_masonry(layer: MasonryLayer, context: Context) -> Block:
         mortar = layer.mortar
         middle["joint"] = material_cell(f"{symbol}_joint", "joints", core, mortar)
         outer["joint"] = material_cell(f"{symbol}_joint_shell", "joints", layer.shell, mortar)
-    shares = column_shares(layer)
-    columns = [name for name in middle if shares[name] > 0]
-    faces = tuple(outer[name] for name in columns)
+    columns = unit_columns(layer)
+    faces = tuple(outer[name] for name, _ in columns)
     return Block(
         symbol,
         layer.title,
-        tuple(shares[name] for name in columns),
+        tuple(width for _, width in columns),
         (layer.shell, core, layer.shell),
-        (faces, tuple(middle[name] for name in columns), faces),
-        symbol,
+        (faces, tuple(middle[name] for name, _ in columns), faces),
+        pattern_of(layer, symbol),
+        is_to_scale(layer),
     )
+
+
+def is_to_scale(layer: MasonryLayer) -> bool:
+    """Whether one unit can be drawn: its length is stated, and no single cells are grouted."""
+    return layer.length is not None and layer.grouted_share == 0
+
+
+def pattern_of(layer: MasonryLayer, symbol: str) -> str:
+    """Units drawn to scale stand in line with members of the same spacing that run upright."""
+    return f"vertical@{layer.length:.6f}" if is_to_scale(layer) else symbol
+
+
+def unit_columns(layer: MasonryLayer) -> list[tuple[str, float]]:
+    """Columns of one unit from left to right with their widths, m; shares where not to scale.
+
+    To scale: the joint, then webs of one width with the cells between them, so that webs, cells
+    and joint have their shares of the area. Bed joints are counted in the joint beside the unit.
+    """
+    shares = column_shares(layer)
+    if not is_to_scale(layer):
+        return [(name, share) for name, share in shares.items() if share > 0]
+    assert layer.length is not None, "see is_to_scale"
+    web = shares["web"] * layer.length / (layer.cells + 1)
+    cell = shares["cell"] * layer.length / layer.cells
+    joint = shares["joint"] * layer.length
+    unit = [("web", web), *[("cell", cell), ("web", web)] * layer.cells]
+    return [("joint", joint), *unit] if joint > 0 else unit
 
 
 def _draw_solid(layer: MasonryLayer, context: Context) -> Block:
@@ -60,7 +87,16 @@ def _draw_solid(layer: MasonryLayer, context: Context) -> Block:
         return homogeneous(material_cell(symbol, layer.title, depth, layer.material), depth)
     unit = material_cell(f"{symbol}_unit", "solid units", depth, layer.material)
     joint = material_cell(f"{symbol}_joint", "joints", depth, layer.mortar)
-    return Block(symbol, layer.title, (1.0 - joints, joints), (depth,), ((unit, joint),), symbol)
+    whole = layer.length or 1.0
+    return Block(
+        symbol,
+        layer.title,
+        ((1.0 - joints) * whole, joints * whole),
+        (depth,),
+        ((unit, joint),),
+        pattern_of(layer, symbol),
+        is_to_scale(layer),
+    )
 
 
 def _cell_resistor(layer: MasonryLayer, core: float, context: Context) -> Resistor:
@@ -77,7 +113,8 @@ METHODS = (
         formula="shells in series with the plane of webs beside cells",
         source="ASHRAE Handbook - Fundamentals, isothermal planes for concrete masonry; NCMA and "
         "ACI 122R describe the same series-parallel calculation",
-        valid="units with two face shells; partly grouted walls by area",
+        valid="units with two face shells; partly grouted walls by area; drawn to scale where the "
+        "length of a unit is stated",
         draws=(("masonry", draw_masonry),),
     ),
 )

@@ -68,7 +68,7 @@ def test_layers_without_members_have_no_gap() -> None:
 def test_the_chain_of_bounds_holds_on_random_sections() -> None:
     """parallel paths <= low <= high <= isothermal planes, never violated."""
     rng = np.random.default_rng(20260302)
-    for of in accepted(random_section, rng, 300):
+    for of in accepted(random_section, rng, 500):
         found = bound(of, 1e-2, most_rounds=4)
         low, high = wide(of)
         slack = 1.0 + 1e-9
