@@ -5,6 +5,7 @@ from __future__ import annotations
 import click
 
 from envcheck.cli import options
+from envcheck.cli.progress import progress
 from envcheck.cli.writing import deliver
 from envcheck.report import registry
 
@@ -40,14 +41,15 @@ def compare(
 
     if old == new == "-":
         raise click.UsageError("one of the two may be standard input, not both")
-    before, now = pipeline.run_both(old, new, rules)
     asked = ViewOptions(units=units or "", width=options.width(output))
-    made = revisions.build(
-        revisions.Side(before.project, before.rulesets),
-        revisions.Side(now.project, now.rulesets),
-        pipeline.compared(before, now),
-        asked,
-    )
+    with progress(f"comparing {old} and {new}"):
+        before, now = pipeline.run_both(old, new, rules)
+        made = revisions.build(
+            revisions.Side(before.project, before.rulesets),
+            revisions.Side(now.project, now.rulesets),
+            pipeline.compared(before, now),
+            asked,
+        )
     answer = registry.format_named(format_name).answer
     assert answer is not None
     deliver(answer(made, asked.width), output, (old, new))

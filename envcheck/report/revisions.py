@@ -99,7 +99,7 @@ def _lines(project: Project, compared: Compared, words: Words) -> list[Section]:
     entries = [
         (
             _place(project, change.after),
-            f"{numbers.symbol(change.after.metric)}: {', '.join(map(_aspect, change.aspects))}",
+            f"{_which(project, change.after)}: {', '.join(map(_aspect, change.aspects))}",
             causes(change, words),
         )
         for change in ordered
@@ -109,6 +109,12 @@ def _lines(project: Project, compared: Compared, words: Words) -> list[Section]:
         Section("Lines that changed", (_grid(project, ordered, words.system), table)),
         Section("What caused it", (Items(grouped(entries)),)),
     ]
+
+
+def _which(project: Project, line: Line) -> str:
+    """The letter of a line, with its rule set where there are several."""
+    letter = numbers.symbol(line.metric)
+    return clean(f"{letter} by {line.ruleset}") if len(project.rule_sets) > 1 else letter
 
 
 def _aspect(name: str) -> str:
@@ -133,6 +139,7 @@ def _grade(line: Line) -> int:
 
 def _grid(project: Project, changes: Iterable[LineChange], system: str) -> Grid:
     found, tones = [], []
+    several = len(project.rule_sets) > 1
     for change in changes:
         a, b = change.before, change.after
         element = project.elements.get(b.element)
@@ -146,11 +153,23 @@ def _grid(project: Project, changes: Iterable[LineChange], system: str) -> Grid:
                 clean(said.against(b) if same_limit else _limits(a, b)),
                 said.verdict_text(a),
                 "the same" if a.verdict == b.verdict else said.verdict_text(b),
+                *([clean(b.ruleset)] if several else []),
             )
         )
         tones.append("bad" if _grade(b) == 2 else "open" if b.open else "good")
-    heads = ("tag", "sheet", "before", "now", "limit", "verdict before", "verdict now")
-    return Grid(heads, tuple(found), (2, 3, 4), (5, 6, 4), tuple(tones))
+    heads: tuple[str, ...] = (
+        "tag",
+        "sheet",
+        "before",
+        "now",
+        "limit",
+        "verdict before",
+        "verdict now",
+    )
+    wrap: tuple[int, ...] = (5, 6, 4)
+    if several:
+        heads, wrap = (*heads, "rule set"), (5, 6, 7, 4)
+    return Grid(heads, tuple(found), (2, 3, 4), wrap, tuple(tones))
 
 
 def _limits(a: Line, b: Line) -> str:

@@ -312,6 +312,18 @@ def test_a_material_is_a_cause_where_it_is_used(revise: object) -> None:
         assert [short(d) for d in line.causes] == ["xps conductivity"]
 
 
+def test_lines_of_several_rule_sets_are_compared_each_with_its_own(revise: object) -> None:
+    found = revise(  # type: ignore[operator]
+        ("rule_sets: [quillhaven-2025-3]", "rule_sets: [quillhaven-2025-3, merrow-2025]"),
+        ("thickness: 2.5 in", "thickness: 1.5 in"),
+    )
+    assert {c.after.ruleset for c in found.changed} == {"quillhaven-2025-3"}
+    assert {line.ruleset for line in found.added} == {"merrow-2025"}
+    assert [(d.name, d.what) for d in found.differences if d.kind == "rule_set"] == [
+        ("merrow-2025", "added")
+    ]
+
+
 def test_a_fact_touches_only_lines_that_ask_for_it(revise: object) -> None:
     found = revise(  # type: ignore[operator]
         ("slab_heated:    {value: no,", "slab_heated:    {value: yes,"),
