@@ -3,9 +3,8 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterable
+from collections.abc import Collection, Iterable
 
-from envcheck.report import tabular
 from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, Paragraph, Picture
 
 COLOURS = {"bad": "\x1b[31m", "open": "\x1b[33m", "good": "\x1b[32m"}
@@ -124,25 +123,38 @@ def grid(block: Grid, width: int, colour: bool) -> list[str]:
             if len(cell) > widths[column]:
                 widths[column] = len(cell)
     _narrow(widths, block, width)
-    lines = [*_physical(block.heads, widths, ""), ["-" * width for width in widths]]
+    lines = [*_physical(block.heads, widths), ["-" * width for width in widths]]
+    tones = [""] * len(lines)
     for number, row in enumerate(block.rows):
+        made = _physical(row, widths)
+        lines += made
         tone = COLOURS.get(block.tones[number], "") if colour and block.tones else ""
-        lines += _physical(row, widths, tone)
-    return tabular.lines(lines, block.right, "plain")
+        tones += [tone] * len(made)
+    return _set(lines, tones, block.right)
 
 
-def _physical(row: tuple[str, ...], widths: list[int], tone: str) -> list[list[str]]:
+def _set(lines: list[list[str]], tones: list[str], right: Collection[int]) -> list[str]:
+    """Set the cells of each line flush; a tone colours the last of them."""
+    columns = enumerate(zip(*lines, strict=True))
+    flush = [
+        f"{{:{'>' if number in right else '<'}{max(map(len, cells))}}}" for number, cells in columns
+    ]
+    form = (" " * GAP).join(flush).format
+    found = []
+    for cells, tone in zip(lines, tones, strict=True):
+        line, last = form(*cells).rstrip(), cells[-1]
+        coloured = tone and last
+        found.append(f"{line[: -len(last)]}{tone}{last}{PLAIN}" if coloured else line)
+    return found
+
+
+def _physical(row: tuple[str, ...], widths: list[int]) -> list[list[str]]:
     """One table row as lines of cells, broken where a cell is wider than its column."""
     if all(len(cell) <= width for cell, width in zip(row, widths, strict=True)):
-        lines = [list(row)]
-    else:
-        columns = [wrap(cell, width) for cell, width in zip(row, widths, strict=True)]
-        deep = max(map(len, columns))
-        lines = [[c[n] if n < len(c) else "" for c in columns] for n in range(deep)]
-    if tone:
-        for line in lines:
-            line[-1] = f"{tone}{line[-1]}{PLAIN}" if line[-1] else ""
-    return lines
+        return [[cell.strip() for cell in row]]
+    columns = [wrap(cell, width) for cell, width in zip(row, widths, strict=True)]
+    deep = max(map(len, columns))
+    return [[c[n].strip() if n < len(c) else "" for c in columns] for n in range(deep)]
 
 
 def _narrow(widths: list[int], block: Grid, width: int) -> None:
