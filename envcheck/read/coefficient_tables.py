@@ -5,13 +5,12 @@ from __future__ import annotations
 from collections.abc import Mapping
 from csv import DictReader
 from functools import lru_cache
-from importlib.resources import files
-from io import StringIO
 from typing import NamedTuple
 
 from envcheck import units
 from envcheck.errors import Problem, did_you_mean, one_of, problem
 from envcheck.model.ruleset import TableRow
+from envcheck.read.materials import DATA
 from envcheck.read.rule_documents import Document
 from envcheck.read.sheets import is_plain, read_lines
 
@@ -75,8 +74,8 @@ WORDS = {
 
 @lru_cache(maxsize=8)
 def _data(name: str) -> tuple[dict[str, str], ...]:
-    text = (files("envcheck") / "data" / name).read_text(encoding="utf-8")
-    return tuple(DictReader(StringIO(text)))
+    with (DATA / name).open(encoding="utf-8", newline="") as lines:
+        return tuple(DictReader(lines))
 
 
 @lru_cache(maxsize=8)

@@ -65,6 +65,8 @@ def project_from_bytes(raw: bytes, shown: str, folder: FilePath, names: Names) -
 
 def _check_refused(context: Context, data: Entry, wrong: set[Path]) -> None:
     """Read at least the quantities of what the schema refused, so that one round mends them."""
+    if not wrong:
+        return
     known = quantities("project")
     told = {made.line for made in context.problems if made.kind.id != "unknown-key"}
     for path in sorted(wrong, key=str):
@@ -110,7 +112,7 @@ class _Sections:
 
     def names(self, name: str) -> dict[str, Any]:
         """All entries that may be referred to; those of a misspelt section count as well."""
-        if name in self.data:
+        if name in self.data or not self.wrong:
             return self.mapping(name)
         from difflib import get_close_matches  # only where something is wrong
 
