@@ -1,13 +1,15 @@
 """A quick yes for what is plainly valid, so that JSON Schema runs only where something is wrong.
 
 The plain cases of a schema (type, enum, const, lengths, bounds, closed objects, items, and kinds
-told apart by if/then on a const) are laid out once as plans. A plan never says yes to what the
-schema refuses; where it says no, jsonschema decides and words the error.
+told apart by if/then on a const) are laid out once as plans, each when data first asks for it: a
+file uses a small part of the keys and kinds that its schema knows. A plan never says yes to what
+the schema refuses; where it says no, jsonschema decides and words the error.
 """
 
 from __future__ import annotations
 
 import re
+from collections.abc import Callable
 from dataclasses import dataclass, field
 from typing import Any
 
@@ -44,6 +46,8 @@ class Plan:
     above: float = float("-inf")
     high: float = float("inf")
     keys: dict[str, Plan] = field(default_factory=dict)
+    """Of ``properties``, those met so far."""
+    properties: dict[str, Any] = field(default_factory=dict)
     patterns: tuple[tuple[re.Pattern[str], Plan], ...] = ()
     others: Plan | None = None
     key_shortest: int = 0
@@ -55,6 +59,11 @@ class Plan:
     kind_key: str = ""
     kind_default: str | None = None
     kinds: dict[str, Plan] = field(default_factory=dict)
+    """Those met so far."""
+    branches: dict[str, Any] = field(default_factory=dict)
+    """Kind -> its schema."""
+    of: Callable[[Any], Plan] = field(kw_only=True)
+    """Gives the plan of a subschema."""
     never: bool = False
 
     def holds(self, value: Any) -> bool:
@@ -80,7 +89,9 @@ class Plan:
         plan = self
         if self.kind_key:
             kind = value.get(self.kind_key, self.kind_default)
-            found = self.kinds.get(kind) if kind.__class__ is str else None
+            if kind.__class__ is not str:
+                return False
+            found = self.kinds.get(kind) or self._kind(kind)
             if found is None:
                 return False
             plan = found
@@ -98,7 +109,16 @@ class Plan:
                 return False
         return True
 
+    def _kind(self, kind: str) -> Plan | None:
+        """Plan of a kind that is met for the first time; None for one that nobody knows."""
+        if kind not in self.branches:
+            return None
+        return self.kinds.setdefault(kind, self.of(self.branches[kind]))
+
     def _other(self, key: str) -> Plan | None:
+        """Plan of a key that is met for the first time, or that has no name of its own."""
+        if key in self.properties:
+            return self.keys.setdefault(key, self.of(self.properties[key]))
         for pattern, sub in self.patterns:
             if pattern.search(key):
                 return sub
@@ -106,9 +126,11 @@ class Plan:
 
 
 class Plans:
-    """Plans of all subschemas of one schema whose references are written out."""
+    """Plans of the subschemas of one schema."""
 
-    def __init__(self, schema: dict[str, Any]) -> None:
+    def __init__(self, schema: dict[str, Any], defs: dict[str, Any] | None = None) -> None:
+        """``defs``: what its references refer to; none where they are written out."""
+        self._defs = defs or {}
         self._by_id: dict[int, Plan] = {}
         self.root = self.of(schema)
 
@@ -121,8 +143,12 @@ class Plans:
 
     def _make(self, schema: Any) -> Plan:
         if not isinstance(schema, dict):
-            return Plan(never=True)
-        plan = Plan(never=bool(schema.keys() - _KNOWN - _NOTES))
+            return Plan(of=self.of, never=True)
+        if "$ref" in schema:
+            target = self._defs[schema["$ref"].removeprefix("#/$defs/")]
+            rest = {key: value for key, value in schema.items() if key != "$ref"}
+            return self._make({**target, **rest}) if rest else self.of(target)
+        plan = Plan(of=self.of, never=bool(schema.keys() - _KNOWN - _NOTES))
         names = schema.get("type", "object" if "properties" in schema else ())
         for name in (names,) if isinstance(names, str) else names:
             plan.types |= frozenset(_TYPES[name])
@@ -151,7 +177,7 @@ class Plans:
             plan.never = True
 
     def _mapping(self, plan: Plan, schema: dict[str, Any]) -> None:
-        plan.keys = {key: self.of(sub) for key, sub in schema.get("properties", {}).items()}
+        plan.properties = schema.get("properties", {})
         plan.patterns = tuple(
             (re.compile(pattern), self.of(sub))
             for pattern, sub in schema.get("patternProperties", {}).items()
@@ -175,6 +201,6 @@ class Plans:
                 plan.never = True
                 return
             plan.kind_key = key
-            plan.kinds[test["const"]] = self.of(branch["then"])
+            plan.branches[test["const"]] = branch["then"]
             if "required" not in branch["if"]:
                 plan.kind_default = test["const"]

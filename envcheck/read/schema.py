@@ -23,11 +23,25 @@ def schema_text(name: str) -> str:
 
 
 @lru_cache(maxsize=4)
-def _schema(name: str) -> tuple[dict[str, Any], Plans]:
-    """Load a schema with its references written out (a fifth of the cost of following them)."""
-    raw = json.loads(schema_text(name))
-    whole: dict[str, Any] = _written_out(raw, raw.pop("$defs", {}), {})
-    return whole, Plans(whole)
+def _raw(name: str) -> dict[str, Any]:
+    found: dict[str, Any] = json.loads(schema_text(name))
+    return found
+
+
+@lru_cache(maxsize=4)
+def _plans(name: str) -> Plans:
+    """Plans of a schema as it stands: what a sound file does not ask for is never laid out."""
+    raw = _raw(name)
+    return Plans(raw, raw.get("$defs", {}))
+
+
+@lru_cache(maxsize=4)
+def _schema(name: str) -> dict[str, Any]:
+    """A schema with its references written out (a fifth of the cost of following them)."""
+    raw = _raw(name)
+    body = {key: value for key, value in raw.items() if key != "$defs"}
+    whole: dict[str, Any] = _written_out(body, raw.get("$defs", {}), {})
+    return whole
 
 
 def _written_out(node: Any, defs: dict[str, Any], done: dict[str, Any]) -> Any:
@@ -51,9 +65,9 @@ def check(data: Entry, name: str, file: str) -> list[Problem]:
 
 def check_paths(data: Entry, name: str, file: str) -> list[tuple[Path, Problem]]:
     """Give all problems with the path of the entry that each is about."""
-    schema, plans = _schema(name)
-    if plans.root.holds(data):
+    if _plans(name).root.holds(data):
         return []
+    schema = _schema(name)
     found: list[tuple[str, Path, Problem]] = []
     for error in _validator(name).iter_errors(data):
         for key, path, made in worded(error, data, file, schema):
@@ -69,7 +83,8 @@ def _validator(name: str) -> Any:
     from jsonschema import Draft202012Validator
     from jsonschema.validators import extend
 
-    schema, plans = _schema(name)
+    schema = _schema(name)
+    plans = Plans(schema)
 
     def properties(validator: Any, subs: Any, data: Any, _: Any) -> Iterator[Any]:
         for key, sub in subs.items() if isinstance(data, dict) else ():
@@ -110,7 +125,7 @@ def quantities(name: str) -> dict[str, str]:
         for inner in node if isinstance(node, list) else ():
             collect(inner)
 
-    collect(_schema(name)[0])
+    collect(_schema(name))
     return {key: next(iter(kinds)) for key, kinds in found.items() if len(kinds) == 1}
 
 
