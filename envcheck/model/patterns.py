@@ -1,7 +1,5 @@
 """Category patterns: ``wall.*`` covers every wall."""
 
-from __future__ import annotations
-
 from collections.abc import Iterable
 from fnmatch import fnmatchcase
 
@@ -13,12 +11,20 @@ def closeness(pattern: str, name: str) -> int:
     """How closely a pattern fits a name: the letters that it fixes; -1 where it does not fit."""
     if pattern == name:
         return EXACT
-    return len(pattern.replace("*", "")) if fnmatchcase(name, pattern) else -1
+    return len(pattern.replace("*", "")) if _fits(pattern, name) else -1
 
 
 def matches(pattern: str, name: str) -> bool:
     """Whether a name falls under a pattern such as ``wall.*`` or ``*``."""
-    return pattern == name or fnmatchcase(name, pattern)
+    return pattern == name or _fits(pattern, name)
+
+
+def _fits(pattern: str, name: str) -> bool:
+    """``fnmatchcase``, which makes a regular expression of each pattern, for the unusual ones."""
+    head, star, rest = pattern.partition("*")
+    if rest or "?" in head or "[" in head:
+        return fnmatchcase(name, pattern)
+    return name.startswith(head) if star else name == head
 
 
 def fits_any(pattern: str, names: Iterable[str]) -> bool:

@@ -17,10 +17,10 @@ import yaml
 
 from envcheck.errors import Problem, problem
 from envcheck.read.yaml_text import (
-    CONTROLS,
     MOST_PROBLEMS,
     check_bytes,
     control_characters,
+    controls,
     syntax_problem,
 )
 
@@ -262,7 +262,7 @@ class _Builder:
             self.add("yaml-tag", line, found=event.tag)
 
     def _escaped(self, text: str, line: int) -> None:
-        match = CONTROLS.search(text)
+        match = controls().search(text)
         if match:
             self.add("control-character", line, found=f"U+{ord(match[0]):04X}")
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+from functools import cache
 from typing import Any
 
 import yaml
@@ -10,12 +11,16 @@ import yaml
 from envcheck.errors import Problem, problem
 
 MOST_PROBLEMS = 50
-CONTROLS = re.compile(
-    r"[\x00-\x08\x0b\x0c\x0e-\x1f\x7f-\x9f\u202a-\u202e\u2066-\u2069\ud800-\udfff\ufffe\uffff]"
-)
-"""Control characters, and marks that turn the direction of writing."""
 _TURNING = re.compile(rb"\xe2(?:\x80[\xaa-\xae]|\x81[\xa6-\xa9])")
 _NEXT_LINE = b"\xc2\x85"
+
+
+@cache
+def controls() -> re.Pattern[str]:
+    """Control characters, and marks that turn the direction of writing; few files need it."""
+    return re.compile(
+        r"[\x00-\x08\x0b\x0c\x0e-\x1f\x7f-\x9f\u202a-\u202e\u2066-\u2069\ud800-\udfff\ufffe\uffff]"
+    )
 
 
 def check_bytes(raw: bytes, file: str) -> list[Problem]:
@@ -37,7 +42,7 @@ def control_characters(text: str, file: str) -> list[Problem]:
     """List the lines with control characters, the first ones only."""
     found = []
     for number, line in enumerate(text.split("\n"), 1):
-        match = CONTROLS.search(line)
+        match = controls().search(line)
         if match:
             character = f"U+{ord(match[0]):04X}"
             found.append(problem("control-character", file, number, found=character))
