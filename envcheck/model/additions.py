@@ -1,7 +1,5 @@
 """What an assembly says beside its layers: voids, rain, how it is bent. All numbers SI."""
 
-from __future__ import annotations
-
 from typing import NamedTuple
 
 

@@ -1,7 +1,5 @@
 """What would settle a line: changes of an assembly with what each promises, all numbers SI."""
 
-from __future__ import annotations
-
 from typing import NamedTuple
 
 from envcheck.model.judged import Line

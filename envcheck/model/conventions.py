@@ -1,7 +1,5 @@
 """How a code counts: films, methods, class tests, coefficient tables."""
 
-from __future__ import annotations
-
 from collections.abc import Mapping
 from types import MappingProxyType
 from typing import NamedTuple

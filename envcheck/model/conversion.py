@@ -1,7 +1,5 @@
 """From a declared to a design conductivity: the formula and what a material states for it."""
 
-from __future__ import annotations
-
 from math import e
 from typing import NamedTuple
 

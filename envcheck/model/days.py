@@ -1,7 +1,5 @@
 """Days as numbers, so that a period is an interval like any other."""
 
-from __future__ import annotations
-
 from datetime import date
 
 

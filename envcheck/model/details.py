@@ -3,8 +3,6 @@
 x runs to the right and y upwards, both in m from the lower left corner of the drawing.
 """
 
-from __future__ import annotations
-
 import itertools
 from collections.abc import Mapping, Sequence
 from typing import NamedTuple

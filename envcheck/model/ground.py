@@ -1,7 +1,5 @@
 """What stands on or in the ground, as read: numbers SI, None where nothing is stated."""
 
-from __future__ import annotations
-
 from typing import NamedTuple
 
 from envcheck.model.layers import Layer

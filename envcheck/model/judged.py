@@ -1,7 +1,5 @@
 """Lines with verdicts, findings, sums: what judging hands to the report."""
 
-from __future__ import annotations
-
 from dataclasses import dataclass
 from math import fsum
 from typing import NamedTuple

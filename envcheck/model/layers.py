@@ -4,8 +4,6 @@ The order of layers is always from outside to inside. ``line`` is the line in th
 where a thing starts, for messages of later stages.
 """
 
-from __future__ import annotations
-
 from typing import TYPE_CHECKING, NamedTuple
 
 from envcheck.model.conversion import Conversion
@@ -349,7 +347,7 @@ class Bridge(NamedTuple):
     source: str
     evidence: str
     line: int
-    detail: Detail | None = None
+    detail: "Detail | None" = None
     """The drawing that gives psi."""
     drawn: DrawnPoint | None = None
     """Of a point bridge; its ``value`` is then NaN where no chi is stated."""

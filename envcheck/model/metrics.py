@@ -1,7 +1,5 @@
 """What a printed limit may speak of: "R" alone is six different things."""
 
-from __future__ import annotations
-
 from typing import NamedTuple
 
 

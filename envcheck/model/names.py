@@ -1,7 +1,5 @@
 """The names that later stages know, handed to ``read`` so that it can check and suggest them."""
 
-from __future__ import annotations
-
 from typing import NamedTuple
 
 

@@ -4,8 +4,6 @@ The order of layers is always from outside to inside. ``line`` is the line in th
 where a thing starts, for messages of later stages.
 """
 
-from __future__ import annotations
-
 from dataclasses import dataclass, field
 from datetime import date
 from typing import TYPE_CHECKING, NamedTuple
@@ -362,6 +360,6 @@ class Project:
     ranged: bool = False
     """Some value of it is stated with a range."""
     sha256: str = ""
-    details: dict[str, Detail] = field(default_factory=dict)
+    details: "dict[str, Detail]" = field(default_factory=dict)
     """Drawn junctions, by id."""
     lines: dict[str, int] = field(default_factory=dict, compare=False, repr=False)

@@ -1,7 +1,5 @@
 """Rectangles of a drawing put on the grid of their own edges: later ones lie on top."""
 
-from __future__ import annotations
-
 from bisect import bisect_left, bisect_right
 from collections.abc import Sequence
 from typing import NamedTuple

@@ -4,8 +4,6 @@ Limits keep the printed text and unit of their cell: the comparison is made in t
 so ``Term.number`` is the printed number, the one exception to SI inside.
 """
 
-from __future__ import annotations
-
 from collections.abc import Mapping
 from datetime import date
 from types import MappingProxyType

@@ -1,7 +1,5 @@
 """What an assembly's network gives: value, bracket, tree and worksheet, all numbers SI."""
 
-from __future__ import annotations
-
 from typing import NamedTuple
 
 
@@ -48,7 +46,7 @@ class Series(NamedTuple):
     """Parts one behind another."""
 
     title: str
-    parts: tuple[Node, ...]
+    parts: tuple["Node", ...]
     value: float
 
 
@@ -57,7 +55,7 @@ class Parallel(NamedTuple):
 
     title: str
     shares: tuple[float, ...]
-    branches: tuple[Node, ...]
+    branches: tuple["Node", ...]
     value: float
 
 

@@ -1,7 +1,5 @@
 """Windows, doors and curtain walls by their parts, and the glazing itself; all numbers SI."""
 
-from __future__ import annotations
-
 from typing import NamedTuple
 
 from envcheck.model.layers import Layer
@@ -118,7 +116,7 @@ class Window(NamedTuple):
     frames: tuple[FramePart, ...]
     joints: tuple[Joint, ...] = ()
     sources: tuple[str, ...] = ()
-    inner: Window | None = None
+    inner: "Window | None" = None
     """A second window of the same size behind this one."""
     between: Between | None = None
 
