@@ -158,15 +158,16 @@ class _Builder:
     def _consume(self, get_event: Any) -> None:
         """Build the root from events; one loop, since it runs 10^5 times for a large file."""
         scalar, close = yaml.ScalarEvent, (yaml.MappingEndEvent, yaml.SequenceEndEvent)
+        open_ = (yaml.MappingStartEvent, yaml.SequenceStartEvent)
         here: Any = None
         key: Any = None
         while (event := get_event()) is not None:
             kind = event.__class__
             if kind is scalar:
-                line = event.start_mark.line + 1
                 text = event.value
                 plain = not (event.style or event.anchor or event.tag)
                 if key is None and here.__class__ is Entry:
+                    line = event.start_mark.line + 1
                     if plain and text not in here.lines and text.isprintable() and text != "<<":
                         here.lines[text] = line
                         key = text
@@ -174,8 +175,12 @@ class _Builder:
                         key = self._key(event, here, line)
                     continue
                 if plain and text and text[0] not in _START:
-                    value = text
+                    if key is not None and key is not _DISCARD:
+                        here[key], key = text, None
+                        continue
+                    value, line = text, event.start_mark.line + 1
                 else:
+                    line = event.start_mark.line + 1
                     value = self._scalar(event, line)
             elif kind in close:
                 value, line = here, here.line
@@ -183,15 +188,15 @@ class _Builder:
                 if key is _COMPLEX:
                     key = _DISCARD
                     continue
+            elif kind in open_:
+                here, key = self._open(event, here, key), None
+                continue
             elif kind is yaml.AliasEvent:
                 line = event.start_mark.line + 1
                 key, value = self._alias(event, key, line), None
                 if here.__class__ is Entry and key is _COMPLEX:
                     key = _DISCARD
                     continue
-            elif kind is yaml.MappingStartEvent or kind is yaml.SequenceStartEvent:
-                here, key = self._open(event, here, key), None
-                continue
             else:
                 self._document(event)
                 continue

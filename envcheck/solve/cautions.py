@@ -73,13 +73,13 @@ def cautions(assembly: Assembly) -> tuple[Caution, ...]:
 
 def insulation_of(layer: Layer) -> bool:
     """Whether a layer is insulation or holds insulation between its members."""
-    if isinstance(layer, FramedLayer | MasonryLayer):
+    if isinstance(layer, (MaterialLayer, TaperedLayer, ResistanceLayer)):
+        return is_insulation(layer.material)
+    if isinstance(layer, (FramedLayer, MasonryLayer)):
         return layer.fill.label is not None or is_insulation(layer.fill.material)
     if isinstance(layer, SectionLayer):
         return any(is_insulation(piece.material) for piece in layer.pieces)
-    if not isinstance(layer, MaterialLayer | TaperedLayer | ResistanceLayer):
-        return False
-    return is_insulation(layer.material)
+    return False
 
 
 def is_insulation(material: Material | None) -> bool:
@@ -91,17 +91,17 @@ def is_combustible(layer: Layer) -> bool:
     """Whether the material of a layer, or of its infill, is marked combustible."""
     if isinstance(layer, MaterialLayer):
         return layer.material.combustible
-    if isinstance(layer, FramedLayer | MasonryLayer):
+    if isinstance(layer, (FramedLayer, MasonryLayer)):
         return layer.fill.material is not None and layer.fill.material.combustible
     if isinstance(layer, SectionLayer):
         return any(p.material is not None and p.material.combustible for p in layer.pieces)
-    if not isinstance(layer, TaperedLayer | ResistanceLayer) or layer.material is None:
+    if not isinstance(layer, (TaperedLayer, ResistanceLayer)) or layer.material is None:
         return False
     return layer.material.combustible
 
 
 def _is_masonry(layer: Layer) -> bool:
-    if isinstance(layer, MaterialLayer | ResistanceLayer):
+    if isinstance(layer, (MaterialLayer, ResistanceLayer)):
         return layer.material is not None and layer.material.material_class in MASONRY
     if isinstance(layer, SectionLayer):
         return any(

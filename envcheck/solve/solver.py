@@ -50,11 +50,12 @@ class Solver:
         setting = resolver.resolve(element, assembly, category, metric)
         area = element.net_area if element.bridges else None
         key = (assembly.id, setting, element.bridges, area)
-        if key not in self._found:
-            self._found[key] = self._solved(assembly, ruleset, key)
-            self._keys[id(self._found[key])] = key
-        self.first.setdefault(assembly.id, self._found[key])
-        return self._found[key]
+        found = self._found.get(key)
+        if found is None:
+            found = self._found[key] = self._solved(assembly, ruleset, key)
+            self._keys[id(found)] = key
+        self.first.setdefault(assembly.id, found)
+        return found
 
     def _solved(self, assembly: Assembly, ruleset: RuleSet, key: _Key) -> Solved:
         _, setting, bridges, area = key

@@ -251,11 +251,14 @@ def _sum_step(
     known = {} if known is None else known
     operands = []
     for part in tree.parts:
-        if isinstance(part, Resistor) and not is_nothing(part.value):
-            operand = known.get(part.symbol)
-            if operand is None:
-                operand = known[part.symbol] = Operand(part.symbol, part.value, "resistance")
-            operands.append(operand)
+        if not isinstance(part, Resistor):
+            continue
+        operand = known.get(part.symbol)
+        if operand is None:
+            if is_nothing(part.value):
+                continue
+            operand = known[part.symbol] = Operand(part.symbol, part.value, "resistance")
+        operands.append(operand)
     expression = _sum_of(tuple([operand[0] for operand in operands]))
     return Step(symbol, title, expression, tuple(operands), tree.value, "resistance")
 

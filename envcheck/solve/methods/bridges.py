@@ -13,6 +13,7 @@ from envcheck.solve.registry import Method
 if TYPE_CHECKING:
     from envcheck.model.details import Detail
 
+NONE = Correction(0)
 UNCONFIRMED = ("", "assumed")
 """Kinds of evidence that decide nothing."""
 
@@ -37,6 +38,8 @@ def correct_for_bridges(
     bound (loads numpy and scipy). A bridge without a confirmed source, or without the
     area it needs, is named as missing and not counted.
     """
+    if not bridges:
+        return NONE
     steps: list[Step] = []
     missing: list[str] = []
     unsure = 0.0
