@@ -15,6 +15,9 @@ from envcheck.report.inert import clean
 from envcheck.report.parts import Pair
 from envcheck.report.rows import Figure
 
+NEAR = 0.006
+"""No number farther than this from one of two decimals is rounded to it."""
+
 
 class PartView(NamedTuple):
     """Elements of one assembly in a sum: amount times value, amount times limit."""
@@ -210,9 +213,11 @@ def _part(whole: Part, members: Sequence[Part], project: Project, system: str) -
 def _enough(value: float, amount: str, product: str, metric: str, system: str) -> str:
     """Write a value with as few digits as give the printed product."""
     shown, text = _shown(value, metric, system), ""
+    times, wanted = float(amount), float(product)
     for digits in range(2, 13):
         text = numbers.significant(shown, digits)
-        if numbers.fixed(float(text) * float(amount), 2) == product:
+        near = abs(float(text) * times - wanted) < NEAR
+        if near and numbers.fixed(float(text) * times, 2) == product:
             return text
     return text
 
