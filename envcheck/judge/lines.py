@@ -105,8 +105,9 @@ def judge_lines(
             if by:
                 solves = metric if by == "own" else own
                 solved = solve(element, assembly, found.category, solves, ruleset)
-            scope = case._replace(selection=selection.of_scope(metric, applies_to))
-            lines.append(judge(scope, metric, solved))
+            scope = selection.of_scope(metric, applies_to)
+            own_case = case if scope is selection else case._replace(selection=scope)
+            lines.append(judge(own_case, metric, solved))
     return lines
 
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
+from functools import lru_cache
 
 from envcheck.judge.compare import rounded
 from envcheck.model.judged import Line
@@ -92,6 +93,7 @@ def lines_by_assembly(lines: Iterable[Line], project: Project) -> dict[str, list
     return found
 
 
+@lru_cache(maxsize=4096)  # titles repeat from wall to wall
 def names(title: str, *words: str) -> bool:
     """Whether a title holds one of these words or groups of words, whole and in any case."""
     plain = "".join(letter if letter.isalnum() else " " for letter in title.casefold())

@@ -177,6 +177,8 @@ def _parts(parts: Sequence[Part], project: Project, system: str) -> tuple[PartVi
         found.setdefault(key, []).append(part)
     sums = [
         members[0]._replace(amount=fsum(part.amount for part in members))
+        if len(members) > 1
+        else members[0]
         for members in found.values()
     ]
     views = [

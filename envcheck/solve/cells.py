@@ -2,13 +2,21 @@
 
 from __future__ import annotations
 
+from functools import lru_cache
+
 from envcheck.model.project import Material
 from envcheck.model.solved import Block, Operand, Resistor, Step
 from envcheck.solve.network import plane_wall
 
 
 def material_cell(symbol: str, title: str, depth: float, material: Material) -> Resistor:
-    """A depth (m) of a material: R = L/k."""
+    """A depth (m) of a material: R = L/k. Numbers are worked once for all walls, arrays anew."""
+    if type(depth) is float and type(material.conductivity) is float:
+        return _remembered(symbol, title, depth, material)
+    return _material_cell(symbol, title, depth, material)
+
+
+def _material_cell(symbol: str, title: str, depth: float, material: Material) -> Resistor:
     value = plane_wall(depth, material.conductivity)
     length, name = Operand("L", depth, "length"), "k"
     before: tuple[Step, ...] = ()
@@ -21,6 +29,9 @@ def material_cell(symbol: str, title: str, depth: float, material: Material) -> 
     source = material.source
     step = Step(symbol, title, f"{{L}} / {{{name}}}", (length, k), value, "resistance", source)
     return Resistor(symbol, title, value, (*before, step))
+
+
+_remembered = lru_cache(maxsize=4096)(_material_cell)
 
 
 def stated_cell(symbol: str, title: str, value: float, source: str) -> Resistor:

@@ -38,6 +38,7 @@ class Resolver:
         self._conventions, self._key = conventions, key
         self._films: dict[tuple[str, str], tuple[FilmRow, FilmRow, FilmRow]] = {}
         self._rules: dict[tuple[str, str, str], MethodRule | None] = {}
+        self._shares: dict[str, tuple[float | None, str]] = {}
 
     def resolve(self, element: Element, assembly: Assembly, category: str, metric: str) -> Setting:
         """Resolve one element.
@@ -85,15 +86,9 @@ class Resolver:
         return self._rules[asked]
 
     def _share(self, category: str) -> tuple[float | None, str]:
-        """The framing share that the code gives for a class, by the most specific pattern."""
-        shares = {
-            pattern: (share, clause) for pattern, share, clause in self._conventions.framing_shares
-        }
-        pattern = best_pattern(category, shares)
-        if pattern is None:
-            return None, ""
-        share, clause = shares[pattern]
-        return share, clause or "the rule set"
+        if category not in self._shares:
+            self._shares[category] = framing_share(self._conventions, category)
+        return self._shares[category]
 
     def _outdoors(self, row: FilmRow) -> FilmRow:
         """The film outdoors: that of the set, or by the wind that the rule set states."""
@@ -112,6 +107,16 @@ class Resolver:
                 _film(films, "outside", "ventilated_cladding", direction),
             )
         return self._films[asked]
+
+
+def framing_share(conventions: Conventions, category: str) -> tuple[float | None, str]:
+    """The framing share that the code gives for a class, by the most specific pattern."""
+    shares = {pattern: (share, clause) for pattern, share, clause in conventions.framing_shares}
+    pattern = best_pattern(category, shares)
+    if pattern is None:
+        return None, ""
+    share, clause = shares[pattern]
+    return share, clause or "the rule set"
 
 
 def film_by_wind(speed: float, where: Mapping[str, str]) -> FilmRow:

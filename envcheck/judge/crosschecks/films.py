@@ -93,7 +93,7 @@ def _soil(assembly: Assembly) -> list[str]:
     return [
         layer.title
         for layer in assembly.layers
-        if isinstance(layer, MaterialLayer | ResistanceLayer)
+        if isinstance(layer, (MaterialLayer, ResistanceLayer))
         and layer.material is not None
         and layer.material.material_class == "soil"
     ]

@@ -27,8 +27,10 @@ def framing_missing(facts: Facts) -> Iterator[Finding]:
             claimed.setdefault(element.assembly, []).append(element.tag)
     for name, tags in claimed.items():
         assembly = facts.project.assemblies[name]
+        if assembly.kind != "layers" or _holds_framing(assembly):
+            continue
         insulation = _insulation(assembly)
-        if assembly.kind != "layers" or not insulation or _holds_framing(assembly):
+        if not insulation:
             continue
         category = in_words(facts.project.elements[tags[0]].category)
         yield Finding(
@@ -48,7 +50,7 @@ def _insulation(assembly: Assembly) -> list[str]:
     return [
         layer.title
         for layer in assembly.layers
-        if isinstance(layer, MaterialLayer | ResistanceLayer)
+        if isinstance(layer, (MaterialLayer, ResistanceLayer))
         and layer.material is not None
         and layer.material.material_class == "insulation"
     ]

@@ -20,7 +20,7 @@ def taper_as_plain(facts: Facts) -> Iterator[Finding]:
         conventions = facts.rulesets[lines[0].ruleset].conventions
         permitted = conventions.tapered == "mean"
         for layer in assembly.layers:
-            if not isinstance(layer, MaterialLayer | ResistanceLayer):
+            if not isinstance(layer, (MaterialLayer, ResistanceLayer)):
                 continue
             material, mean = layer.material, names(layer.title, *MEAN)
             insulating = material is None or material.material_class == "insulation"

@@ -22,7 +22,7 @@ def on_tiles(facts: Facts) -> Iterator[Finding]:
         said = [
             (number, layer.title)
             for number, layer in enumerate(assembly.layers, 1)
-            if isinstance(layer, MaterialLayer | ResistanceLayer) and layer.removable
+            if isinstance(layer, (MaterialLayer, ResistanceLayer)) and layer.removable
         ]
         if said:
             yield _said(facts, assembly, said)
