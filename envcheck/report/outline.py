@@ -90,7 +90,7 @@ def what_it_rests_on(view: View) -> tuple[Section, ...]:
             Section(_heading("Line by line", rules, several), (_by_line(rows_of[rules.id], told),))
             for rules in view.rule_sets
         ),
-        *_assemblies(view.assemblies),
+        *(_assemblies(view.assemblies) if view.assemblies else ()),
         *_if_any("Assumed", _plain(view.assumptions)),
         *_if_any("Remarks", _plain(view.remarks)),
         Section("Cautions", (_cautions(view),)),
