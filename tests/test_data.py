@@ -29,6 +29,7 @@ TABLES = {
     "conversion_moisture.csv": ("per_share", "most"),
     "corrected_emissivities.csv": ("normal", "ratio"),
     "compressed_batts.csv": (),
+    "plausible_ranges.csv": ("low", "high"),
     "materials.csv": ("conductivity", "low", "high", "density", "specific_heat"),
 }
 DIRECTIONS = ("up", "horizontal", "down")

@@ -14,6 +14,7 @@ COMMANDS = {
     "remedy": ("envcheck.cli.remedy:remedy", "Say what would bring lines within their limits."),
     "compare": ("envcheck.cli.compare:compare", "Say what changed between two revisions."),
     "new": ("envcheck.cli.new:new", "Write a commented project to start from."),
+    "rules": ("envcheck.cli.rules:rules", "Type, lint, print back, compare and lock rule sets."),
     "schema": ("envcheck.cli.schema:schema", "Print the schema of a file format."),
     "materials": ("envcheck.cli.materials:materials", "Search the materials that come along."),
     "methods": ("envcheck.cli.methods:methods", "List the calculation methods with their sources."),
@@ -25,15 +26,17 @@ CONTEXT = {"help_option_names": ["-h", "--help"], "max_content_width": 100}
 class LazyGroup(click.Group):
     """A group whose commands are imported only when they run."""
 
+    table = COMMANDS
+
     def list_commands(self, ctx: click.Context) -> list[str]:
         """Give the names in the order of the table."""
-        return list(COMMANDS)
+        return list(self.table)
 
     def get_command(self, ctx: click.Context, cmd_name: str) -> click.Command | None:
         """Import one command; None for an unknown name."""
-        if cmd_name not in COMMANDS:
+        if cmd_name not in self.table:
             return None
-        module, _, name = COMMANDS[cmd_name][0].partition(":")
+        module, _, name = self.table[cmd_name][0].partition(":")
         command: click.Command = getattr(import_module(module), name)
         return command
 
@@ -41,17 +44,17 @@ class LazyGroup(click.Group):
         self, ctx: click.Context, args: list[str]
     ) -> tuple[str | None, click.Command | None, list[str]]:
         """Find the command; say which one was likely meant where there is none of that name."""
-        if args and args[0] not in COMMANDS and not args[0].startswith("-"):
+        if args and args[0] not in self.table and not args[0].startswith("-"):
             from envcheck.errors import did_you_mean, one_of, visible
 
-            hint = did_you_mean(args[0], COMMANDS) or one_of(COMMANDS)
-            ctx.fail(f"{visible(args[0])!r} is no command of envcheck. Fix: {hint}")
+            hint = did_you_mean(args[0], self.table) or one_of(self.table)
+            ctx.fail(f"{visible(args[0])!r} is no command of {ctx.command_path}. Fix: {hint}")
         return super().resolve_command(ctx, args)
 
     def format_commands(self, ctx: click.Context, formatter: click.HelpFormatter) -> None:
         """Write the list of commands from the table alone."""
         with formatter.section("Commands"):
-            formatter.write_dl([(name, line) for name, (_, line) in COMMANDS.items()])
+            formatter.write_dl([(name, line) for name, (_, line) in self.table.items()])
 
 
 @click.group(cls=LazyGroup, context_settings=CONTEXT)

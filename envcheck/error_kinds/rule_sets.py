@@ -6,6 +6,12 @@ from envcheck.errors import Kind
 
 KINDS = (
     Kind(
+        "broken-lock",
+        "the lock of the folder cannot be read",
+        "lock the folder anew with `envcheck rules lock`, or delete the file",
+        "ruleset.lock holds hashes of the folder's files, who compared them with print, and when.",
+    ),
+    Kind(
         "class-test-incomplete",
         "a class test needs {what}",
         "{hint}",

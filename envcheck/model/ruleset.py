@@ -30,6 +30,7 @@ __all__ = [
     "ExceptionClause",
     "FilmRow",
     "Limit",
+    "Lock",
     "MethodRule",
     "Note",
     "OtherMetric",
@@ -298,6 +299,21 @@ class Zones(NamedTuple):
     """Name of the published formula that gives the zone from the facts of the site; or empty."""
 
 
+class Lock(NamedTuple):
+    """Who checked the sheets of a folder, and what has changed since."""
+
+    checked_by: str
+    on: str
+    changed: tuple[str, ...] = ()
+    """Files that are not as they were; new and missing ones included."""
+
+    def __str__(self) -> str:
+        checked = f"checked by {self.checked_by} on {self.on}"
+        if not self.changed:
+            return f"{checked}, unchanged since"
+        return f"CHANGED since it was {checked}: {', '.join(self.changed)}"
+
+
 class Edition(NamedTuple):
     """One document in the chain of a folded rule set."""
 
@@ -310,6 +326,8 @@ class Edition(NamedTuple):
     in_force: bool
     """On the date tested."""
     sha256: str
+    lock: Lock | None = None
+    """Who checked the files of its folder, where they are locked."""
 
 
 class RuleSet(NamedTuple):

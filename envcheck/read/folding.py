@@ -29,6 +29,8 @@ class Setting(NamedTuple):
     categories: tuple[str, ...]
     paths: Mapping[str, str]
     """Table id -> path, where ``paths`` names tables."""
+    typed: list[tuple[Table, dict[CellKey, tuple[Limit, ...]]]] | None = None
+    """Where asked for, every table as it is read, for those who check the typing."""
 
 
 class _Fold:
@@ -168,6 +170,8 @@ def _read_table(
     table = table._replace(weights=weights_of(table, problems))
     cells = expand(table, problems)
     check_coverage(table, cells, problems)
+    if setting.typed is not None:
+        setting.typed.append((table, cells))
     printed = {column.heads: column.marks for column in sheet.columns if column.marks}
     printed |= {(row.key,): row.marks for row in sheet.rows if row.marks}
     return {} if settings.get("status") == "guidance" else cells, printed

@@ -13,6 +13,7 @@ from envcheck.model.metrics import METRICS
 from envcheck.model.names import Names
 from envcheck.model.ruleset import Edition, Limit, OtherMetric, RuleSet
 from envcheck.read.folding import Setting, fold
+from envcheck.read.locks import read_lock
 from envcheck.read.overlaps import check_overlaps
 from envcheck.read.rule_conventions import Source, read_conventions
 from envcheck.read.rule_documents import Document, default_folders, find, read_chain
@@ -26,6 +27,7 @@ from envcheck.read.rule_parts import (
 )
 from envcheck.read.rule_tradeoff import read_tradeoff
 from envcheck.read.single_limits import Clauses
+from envcheck.read.table_entry import CellKey, Table
 
 __all__ = ["default_folders", "find", "read_ruleset"]
 
@@ -38,11 +40,13 @@ def read_ruleset(
     on: date | None,
     names: Names,
     asked: tuple[str, int | None] = ("", None),
+    typed: list[tuple[Table, dict[CellKey, tuple[Limit, ...]]]] | None = None,
 ) -> RuleSet:
     """Read a rule set as in force on a date.
 
     ``folders`` hold rule sets by id; ``on`` None folds every amendment; ``asked`` is the file and
-    line that name the rule set, for messages. Errors: InputError with every problem found.
+    line that name the rule set, for messages; ``typed`` collects every table as it
+    is read. Errors: InputError with every problem found.
     """
     problems: list[Problem] = []
     chain = read_chain(id, [Path(folder) for folder in folders], asked, problems)
@@ -60,7 +64,8 @@ def read_ruleset(
     # the tables of every document are read, so that all dimensions are known; those in force win
     dimensions = {k: v for d in (*chain, *active) for k, v in read_dimensions(d, problems).items()}
     printed = _units(chain, problems)
-    setting = Setting(zones.order, dimensions, printed, categories, _table_paths(document("paths")))
+    paths = _table_paths(document("paths"))
+    setting = Setting(zones.order, dimensions, printed, categories, paths, typed)
     cells = fold(chain, in_force, setting, problems)
     clauses = [Clauses(d, dimensions, printed[d.id], categories, problems) for d in active]
     limits = _with_clauses((x for group in cells.values() for x in group), clauses)
@@ -79,7 +84,7 @@ def read_ruleset(
         status=top.get("status") or "transcribed",
         invented=top.get("invented") == "yes",
         checked_by=_checked_by(top.get("checked_by")),
-        chain=_editions(chain, in_force),
+        chain=_editions(chain, in_force, problems),
         units="IP" if "Btu" in "".join(printed[document("units").id].values()) else "SI",
         zones=zones,
         dimensions=dimensions,
@@ -123,7 +128,9 @@ def _in_force(chain: Sequence[Document], on: date | None) -> list[bool]:
     return holds
 
 
-def _editions(chain: Sequence[Document], in_force: Sequence[bool]) -> tuple[Edition, ...]:
+def _editions(
+    chain: Sequence[Document], in_force: Sequence[bool], problems: list[Problem]
+) -> tuple[Edition, ...]:
     return tuple(
         Edition(
             id=d.id,
@@ -134,6 +141,7 @@ def _editions(chain: Sequence[Document], in_force: Sequence[bool]) -> tuple[Edit
             effective_until=_date(d, "until"),
             in_force=holds,
             sha256=d.sha256,
+            lock=read_lock(d.folder, problems),
         )
         for d, holds in zip(chain, in_force, strict=True)
     )

@@ -67,6 +67,7 @@ def rule_set(ruleset: RuleSet, lines: Iterable[Line], project: Project, system: 
     pairs = (
         ("jurisdiction", ruleset.jurisdiction),
         ("status", status(ruleset)),
+        ("lock", "; ".join(f"{e.id}: {e.lock}" for e in ruleset.chain if e.lock is not None)),
         ("documents", "; ".join(_documents(ruleset))),
         ("zone", _zone(ruleset, own, project)),
         ("path", _path(ruleset, project)),
@@ -115,9 +116,17 @@ def lead(project: Project, rulesets: Iterable[RuleSet], lines: Iterable[Line]) -
             _in_zone(zone, ruleset),
             f"invented {word}" if ruleset.invented else word,
             "" if decides(ruleset, project) else "information only",
+            _changed(ruleset),
         )
         found.append(clean("; ".join(filter(None, parts))))
     return tuple(found)
+
+
+def _changed(ruleset: RuleSet) -> str:
+    """Say where files of the rule set, or of what it amends, are not as they were checked."""
+    locks = [e.lock for e in ruleset.chain if e.lock is not None]
+    files = ", ".join(name for lock in locks for name in lock.changed)
+    return f"CHANGED since it was checked: {files}" if files else ""
 
 
 def _in_zone(zone: str, ruleset: RuleSet) -> str:
