@@ -30,6 +30,7 @@ TABLES = {
     "corrected_emissivities.csv": ("normal", "ratio"),
     "compressed_batts.csv": (),
     "plausible_ranges.csv": ("low", "high"),
+    "humidity_classes.csv": ("excess",),
     "materials.csv": ("conductivity", "low", "high", "density", "specific_heat"),
 }
 DIRECTIONS = ("up", "horizontal", "down")
@@ -277,3 +278,25 @@ def test_steel_profile(row: Row) -> None:
         assert 0.95 * convert(thickness, "in") == pytest.approx(int(mils) / 1000, abs=0.0006)
     else:
         assert thickness == pytest.approx(float(mils) / 1000)
+
+
+def test_vapour_resistance_factors_are_those_of_something_and_say_whose() -> None:
+    stated = [row for row in rows("materials.csv") if row["mu"]]
+    assert len(stated) >= 100
+    for row in stated:
+        assert 1 <= float(row["mu"]) <= 1e6 and row["mu_source"], row
+        assert row["class"] != "metal" or float(row["mu"]) == 1e6, row
+    assert all(not row["mu_source"] for row in rows("materials.csv") if not row["mu"])
+
+
+# ISO 10456:2007, tables 3 and 4, dry cup; from memory.
+@pytest.mark.parametrize(
+    ("material", "mu"),
+    [
+        ("mineral_wool", 1), ("eps", 60), ("xps", 150), ("softwood", 50), ("hardwood", 200),
+        ("plywood_500", 200), ("osb", 50), ("gypsum_board_0.25", 10), ("cement_render", 10),
+        ("concrete_2400", 130), ("bitumen_felt", 50000), ("pe_low_density", 100000),
+    ],
+)  # fmt: skip
+def test_vapour_resistance_factor(material: str, mu: float) -> None:
+    assert float(by_id("materials.csv")[material]["mu"]) == mu

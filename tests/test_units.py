@@ -54,6 +54,7 @@ SI = {
     "volume": "m**3",
     "openings_per_length": "m",
     "openings_per_area": "",
+    "vapour_pressure": "Pa",
 }
 PAIRS = [(q, unit) for q in SI for unit in UNITS[q].spellings]
 

@@ -35,6 +35,9 @@ OVER, OPEN = 1, 3
 @click.option("--bounds", is_flag=True, help="A column with the bounds of each drawn assembly.")
 @click.option("--details", is_flag=True, help="Every assembly with its layers and their sources.")
 @click.option(
+    "--moisture", is_flag=True, help="Advisory check by ISO 13788, by months; no verdict."
+)
+@click.option(
     "--fail-on",
     type=click.Choice(["over", "open"]),
     default="over",
@@ -64,6 +67,7 @@ def check(
     color: str,
     bounds: bool,
     details: bool,
+    moisture: bool,
     fail_on: str,
     only: tuple[str, ...],
     watch: bool,
@@ -92,6 +96,7 @@ def check(
             workings=form.workings,
             bounds=bounds,
             only=only,
+            moisture=moisture,
         )
         status = _checked(project, rules, form, asked, output)
         return OVER if status == OPEN and fail_on == "open" else status
@@ -115,6 +120,8 @@ def _checked(
         if asked.only:
             total = sum(line.decides for line in run.judged.lines)
             run, asked = pipeline.only(run, asked.only), asked._replace(total=total)
-        made = options.rendered(form, view.build(run.project, run.rulesets, run.judged, asked))
+        advisory = pipeline.moisture(run) if asked.moisture else None
+        seen = view.build(run.project, run.rulesets, run.judged, asked, advisory)
+        made = options.rendered(form, seen)
     deliver(made, output, (project,))
     return run.exit_status

@@ -39,6 +39,9 @@ class Material(NamedTuple):
     """Stated range of the conductivity, W/(m K)."""
     band: Span | None = None
     """Conductivities that are usual in its class, W/(m K)."""
+    mu: float | None = None
+    """Water vapour resistance factor."""
+    mu_source: str = ""
 
 
 class Profile(NamedTuple):
@@ -74,6 +77,8 @@ class MaterialLayer(NamedTuple):
     """Stated range of the thickness, m."""
     removable: bool = False
     """It lies on ceiling tiles that can be lifted."""
+    sd: float | None = None
+    """Stated water vapour diffusion-equivalent air layer thickness, m."""
 
 
 class ResistanceLayer(NamedTuple):
@@ -97,6 +102,8 @@ class ResistanceLayer(NamedTuple):
     ``includes_air_space``; ``bare`` or empty = nothing."""
     removable: bool = False
     """It lies on ceiling tiles that can be lifted."""
+    sd: float | None = None
+    """Stated water vapour diffusion-equivalent air layer thickness, m."""
 
 
 class ContactLayer(NamedTuple):
@@ -110,6 +117,8 @@ class ContactLayer(NamedTuple):
     source: str
     span: Span | None = None
     """Stated range of the resistance, m2 K/W."""
+    sd: float | None = None
+    """Stated water vapour diffusion-equivalent air layer thickness, m."""
 
 
 class AirSpaceLayer(NamedTuple):
@@ -128,6 +137,8 @@ class AirSpaceLayer(NamedTuple):
     """Area of its openings to the outside, where it is stated, in m2 ..."""
     openings_per: str = ""
     """... for each m of ``length`` of an upright space, or m2 of ``area`` of a level one."""
+    sd: float | None = None
+    """Stated water vapour diffusion-equivalent air layer thickness, m."""
 
 
 class Fill(NamedTuple):
@@ -188,6 +199,8 @@ class FramedLayer(NamedTuple):
     """``vertical`` or ``horizontal`` run of the members."""
     crosses_insulation: bool
     """The layer is insulation outside (or inside) the main framing that members interrupt."""
+    sd: float | None = None
+    """Stated water vapour diffusion-equivalent air layer thickness, m."""
 
 
 class MasonryLayer(NamedTuple):
@@ -219,6 +232,8 @@ class MasonryLayer(NamedTuple):
     """Of one unit with its joint, m; None = not stated, and the unit is not drawn to scale."""
     cells: int = 2
     """Cells beside each other in one unit."""
+    sd: float | None = None
+    """Stated water vapour diffusion-equivalent air layer thickness, m."""
 
 
 class TaperedPiece(NamedTuple):
@@ -255,6 +270,8 @@ class TaperedLayer(NamedTuple):
     """Length over which the thickness rises, m."""
     pieces: tuple[TaperedPiece, ...] = ()
     """Of a roof drained by several slopes; ``least`` and ``greatest`` are then those of all."""
+    sd: float | None = None
+    """Stated water vapour diffusion-equivalent air layer thickness, m."""
 
 
 class SectionPiece(NamedTuple):
@@ -290,6 +307,8 @@ class SectionLayer(NamedTuple):
     """How the pieces run: ``vertical`` or ``horizontal``."""
     pieces: tuple[SectionPiece, ...]
     """Later ones lie on top of earlier ones; together they leave nothing of the drawing open."""
+    sd: float | None = None
+    """Stated water vapour diffusion-equivalent air layer thickness, m."""
 
 
 class Fasteners(NamedTuple):

@@ -35,6 +35,7 @@ from envcheck.model.windows import Glazing, Window
 
 if TYPE_CHECKING:
     from envcheck.model.details import Detail
+    from envcheck.model.vapour import IndoorAir
 
 __all__ = [
     "AirSpaceLayer",
@@ -290,6 +291,8 @@ class Climate(NamedTuple):
     """m; where months are stated, their sum."""
     marine: bool | None = None
     """Whether the climate is marine, where that is stated."""
+    vapour_pressures: tuple[float, ...] = ()
+    """Monthly means from January, Pa, stated or from relative humidities; twelve or none."""
 
 
 class ByCriteria(NamedTuple):
@@ -315,6 +318,9 @@ class Site(NamedTuple):
     climate: Climate | None = None
     by_criteria: tuple[ByCriteria, ...] = ()
     """By each formula that a rule set names; filled in once the rule sets are read."""
+    indoor_air: IndoorAir | None = None
+    line: int = 0
+    """Of the section, or of the file where there is none."""
 
 
 class Options(NamedTuple):

@@ -74,6 +74,8 @@ def read_material(context: Context, name: str, entry: Entry) -> Material:
         conversion=conversion,
         span=span,
         band=class_band(entry["class"]) if "class" in entry else None,
+        mu=entry.get("mu"),
+        mu_source=entry.get("mu_source", entry.get("source", "assumed")) if "mu" in entry else "",
     )
 
 

@@ -25,7 +25,7 @@ from envcheck.units import states_range
 
 def read_layers(context: Context, entries: list[Any]) -> tuple[Layer, ...]:
     """Read layers from outside to inside; those that the schema refused are None."""
-    layers = [_KINDS[entry["kind"]](context, entry) for entry in entries if entry is not None]
+    layers = [_layer(context, entry) for entry in entries if entry is not None]
     if any(layer.kind == "section" for layer in layers):
         from envcheck.read.drawn_checks import check_beside  # few projects draw sections
 
@@ -33,6 +33,13 @@ def read_layers(context: Context, entries: list[Any]) -> tuple[Layer, ...]:
     if any(isinstance(layer, FramedLayer) for layer in layers):
         return with_crossed_insulation(layers)
     return tuple(layers)
+
+
+def _layer(context: Context, entry: Entry) -> Layer:
+    layer = _KINDS[entry["kind"]](context, entry)
+    if "sd" in entry:
+        return layer._replace(sd=context.positive(entry, "sd", "length"))
+    return layer
 
 
 def _material(context: Context, entry: Entry) -> Layer:

@@ -57,6 +57,8 @@ def library_material(name: str) -> Material | None:
         evidence="table",
         combustible=row["combustible"] == "true",
         band=(float(row["low"]), float(row["high"])),
+        mu=_number(row["mu"]),
+        mu_source=row["mu_source"],
     )
 
 

@@ -2,10 +2,15 @@
 
 from __future__ import annotations
 
+from typing import TYPE_CHECKING
+
 from envcheck.model.project import Climate, Options, Site, ZoneStated
 from envcheck.read.context import Context
 from envcheck.read.yaml_reader import Entry
 from envcheck.units import to_si
+
+if TYPE_CHECKING:
+    from envcheck.model.vapour import IndoorAir
 
 COLDEST = -100.0
 HOTTEST = 100.0
@@ -29,9 +34,11 @@ def read_site(context: Context, entry: Entry) -> Site:
             for zone in entry.get("zones", ())
         ),
         measures=tuple(measures),
-        indoor_temperature=_temperature(context, entry, "indoor_temperature"),
-        outdoor_temperature=_temperature(context, entry, "outdoor_temperature"),
+        indoor_temperature=temperature(context, entry, "indoor_temperature"),
+        outdoor_temperature=temperature(context, entry, "outdoor_temperature"),
         climate=_climate(context, entry["climate"]) if "climate" in entry else None,
+        indoor_air=_indoor_air(context, entry),
+        line=entry.line,
     )
 
 
@@ -43,7 +50,7 @@ def _climate(context: Context, entry: Entry) -> Climate:
         if months:
             hint = "it follows from the months: delete it"
             context.out_of_place(entry, (key,), "a climate with monthly values", hint)
-    mean = _temperature(context, entry, "mean_temperature")
+    mean = temperature(context, entry, "mean_temperature")
     annual = None
     if "annual_precipitation" in entry:
         annual = context.not_negative(entry, "annual_precipitation", "length")
@@ -54,7 +61,26 @@ def _climate(context: Context, entry: Entry) -> Climate:
         sum(temperatures) / len(temperatures) if temperatures else mean,
         sum(rain) if rain else annual,
         entry.get("marine"),
+        _outdoor_pressures(context, entry, temperatures),
     )
+
+
+def _outdoor_pressures(
+    context: Context, entry: Entry, temperatures: tuple[float, ...]
+) -> tuple[float, ...]:
+    if "humidities" not in entry and "vapour_pressures" not in entry:
+        return ()
+    from envcheck.read.humidity import outdoor_pressures  # few projects state moisture
+
+    return outdoor_pressures(context, entry, temperatures)
+
+
+def _indoor_air(context: Context, entry: Entry) -> IndoorAir | None:
+    if "indoor_air" not in entry:
+        return None
+    from envcheck.read.humidity import indoor_air
+
+    return indoor_air(context, entry["indoor_air"])
 
 
 def _months(context: Context, entry: Entry, key: str, quantity: str) -> tuple[float, ...]:
@@ -67,7 +93,7 @@ def _months(context: Context, entry: Entry, key: str, quantity: str) -> tuple[fl
         months[str(place)], months.lines[str(place)] = text, texts.lines[place]
     if quantity == "length":
         return tuple(context.not_negative(months, place, quantity) for place in months)
-    return tuple(_temperature(context, months, place) or 0.0 for place in months)
+    return tuple(temperature(context, months, place) or 0.0 for place in months)
 
 
 def _degree_days(name: str, value: float) -> float:
@@ -75,7 +101,8 @@ def _degree_days(name: str, value: float) -> float:
     return to_si(float(value), "degF*d" if int(name[3:]) >= 32 else "K*d")
 
 
-def _temperature(context: Context, entry: Entry, key: str) -> float | None:
+def temperature(context: Context, entry: Entry, key: str) -> float | None:
+    """Read a temperature that a climate may have, degC; None where it is left out."""
     if key not in entry:
         return None
     value = context.number(entry, key, "temperature")

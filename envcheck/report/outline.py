@@ -91,6 +91,7 @@ def what_it_rests_on(view: View) -> tuple[Section, ...]:
             for rules in view.rule_sets
         ),
         *(_assemblies(view.assemblies) if view.assemblies else ()),
+        *_moisture(view),
         *_if_any("Assumed", _plain(view.assumptions)),
         *_if_any("Remarks", _plain(view.remarks)),
         Section("Cautions", (_cautions(view),)),
@@ -278,6 +279,14 @@ def _assemblies(assemblies: Iterable[AssemblyView]) -> Iterable[Section]:
 
 def _unworked(each: AssemblyView) -> AssemblyView:
     return each._replace(workings=None)
+
+
+def _moisture(view: View) -> tuple[Section, ...]:
+    if view.moisture is None:
+        return ()
+    from envcheck.report import moisture_page
+
+    return moisture_page.sections(view.moisture)
 
 
 def _cautions(view: View) -> Items:

@@ -23,7 +23,9 @@ from envcheck.report.parts import Pair
 from envcheck.report.rows import Row
 
 if TYPE_CHECKING:
+    from envcheck.model.moisture import Check
     from envcheck.report.details import AssemblyView
+    from envcheck.report.moisture import CheckView
     from envcheck.report.schedules import Schedule
 
 
@@ -43,6 +45,8 @@ class ViewOptions(NamedTuple):
     """Of each assembly also its ladder, paths and worksheet."""
     bounds: bool = False
     """A column with the bounds of the drawn model."""
+    moisture: bool = False
+    """The advisory moisture check."""
     only: tuple[str, ...] = ()
     """Patterns of the tags that are shown, where not all are ..."""
     total: int = 0
@@ -84,6 +88,8 @@ class View(NamedTuple):
     colour: bool
     width: int
     bounds: bool
+    moisture: CheckView | None = None
+    """None unless the check is asked for."""
 
 
 def build(
@@ -91,10 +97,12 @@ def build(
     rulesets: Mapping[str, RuleSet],
     judged: Judged,
     options: ViewOptions | None = None,
+    moisture: Check | None = None,
 ) -> View:
     """Make the view of a check.
 
     ``rulesets`` by id, in the order in which they are judged; those that decide come first.
+    ``moisture``: the advisory check, where it is asked for.
     Errors: none for judged input.
     """
     options = options or ViewOptions()
@@ -133,7 +141,18 @@ def build(
         colour=options.colour,
         width=options.width,
         bounds=options.bounds,
+        moisture=_moisture(moisture, project, system, options.details),
     )
+
+
+def _moisture(
+    check: Check | None, project: Project, system: str, details: bool
+) -> CheckView | None:
+    if check is None:
+        return None
+    from envcheck.report import moisture  # only where it is asked for
+
+    return moisture.build(check, project, system, details)
 
 
 def _details(

@@ -136,6 +136,9 @@ UNITS: dict[str, Quantity] = {
         "m2/m2",
         "in2/ft2",
     ),
+    "vapour_pressure": Quantity(
+        "a vapour pressure", "1200 Pa or 1.2 kPa", ("Pa", "kPa", "hPa"), "Pa", "Pa"
+    ),
     "number": Quantity("a number", "6", (), "", ""),
 }
 """Every quantity by name. Same unit, same factor, whatever the quantity (but temperature)."""
@@ -145,7 +148,8 @@ ATOMS = {
     "m2": 1.0, "mm2": 1e-6, "cm2": 1e-4, "in2": INCH**2, "ft2": FOOT**2,
     "m3": 1.0, "ft3": FOOT**3, "s": 1.0, "km": 1e3, "mi": 5280 * FOOT,
     "W": 1.0, "J": 1.0, "kJ": 1e3, "Btu": BTU, "h": HOUR, "d": 1.0,
-    "K": 1.0, "degC": 1.0, "degF": FAHRENHEIT, "kg": 1.0, "lb": POUND, "%": 1e-2, "deg": 1.0,
+    "K": 1.0, "degC": 1.0, "degF": FAHRENHEIT, "kg": 1.0, "lb": POUND,
+    "Pa": 1.0, "hPa": 100.0, "kPa": 1e3, "%": 1e-2, "deg": 1.0,
 }  # fmt: skip
 ALIASES = {
     "hr": "h", "F": "degF", "C": "degC", "BTU": "Btu", "btu": "Btu", "lbs": "lb", "lbm": "lb",

@@ -15,10 +15,12 @@ from pathlib import Path
 from typing import Any
 
 import envcheck
+from envcheck.model import vapour
 from envcheck.read.coefficient_tables import built_in
 from envcheck.read.windows import corrected_ratio
 from envcheck.solve import climate_zone, shells
 from envcheck.solve.methods import air_space as air
+from envcheck.solve.methods import iso13788_surface as surface
 from envcheck.solve.methods.air_voids import void_correction
 from envcheck.solve.methods.compressed import TABLE, installed_resistance
 from envcheck.solve.methods.en673_glazing import Gas, glazing_u, mixture, space_resistances
@@ -44,6 +46,7 @@ from envcheck.solve.methods.tapered_pieces import tapered_triangle
 from envcheck.solve.methods.weighted import weighted
 from envcheck.solve.methods.zone import zone_width
 from envcheck.solve.network import parallel, plane_wall, series
+from envcheck.solve.surface import plain_factor
 from envcheck.units import convert, to_si
 from tests.published import field_adapters
 
@@ -248,6 +251,25 @@ def critical_radius(inputs: Inputs, units: Units) -> Figures:
     return {"r_mm": 1000 * shells.critical_radius(inputs["conductivity"], inputs["h"])}
 
 
+# ------------------------------------------------------------------------------- moisture
+
+
+def saturation(inputs: Inputs, units: Units) -> Figures:
+    return {"p_sat": vapour.saturation_pressure(inputs["T"])}
+
+
+def critical_surface(inputs: Inputs, units: Units) -> Figures:
+    pressure = inputs["humidity"] * vapour.saturation_pressure(inputs["T_i"])
+    least = surface.least_surface_temperature(pressure)
+    factor = surface.critical_factor(least, inputs["T_e"], inputs["T_i"])
+    assert factor is not None
+    return {"T_min": least, "f_min": factor}
+
+
+def plain_surface(inputs: Inputs, units: Units) -> Figures:
+    return {"f": plain_factor(inputs["R"])}
+
+
 # ------------------------------------------------- glazing, ground, films: formulas of standards
 
 
@@ -384,6 +406,9 @@ ADAPTERS: dict[str, Callable[[Inputs, Units], Figures]] = {
     "contact_as_thickness": contact_as_thickness,
     "chip": chip,
     "critical_radius": critical_radius,
+    "saturation_pressure": saturation,
+    "critical_surface": critical_surface,
+    "plain_surface": plain_surface,
     "glazing": glazing,
     "coated_glazing": coated_glazing,
     "window_space": window_space,

@@ -24,6 +24,8 @@ LAYOUT = ("lead", "colour", "width", "bounds", "workings", "right", "wrap", "ton
 def render(view: View) -> str:
     """Write the view as one JSON object; same view, same bytes."""
     kept = {name: plain(getattr(view, name)) for name in View._fields if name not in LAYOUT}
+    if view.moisture is None:
+        del kept["moisture"]
     return _written({"schema_version": SCHEMA_VERSION, **kept})
 
 

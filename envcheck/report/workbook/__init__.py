@@ -21,5 +21,6 @@ def build(view: View) -> tuple[Sheet, ...]:
         *sums.sheets(view),
         *(lists.listed(each.heading, each.grid) for each in view.schedules),
         lists.layers(view),
+        *lists.moisture(view),
         lists.notes(view),
     )

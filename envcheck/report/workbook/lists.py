@@ -70,6 +70,19 @@ def layers(view: View) -> Sheet:
     return Sheet("Layers", tuple(rows), (12, 34, 34, 14, 20, 16, 50, 60), 1)
 
 
+def moisture(view: View) -> tuple[Sheet, ...]:
+    """The advisory check, where it is asked for: texts and numbers as on the page."""
+    if view.moisture is None:
+        return ()
+    from envcheck.report import moisture_page
+
+    rows: list[Cells] = []
+    for section in moisture_page.sections(view.moisture):
+        rows += [(Head(section.heading),)]
+        rows += [tuple(map(number, texts)) for texts in (*moisture_page.flat(section), ())]
+    return (Sheet("Moisture", tuple(rows), (60, 16, 16, 16, 40, 16, 16)),)
+
+
 def notes(view: View) -> Sheet:
     """Open items, findings, the building, cautions, what is not judged: texts."""
     rows: list[Cells] = [(Head("Open items"),)]
