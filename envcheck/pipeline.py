@@ -47,7 +47,6 @@ if TYPE_CHECKING:
     from envcheck.model.compared import Compared
     from envcheck.model.details import Extras, SolvedDetail
     from envcheck.model.moisture import Check
-    from envcheck.model.project import Element
     from envcheck.model.solved import Setting
 
 
@@ -375,38 +374,15 @@ def extras(run: Run, subject: str) -> Extras:
 
 
 def moisture(run: Run) -> Check:
-    """Surface humidity and condensation at layer faces by month: advisory, never a verdict.
+    """Surface humidity and condensation by month: advisory, by the rule set judged first."""
+    from envcheck.solve.moisture import check_project
 
-    Layered assemblies of elements that adjoin outdoor air, by the rule set judged first.
-    """
-    from envcheck.model.moisture import Check
-    from envcheck.solve import moisture as advisory
-    from envcheck.solve.methods.iso13788_surface import critical_steps
-
-    site, project = run.project.site, run.project
-    missing = advisory.missing_of(site)
-    if missing:
-        return Check(missing)
-    months = advisory.months_of(site)
-    outdoors: dict[str, list[Element]] = {}
-    for element in project.elements.values():
-        if element.adjoins == "outdoors" and project.assemblies[element.assembly].kind == "layers":
-            outdoors.setdefault(element.assembly, []).append(element)
-    found = {}
-    for line in run.judged.lines:
-        element, solved = project.elements[line.element], line.solved
-        if solved is None or element.assembly in found or element.adjoins != "outdoors":
-            continue
-        if element.assembly in outdoors:
-            assembly, conventions = project.assemblies[element.assembly], run.rulesets[line.ruleset]
-            found[assembly.id] = advisory.check(
-                assembly, outdoors[assembly.id], solved.setting, conventions.conventions, months
-            )
-    worst = advisory.worst_of(months)
-    left = tuple(name for name in project.assemblies if name not in found)
-    checked = tuple(found[name] for name in project.assemblies if name in found)
-    steps = () if worst is None else critical_steps(months[worst])
-    return Check((), months, worst, checked, left, steps)
+    solved = (
+        (line.element, line.solved.setting, run.rulesets[line.ruleset].conventions)
+        for line in run.judged.lines
+        if line.solved is not None
+    )
+    return check_project(run.project, solved)
 
 
 def _read_rulesets(project: Project, folders: Sequence[Path]) -> dict[str, RuleSet]:

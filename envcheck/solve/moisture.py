@@ -5,8 +5,8 @@ from __future__ import annotations
 from collections.abc import Iterable, Sequence
 
 from envcheck.model.layers import AirSpaceLayer, FramedLayer, Layer, Material
-from envcheck.model.moisture import Moisture, Month, Sheet
-from envcheck.model.project import Assembly, Element, Site
+from envcheck.model.moisture import Check, Moisture, Month, Sheet
+from envcheck.model.project import Assembly, Element, Project, Site
 from envcheck.model.ruleset import Conventions
 from envcheck.model.solved import Operand, Setting, Step
 from envcheck.model.vapour import excess_at, saturation_pressure
@@ -15,6 +15,7 @@ from envcheck.solve.cautions import cautions
 from envcheck.solve.methods.framed import is_metal
 from envcheck.solve.methods.iso13788_surface import (
     critical_factor,
+    critical_steps,
     factor_step,
     least_surface_temperature,
 )
@@ -25,6 +26,33 @@ from envcheck.solve.vapour_layers import faces_of, sheet_steps, sheets_of
 from envcheck.solve.vapour_year import flow_steps, year_of
 
 CLASSES_OF_WOOD = ("wood", "board")
+
+
+def check_project(project: Project, solved: Iterable[tuple[str, Setting, Conventions]]) -> Check:
+    """Check every layered assembly of elements that adjoin outdoor air.
+
+    solved: element, and by what its value was computed; the first of an assembly counts. Nothing
+    is raised: what is missing is said.
+    """
+    missing = missing_of(project.site)
+    if missing:
+        return Check(missing)
+    months = months_of(project.site)
+    outdoors: dict[str, list[Element]] = {}
+    for element in project.elements.values():
+        if element.adjoins == "outdoors" and project.assemblies[element.assembly].kind == "layers":
+            outdoors.setdefault(element.assembly, []).append(element)
+    found: dict[str, Moisture] = {}
+    for tag, setting, conventions in solved:
+        name = project.elements[tag].assembly
+        if project.elements[tag] in outdoors.get(name, ()) and name not in found:
+            assembly = project.assemblies[name]
+            found[name] = check(assembly, outdoors[name], setting, conventions, months)
+    worst = worst_of(months)
+    checked = tuple(found[name] for name in project.assemblies if name in found)
+    left = tuple(name for name in project.assemblies if name not in found)
+    steps = () if worst is None else critical_steps(months[worst])
+    return Check((), months, worst, checked, left, steps)
 
 
 def months_of(site: Site) -> tuple[Month, ...]:
