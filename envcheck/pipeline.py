@@ -31,7 +31,7 @@ from envcheck.model.judged import Difference, Group, Judged, Line, Ratio, Turn
 from envcheck.model.names import Names
 from envcheck.model.project import Project, RuleSetChoice
 from envcheck.model.ruleset import RuleSet
-from envcheck.model.solved import Properties, Reasons, Solved
+from envcheck.model.solved import Properties, Reasons, Setting, Solved
 from envcheck.read.materials import categories
 from envcheck.read.project import read_project
 from envcheck.read.rulesets import default_folders, read_ruleset
@@ -47,7 +47,6 @@ if TYPE_CHECKING:
     from envcheck.model.compared import Compared
     from envcheck.model.details import Extras, SolvedDetail
     from envcheck.model.moisture import Check
-    from envcheck.model.solved import Setting
 
 
 @dataclass(frozen=True, slots=True)
@@ -377,12 +376,7 @@ def moisture(run: Run) -> Check:
     """Surface humidity and condensation by month: advisory, by the rule set judged first."""
     from envcheck.solve.moisture import check_project
 
-    solved = (
-        (line.element, line.solved.setting, run.rulesets[line.ruleset].conventions)
-        for line in run.judged.lines
-        if line.solved is not None
-    )
-    return check_project(run.project, solved)
+    return check_project(run.project, run.rulesets, run.judged.lines)
 
 
 def _read_rulesets(project: Project, folders: Sequence[Path]) -> dict[str, RuleSet]:

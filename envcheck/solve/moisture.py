@@ -2,12 +2,13 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 
+from envcheck.model.judged import Line
 from envcheck.model.layers import AirSpaceLayer, FramedLayer, Layer, Material
 from envcheck.model.moisture import Check, Moisture, Month, Sheet
 from envcheck.model.project import Assembly, Element, Project, Site
-from envcheck.model.ruleset import Conventions
+from envcheck.model.ruleset import Conventions, RuleSet
 from envcheck.model.solved import Operand, Setting, Step
 from envcheck.model.vapour import excess_at, saturation_pressure
 from envcheck.solve.assembly import draw
@@ -28,11 +29,13 @@ from envcheck.solve.vapour_year import flow_steps, year_of
 CLASSES_OF_WOOD = ("wood", "board")
 
 
-def check_project(project: Project, solved: Iterable[tuple[str, Setting, Conventions]]) -> Check:
+def check_project(
+    project: Project, rulesets: Mapping[str, RuleSet], lines: Iterable[Line]
+) -> Check:
     """Check every layered assembly of elements that adjoin outdoor air.
 
-    solved: element, and by what its value was computed; the first of an assembly counts. Nothing
-    is raised: what is missing is said.
+    lines: with the values, by which each is drawn; the first of an assembly counts. Nothing is
+    raised: what is missing is said.
     """
     missing = missing_of(project.site)
     if missing:
@@ -43,11 +46,16 @@ def check_project(project: Project, solved: Iterable[tuple[str, Setting, Convent
         if element.adjoins == "outdoors" and project.assemblies[element.assembly].kind == "layers":
             outdoors.setdefault(element.assembly, []).append(element)
     found: dict[str, Moisture] = {}
-    for tag, setting, conventions in solved:
-        name = project.elements[tag].assembly
-        if project.elements[tag] in outdoors.get(name, ()) and name not in found:
-            assembly = project.assemblies[name]
-            found[name] = check(assembly, outdoors[name], setting, conventions, months)
+    for line in lines:
+        element, solved = project.elements[line.element], line.solved
+        name = element.assembly
+        if solved is None or name in found or element.adjoins != "outdoors":
+            continue
+        if name in outdoors:
+            conventions = rulesets[line.ruleset].conventions
+            found[name] = check(
+                project.assemblies[name], outdoors[name], solved.setting, conventions, months
+            )
     worst = worst_of(months)
     checked = tuple(found[name] for name in project.assemblies if name in found)
     left = tuple(name for name in project.assemblies if name not in found)
