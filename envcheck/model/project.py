@@ -318,7 +318,7 @@ class Site(NamedTuple):
     climate: Climate | None = None
     by_criteria: tuple[ByCriteria, ...] = ()
     """By each formula that a rule set names; filled in once the rule sets are read."""
-    indoor_air: IndoorAir | None = None
+    indoor_air: "IndoorAir | None" = None
     line: int = 0
     """Of the section, or of the file where there is none."""
 
