@@ -57,6 +57,7 @@ from envcheck.solve.methods.iso13370_slab import (
 )
 from envcheck.solve.methods.iso13370_suspended import SuspendedFloor, suspended_u, underfloor_air_u
 from envcheck.solve.methods.iso13370_unheated import UnheatedBasement, unheated_basement_u
+from envcheck.solve.methods.iso13788_condensation import rate
 from envcheck.solve.methods.slightly_ventilated import between_closed_and_open
 from envcheck.solve.methods.steel_framing import effective_resistance
 from envcheck.solve.methods.surface_films import convection_by_wind, surface_resistance
@@ -70,6 +71,7 @@ from envcheck.solve.methods.weighted import bre_weight, decide_weighted, weighte
 from envcheck.solve.methods.wirings import decide_isothermal_planes, decide_parallel_path
 from envcheck.solve.methods.zone import zone_u, zone_width
 from envcheck.solve.registry import Decision, Wall, methods
+from envcheck.solve.surface import plain_factor
 from envcheck.solve.wiring import bounds
 from tests.solve.samples import WOOD, WOOL, XPS, assembly, framed, plane, setting, stated
 from tests.solve.test_invariants import few
@@ -190,6 +192,10 @@ FUNCTIONS: dict[str, list[tuple[Function, int]]] = {
         (lambda *numbers: bounds(wall(*numbers))[1], 4),
     ],
     "zone": [(zone_width, 2), (zone_u, 4)],
+    "iso13788_surface": [(plain_factor, 2)],
+    "iso13788_condensation": [
+        (lambda d1, d2, p0, p1, p2: rate((0.0, p0), (d1, p1), (d1 + d2, p2)), 5)
+    ],
 }
 NO_FUNCTION = {
     "crossed_insulation": "a convention, no formula",
