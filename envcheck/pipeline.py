@@ -32,7 +32,7 @@ from envcheck.model.names import Names
 from envcheck.model.project import Project, RuleSetChoice
 from envcheck.model.ruleset import RuleSet
 from envcheck.model.solved import Properties, Reasons, Setting, Solved
-from envcheck.read.materials import categories
+from envcheck.read.materials import categories, rows
 from envcheck.read.project import read_project
 from envcheck.read.rulesets import default_folders, read_ruleset
 from envcheck.solve.bracket import CLOSE, TOLERANCE
@@ -43,10 +43,12 @@ from envcheck.solve.solver import Solver
 if TYPE_CHECKING:
     import pandas
 
+    from envcheck.advise.bench import Bench
     from envcheck.model.advised import Advice, Change
     from envcheck.model.compared import Compared
     from envcheck.model.details import Extras, SolvedDetail
     from envcheck.model.moisture import Check
+    from envcheck.model.sure import Room, Sureness, Workmanship
 
 
 @dataclass(frozen=True, slots=True)
@@ -273,12 +275,44 @@ def why(solved: Solved) -> Reasons | None:
 
 def remedies(run: Run) -> tuple[Advice, ...]:
     """What would bring each line that is over its limit, or too close to it, within it."""
-    from envcheck.advise.bench import Bench
     from envcheck.advise.remedies import advise
 
+    least = float(rows("material_classes")["insulation"]["low"])
+    return advise(_bench(run), run.judged.lines, least)
+
+
+def rooms(run: Run, wanted: Sequence[str] = ()) -> tuple[Room, ...]:
+    """How far the assemblies of lines may move: of the tags and assemblies wanted, or of all."""
+    from envcheck.advise.room import rooms as found
+
+    return found(_bench(run), _wanted(run, wanted))
+
+
+def sureness(run: Run, wanted: Sequence[str] = ()) -> tuple[Sureness, ...]:
+    """What the verdicts of lines hang on: of the tags and assemblies wanted, or of all."""
+    from envcheck.advise.sure import sureness as found
+
+    return found(
+        _bench(run), _wanted(run, wanted), rows("evidence_bands"), rows("material_classes")
+    )
+
+
+def _bench(run: Run) -> Bench:
+    from envcheck.advise.bench import Bench
+
     metrics = {name: category.metric for name, category in categories().items()}
-    bench = Bench(run.project, run.rulesets, run.properties, metrics)
-    return advise(bench, run.judged.lines)
+    return Bench(run.project, run.rulesets, run.properties, metrics)
+
+
+def _wanted(run: Run, wanted: Sequence[str]) -> list[Line]:
+    """Lines of elements that are asked for by tag or by assembly; all where nothing is."""
+    elements = run.project.elements
+    return [
+        line
+        for line in run.judged.lines
+        if line.element in elements
+        and (not wanted or {line.element, elements[line.element].assembly} & set(wanted))
+    ]
 
 
 def only(run: Run, patterns: Sequence[str]) -> Run:
@@ -347,6 +381,7 @@ def extras(run: Run, subject: str) -> Extras:
     from envcheck.model.details import Coldest, Extras
     from envcheck.solve.detail import NotSolved, solve_detail
     from envcheck.solve.surface import NoSurface, coldest_of
+    from envcheck.solve.workmanship import workmanship
 
     details: dict[str, SolvedDetail | str] = {}
     if subject in run.project.details:
@@ -355,6 +390,7 @@ def extras(run: Run, subject: str) -> Extras:
         except NotSolved as why:
             details[subject] = str(why)
     surfaces: dict[tuple[str, Setting], Coldest | str] = {}
+    dial: dict[tuple[str, Setting], tuple[Workmanship, ...]] = {}
     for line in run.judged.lines:
         solved = line.solved
         if solved is None or subject not in (line.element, solved.assembly):
@@ -369,7 +405,9 @@ def extras(run: Run, subject: str) -> Extras:
         except NoSurface as why:
             found = str(why)
         surfaces[solved.assembly, solved.setting] = found
-    return Extras(details, surfaces)
+        levels = workmanship(assembly, solved.setting, conventions, rows("workmanship"))
+        dial[solved.assembly, solved.setting] = levels
+    return Extras(details, surfaces, dial)
 
 
 def moisture(run: Run) -> Check:

@@ -41,14 +41,19 @@ class Bench:
 
     def value(self, line: Line, assembly: Assembly) -> float | None:
         """The value that would decide a line if its assembly were this one, SI."""
+        found = self.solved(line, assembly)
+        return found.high if found.decided_by_bracket and found.high is not None else found.value
+
+    def solved(self, line: Line, assembly: Assembly) -> Solved:
+        """What a line's assembly would give if it were this one; a bracket that decides narrow."""
         assert line.solved is not None
         setting, ruleset = line.solved.setting, self.rulesets[line.ruleset]
         element = self.project.elements[line.element]
         area = element.net_area if element.bridges else None
         found = solve(assembly, setting, ruleset.conventions, element.bridges, area)
         if line.solved.decided_by_bracket and can_narrow(found, TOLERANCE):
-            return narrow(assembly, setting, ruleset.conventions, found, TOLERANCE).high
-        return found.value
+            return narrow(assembly, setting, ruleset.conventions, found, TOLERANCE)
+        return found
 
     def judged(self, assembly: Assembly) -> list[Line]:
         """Every line of the elements that use the assembly, were it this one."""

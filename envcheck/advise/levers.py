@@ -80,7 +80,7 @@ def _of_layer(assembly: Assembly, place: int, layer: Layer) -> Iterator[Lever]:
             _setter(assembly, place, layer, "thickness"), ((*at, "thickness"),),
             material=layer.material,
         )  # fmt: skip
-    elif isinstance(layer, TaperedLayer):
+    elif isinstance(layer, TaperedLayer) and not layer.pieces:
         yield Lever(
             "taper", layer.title, layer.least, "thickness", True, THICKEST,
             _taper(assembly, place, layer), ((*at, "least"), (*at, "greatest")),
@@ -181,17 +181,19 @@ def turned(assembly: Assembly) -> tuple[Lever, ...]:
         changed = _listed(assembly, "fasteners", place)
         found.append(
             Lever("density", f"fasteners through {fasteners.layer}", fasteners.density, "per_area",
-                  False, 0.0, _field(changed, fasteners, "density"), (), structural=True)
+                  False, 0.0, _field(changed, fasteners, "density"),
+                  (("assemblies", assembly.id, "fasteners", place, "density"),), structural=True)
         )  # fmt: skip
     for place, bridge in enumerate(assembly.bridges):
-        if bridge.detail is None:
+        if bridge.detail is None and bridge.drawn is None:
             changed = _listed(assembly, "bridges", place)
             kind, quantity = ("psi", "linear_transmittance")
             if bridge.kind == "point":
                 kind, quantity = ("chi", "point_transmittance")
             found.append(
                 Lever(kind, bridge.title, bridge.value, quantity, False, 0.0,
-                      _field(changed, bridge, "value"), (), structural=True)
+                      _field(changed, bridge, "value"),
+                      (("assemblies", assembly.id, "bridges", place, kind),), structural=True)
             )  # fmt: skip
     return tuple(found)
 

@@ -6,15 +6,17 @@ so in a thickness. Structural choices are stated as far as they would do, never 
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Iterable, Sequence
 from typing import NamedTuple
 
 from envcheck.advise.bench import Bench
+from envcheck.advise.breaks import Before, breaks
 from envcheck.advise.levers import Lever, levers, turned
-from envcheck.advise.roots import root
+from envcheck.advise.roots import CLOSE, root
 from envcheck.judge.compare import decimals_of, own_term
 from envcheck.model.advised import Advice, Change, Refused, Structural
 from envcheck.model.judged import Line
+from envcheck.model.metrics import METRICS
 from envcheck.model.project import Assembly, Project
 from envcheck.units import to_si
 
@@ -22,6 +24,12 @@ SHY = 1e-9
 """Share by which a solved value is moved to the safe side of a limit."""
 
 
+NEAR = 1e-6
+"""Relative width of a root where each value is a section solved in two dimensions to 1e-3."""
+SAME = 0.01
+"""Share within which two labels are the same."""
+LABELLED = ("cavity_factors", "effective_layers")
+"""Tables with a row for each label."""
 SHORT_OF_HALF = 0.999
 """Share of half the last printed place by which a value may lie above a limit; half is over it."""
 
@@ -33,34 +41,39 @@ class Target(NamedTuple):
     value: float
 
 
-def advise(bench: Bench, lines: Sequence[Line]) -> tuple[Advice, ...]:
-    """Advise on every assembly that has a deciding line over its limit or too close to it."""
+def advise(
+    bench: Bench, lines: Sequence[Line], least_conductivity: float = 0.0
+) -> tuple[Advice, ...]:
+    """Advise on every assembly that has a deciding line over its limit or too close to it.
+
+    least_conductivity: under which no insulation lies, W/(m K).
+    """
+    before = Before({(x.ruleset, x.element, x.metric): x for x in lines}, least_conductivity)
     wanted: dict[str, list[Line]] = {}
     for line in lines:
         element = bench.project.elements.get(line.element)
         if element is not None and line.decides and line.verdict in ("fail", "too_close"):
             wanted.setdefault(element.assembly, []).append(line)
     return tuple(
-        _of_assembly(bench, bench.project.assemblies[name], own, lines)
+        _of_assembly(bench, bench.project.assemblies[name], own, before)
         for name, own in wanted.items()
     )
 
 
-def _of_assembly(
-    bench: Bench, assembly: Assembly, own: Sequence[Line], lines: Iterable[Line]
-) -> Advice:
-    to_limit = _targets(bench, own, by_rounding=False)
+def _of_assembly(bench: Bench, assembly: Assembly, own: Sequence[Line], before: Before) -> Advice:
+    to_limit = targets_of(bench, own, by_rounding=False)
+    refused = _without_target(own)
     if not to_limit:
-        return Advice(assembly.id, tuple(own), (), (), (), (), None)
-    to_rounding = _targets(bench, own, by_rounding=True)
-    before = {(x.ruleset, x.element, x.metric): x.verdict for x in lines}
+        return Advice(assembly.id, tuple(own), (), (), tuple(refused), (), None)
+    to_rounding = targets_of(bench, own, by_rounding=True)
     changes: list[Change] = []
-    refused: list[Refused] = []
     structural: list[Structural] = []
     for lever in levers(assembly, bench.project.materials):
         value = _solved_for(bench, lever, to_limit)
         if isinstance(value, Refused):
-            if not lever.structural:
+            rows = _rows(bench, lever, to_limit, before) if value.why == "no value" else []
+            changes += rows
+            if not lever.structural and not rows:
                 refused.append(value)
         elif lever.structural:
             structural.append(Structural(lever.kind, lever.what, lever.now, value, lever.quantity))
@@ -73,20 +86,44 @@ def _of_assembly(
     )  # fmt: skip
 
 
-def _targets(bench: Bench, lines: Iterable[Line], by_rounding: bool) -> tuple[Target, ...]:
-    """Limits of the lines, SI, and the assembly's own solution each is held against."""
+def targets_of(bench: Bench, lines: Iterable[Line], by_rounding: bool) -> tuple[Target, ...]:
+    """Limits of the lines, SI, and the assembly's own solution each is held against.
+
+    A total R-value that must be reached is a U-factor that must not be exceeded.
+    """
     found = {}
     for line in lines:
         own = line.own or line.comparison or line.high
-        if own is None or line.limit is None or line.solved is None or own.sense != "max":
+        if not has_target(line) or own is None or line.limit is None:
             continue
-        ruleset = bench.rulesets[line.ruleset]
-        limit = own.limit
-        places = decimals_of(own_term(line.limit), ruleset)
+        places = decimals_of(own_term(line.limit), bench.rulesets[line.ruleset])
+        ease = 0.0
         if by_rounding and places is not None:
-            limit += 0.5 * 10.0**-places * SHORT_OF_HALF
-        found[id(line.solved), limit] = Target(line, to_si(limit, own.unit))
+            ease = 0.5 * 10.0**-places * SHORT_OF_HALF
+        limit = own.limit + ease if own.sense == "max" else own.limit - ease
+        value = to_si(limit, own.unit) if own.unit else limit
+        if own.sense == "min":
+            value = 1.0 / value
+        found[id(line.solved), value] = Target(line, value)
     return tuple(found.values())
+
+
+def has_target(line: Line) -> bool:
+    """Whether a line holds a solved value against a limit that less heat flow would meet."""
+    own = line.own or line.comparison or line.high
+    if own is None or line.limit is None or line.solved is None:
+        return False
+    metric = METRICS[line.limit.metric]
+    return bool(metric.solved_as) and (own.sense == "min") == metric.reciprocal
+
+
+def _without_target(lines: Iterable[Line]) -> list[Refused]:
+    """Lines that no change of an assembly's parts can settle, since the figure is stated."""
+    return [
+        Refused("line", f"{line.element}, {line.metric}", "stated", None)
+        for line in lines
+        if not has_target(line)
+    ]
 
 
 # -------------------------------------------------------------------------------------- solving
@@ -117,10 +154,16 @@ def _solved_for_one(bench: Bench, lever: Lever, target: Target) -> float | Refus
             return _not_enough(bench, lever, target)
         if short(lever.now) <= 0.0:
             return lever.now
-        found = root(short, lever.now, lever.most, max(abs(lever.now), 1e-3))
+        found = root(short, lever.now, lever.most, max(abs(lever.now), 1e-3), closeness(target))
         return _on_the_safe_side(short, found, lever)
     except _NoValue:
         return Refused(lever.kind, lever.what, "no value", None)
+
+
+def closeness(target: Target) -> float:
+    """How close a root is asked for: of a bracket that decides no closer than its own gap."""
+    assert target.line.solved is not None
+    return NEAR if target.line.solved.decided_by_bracket else CLOSE
 
 
 class _NoValue(Exception):
@@ -152,7 +195,7 @@ def _changes(
     value: float,
     to_limit: Sequence[Target],
     to_rounding: Sequence[Target],
-    before: Mapping[tuple[str, str, str], str],
+    before: Before,
 ) -> list[Change]:
     """The change to the printed limit, that by the code's rounding, and the next stock size."""
     wanted = [("limit", value)]
@@ -166,13 +209,40 @@ def _changes(
     return [change for change in found if change is not None]
 
 
+def _rows(bench: Bench, lever: Lever, targets: Sequence[Target], before: Before) -> list[Change]:
+    """The least other label among the rows of the rule sets' tables that brings the lines within.
+
+    A method by table has no value between its rows, so that each row is tried.
+    """
+    if lever.kind != "label":
+        return []
+    for label in labels_in_tables(bench, targets):
+        if label > lever.now * (1.0 + SAME):
+            change = _change(bench, lever, label, "table", targets, before)
+            if change is not None:
+                return [change]
+    return []
+
+
+def labels_in_tables(bench: Bench, targets: Iterable[Target]) -> list[float]:
+    """Labels for which the rule sets of the targets print a figure, m2 K/W, the least first."""
+    found = {
+        float(label)
+        for ruleset in {target.line.ruleset for target in targets}
+        for table in LABELLED
+        for row in bench.rulesets[ruleset].conventions.tables.get(table, ())
+        if (label := row.keys.get("label"))
+    }
+    return sorted(found)
+
+
 def _change(
     bench: Bench,
     lever: Lever,
     x: float,
     basis: str,
     targets: Sequence[Target],
-    before: Mapping[tuple[str, str, str], str],
+    before: Before,
 ) -> Change | None:
     """Judge a change; None where the lines are not settled by it."""
     assembly = lever.applied(x)
@@ -182,6 +252,9 @@ def _change(
     if any(verdicts[key].verdict != "pass" for key in settled if key in verdicts):
         return None
     values = [bench.value(target.line, assembly) for target in targets]
+    known = [value for value in values if value is not None]
+    if not known:
+        return None
     return Change(
         lever=lever.kind,
         what=lever.what,
@@ -190,10 +263,10 @@ def _change(
         quantity=lever.quantity,
         resistance=lever.resistance(x),
         basis=basis,
-        value=max(value for value in values if value is not None),
+        value=max(known),
         edits=lever.edits(x),
         verdicts=tuple((line.ruleset, line.element, line.verdict) for line in after),
-        breaks=_breaks(bench.project, lever, assembly, after, before),
+        breaks=breaks(bench.project, lever, assembly, after, before),
         cost=_cost(bench.project, lever, assembly.id, x),
     )
 
@@ -218,40 +291,6 @@ def _next_in_stock(project: Project, lever: Lever, least: float) -> float | None
         return None
     sizes = dict(project.options.stock).get(lever.material.id, ())
     return min((size for size in sizes if size >= least * (1.0 - 1e-9)), default=None)
-
-
-def _breaks(
-    project: Project,
-    lever: Lever,
-    assembly: Assembly,
-    after: Iterable[Line],
-    before: Mapping[tuple[str, str, str], str],
-) -> tuple[str, ...]:
-    """What a change makes worse elsewhere."""
-    found = [
-        f"{line.element} by {line.ruleset}: {line.verdict.replace('_', ' ')}"
-        for line in after
-        if line.verdict != "pass"
-        and before.get((line.ruleset, line.element, line.metric)) == "pass"
-    ]
-    if lever.kind == "conductivity" and lever.material is not None:
-        others = [
-            each.id
-            for each in project.assemblies.values()
-            if each.id != assembly.id and _uses(each, lever.material.id)
-        ]
-        if others:
-            found.append(f"the material also stands in {', '.join(others)}")
-    return tuple(found)
-
-
-def _uses(assembly: Assembly, material: str) -> bool:
-    for layer in assembly.layers:
-        fill = getattr(layer, "fill", None)
-        for own in (getattr(layer, "material", None), getattr(fill, "material", None)):
-            if own is not None and own.id == material:
-                return True
-    return False
 
 
 def _ranked(changes: Iterable[Change]) -> tuple[Change, ...]:

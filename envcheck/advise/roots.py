@@ -9,12 +9,14 @@ CLOSE = 1e-10
 MOST = 80
 
 
-def root(function: Callable[[float], float], low: float, high: float, scale: float) -> float:
+def root(
+    function: Callable[[float], float], low: float, high: float, scale: float, close: float = CLOSE
+) -> float:
     """Find x in [low, high] where ``function`` changes its sign, by false position with the
     Illinois step (Dowell and Jarratt 1971), which always keeps the root enclosed.
 
-    scale: size of x against which closeness is measured. Errors: ValueError where the ends have
-    the same sign.
+    scale: size of x against which closeness is measured; close: share of it.
+    Errors: ValueError where the ends have the same sign.
     """
     at_low, at_high = function(low), function(high)
     if at_low == 0.0:
@@ -25,7 +27,7 @@ def root(function: Callable[[float], float], low: float, high: float, scale: flo
         raise ValueError("no change of sign")
     kept = 0
     for _ in range(MOST):
-        if abs(high - low) <= CLOSE * scale:
+        if abs(high - low) <= close * scale:
             break
         x = (low * at_high - high * at_low) / (at_high - at_low)
         if not min(low, high) < x < max(low, high):

@@ -13,6 +13,8 @@ COMMANDS = {
     "explain": ("envcheck.cli.explain:explain", "Show the worksheet of one element or assembly."),
     "remedy": ("envcheck.cli.remedy:remedy", "Say what would bring lines within their limits."),
     "compare": ("envcheck.cli.compare:compare", "Say what changed between two revisions."),
+    "room": ("envcheck.cli.room:room", "Say how far a drawing may move within its limits."),
+    "sure": ("envcheck.cli.sure:sure", "Say which inputs decide each verdict."),
     "new": ("envcheck.cli.new:new", "Write a commented project to start from."),
     "rules": ("envcheck.cli.rules:rules", "Type, lint, print back, compare and lock rule sets."),
     "schema": ("envcheck.cli.schema:schema", "Print the schema of a file format."),

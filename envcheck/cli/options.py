@@ -4,12 +4,13 @@ from __future__ import annotations
 
 import os
 import sys
-from collections.abc import Callable
+from collections.abc import Callable, Iterable
 from typing import TYPE_CHECKING, Any, TypeVar
 
 import click
 
 if TYPE_CHECKING:
+    from envcheck.model.project import Project
     from envcheck.report.registry import Format
     from envcheck.report.view import View
 
@@ -92,3 +93,20 @@ def width(output: str | None) -> int:
     except OSError:
         return WIDTH
     return max(NARROWEST, min(WIDTH, columns))
+
+
+def known_subjects(project: Project, wanted: Iterable[str]) -> None:
+    """Refuse a name that is neither an element nor an assembly. Errors: InputError, all at once."""
+    from envcheck.errors import InputError, did_you_mean, one_of, problem
+
+    known = (*project.elements, *project.assemblies)
+    problems = [
+        problem(
+            "unknown-element", project.file, None, name=name, expected=one_of(known),
+            hint=did_you_mean(name, known) or "name an element or an assembly of the project",
+        )
+        for name in wanted
+        if name not in known
+    ]  # fmt: skip
+    if problems:
+        raise InputError(problems)

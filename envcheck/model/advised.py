@@ -32,7 +32,8 @@ class Change(NamedTuple):
     resistance: float | None
     """Of the layer after the change, m2 K/W, where it has one."""
     basis: str
-    """``limit`` (to the printed number), ``rounding`` (by the code's rounding), ``stock``."""
+    """``limit`` (to the printed number), ``rounding`` (by the code's rounding), ``stock``,
+    ``table`` (the next label for which the rule set prints a figure)."""
     value: float
     """U, C or F of the assembly after it, SI; of several lines the worst."""
     edits: tuple[Edit, ...]
@@ -50,7 +51,8 @@ class Refused(NamedTuple):
     lever: str
     what: str
     why: str
-    """``not enough`` (at its farthest the lines are still over), ``no value`` (of the method)."""
+    """``not enough`` (at its farthest the lines are still over), ``no value`` (of the method),
+    ``stated`` (the line is on a figure that the product states)."""
     best: float | None
     """Value of the assembly with the lever at its farthest, SI."""
 

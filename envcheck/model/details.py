@@ -5,10 +5,14 @@ x runs to the right and y upwards, both in m from the lower left corner of the d
 
 import itertools
 from collections.abc import Mapping, Sequence
-from typing import NamedTuple
+from types import MappingProxyType
+from typing import TYPE_CHECKING, NamedTuple
 
 from envcheck.model.layers import Material
 from envcheck.model.solved import Setting
+
+if TYPE_CHECKING:
+    from envcheck.model.sure import Workmanship
 
 EDGES = ("left", "right", "bottom", "top")
 """Edges of a drawing, where the assemblies that meet are cut off."""
@@ -192,4 +196,6 @@ class Extras(NamedTuple):
     details: Mapping[str, SolvedDetail | str]
     """By detail id."""
     surfaces: Mapping[tuple[str, Setting], Coldest | str]
+    """By assembly id and setting."""
+    workmanship: Mapping[tuple[str, Setting], tuple[Workmanship, ...]] = MappingProxyType({})
     """By assembly id and setting."""

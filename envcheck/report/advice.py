@@ -34,11 +34,13 @@ BASES = {
     "limit": "the printed limit",
     "rounding": "it by rounding",
     "stock": "a stock size",
+    "table": "the next row of a table",
 }
 CAUTION = (
     "Each change brings the computed value within the limit; check fire, structure and moisture "
     "first. Structural choices are stated as far as they would do thermally, not proposed."
 )
+NO_VALUE = "the prescribed method gives no value for another, and no row of its tables does it"
 NO_CURE = "Nothing that is drawn brings it within its limit by itself."
 
 
@@ -131,10 +133,10 @@ def _table(each: Advice, system: str) -> Grid:
         (
             name,
             clean(f"{change.what}: {LEVERS[change.lever]}"),
-            _figure(change.before, change.quantity, system, True),
-            _figure(change.after, change.quantity, system, change.after > change.before),
+            figure(change.before, change.quantity, system, True),
+            figure(change.after, change.quantity, system, change.after > change.before),
             _resistance(change.resistance, system),
-            _value(change.value, metric, system),
+            value_text(change.value, metric, system),
             BASES[change.basis],
         )
         for name, change in zip(names(each), each.changes, strict=True)
@@ -161,12 +163,13 @@ def _resistance(value: float | None, system: str) -> str:
     return numbers.fixed(numbers.in_system(value, "resistance", system), 2)
 
 
-def _value(value: float, metric: str, system: str) -> str:
+def value_text(value: float, metric: str, system: str) -> str:
+    """A value of a metric, SI, in the units of the page and without them."""
     shown = numbers.in_system(value, numbers.quantity(metric), system)
     return numbers.fixed(shown, numbers.decimals(metric, system))
 
 
-def _figure(value: float, quantity: str, system: str, up: bool) -> str:
+def figure(value: float, quantity: str, system: str, up: bool) -> str:
     """A number with its unit, to five digits, never short of what is needed."""
     shown = numbers.in_system(value, quantity, system)
     if quantity == "share":
@@ -183,16 +186,20 @@ def _added(each: Advice, system: str) -> list[str]:
 
 
 def _refused(refused: Refused, metric: str, system: str) -> str:
+    if refused.why == "stated":
+        return clean(
+            f"{refused.what}: a figure that the product states; only another product helps"
+        )
     what = f"{refused.what}, {LEVERS[refused.lever]}"
     if refused.best is None:
-        return clean(f"{what}: the prescribed method gives no value for another")
-    best = f"{numbers.symbol(metric)} {_value(refused.best, metric, system)}"
+        return clean(f"{what}: {NO_VALUE}")
+    best = f"{numbers.symbol(metric)} {value_text(refused.best, metric, system)}"
     return clean(f"{what}: not by this alone; at its best {best} {numbers.unit(metric, system)}")
 
 
 def _structural(found: Structural, system: str) -> str:
-    now = _figure(found.now, found.quantity, system, True)
-    most = _figure(found.most, found.quantity, system, found.lever == "spacing")
+    now = figure(found.now, found.quantity, system, True)
+    most = figure(found.most, found.quantity, system, found.lever == "spacing")
     word = "from" if found.most > found.now and found.lever == "spacing" else "up to"
     return clean(f"{found.what}, {LEVERS[found.lever]}: {now} drawn; thermally, {word} {most}")
 

@@ -23,6 +23,7 @@ from envcheck.report import (
     tree,
     wording,
     workings,
+    workmanship,
 )
 from envcheck.report import worksheet as sheet
 from envcheck.report.inert import clean
@@ -32,6 +33,7 @@ from envcheck.report.view import ViewOptions, system_for
 
 if TYPE_CHECKING:
     from envcheck.model.details import Coldest, Extras, SolvedDetail
+    from envcheck.model.sure import Workmanship
 
 
 class AssemblyExplained(NamedTuple):
@@ -51,6 +53,8 @@ class AssemblyExplained(NamedTuple):
     """Of the drawn section."""
     coldest: Coldest | None
     """Of its inside surface."""
+    workmanship: tuple[Workmanship, ...]
+    """What voids and compression would leave of its cavity insulation."""
 
 
 class Explained(NamedTuple):
@@ -110,9 +114,11 @@ def build(
         found = why(solved)
         sections += _solved(project, solved, lines, system, found)
         coldest = extras.surfaces.get((solved.assembly, solved.setting)) if extras else None
-        behind.append(_numbers(solved, system, found, coldest))
+        dial = extras.workmanship.get((solved.assembly, solved.setting), ()) if extras else ()
+        behind.append(_numbers(solved, system, found, coldest, dial))
         if coldest is not None:
             sections.append(junction.surface(coldest, project.site, system))
+        sections += workmanship.sections(dial, system)
     for line in lines:
         sections += _held(line, rulesets, system)
     sections.append(Section("", (Paragraph(wording.DEFERRAL),)))
@@ -123,7 +129,11 @@ def build(
 
 
 def _numbers(
-    solved: Solved, system: str, found: Reasons | None, coldest: Coldest | str | None
+    solved: Solved,
+    system: str,
+    found: Reasons | None,
+    coldest: Coldest | str | None,
+    dial: tuple[Workmanship, ...],
 ) -> AssemblyExplained:
     return AssemblyExplained(
         solved.assembly,
@@ -137,6 +147,7 @@ def _numbers(
         found,
         solved.drawn,
         None if isinstance(coldest, str) else coldest,
+        dial,
     )
 
 
