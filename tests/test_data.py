@@ -31,6 +31,8 @@ TABLES = {
     "compressed_batts.csv": (),
     "plausible_ranges.csv": ("low", "high"),
     "humidity_classes.csv": ("excess",),
+    "evidence_bands.csv": ("low", "high"),
+    "workmanship.csv": ("share",),
     "materials.csv": ("conductivity", "low", "high", "density", "specific_heat"),
 }
 DIRECTIONS = ("up", "horizontal", "down")
@@ -72,7 +74,9 @@ def test_every_row_has_a_source(name: str) -> None:
     assert all(row.get("source") or row.get("src") for row in rows(name))
 
 
-@pytest.mark.parametrize("name", ["categories.csv", "steel_profiles.csv", "materials.csv"])
+@pytest.mark.parametrize(
+    "name", ["categories.csv", "steel_profiles.csv", "materials.csv", "evidence_bands.csv"]
+)
 def test_ids_are_unique(name: str) -> None:
     assert len(by_id(name)) == len(rows(name))
 
@@ -300,3 +304,28 @@ def test_vapour_resistance_factors_are_those_of_something_and_say_whose() -> Non
 )  # fmt: skip
 def test_vapour_resistance_factor(material: str, mu: float) -> None:
     assert float(by_id("materials.csv")[material]["mu"]) == mu
+
+
+# ------------------------------------------------------------------------------ bands and levels
+
+
+def test_a_band_holds_the_stated_value_and_says_where_it_comes_from() -> None:
+    for row in rows("evidence_bands.csv"):
+        assert 0.0 < float(row["low"]) < 1.0 < float(row["high"]), row
+        assert "from memory" in row["source"] or row["source"].startswith("common practice"), row
+
+
+def test_less_evidence_never_narrows_a_band() -> None:
+    """Assumed is the widest of every quantity."""
+    by_quantity: dict[str, dict[str, float]] = defaultdict(dict)
+    for row in rows("evidence_bands.csv"):
+        width = float(row["high"]) / float(row["low"])
+        by_quantity[row["quantity"]][row["evidence"]] = width
+    for widths in by_quantity.values():
+        assert "*" in widths or widths["assumed"] == max(widths.values())
+
+
+def test_levels_of_workmanship_are_shares() -> None:
+    for row in rows("workmanship.csv"):
+        assert row["kind"] in ("void", "compression")
+        assert 0.0 < float(row["share"]) < 1.0

@@ -10,6 +10,7 @@ from collections.abc import Callable, Iterator, Mapping
 from math import isfinite
 from typing import Any, NamedTuple
 
+from envcheck.advise.levers import conducting
 from envcheck.model.ground import Ground, Slab
 from envcheck.model.layers import (
     Bridge,
@@ -179,7 +180,7 @@ def _of_material(material: Material, bands: Rows, classes: Rows) -> Stated:
     return Stated(
         what, "conductivity", "conductivity", now, low, high, basis, from_where,
         material.evidence or "assumed", material.source,
-        lambda assembly, value: _conducting(assembly, material, value),
+        lambda assembly, value: conducting(assembly, material, value),
     )  # fmt: skip
 
 
@@ -198,16 +199,4 @@ def _at(part: Any, path: tuple[int, ...], change: Callable[[Any], Any]) -> Any:
         return change(part)
     inner = [*part]
     inner[path[0]] = _at(inner[path[0]], path[1:], change)
-    return type(part)(*inner) if hasattr(part, "_fields") else tuple(inner)
-
-
-def _conducting(part: Any, material: Material, conductivity: float) -> Any:
-    """The same part with a material that conducts otherwise, wherever it stands."""
-    if isinstance(part, Material):
-        if part.id == material.id and part.title == material.title:
-            return part._replace(conductivity=conductivity)
-        return part
-    if not isinstance(part, tuple):
-        return part
-    inner = [_conducting(one, material, conductivity) for one in part]
     return type(part)(*inner) if hasattr(part, "_fields") else tuple(inner)

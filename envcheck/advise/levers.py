@@ -7,6 +7,7 @@ where it is False.
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Iterator
+from functools import partial
 from typing import Any, NamedTuple
 
 from envcheck.model.advised import Edit, Path
@@ -139,7 +140,7 @@ def _conductivities(assembly: Assembly, own: set[str]) -> Iterator[Lever]:
     for material in seen.values():
         yield Lever(
             "conductivity", material.title, material.conductivity, "conductivity", False, BEST,
-            _conducting(assembly, material), (("materials", material.id, "conductivity"),),
+            partial(conducting, assembly, material), (("materials", material.id, "conductivity"),),
             material=material,
         )  # fmt: skip
 
@@ -215,16 +216,14 @@ def _taper(assembly: Assembly, place: int, layer: TaperedLayer) -> Callable[[flo
     return lambda x: _with(assembly, place, layer._replace(least=x, greatest=x + rise))
 
 
-def _conducting(assembly: Assembly, material: Material) -> Callable[[float], Assembly]:
-    def changed(layer: Layer, x: float) -> Layer:
-        other = material._replace(conductivity=x)
-        if isinstance(layer, MaterialLayer | TaperedLayer) and layer.material == material:
-            return layer._replace(material=other)
-        if isinstance(layer, FramedLayer) and layer.fill.material == material:
-            return layer._replace(fill=layer.fill._replace(material=other))
-        return layer
-
-    return lambda x: assembly._replace(layers=tuple(changed(each, x) for each in assembly.layers))
+def conducting(part: Any, material: Material, conductivity: float) -> Any:
+    """The same assembly, or part of one, whose material conducts otherwise wherever it stands."""
+    if isinstance(part, Material):
+        return part._replace(conductivity=conductivity) if part == material else part
+    if not isinstance(part, tuple):
+        return part
+    inner = [conducting(one, material, conductivity) for one in part]
+    return type(part)(*inner) if hasattr(part, "_fields") else tuple(inner)
 
 
 def _listed(assembly: Assembly, field: str, place: int) -> Callable[[object], Assembly]:

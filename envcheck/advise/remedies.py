@@ -7,38 +7,25 @@ so in a thickness. Structural choices are stated as far as they would do, never 
 from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
-from typing import NamedTuple
 
 from envcheck.advise.bench import Bench
 from envcheck.advise.breaks import Before, breaks
 from envcheck.advise.levers import Lever, levers, turned
-from envcheck.advise.roots import CLOSE, root
-from envcheck.judge.compare import decimals_of, own_term
+from envcheck.advise.targets import (
+    NoValue,
+    Target,
+    has_target,
+    labels_in_tables,
+    met,
+    short_of,
+    targets_of,
+)
 from envcheck.model.advised import Advice, Change, Refused, Structural
 from envcheck.model.judged import Line
-from envcheck.model.metrics import METRICS
 from envcheck.model.project import Assembly, Project
-from envcheck.units import to_si
 
-SHY = 1e-9
-"""Share by which a solved value is moved to the safe side of a limit."""
-
-
-NEAR = 1e-6
-"""Relative width of a root where each value is a section solved in two dimensions to 1e-3."""
 SAME = 0.01
 """Share within which two labels are the same."""
-LABELLED = ("cavity_factors", "effective_layers")
-"""Tables with a row for each label."""
-SHORT_OF_HALF = 0.999
-"""Share of half the last printed place by which a value may lie above a limit; half is over it."""
-
-
-class Target(NamedTuple):
-    """A value that a line must not exceed, SI."""
-
-    line: Line
-    value: float
 
 
 def advise(
@@ -86,37 +73,6 @@ def _of_assembly(bench: Bench, assembly: Assembly, own: Sequence[Line], before: 
     )  # fmt: skip
 
 
-def targets_of(bench: Bench, lines: Iterable[Line], by_rounding: bool) -> tuple[Target, ...]:
-    """Limits of the lines, SI, and the assembly's own solution each is held against.
-
-    A total R-value that must be reached is a U-factor that must not be exceeded.
-    """
-    found = {}
-    for line in lines:
-        own = line.own or line.comparison or line.high
-        if not has_target(line) or own is None or line.limit is None:
-            continue
-        places = decimals_of(own_term(line.limit), bench.rulesets[line.ruleset])
-        ease = 0.0
-        if by_rounding and places is not None:
-            ease = 0.5 * 10.0**-places * SHORT_OF_HALF
-        limit = own.limit + ease if own.sense == "max" else own.limit - ease
-        value = to_si(limit, own.unit) if own.unit else limit
-        if own.sense == "min":
-            value = 1.0 / value
-        found[id(line.solved), value] = Target(line, value)
-    return tuple(found.values())
-
-
-def has_target(line: Line) -> bool:
-    """Whether a line holds a solved value against a limit that less heat flow would meet."""
-    own = line.own or line.comparison or line.high
-    if own is None or line.limit is None or line.solved is None:
-        return False
-    metric = METRICS[line.limit.metric]
-    return bool(metric.solved_as) and (own.sense == "min") == metric.reciprocal
-
-
 def _without_target(lines: Iterable[Line]) -> list[Refused]:
     """Lines that no change of an assembly's parts can settle, since the figure is stated."""
     return [
@@ -141,44 +97,16 @@ def _solved_for(bench: Bench, lever: Lever, targets: Iterable[Target]) -> float 
 
 
 def _solved_for_one(bench: Bench, lever: Lever, target: Target) -> float | Refused:
-    """The value of a lever at which one line meets its target, found on R = 1/U."""
-
-    def short(x: float) -> float:
-        value = bench.value(target.line, lever.applied(x))
-        if value is None or value <= 0.0:
-            raise _NoValue
-        return 1.0 / target.value - 1.0 / value
-
+    """The value of a lever at which one line meets its target."""
+    short = short_of(bench, lever, target)
     try:
         if short(lever.most) > 0.0:
             return _not_enough(bench, lever, target)
         if short(lever.now) <= 0.0:
             return lever.now
-        found = root(short, lever.now, lever.most, max(abs(lever.now), 1e-3), closeness(target))
-        return _on_the_safe_side(short, found, lever)
-    except _NoValue:
+        return met(short, lever, lever.most, target)
+    except NoValue:
         return Refused(lever.kind, lever.what, "no value", None)
-
-
-def closeness(target: Target) -> float:
-    """How close a root is asked for: of a bracket that decides no closer than its own gap."""
-    assert target.line.solved is not None
-    return NEAR if target.line.solved.decided_by_bracket else CLOSE
-
-
-class _NoValue(Exception):
-    """The method does not decide the changed assembly."""
-
-
-def _on_the_safe_side(short: object, found: float, lever: Lever) -> float:
-    assert callable(short)
-    step = SHY * max(abs(found), 1e-6) * (1.0 if lever.more else -1.0)
-    for _ in range(40):
-        if short(found) <= 0.0:
-            break
-        found += step
-        step *= 2.0
-    return found
 
 
 def _not_enough(bench: Bench, lever: Lever, target: Target) -> Refused:
@@ -222,18 +150,6 @@ def _rows(bench: Bench, lever: Lever, targets: Sequence[Target], before: Before)
             if change is not None:
                 return [change]
     return []
-
-
-def labels_in_tables(bench: Bench, targets: Iterable[Target]) -> list[float]:
-    """Labels for which the rule sets of the targets print a figure, m2 K/W, the least first."""
-    found = {
-        float(label)
-        for ruleset in {target.line.ruleset for target in targets}
-        for table in LABELLED
-        for row in bench.rulesets[ruleset].conventions.tables.get(table, ())
-        if (label := row.keys.get("label"))
-    }
-    return sorted(found)
 
 
 def _change(

@@ -6,19 +6,20 @@ remedy; a bound that another path makes meaningless says so.
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable, Sequence
+from collections.abc import Iterable, Sequence
 
 from envcheck.advise.bench import Bench
 from envcheck.advise.levers import Lever, levers, turned
-from envcheck.advise.remedies import (
+from envcheck.advise.targets import (
     SHY,
+    NoValue,
     Target,
-    closeness,
     has_target,
     labels_in_tables,
+    met,
+    short_of,
     targets_of,
 )
-from envcheck.advise.roots import root
 from envcheck.model.advised import Edit
 from envcheck.model.judged import Line
 from envcheck.model.project import Assembly
@@ -80,30 +81,12 @@ def _no_bound(line: Line) -> str:
         return "carried by the R-value path"
     if not has_target(line):
         return "a stated figure, which may go up to the limit itself"
-    if own.within:
-        return ""
-    return (
-        "carried by the sum or mean that it stands in" if line.group else "carried by another path"
-    )
+    if line.group:
+        return "the mean or sum that it stands in gives the verdict"
+    return "" if own.within else "carried by another path"
 
 
 # --------------------------------------------------------------------------------------- bounds
-
-
-class _NoValue(Exception):
-    """The method does not decide the changed assembly."""
-
-
-def _short(bench: Bench, lever: Lever, target: Target) -> Callable[[float], float]:
-    """What a value of the lever lacks: above 0 over the target, on R = 1/U."""
-
-    def short(x: float) -> float:
-        value = bench.value(target.line, lever.applied(x))
-        if value is None or value <= 0.0:
-            raise _NoValue
-        return 1.0 / target.value - 1.0 / value
-
-    return short
 
 
 def _bound(
@@ -113,18 +96,16 @@ def _bound(
     far = _far(lever)
     found: list[tuple[float, str, Target]] = []
     for target in targets:
-        short = _short(bench, lever, target)
+        short = short_of(bench, lever, target)
         try:
             if short(lever.now) > 0.0:
                 return None
             if short(far) <= 0.0:
                 found.append((far, "any", target))
                 continue
-            scale = max(abs(lever.now), 1e-3)
-            x = root(short, lever.now, far, scale, closeness(target))
-            x = _inside(short, x, lever.now)
+            x = met(short, lever, far, target)
             found.append((x, "bound", target))
-        except _NoValue:
+        except NoValue:
             return _last_row(bench, lever, targets)
     most, state, target = (max if lever.more else min)(found, key=lambda each: each[0])
     if state == "bound" and _other_path(bench, lever, most, lines):
@@ -148,28 +129,20 @@ def _far(lever: Lever) -> float:
     return TIMES * lever.now if lever.kind == "density" else 10.0 * lever.now
 
 
-def _inside(short: Callable[[float], float], found: float, now: float) -> float:
-    """Move a solved bound to the side on which the line is within its limit."""
-    step = SHY * max(abs(found), 1e-6) * (1.0 if now > found else -1.0)
-    for _ in range(40):
-        if short(found) <= 0.0:
-            break
-        found += step
-        step *= 2.0
-    return found
-
-
 def _other_path(bench: Bench, lever: Lever, most: float, lines: Iterable[Line]) -> bool:
     """Whether the R-value path still carries every line a little beyond the bound."""
-    if not any(
-        path.path == "insulation" and path.state == "pass" for x in lines for path in x.paths
-    ):
+    if not _by_labels(lines):
         return False
     beyond = most * (1.0 + (-A_LITTLE if lever.more else A_LITTLE))
     wanted = {(x.ruleset, x.element, x.metric) for x in lines}
     after = bench.judged(lever.applied(beyond))
     own = [x.verdict for x in after if (x.ruleset, x.element, x.metric) in wanted]
     return all(verdict == "pass" for verdict in own)
+
+
+def _by_labels(lines: Iterable[Line]) -> bool:
+    """Whether a line passes by the R-value path too."""
+    return any(x.path == "insulation" and x.state == "pass" for line in lines for x in line.paths)
 
 
 def _last_row(bench: Bench, lever: Lever, targets: Sequence[Target]) -> Bound | None:
@@ -212,9 +185,10 @@ def _of_elements(bench: Bench, assembly: Assembly, targets: Iterable[Target]) ->
             most = allowed(value, bridge.value, target.value, amount) if amount else bridge.value
             kind = "chi" if bridge.kind == "point" else "psi"
             quantity = "point_transmittance" if kind == "chi" else "linear_transmittance"
+            state = "other_path" if _by_labels([target.line]) else "bound"
             edit = Edit(("elements", element.tag, "bridges", place, kind), most, quantity, False)
             found.append(
-                Bound(kind, bridge.title, bridge.value, most, quantity, True, "bound",
+                Bound(kind, bridge.title, bridge.value, most, quantity, True, state,
                       element.tag, (edit,))
             )  # fmt: skip
     return found

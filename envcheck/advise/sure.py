@@ -14,7 +14,7 @@ from collections.abc import Sequence
 
 from envcheck.advise.bench import Bench
 from envcheck.advise.inputs import Rows, Stated, inputs
-from envcheck.advise.remedies import has_target
+from envcheck.advise.targets import has_target
 from envcheck.judge.compare import compare, own_term
 from envcheck.judge.values import of_metric
 from envcheck.model.judged import Line
@@ -97,8 +97,10 @@ class _Case:
         own = self.line.own or self.line.comparison
         if not has_target(self.line) or own is None:
             return "a stated figure, or labels alone, are held against the limit"
+        if self.line.group:
+            return "the mean or sum that it stands in gives the verdict"
         if (self.line.verdict == "pass") != own.within and self.line.verdict != "too_close":
-            return "another path, or the sum or mean that it stands in, gives the verdict"
+            return "another path than its value gives the verdict"
         return ""
 
     def _within(self, value: float) -> bool:
