@@ -31,7 +31,7 @@ from envcheck.model.judged import Difference, Group, Judged, Line, Ratio, Turn
 from envcheck.model.names import Names
 from envcheck.model.project import Project, RuleSetChoice
 from envcheck.model.ruleset import RuleSet
-from envcheck.model.solved import Properties, Reasons, Setting, Solved
+from envcheck.model.solved import Properties, Reasons, Solved
 from envcheck.read.materials import categories, rows
 from envcheck.read.project import read_project
 from envcheck.read.rulesets import default_folders, read_ruleset
@@ -48,7 +48,7 @@ if TYPE_CHECKING:
     from envcheck.model.compared import Compared
     from envcheck.model.details import Extras, SolvedDetail
     from envcheck.model.moisture import Check
-    from envcheck.model.sure import Room, Sureness, Workmanship
+    from envcheck.model.sure import Room, Sureness
 
 
 @dataclass(frozen=True, slots=True)
@@ -285,16 +285,15 @@ def rooms(run: Run, wanted: Sequence[str] = ()) -> tuple[Room, ...]:
     """How far the assemblies of lines may move: of the tags and assemblies wanted, or of all."""
     from envcheck.advise.room import rooms as found
 
-    return found(_bench(run), _wanted(run, wanted))
+    return found(_bench(run), run.judged.lines, wanted)
 
 
 def sureness(run: Run, wanted: Sequence[str] = ()) -> tuple[Sureness, ...]:
     """What the verdicts of lines hang on: of the tags and assemblies wanted, or of all."""
     from envcheck.advise.sure import sureness as found
 
-    return found(
-        _bench(run), _wanted(run, wanted), rows("evidence_bands"), rows("material_classes")
-    )
+    bands, classes = rows("evidence_bands"), rows("material_classes")
+    return found(_bench(run), run.judged.lines, wanted, bands, classes)
 
 
 def _bench(run: Run) -> Bench:
@@ -302,17 +301,6 @@ def _bench(run: Run) -> Bench:
 
     metrics = {name: category.metric for name, category in categories().items()}
     return Bench(run.project, run.rulesets, run.properties, metrics)
-
-
-def _wanted(run: Run, wanted: Sequence[str]) -> list[Line]:
-    """Lines of elements that are asked for by tag or by assembly; all where nothing is."""
-    elements = run.project.elements
-    return [
-        line
-        for line in run.judged.lines
-        if line.element in elements
-        and (not wanted or {line.element, elements[line.element].assembly} & set(wanted))
-    ]
 
 
 def only(run: Run, patterns: Sequence[str]) -> Run:
@@ -378,36 +366,11 @@ def solved_details(project: Project, names: Sequence[str]) -> dict[str, SolvedDe
 
 def extras(run: Run, subject: str) -> Extras:
     """Solve what a page about one element, assembly or detail shows beside its lines."""
-    from envcheck.model.details import Coldest, Extras
-    from envcheck.solve.detail import NotSolved, solve_detail
-    from envcheck.solve.surface import NoSurface, coldest_of
-    from envcheck.solve.workmanship import workmanship
+    from envcheck.solve.extras import extras as solved
 
-    details: dict[str, SolvedDetail | str] = {}
-    if subject in run.project.details:
-        try:
-            details[subject] = solve_detail(run.project.details[subject], surfaces=True)
-        except NotSolved as why:
-            details[subject] = str(why)
-    surfaces: dict[tuple[str, Setting], Coldest | str] = {}
-    dial: dict[tuple[str, Setting], tuple[Workmanship, ...]] = {}
-    for line in run.judged.lines:
-        solved = line.solved
-        if solved is None or subject not in (line.element, solved.assembly):
-            continue
-        assembly = run.project.assemblies[solved.assembly]
-        done = (assembly.id, solved.setting) in surfaces
-        if done or assembly.kind != "layers" or solved.setting.metric != "U_assembly":
-            continue
-        conventions = run.rulesets[line.ruleset].conventions
-        try:
-            found: Coldest | str = coldest_of(assembly, solved.setting, conventions)
-        except NoSurface as why:
-            found = str(why)
-        surfaces[solved.assembly, solved.setting] = found
-        levels = workmanship(assembly, solved.setting, conventions, rows("workmanship"))
-        dial[solved.assembly, solved.setting] = levels
-    return Extras(details, surfaces, dial)
+    conventions = {name: ruleset.conventions for name, ruleset in run.rulesets.items()}
+    levels = rows("workmanship")
+    return solved(run.project, conventions, run.judged.lines, subject, levels)
 
 
 def moisture(run: Run) -> Check:

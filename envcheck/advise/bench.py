@@ -90,6 +90,16 @@ class Bench:
         return self._ratios[ruleset.id]
 
 
+def lines_of(project: Project, lines: Sequence[Line], wanted: Sequence[str]) -> list[Line]:
+    """Lines of elements that are asked for by tag or by assembly; all where nothing is."""
+    return [
+        line
+        for line in lines
+        if (element := project.elements.get(line.element)) is not None
+        and (not wanted or line.element in wanted or element.assembly in wanted)
+    ]
+
+
 class _Bracketed(Solver):
     """A solver that gives the narrow bracket at once where it decides."""
 

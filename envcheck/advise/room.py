@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 
-from envcheck.advise.bench import Bench
+from envcheck.advise.bench import Bench, lines_of
 from envcheck.advise.levers import Lever, levers, turned
 from envcheck.advise.targets import (
     SHY,
@@ -42,10 +42,13 @@ TIMES = 1000.0
 """What a number of fasteners and a conductivity may be multiplied by in search of a bound."""
 
 
-def rooms(bench: Bench, lines: Sequence[Line]) -> tuple[Room, ...]:
-    """The room of every assembly that a deciding line with a verdict uses."""
+def rooms(bench: Bench, lines: Sequence[Line], wanted: Sequence[str] = ()) -> tuple[Room, ...]:
+    """The room of every assembly that a deciding line with a verdict uses.
+
+    wanted: tags and assemblies; all where nothing is.
+    """
     by_assembly: dict[str, list[Line]] = {}
-    for line in lines:
+    for line in lines_of(bench.project, lines, wanted):
         if line.decides and line.verdict in ("pass", "fail", "too_close"):
             name = bench.project.elements[line.element].assembly
             by_assembly.setdefault(name, []).append(line)

@@ -12,7 +12,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-from envcheck.advise.bench import Bench
+from envcheck.advise.bench import Bench, lines_of
 from envcheck.advise.inputs import Rows, Stated, inputs
 from envcheck.advise.targets import has_target
 from envcheck.judge.compare import compare, own_term
@@ -26,14 +26,15 @@ RAISING = {"conductivity": True, "resistance": False}
 
 
 def sureness(
-    bench: Bench, lines: Sequence[Line], bands: Rows, classes: Rows
+    bench: Bench, lines: Sequence[Line], wanted: Sequence[str], bands: Rows, classes: Rows
 ) -> tuple[Sureness, ...]:
     """What the verdicts of deciding lines hang on; lines of one value and limit are one entry.
 
-    bands, classes: rows of ``evidence_bands`` and ``material_classes``.
+    wanted: tags and assemblies; all where nothing is. bands, classes: rows of ``evidence_bands``
+    and ``material_classes``.
     """
     alike: dict[tuple[object, ...], list[Line]] = {}
-    for line in lines:
+    for line in lines_of(bench.project, lines, wanted):
         if line.decides and line.verdict in ("pass", "fail", "too_close"):
             limit = line.limit.cell if line.limit is not None else ""
             name = bench.project.elements[line.element].assembly

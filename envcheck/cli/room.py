@@ -4,14 +4,16 @@ from __future__ import annotations
 
 import click
 
-from envcheck.cli import options
+from envcheck.cli import completing, options
 from envcheck.cli.writing import deliver
 from envcheck.report import registry
 
 
 @click.command()
 @options.PROJECT
-@click.argument("wanted", metavar="[TAG_OR_ASSEMBLY]...", nargs=-1)
+@click.argument(
+    "wanted", metavar="[TAG_OR_ASSEMBLY]...", nargs=-1, shell_complete=completing.subjects
+)
 @options.RULES
 @options.one_of(registry.answering(), "text")
 @options.OUTPUT

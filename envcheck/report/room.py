@@ -51,7 +51,8 @@ def build(
         f"{header.title(project)}: room",
         (lead, *sections, Section("", (Paragraph(wording.DEFERRAL),))),
     )
-    return Answer(page, {"units": "SI", "rooms": [_data(each) for each in rooms]})
+    data: dict[str, object] = {"units": "SI", "rooms": [_data(each) for each in rooms]}
+    return Answer(page, data, _flat(rooms))
 
 
 def _stated(rooms: Iterable[Room]) -> list[Block]:
@@ -133,3 +134,26 @@ def _data(each: Room) -> dict[str, object]:
         "skipped": [{"line": name, "why": why} for name, why in each.skipped],
         "stuck": [found._asdict() for found in each.stuck],
     }
+
+
+def _flat(rooms: Sequence[Room]) -> Grid:
+    """A row for each bound, numbers in SI."""
+    heads = (
+        "assembly",
+        "lever",
+        "what",
+        "drawn",
+        "still passes",
+        "quantity",
+        "first over",
+        "state",
+    )
+    rows = tuple(
+        (
+            clean(each.assembly), bound.lever, clean(bound.what), repr(bound.now), repr(bound.most),
+            bound.quantity, clean(bound.tag), bound.state,
+        )
+        for each in rooms
+        for bound in each.bounds
+    )  # fmt: skip
+    return Grid(heads, rows, (3, 4))

@@ -45,7 +45,8 @@ def build(
     sections += [Section("Bands", (Items(bands),))] if bands else []
     sections.append(Section("", (Paragraph(wording.DEFERRAL),)))
     page = Page(f"{header.title(project)}: how sure", tuple(sections))
-    return Answer(page, {"units": "SI", "lines": [_data(each) for each in found]})
+    data: dict[str, object] = {"units": "SI", "lines": [_data(each) for each in found]}
+    return Answer(page, data, _flat(found))
 
 
 def _tags(project: Project, each: Sureness) -> str:
@@ -174,3 +175,25 @@ def _data(each: Sureness) -> dict[str, object]:
         "inputs": [one._asdict() for one in each.inputs],
         "deciding": [one.what for one in each.deciding],
     }
+
+
+def _flat(found: Sequence[Sureness]) -> Grid:
+    """A row for each input of a line, numbers in SI."""
+    heads = (
+        "rule set", "element", "metric", "verdict", "assembly", "sheet", "input", "quantity",
+        "stated", "low", "high", "basis", "effect", "turns it alone", "deciding", "evidence",
+        "source",
+    )  # fmt: skip
+    rows = tuple(
+        (
+            line.ruleset, clean(line.element), line.metric, line.verdict, clean(each.assembly),
+            clean(each.sheet), clean(one.what), one.quantity, repr(one.now), repr(one.low),
+            repr(one.high), one.basis, "" if one.effect is None else repr(one.effect),
+            "yes" if one.alone else "no", "yes" if one in each.deciding else "no", one.evidence,
+            clean(one.source),
+        )
+        for each in found
+        for line in each.lines
+        for one in each.inputs
+    )  # fmt: skip
+    return Grid(heads, rows, (8, 9, 10, 12))
