@@ -197,5 +197,5 @@ class Extras(NamedTuple):
     """By detail id."""
     surfaces: Mapping[tuple[str, Setting], Coldest | str]
     """By assembly id and setting."""
-    workmanship: Mapping[tuple[str, Setting], tuple[Workmanship, ...]] = MappingProxyType({})
+    workmanship: "Mapping[tuple[str, Setting], tuple[Workmanship, ...]]" = MappingProxyType({})
     """By assembly id and setting."""
