@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import gc
 from collections.abc import Callable, Iterator, Mapping, Sequence
-from contextlib import contextmanager, suppress
+from contextlib import contextmanager
 from dataclasses import dataclass, replace
 from functools import cache, partial
 from pathlib import Path
@@ -163,7 +163,7 @@ def _run(path: str, folders: Sequence[str], bounds: bool, close: str) -> Run:
         closed,
         tuple(all_ratios),
         tuple(groups),
-        solved_details(project, asked_by_bridges(project)) if project.details else {},
+        _details(project),
     )
     findings = (*found, *crosschecks.findings(facts))
     changes, turns = _compared(project, rulesets, by_set, judge_by)
@@ -343,25 +343,13 @@ def applied(text: str, changes: Sequence[Change]) -> str:
     return edited(text, [edit for change in changes for edit in change.edits])
 
 
-def asked_by_bridges(project: Project) -> tuple[str, ...]:
-    """Details that some bridge of an element takes its psi from."""
-    found: dict[str, None] = {}
-    for element in project.elements.values():
-        for bridge in (*element.bridges, *project.assemblies[element.assembly].bridges):
-            if bridge.detail is not None:
-                found[bridge.detail.id] = None
-    return tuple(found)
+def _details(project: Project) -> dict[str, SolvedDetail]:
+    """Details that bridges take their psi from, loaded only where there are any."""
+    if not project.details:
+        return {}
+    from envcheck.solve.detail import asked_by_bridges, solved_details
 
-
-def solved_details(project: Project, names: Sequence[str]) -> dict[str, SolvedDetail]:
-    """Solve drawn details; those that cannot be solved are left out (their bridges say why)."""
-    from envcheck.solve.detail import NotSolved, solve_detail
-
-    found = {}
-    for name in names:
-        with suppress(NotSolved):
-            found[name] = solve_detail(project.details[name])
-    return found
+    return solved_details(project, asked_by_bridges(project))
 
 
 def extras(run: Run, subject: str) -> Extras:

@@ -3,6 +3,8 @@
 from __future__ import annotations
 
 import itertools
+from collections.abc import Sequence
+from contextlib import suppress
 from functools import lru_cache
 from typing import TYPE_CHECKING
 
@@ -16,6 +18,7 @@ from envcheck.model.details import (
     crossings,
     face_lengths,
 )
+from envcheck.model.project import Project
 from envcheck.solve.surface import STILL
 
 if TYPE_CHECKING:
@@ -140,3 +143,22 @@ def _coldest(outline: Outline) -> Coldest:
 
     spot = coldest_inside(bound_outline(with_still_air(outline, STILL), TOLERANCE))
     return Coldest(spot.factor, spot.x, spot.y, STILL)
+
+
+def asked_by_bridges(project: Project) -> tuple[str, ...]:
+    """Details that some bridge of an element takes its psi from."""
+    found: dict[str, None] = {}
+    for element in project.elements.values():
+        for bridge in (*element.bridges, *project.assemblies[element.assembly].bridges):
+            if bridge.detail is not None:
+                found[bridge.detail.id] = None
+    return tuple(found)
+
+
+def solved_details(project: Project, names: Sequence[str]) -> dict[str, SolvedDetail]:
+    """Solve drawn details; those that cannot be solved are left out (their bridges say why)."""
+    found = {}
+    for name in names:
+        with suppress(NotSolved):
+            found[name] = solve_detail(project.details[name])
+    return found
