@@ -278,14 +278,14 @@ def remedies(run: Run) -> tuple[Advice, ...]:
     from envcheck.advise.remedies import advise
 
     least = float(rows("material_classes")["insulation"]["low"])
-    return advise(_bench(run), run.judged.lines, least)
+    return advise(bench(run), run.judged.lines, least)
 
 
 def rooms(run: Run, wanted: Sequence[str] = ()) -> tuple[Room, ...]:
     """How far the assemblies of lines may move: of the tags and assemblies wanted, or of all."""
     from envcheck.advise.room import rooms as found
 
-    return found(_bench(run), run.judged.lines, wanted)
+    return found(bench(run), run.judged.lines, wanted)
 
 
 def sureness(run: Run, wanted: Sequence[str] = ()) -> tuple[Sureness, ...]:
@@ -293,10 +293,11 @@ def sureness(run: Run, wanted: Sequence[str] = ()) -> tuple[Sureness, ...]:
     from envcheck.advise.sure import sureness as found
 
     bands, classes = rows("evidence_bands"), rows("material_classes")
-    return found(_bench(run), run.judged.lines, wanted, bands, classes)
+    return found(bench(run), run.judged.lines, wanted, bands, classes)
 
 
-def _bench(run: Run) -> Bench:
+def bench(run: Run) -> Bench:
+    """A bench to try changed assemblies of a run on."""
     from envcheck.advise.bench import Bench
 
     metrics = {name: category.metric for name, category in categories().items()}

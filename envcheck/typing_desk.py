@@ -9,6 +9,8 @@ from typing import NamedTuple
 
 from envcheck.errors import InputError, problem
 from envcheck.lint import Sheets, lint
+from envcheck.lint.editions import compare
+from envcheck.model.editions import CellChange
 from envcheck.model.ruleset import RuleSet
 from envcheck.model.typed import Fault, TypedSet
 from envcheck.pipeline import names
@@ -87,3 +89,8 @@ def lock(folder: Path, checked_by: str, on: date) -> tuple[Path, str]:
         found = error.strerror or "?"
         raise InputError([problem("file-unreadable", typed.file, None, found=found)]) from error
     return folder / NAME, lock_text(typed.id, checked_by, on.isoformat(), files)
+
+
+def differences(old: RuleSet, new: RuleSet) -> tuple[CellChange, ...]:
+    """Every cell in which two rule sets differ."""
+    return compare(old.limits, new.limits)

@@ -21,7 +21,7 @@ from envcheck.advise.revisions import (
     rule_set_pairs,
     translated,
 )
-from envcheck.model.compared import Compared, Difference, LineChange
+from envcheck.model.compared import Compared, Difference
 from envcheck.model.judged import Finding, Group, Judged, Line, Ratio
 from envcheck.model.project import Project
 
@@ -172,8 +172,3 @@ def _unchanged(
     ):
         both[kind] = sum(name in b and (kind, name) not in touched for name in a)
     return tuple(both.items())
-
-
-def line_changes(compared: Compared, aspect: str) -> tuple[LineChange, ...]:
-    """Lines of which an aspect changed."""
-    return tuple(change for change in compared.changed if aspect in change.aspects)

@@ -58,7 +58,9 @@ def rooms(bench: Bench, lines: Sequence[Line], wanted: Sequence[str] = ()) -> tu
 
 
 def _room(bench: Bench, assembly: Assembly, lines: Sequence[Line]) -> Room:
-    skipped = {f"{line.element}, {line.metric}": why for line in lines if (why := _no_bound(line))}
+    skipped = dict.fromkeys(
+        (line.element, line.metric, why) for line in lines if (why := _no_bound(line))
+    )
     within = [line for line in lines if line.verdict == "pass" and not _no_bound(line)]
     targets = targets_of(bench, within, by_rounding=True)
     bounds: list[Bound] = []
@@ -70,7 +72,7 @@ def _room(bench: Bench, assembly: Assembly, lines: Sequence[Line]) -> Room:
         bounds += _of_elements(bench, assembly, targets)
     over = targets_of(bench, [x for x in lines if x.verdict != "pass"], by_rounding=True)
     return Room(
-        assembly.id, tuple(within), tuple(bounds), tuple(skipped.items()),
+        assembly.id, tuple(within), tuple(bounds), tuple(skipped),
         tuple(_stuck(bench, assembly, over)),
     )  # fmt: skip
 

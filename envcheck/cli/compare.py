@@ -6,7 +6,6 @@ import click
 
 from envcheck.cli import options
 from envcheck.cli.progress import progress
-from envcheck.cli.writing import deliver
 from envcheck.report import registry
 
 
@@ -50,7 +49,5 @@ def compare(
             pipeline.compared(before, now),
             asked,
         )
-    answer = registry.format_named(format_name).answer
-    assert answer is not None
-    deliver(answer(made, asked.width), output, (old, new))
+    options.answered(format_name, made, output, (old, new))
     return 0

@@ -5,7 +5,6 @@ from __future__ import annotations
 import click
 
 from envcheck.cli import completing, options
-from envcheck.cli.writing import deliver
 from envcheck.errors import InputError, did_you_mean, one_of, problem
 from envcheck.report import registry
 
@@ -14,7 +13,7 @@ from envcheck.report import registry
 @options.PROJECT
 @click.argument("subject", metavar="TAG_OR_ASSEMBLY", shell_complete=completing.subjects)
 @options.RULES
-@options.one_of(registry.explaining(), "text")
+@options.one_of(registry.answering(), "text")
 @options.OUTPUT
 @options.UNITS
 @click.option("--close", is_flag=True, help="Bounds ten times as close, where that takes time.")
@@ -56,7 +55,5 @@ def explain(
     made = explained.build(
         run.project, run.rulesets, run.judged, subject, asked, pipeline.why, extras
     )
-    write = registry.format_named(format_name).explain
-    assert write is not None
-    deliver(write(made), output, (project,))
+    options.answered(format_name, made, output, (project,))
     return 0

@@ -11,6 +11,7 @@ import click
 
 if TYPE_CHECKING:
     from envcheck.model.project import Project
+    from envcheck.report.answer import Answer
     from envcheck.report.registry import Format
     from envcheck.report.view import View
 
@@ -60,6 +61,16 @@ def one_of(names: tuple[str, ...], default: str) -> Callable[[Function], Functio
         show_default=True,
         help="Form of the report.",
     )
+
+
+def answered(format_name: str, made: Answer, output: str | None, inputs: tuple[str, ...]) -> None:
+    """Lay out what a command other than ``check`` says, and deliver it."""
+    from envcheck.cli.writing import deliver
+    from envcheck.report import registry
+
+    lay_out = registry.format_named(format_name).answer
+    assert lay_out is not None, "the option offers only formats that have one"
+    deliver(lay_out(made, width(output)), output, inputs)
 
 
 def rendered(form: Format, view: View) -> str | bytes:

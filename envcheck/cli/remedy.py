@@ -66,9 +66,7 @@ def remedy(
         raise click.UsageError("--take names changes for --apply FILE, which is missing")
     asked = ViewOptions(units=units or "", width=options.width(output))
     made = page.build(run.project, run.rulesets, advice, asked)
-    answer = registry.format_named(format_name).answer
-    assert answer is not None
-    deliver(answer(made, asked.width), output, (project,))
+    options.answered(format_name, made, output, (project,))
     return 0
 
 

@@ -5,7 +5,6 @@ from __future__ import annotations
 import click
 
 from envcheck.cli import completing, options
-from envcheck.cli.writing import deliver
 from envcheck.report import registry
 
 
@@ -44,7 +43,5 @@ def sure(
     asked = ViewOptions(units=units or "", width=options.width(output))
     found = pipeline.sureness(run, wanted)
     made = page.build(run.project, run.rulesets, found, asked)
-    answer = registry.format_named(format_name).answer
-    assert answer is not None
-    deliver(answer(made, asked.width), output, (project,))
+    options.answered(format_name, made, output, (project,))
     return 0

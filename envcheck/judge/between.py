@@ -32,7 +32,7 @@ def interpolate(
     points = sorted(((_at(limit, dimension), limit) for limit in rows), key=lambda p: p[0])
     if any(limit.kind != "number" for _, limit in points):
         return None, f"the rows over {dimension} print no figure to interpolate"
-    value = float(fact.value)  # type: ignore[arg-type]
+    value = float(fact.value)  # type: ignore[arg-type]  # the reader lets only numbers pass
     (first, low), (last, high) = points[0], points[-1]
     if not first <= value <= last:
         if ruleset.dimensions[dimension].outside == "error":

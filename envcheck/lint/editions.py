@@ -4,46 +4,26 @@ from __future__ import annotations
 
 from collections import defaultdict
 from collections.abc import Iterable, Mapping
-from typing import NamedTuple
 
 from envcheck import units
+from envcheck.model.editions import CellChange
 from envcheck.model.metrics import METRICS
 from envcheck.model.ruleset import Limit
 
 Key = tuple[str, tuple[str, ...], str, str, tuple[str, ...]]
 
 
-class Change(NamedTuple):
-    """One cell in two editions."""
-
-    kind: str
-    """``added``, ``removed`` or ``changed``"""
-    old: Limit | None
-    new: Limit | None
-    factor: float | None
-    """New figure over old one, in the same unit; None where one of them is none."""
-    direction: str
-    """``stricter``, ``weaker``, ``same figure`` or empty"""
-
-    @property
-    def limit(self) -> Limit:
-        """The limit that names the cell."""
-        found = self.new or self.old
-        assert found is not None
-        return found
-
-
-def compare(old: Iterable[Limit], new: Iterable[Limit]) -> tuple[Change, ...]:
+def compare(old: Iterable[Limit], new: Iterable[Limit]) -> tuple[CellChange, ...]:
     """Every cell that differs, in the order of the new edition, those removed last."""
     before, after = _by_cell(old), _by_cell(new)
-    found: list[Change] = []
+    found: list[CellChange] = []
     for key, limits in after.items():
         earlier = before.get(key, [])
         found += [_change(a, b) for a, b in zip(earlier, limits, strict=False) if not _same(a, b)]
-        found += [Change("added", None, b, None, "") for b in limits[len(earlier) :]]
+        found += [CellChange("added", None, b, None, "") for b in limits[len(earlier) :]]
     for key, limits in before.items():
         later = len(after.get(key, ()))
-        found += [Change("removed", a, None, None, "") for a in limits[later:]]
+        found += [CellChange("removed", a, None, None, "") for a in limits[later:]]
     return tuple(found)
 
 
@@ -72,20 +52,20 @@ def _plain(limit: Limit) -> list[list[object]]:
     ]
 
 
-def _change(a: Limit, b: Limit) -> Change:
+def _change(a: Limit, b: Limit) -> CellChange:
     first, second = _figure(a), _figure(b)
     if first is not None and second is not None and _roles(a) != _roles(b):
-        return Change("changed", a, b, None, "")  # cavity and continuous are not one figure
+        return CellChange("changed", a, b, None, "")  # cavity and continuous are not one figure
     if first is None or second is None:
         if a.kind == b.kind:
-            return Change("changed", a, b, None, "")
+            return CellChange("changed", a, b, None, "")
         words = {("no_requirement", "number"): "stricter", ("number", "no_requirement"): "weaker"}
-        return Change("changed", a, b, None, words.get((a.kind, b.kind), ""))
+        return CellChange("changed", a, b, None, words.get((a.kind, b.kind), ""))
     factor = second / first if first else None
     if second == first:
-        return Change("changed", a, b, factor, "same figure")
+        return CellChange("changed", a, b, factor, "same figure")
     stricter = (second < first) == (b.sense == "max")
-    return Change("changed", a, b, factor, "stricter" if stricter else "weaker")
+    return CellChange("changed", a, b, factor, "stricter" if stricter else "weaker")
 
 
 def _roles(limit: Limit) -> set[str]:

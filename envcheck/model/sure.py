@@ -49,8 +49,8 @@ class Room(NamedTuple):
     lines: tuple[Line, ...]
     """Those within their limit that the bounds are for."""
     bounds: tuple[Bound, ...]
-    skipped: tuple[tuple[str, str], ...]
-    """(tag and metric, why) of lines that have no bounds."""
+    skipped: tuple[tuple[str, str, str], ...]
+    """(tag, metric, why) of lines that have no bounds."""
     stuck: tuple[Stuck, ...]
 
 

@@ -23,7 +23,6 @@ from envcheck.read.table_meaning import condition, listed_categories
 
 Conditions = tuple[Condition, ...]
 NOT_HERE = "does not apply"
-PRINTED_ONLY = ("info", "define")
 MOST_READINGS = 64
 """Of one cell; a cell with six conditional footnotes has 64."""
 

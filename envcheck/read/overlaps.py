@@ -23,9 +23,9 @@ def check_overlaps(limits: Iterable[Limit], document: Document, problems: list[P
     for x in limits:
         groups[x.zone, x.categories, x.metric, x.path, x.applies_to, x.otherwise].append(x)
     by_category: dict[tuple[str, str, str, str, str, bool], list[list[Limit]]] = defaultdict(list)
-    for (zone, categories, *rest), group in groups.items():
+    for (zone, categories, metric, path, applies_to, otherwise), group in groups.items():
         for category in categories:
-            by_category[zone, category, *rest].append(group)  # type: ignore[index]
+            by_category[zone, category, metric, path, applies_to, otherwise].append(group)
     seen: set[tuple[str, int, str, int]] = set()
     met: set[tuple[int, ...]] = set()
     for parts in by_category.values():

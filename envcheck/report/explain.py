@@ -26,13 +26,14 @@ from envcheck.report import (
     workmanship,
 )
 from envcheck.report import worksheet as sheet
+from envcheck.report.answer import Answer
 from envcheck.report.inert import clean
 from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Pair, Paragraph, Section
 from envcheck.report.rows import path_row
 from envcheck.report.view import ViewOptions, system_for
 
 if TYPE_CHECKING:
-    from envcheck.model.details import Coldest, Extras, SolvedDetail
+    from envcheck.model.details import Coldest, Extras
     from envcheck.model.sure import Workmanship
 
 
@@ -57,19 +58,6 @@ class AssemblyExplained(NamedTuple):
     """What voids and compression would leave of its cavity insulation."""
 
 
-class Explained(NamedTuple):
-    """The page of one element or assembly."""
-
-    subject: str
-    page: Page
-    width: int
-    units: str
-    """``SI`` or ``IP``, of the worksheets"""
-    assemblies: tuple[AssemblyExplained, ...]
-    detail: SolvedDetail | None = None
-    """Where the subject is a detail that could be solved."""
-
-
 Why = Callable[[Solved], Reasons | None]
 
 
@@ -90,7 +78,7 @@ def build(
     options: ViewOptions | None = None,
     why: Why = _unknown,
     extras: Extras | None = None,
-) -> Explained:
+) -> Answer:
     """Explain the element or else the assembly or the detail of that name.
 
     why: gives the reasons behind a solved value. extras: surface temperatures and details solved
@@ -125,7 +113,25 @@ def build(
     heading = f"{header.title(project)}: {clean(subject)}"
     page = Page(heading, tuple(sections))
     solved_detail = None if isinstance(of_detail, str) else of_detail
-    return Explained(clean(subject), page, options.width, system, tuple(behind), solved_detail)
+    data: dict[str, object] = {
+        "subject": clean(subject),
+        "units": system,
+        "assemblies": tuple(behind),
+        "detail": solved_detail,
+    }
+    return Answer(page, data, _table(behind))
+
+
+def _table(behind: Iterable[AssemblyExplained]) -> Grid:
+    """Every step of every worksheet, a row each."""
+    rows = tuple(
+        (each.assembly, each.metric, line.symbol, line.title, line.formula, line.sum, line.result,
+         line.unit, line.source)
+        for each in behind
+        for line in each.worksheet
+    )  # fmt: skip
+    heads = ("assembly", "metric", "symbol", "step", "formula", "sum", "result", "unit", "source")
+    return Grid(heads, rows)
 
 
 def _numbers(

@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Mapping, Sequence
 from typing import TYPE_CHECKING
 
-from envcheck.report import by_line, changes, main_table, wording
+from envcheck.report import by_line, main_table, several_rule_sets, wording
 from envcheck.report.by_line import place
 from envcheck.report.header import RuleSetView
 from envcheck.report.items import FindingView, Item
@@ -54,7 +54,7 @@ def tables(view: View) -> tuple[Section, ...]:
             main_table.section(rows_of[rules.id], rules, several, view.bounds)
             for rules in view.rule_sets
         ),
-        *changes.sections(view.rows, view.rule_sets, view.changes, view.turns),
+        *several_rule_sets.sections(view.rows, view.rule_sets, view.changes, view.turns),
     )
 
 

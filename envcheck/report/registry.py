@@ -3,8 +3,7 @@
 A format is a module with ``NAME``, ``TITLE``, ``EXTENSION`` and ``render(view)``, which gives text
 or the bytes of a file. Where that needs a library of an extra, it raises ``MissingExtra``. It may
 have ``DETAILS = True`` (it always lists the assemblies), ``WORKINGS = True`` (with ladder and
-worksheet) and ``explain(page, view) -> str`` for
-the page of ``envcheck explain``.
+worksheet) and ``answer(made, width) -> str`` for what the other commands say.
 """
 
 from __future__ import annotations
@@ -13,13 +12,10 @@ from collections.abc import Callable
 from functools import cache
 from importlib import import_module
 from pkgutil import iter_modules
-from typing import TYPE_CHECKING, NamedTuple
+from typing import NamedTuple
 
 from envcheck.report.answer import Answer
 from envcheck.report.view import View
-
-if TYPE_CHECKING:
-    from envcheck.report.explain import Explained
 
 
 class MissingExtra(Exception):
@@ -40,7 +36,6 @@ class Format(NamedTuple):
     details: bool
     workings: bool
     render: Callable[[View], str | bytes]
-    explain: Callable[[Explained], str] | None
     answer: Callable[[Answer, int], str] | None
     """(what another command says, width) -> text"""
 
@@ -50,12 +45,6 @@ def names() -> tuple[str, ...]:
     """Names of the formats, without importing any: the file's name is the format's."""
     package = import_module("envcheck.report.formats")
     return tuple(sorted(info.name for info in iter_modules(package.__path__)))
-
-
-@cache
-def explaining() -> tuple[str, ...]:
-    """Names of the formats that lay out the page of ``explain``."""
-    return tuple(name for name in names() if format_named(name).explain is not None)
 
 
 @cache
@@ -79,6 +68,5 @@ def format_named(name: str) -> Format:
         details=getattr(module, "DETAILS", False),
         workings=getattr(module, "WORKINGS", False),
         render=module.render,
-        explain=getattr(module, "explain", None),
         answer=getattr(module, "answer", None),
     )

@@ -36,8 +36,9 @@ def data(files: tuple[Project, Project], compared: Compared, words: Words) -> di
         "findings_settled": [{"check": f.check, "subject": f.subject} for f in compared.settled],
         "findings_new": [{"check": f.check, "subject": f.subject} for f in compared.new],
         "ratios": [
-            {"name": (a or b).name, "before": a and a.value, "now": b and b.value}  # type: ignore[union-attr]
+            {"name": each.name, "before": a and a.value, "now": b and b.value}
             for a, b in compared.ratios
+            if (each := a or b) is not None
         ],
         "differences": [_difference(each, words) for each in compared.differences],
         "same": dict(compared.same),
@@ -145,7 +146,8 @@ def _aspect(
     elements = [file.elements.get(x.element) for file, x in zip(files, lines, strict=True)]
     match aspect:
         case "verdict":
-            return (*map(said.verdict_text, lines), "")  # type: ignore[return-value]
+            before, now = map(said.verdict_text, lines)
+            return before, now, ""
         case "value":
             texts = [rows.value_of(line, words.system).text for line in lines]
             return texts[0], texts[1], numbers.unit(metric, words.system)

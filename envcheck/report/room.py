@@ -59,9 +59,9 @@ def _stated(rooms: Iterable[Room]) -> list[Block]:
     """Lines that have no bounds, those of one reason together."""
     by_why: dict[str, list[str]] = {}
     for each in rooms:
-        for name, why in each.skipped:
-            by_why.setdefault(why, []).append(name)
-    items = tuple(Entry(clean(f"{'; '.join(names)}: {why}")) for why, names in by_why.items())
+        for tag, metric, why in each.skipped:
+            by_why.setdefault(why, []).append(f"{tag} ({numbers.symbol(metric)})")
+    items = tuple(Entry(clean(f"{', '.join(names)}: {why}")) for why, names in by_why.items())
     return [Items(items)] if items else []
 
 
@@ -131,7 +131,9 @@ def _data(each: Room) -> dict[str, object]:
             {**bound._asdict(), "edits": [edit._asdict() for edit in bound.edits]}
             for bound in each.bounds
         ],
-        "skipped": [{"line": name, "why": why} for name, why in each.skipped],
+        "skipped": [
+            {"element": tag, "metric": metric, "why": why} for tag, metric, why in each.skipped
+        ],
         "stuck": [found._asdict() for found in each.stuck],
     }
 

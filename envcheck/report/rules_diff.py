@@ -4,9 +4,9 @@ from __future__ import annotations
 
 from collections import Counter
 from collections.abc import Sequence
-from typing import Protocol
 
-from envcheck.model.ruleset import Limit, RuleSet
+from envcheck.model.editions import CellChange
+from envcheck.model.ruleset import RuleSet
 from envcheck.report.answer import Answer
 from envcheck.report.inert import clean
 from envcheck.report.parts import Facts, Grid, Page, Pair, Paragraph, Section
@@ -18,24 +18,7 @@ HEADS = (
 )  # fmt: skip
 
 
-class Changed(Protocol):
-    """What a difference of two cells tells."""
-
-    @property
-    def kind(self) -> str: ...  # noqa: D102
-    @property
-    def old(self) -> Limit | None: ...  # noqa: D102
-    @property
-    def new(self) -> Limit | None: ...  # noqa: D102
-    @property
-    def factor(self) -> float | None: ...  # noqa: D102
-    @property
-    def direction(self) -> str: ...  # noqa: D102
-    @property
-    def limit(self) -> Limit: ...  # noqa: D102
-
-
-def build(first: RuleSet, second: RuleSet, changes: Sequence[Changed]) -> Answer:
+def build(first: RuleSet, second: RuleSet, changes: Sequence[CellChange]) -> Answer:
     """Page and data of the differences between two rule sets."""
     kinds = Counter(change.kind for change in changes)
     ways = Counter(change.direction for change in changes if change.direction)
@@ -66,7 +49,7 @@ def _document(ruleset: RuleSet) -> str:
     return clean(f"{ruleset.id}: {ruleset.title}" + (f", {edition}" if edition else ""))
 
 
-def _row(change: Changed) -> tuple[str, ...]:
+def _row(change: CellChange) -> tuple[str, ...]:
     told, x = record(change), change.limit
     names = ("change", "zone", "row", "metric", "when", "old", "new", "factor", "direction")
     row = told["row"] if x.row != x.zone else ", ".join(x.categories)
@@ -74,11 +57,11 @@ def _row(change: Changed) -> tuple[str, ...]:
     return tuple(clean(str(cells[name] or "")) for name in names)
 
 
-def _factor(change: Changed) -> str:
+def _factor(change: CellChange) -> str:
     return f"{change.factor:.3f}" if change.factor is not None else ""
 
 
-def record(change: Changed) -> dict[str, object]:
+def record(change: CellChange) -> dict[str, object]:
     """One difference as plain values."""
     x, old, new = change.limit, change.old, change.new
     return {

@@ -13,14 +13,14 @@ from envcheck import __version__
 from envcheck.model.judged import Judged, Line
 from envcheck.model.project import Project
 from envcheck.model.ruleset import RuleSet
-from envcheck.report import building, cautions, changes, header, items, rows, wording
+from envcheck.report import building, cautions, header, items, rows, several_rule_sets, wording
 from envcheck.report.building import Building
 from envcheck.report.cautions import CautionText
-from envcheck.report.changes import ChangeView, TurnView
 from envcheck.report.header import RuleSetView
 from envcheck.report.items import FindingView, Item
 from envcheck.report.parts import Pair
 from envcheck.report.rows import Row
+from envcheck.report.several_rule_sets import ChangeView, TurnView
 
 if TYPE_CHECKING:
     from envcheck.model.moisture import Check
@@ -126,8 +126,8 @@ def build(
         claims=items.claims(project),
         findings=findings,
         building=building.build(judged, project, system),
-        changes=changes.changes(judged.changes),
-        turns=changes.turns(judged.turns),
+        changes=several_rule_sets.changes(judged.changes),
+        turns=several_rule_sets.turns(judged.turns),
         assumptions=items.assumptions(judged.lines),
         remarks=items.remarks(judged.remarks),
         assemblies=assemblies,

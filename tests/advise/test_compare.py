@@ -10,6 +10,7 @@ from __future__ import annotations
 import shutil
 from functools import cache
 from pathlib import Path
+from typing import Any
 
 import pytest
 
@@ -263,8 +264,8 @@ def test_lines_of_one_element_on_one_metric_are_told_apart(name: str) -> None:
     assert (found.changed, found.added, found.dropped) == ((), (), ())
 
 
-def test_another_spelling_changes_nothing(revise: object) -> None:
-    found = revise(  # type: ignore[operator]
+def test_another_spelling_changes_nothing(revise: Any) -> None:
+    found = revise(
         ("thickness: 2.5 in", "thickness: 63.5 mm"),
         ("net_area: 900 ft2", "net_area: 83.6127360 m2"),
         ("count: 12, width: 4 ft", "count: 12, width: 48 in"),
@@ -274,8 +275,8 @@ def test_another_spelling_changes_nothing(revise: object) -> None:
     assert found.unchanged == 39
 
 
-def test_a_renamed_element_and_assembly_are_the_same_pieces(revise: object) -> None:
-    found = revise(  # type: ignore[operator]
+def test_a_renamed_element_and_assembly_are_the_same_pieces(revise: Any) -> None:
+    found = revise(
         ("  W3:\n", "  W-BLOCK:\n"), ("assembly: W3,", "assembly: W-BLOCK,"),
         ("  E-W3: ", "  E-99: "), ("host: E-W3", "host: E-99"),
     )  # fmt: skip
@@ -285,15 +286,15 @@ def test_a_renamed_element_and_assembly_are_the_same_pieces(revise: object) -> N
     assert (found.changed, found.added, found.dropped) == ((), (), ())
 
 
-def test_an_element_of_another_assembly(revise: object) -> None:
-    found = revise(("S-W2:  {assembly: W2,", "S-W2:  {assembly: W1,"))  # type: ignore[operator]
+def test_an_element_of_another_assembly(revise: Any) -> None:
+    found = revise(("S-W2:  {assembly: W2,", "S-W2:  {assembly: W1,"))
     (only,) = found.changed
     assert {"assembly", "value"} <= set(only.aspects)
     assert [short(d) for d in only.causes] == ["S-W2 assembly"]
 
 
-def test_a_zone_changes_every_limit_that_hangs_on_it(revise: object) -> None:
-    found = revise(("zone: V3w", "zone: V4"))  # type: ignore[operator]
+def test_a_zone_changes_every_limit_that_hangs_on_it(revise: Any) -> None:
+    found = revise(("zone: V3w", "zone: V4"))
     lines = [c for c in found.changed if "limit" in c.aspects]
     assert len(lines) > 20
     for line in lines:
@@ -301,10 +302,8 @@ def test_a_zone_changes_every_limit_that_hangs_on_it(revise: object) -> None:
         assert "value" not in line.aspects
 
 
-def test_a_material_is_a_cause_where_it_is_used(revise: object) -> None:
-    found = revise(  # type: ignore[operator]
-        ("{title: XPS board, resistance: R-5,", "{title: XPS board, resistance: R-4.5,")
-    )
+def test_a_material_is_a_cause_where_it_is_used(revise: Any) -> None:
+    found = revise(("{title: XPS board, resistance: R-5,", "{title: XPS board, resistance: R-4.5,"))
     assert {c.after.element for c in found.changed} == {
         "N-W1", "S-W1", "W-W1", "E-W3", "T-W6", "N-W5",
     }  # fmt: skip
@@ -312,8 +311,8 @@ def test_a_material_is_a_cause_where_it_is_used(revise: object) -> None:
         assert [short(d) for d in line.causes] == ["xps conductivity"]
 
 
-def test_lines_of_several_rule_sets_are_compared_each_with_its_own(revise: object) -> None:
-    found = revise(  # type: ignore[operator]
+def test_lines_of_several_rule_sets_are_compared_each_with_its_own(revise: Any) -> None:
+    found = revise(
         ("rule_sets: [quillhaven-2025-3]", "rule_sets: [quillhaven-2025-3, merrow-2025]"),
         ("thickness: 2.5 in", "thickness: 1.5 in"),
     )
@@ -324,8 +323,8 @@ def test_lines_of_several_rule_sets_are_compared_each_with_its_own(revise: objec
     ]
 
 
-def test_a_fact_touches_only_lines_that_ask_for_it(revise: object) -> None:
-    found = revise(  # type: ignore[operator]
+def test_a_fact_touches_only_lines_that_ask_for_it(revise: Any) -> None:
+    found = revise(
         ("slab_heated:    {value: no,", "slab_heated:    {value: yes,"),
         ("    heated: false\n", "    heated: true\n"),
     )
@@ -333,7 +332,7 @@ def test_a_fact_touches_only_lines_that_ask_for_it(revise: object) -> None:
     assert "slab_heated value" in {short(d) for d in found.changed[0].causes}
 
 
-def test_layers_that_change_places_have_moved(revise: object) -> None:
+def test_layers_that_change_places_have_moved(revise: Any) -> None:
     lines = PERMIT.read_text(encoding="utf-8").splitlines()
     first = next(n for n, x in enumerate(lines) if "title: Soffit" in x)
     start = lines.index("  W6:")
@@ -341,7 +340,7 @@ def test_layers_that_change_places_have_moved(revise: object) -> None:
     block = "\n".join(lines[xps + 1 : xps + 3])
     assert first
     assert "masonry" in block
-    found = revise((f"{lines[xps]}\n{block}", f"{block}\n{lines[xps]}"))  # type: ignore[operator]
+    found = revise((f"{lines[xps]}\n{block}", f"{block}\n{lines[xps]}"))
     assert {d.what for d in found.differences} == {"moved"}
 
 

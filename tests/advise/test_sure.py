@@ -4,15 +4,18 @@ from __future__ import annotations
 
 import json
 import random
-from functools import cache
+from functools import cache, partial
 from pathlib import Path
 
 import pytest
 
 from envcheck import pipeline
 from envcheck.__main__ import main
+from envcheck.advise.bench import Bench
 from envcheck.advise.inputs import Stated, band_row, inputs
 from envcheck.judge.compare import compare, own_term
+from envcheck.model.judged import Line
+from envcheck.model.project import Assembly
 from envcheck.model.sure import Sureness
 from envcheck.read.materials import rows
 from envcheck.units import convert
@@ -68,7 +71,7 @@ def test_with_the_deciding_inputs_as_stated_no_corner_turns_it(name: str) -> Non
     """The others at random ends of their bands never turn the verdict; with one deciding input
     fewer the worst corner does."""
     run = pipeline.run(str(DEMOS[name]), (RULES,))
-    bench = pipeline._bench(run)
+    bench = pipeline.bench(run)
     rng = random.Random(6)
     tried = 0
     for each in found(DEMOS[name]):
@@ -79,15 +82,7 @@ def test_with_the_deciding_inputs_as_stated_no_corner_turns_it(name: str) -> Non
         told = dict(zip(stated, each.inputs, strict=True))
         line = each.lines[0]
 
-        def within(ends: dict[Stated, float]) -> bool:
-            made = assembly  # noqa: B023
-            for one, end in ends.items():
-                made = one.put(made, end)
-            value = bench.value(line, made)  # noqa: B023
-            assert value is not None and line.limit is not None  # noqa: B023
-            term = own_term(line.limit)  # noqa: B023
-            return compare(value, term, line.limit, run.rulesets[line.ruleset]).within  # noqa: B023
-
+        within = partial(is_within, bench, line, assembly)
         now = within({})
         varied = [x for x in stated if told[x].effect is not None]
         others = [x for x in varied if told[x] not in each.deciding]
@@ -102,13 +97,23 @@ def test_with_the_deciding_inputs_as_stated_no_corner_turns_it(name: str) -> Non
     assert tried
 
 
+def is_within(bench: Bench, line: Line, assembly: Assembly, ends: dict[Stated, float]) -> bool:
+    """Whether the line is within its limit with these inputs at these ends."""
+    for one, value in ends.items():
+        assembly = one.put(assembly, value)
+    found = bench.value(line, assembly)
+    assert found is not None and line.limit is not None
+    ruleset = bench.rulesets[line.ruleset]
+    return compare(found, own_term(line.limit), line.limit, ruleset).within
+
+
 def _but(told: dict[Stated, object], each: Sureness) -> list[object]:
     return [one for one in told.values() if one not in each.deciding]
 
 
-def end(x: Stated, within: bool, bench: object, line: object, assembly: object) -> float:
+def end(x: Stated, within: bool, bench: Bench, line: Line, assembly: Assembly) -> float:
     """The end that works against the verdict, found by its value."""
-    values = {e: bench.value(line, x.put(assembly, e)) for e in (x.low, x.high)}  # type: ignore[attr-defined]
+    values = {e: bench.value(line, x.put(assembly, e)) for e in (x.low, x.high)}
     return (max if within else min)(values, key=lambda e: values[e])
 
 

@@ -15,6 +15,7 @@ import pytest
 import envcheck
 from envcheck.__main__ import main
 from envcheck.errors import InputError, problem
+from tests.cli.started import started
 from tests.report.fixture import JUDGED, PROJECT, RULESETS
 
 COMMAND = [sys.executable, "-m", "envcheck"]
@@ -119,10 +120,7 @@ def test_an_interrupt_ends_with_130_and_no_traceback(
 
 def test_ctrl_c_ends_a_waiting_program_quietly() -> None:
     """The program waits for standard input; the signal comes as from a terminal."""
-    made = subprocess.Popen(
-        [*COMMAND, "check", "-"], cwd=ROOT, stdin=subprocess.PIPE,
-        stdout=subprocess.PIPE, stderr=subprocess.PIPE, text=True,
-    )  # fmt: skip
+    made = started([*COMMAND, "check", "-"], ROOT, stdin=subprocess.PIPE)
     time.sleep(2.0)
     made.send_signal(signal.SIGINT)
     out, err = made.communicate(timeout=20)

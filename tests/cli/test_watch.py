@@ -7,7 +7,6 @@ import os
 import re
 import shutil
 import signal
-import subprocess
 import sys
 import threading
 import time
@@ -18,6 +17,7 @@ import pytest
 
 from envcheck.__main__ import main
 from envcheck.cli import watching
+from tests.cli.started import started
 
 ROOT = Path(__file__).parents[2]
 PATIENCE = 30.0
@@ -31,10 +31,8 @@ class Watched:
         shutil.copy(ROOT / "projects/starter/starter.yaml", self.project)
         shutil.copytree(ROOT / "rules", folder / "rules")
         command = [sys.executable, "-m", "envcheck", "check", "starter.yaml", "--watch"]
-        self.program = subprocess.Popen(
-            [*command, *arguments], cwd=folder, stdout=subprocess.PIPE, stderr=subprocess.PIPE,
-            text=True, env={**os.environ, "PYTHONPATH": str(ROOT)},
-        )  # fmt: skip
+        env = {**os.environ, "PYTHONPATH": str(ROOT)}
+        self.program = started([*command, *arguments], folder, env=env)
         self.out: list[str] = []
         self.err: list[str] = []
         pairs = ((self.program.stdout, self.out), (self.program.stderr, self.err))

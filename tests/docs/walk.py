@@ -77,7 +77,7 @@ def renewed(page: str) -> str:
     """The page with every output as it is printed now."""
     for name, _, output in steps(page):
         mark = re.compile(rf"(<!-- walk output {name} -->\n```\n).*?(```)", re.DOTALL)
-        page = mark.sub(lambda m, text=output: f"{m[1]}{text}{m[2]}", page)  # type: ignore[misc]
+        page = mark.sub(lambda m, text=output: f"{m[1]}{text}{m[2]}", page)
     return page
 
 

@@ -47,7 +47,7 @@ def chosen(ruleset: RuleSet, category: str, on: str = "2020-06-01", **facts: obj
 
 
 def one(ruleset: RuleSet, category: str, metric: str = "U_assembly", **facts: object) -> Limit:
-    selection = chosen(ruleset, category, **facts)  # type: ignore[arg-type]
+    selection = chosen(ruleset, category, **facts)
     found = selection.limit(metric)
     assert found is not None, selection.reason_of(metric)
     return found

@@ -19,9 +19,9 @@ EXPECTED = Path(__file__).parent / "expected"
 
 def written(subject: str, name: str = "text", units: str = "") -> str:
     made = explain.build(PROJECT, RULESETS, JUDGED, subject, ViewOptions(units=units), reasons)
-    write = registry.format_named(name).explain
-    assert write is not None
-    return write(made)
+    lay_out = registry.format_named(name).answer
+    assert lay_out is not None
+    return lay_out(made, 100)
 
 
 @pytest.mark.parametrize(
@@ -40,7 +40,7 @@ def test_exact_text(subject: str, name: str, units: str, file: str) -> None:
 def test_an_assembly_that_nothing_uses_says_so() -> None:
     judged = changed(JUDGED, lines=())
     made = explain.build(PROJECT, RULESETS, judged, "W1")
-    text = registry.format_named("text").explain(made)
+    text = registry.format_named("text").answer(made, 100)
     assert "nothing is solved" in text
 
 
@@ -90,3 +90,15 @@ def test_the_page_says_why_before_the_worksheet() -> None:
     text = written("W2")
     assert "studs, 25 % of the area, carries 38.8 % of the heat" in text
     assert text.index("Why it is what it is") < text.index("Worksheet")
+
+
+def test_the_steps_are_a_table_for_spreadsheets() -> None:
+    """A row for each step of the worksheet, its result a number of its own."""
+    made = explain.build(PROJECT, RULESETS, JUDGED, "N-1")
+    rows = [dict(zip(made.table.heads, row, strict=True)) for row in made.table.rows]
+    text = written("N-1")
+    assert len(rows) == 8
+    for row in rows:
+        assert float(row["result"]) and f"{row['symbol']} = " in text
+    heads = ["assembly", "metric", "symbol", "step", "formula", "sum", "result", "unit", "source"]
+    assert written("N-1", "csv").splitlines()[0] == ",".join(heads)

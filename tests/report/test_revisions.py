@@ -128,6 +128,6 @@ def test_a_title_with_markup_stays_inert() -> None:
 
 def replace_project(run: pipeline.Run, project: object) -> pipeline.Run:
     return pipeline.Run(
-        project,  # type: ignore[arg-type]
+        project,
         run.rulesets, run.judged, run.properties, run.solved, run.exit_status,
     )  # fmt: skip

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-import builtins
+import sys
 from io import BytesIO
 
 import openpyxl
@@ -67,14 +67,8 @@ def test_an_expression_becomes_a_formula_of_cells() -> None:
 
 
 def test_without_its_library_the_format_names_the_extra(monkeypatch: pytest.MonkeyPatch) -> None:
-    load = builtins.__import__
-
-    def refuse(name: str, *rest: object, **more: object) -> object:
-        if name == "xlsxwriter":
-            raise ImportError(name)
-        return load(name, *rest, **more)
-
-    monkeypatch.setattr(builtins, "__import__", refuse)
+    """None among the loaded modules makes an import fail, as Python documents it."""
+    monkeypatch.setitem(sys.modules, "xlsxwriter", None)
     with pytest.raises(MissingExtra) as found:
         written()
     assert (found.value.extra, found.value.library) == ("xlsx", "xlsxwriter")

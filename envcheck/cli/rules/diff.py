@@ -5,7 +5,6 @@ from __future__ import annotations
 import click
 
 from envcheck.cli import options
-from envcheck.cli.writing import deliver
 from envcheck.report import registry
 
 
@@ -26,12 +25,9 @@ def diff(a: str, b: str, rules: tuple[str, ...], format_name: str, output: str |
       envcheck rules diff rules/my-town-2024 rules/my-town-2027 --format csv -o changes.csv
     """
     from envcheck import typing_desk
-    from envcheck.lint.editions import compare
     from envcheck.report import rules_diff
 
     first, second = (typing_desk.rule_set(typing_desk.folder_of(name, rules)) for name in (a, b))
-    changes = compare(first.limits, second.limits)
-    answer = registry.format_named(format_name).answer
-    assert answer is not None
-    deliver(answer(rules_diff.build(first, second, changes), options.width(output)), output)
+    changes = typing_desk.differences(first, second)
+    options.answered(format_name, rules_diff.build(first, second, changes), output, ())
     return 0

@@ -5,7 +5,6 @@ from __future__ import annotations
 import click
 
 from envcheck.cli import options
-from envcheck.cli.writing import deliver
 from envcheck.report import registry
 
 ERRORS = 2
@@ -32,8 +31,6 @@ def lint(folders: tuple[str, ...], format_name: str, output: str | None) -> int:
     from envcheck.report import rules_lint
 
     found = typing_desk.lint_folders(folders)
-    answer = registry.format_named(format_name).answer
-    assert answer is not None
     entries = [(x.folder, x.set, x.faults) for x in found]
-    deliver(answer(rules_lint.build(entries), options.width(output)), output)
+    options.answered(format_name, rules_lint.build(entries), output, ())
     return ERRORS if any(x.errors for x in found) else 0

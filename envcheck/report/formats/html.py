@@ -16,13 +16,14 @@ if TYPE_CHECKING:
     from jinja2 import Environment
     from markupsafe import Markup
 
-    from envcheck.report.explain import Explained
 
 NAME = "html"
 TITLE = "one HTML file for screen and paper"
 EXTENSION = "html"
 DETAILS = True
 WORKINGS = True
+MACROS = {Paragraph: "paragraph", Facts: "facts", Items: "items", Grid: "grid"}
+"""Of the template of blocks, each with the block and the heading that it stands under."""
 SHORT = 12
 """Characters of a hash that every printed page carries."""
 
@@ -37,11 +38,6 @@ def render(view: View) -> str:
 def answer(made: Answer, width: int) -> str:
     """Lay the page of another command out as HTML."""
     return write(made.page)
-
-
-def explain(explained: Explained) -> str:
-    """Lay the page of one element or assembly out as HTML."""
-    return write(explained.page)
 
 
 def write(page: Page, date: str = "", digest: str = "") -> str:
@@ -99,16 +95,8 @@ def _laid_out(block: Block, part: int, place: int, heading: str) -> Markup:
     """One block as HTML; ``part`` and ``place`` make the ids of drawings unique."""
     from markupsafe import Markup
 
-    module = _environment().get_template("blocks.html").module
-    match block:
-        case Paragraph():
-            return Markup(module.paragraph(block))  # type: ignore[attr-defined]
-        case Facts():
-            return Markup(module.facts(block))  # type: ignore[attr-defined]
-        case Items():
-            return Markup(module.items(block))  # type: ignore[attr-defined]
-        case Grid():
-            return Markup(module.grid(block, heading or "table"))  # type: ignore[attr-defined]
-        case Picture(ladder):
-            svg = drawing.ladder(ladder, f"p{part}-{place}")
-            return Markup(f'<div class="drawing">{svg}</div>')
+    if isinstance(block, Picture):
+        svg = drawing.ladder(block.ladder, f"p{part}-{place}")
+        return Markup(f'<div class="drawing">{svg}</div>')
+    macro = getattr(_environment().get_template("blocks.html").module, MACROS[type(block)])
+    return Markup(macro(block, heading or "table"))

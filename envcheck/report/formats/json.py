@@ -3,14 +3,10 @@
 from __future__ import annotations
 
 import json
-from typing import TYPE_CHECKING
 
 from envcheck.report.answer import Answer
 from envcheck.report.rows import Figure
 from envcheck.report.view import View
-
-if TYPE_CHECKING:
-    from envcheck.report.explain import Explained
 
 NAME = "json"
 TITLE = "JSON, versioned, with a schema"
@@ -31,15 +27,11 @@ def render(view: View) -> str:
 
 def answer(made: Answer, width: int) -> str:
     """Write the data of another command."""
-    return _written({"schema_version": SCHEMA_VERSION, **made.data})
+    return _written({"schema_version": SCHEMA_VERSION, **_members(made.data)})
 
 
-def explain(made: Explained) -> str:
-    """Write worksheets and reasons of one subject as JSON (``schemas/explain.schema.json``)."""
-    assemblies = plain(made.assemblies)
-    members = {"subject": made.subject, "units": made.units, "assemblies": assemblies}
-    members["detail"] = plain(made.detail)
-    return _written({"schema_version": SCHEMA_VERSION, **members})
+def _members(data: dict[str, object]) -> dict[str, object]:
+    return {key: plain(value) for key, value in data.items()}
 
 
 def _written(members: dict[str, object]) -> str:
@@ -61,7 +53,9 @@ def plain(value: object) -> object:
         return value
     if isinstance(value, Figure):
         return {"text": value.text, "number": value.number, "unit": value.unit}
-    if isinstance(value, tuple):
+    if isinstance(value, dict):
+        return _members(value)
+    if isinstance(value, tuple | list):
         names = getattr(value, "_fields", None)
         if names is None:
             return [plain(item) for item in value]

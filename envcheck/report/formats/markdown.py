@@ -3,16 +3,12 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from typing import TYPE_CHECKING
 
 from envcheck.report import outline, tabular
 from envcheck.report.answer import Answer
 from envcheck.report.inert import as_code, for_markdown
 from envcheck.report.parts import Block, Entry, Facts, Grid, Items, Page, Paragraph, Picture
 from envcheck.report.view import View
-
-if TYPE_CHECKING:
-    from envcheck.report.explain import Explained
 
 NAME = "markdown"
 TITLE = "Markdown with tables"
@@ -27,11 +23,6 @@ def render(view: View) -> str:
 def answer(made: Answer, width: int) -> str:
     """Lay the page of another command out as Markdown."""
     return write(made.page)
-
-
-def explain(explained: Explained) -> str:
-    """Lay the page of one element or assembly out as Markdown."""
-    return write(explained.page)
 
 
 def write(page: Page) -> str:

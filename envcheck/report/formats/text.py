@@ -2,14 +2,9 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING
-
 from envcheck.report import outline, plain_text
 from envcheck.report.answer import Answer
 from envcheck.report.view import View
-
-if TYPE_CHECKING:
-    from envcheck.report.explain import Explained
 
 NAME = "text"
 TITLE = "plain text, 100 columns"
@@ -24,8 +19,3 @@ def render(view: View) -> str:
 def answer(made: Answer, width: int) -> str:
     """Lay the page of another command out as text."""
     return plain_text.write(made.page, width, False)
-
-
-def explain(explained: Explained) -> str:
-    """Lay the page of one element or assembly out as text."""
-    return plain_text.write(explained.page, explained.width, False)

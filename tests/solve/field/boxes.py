@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterator
+from functools import partial
 
 import numpy as np
 
 from envcheck.solve.box import Box
 from envcheck.solve.field.box_grid import check
-from envcheck.solve.field.section import ModelError, Section
+from envcheck.solve.field.section import Section
+from tests.solve.field.sections import accepted_by
 
 MM = 1e-3
 STEEL = 50.0
@@ -92,12 +93,12 @@ def turned(of: Box) -> Box:
 
 
 def random_box(rng: np.random.Generator) -> Box:
-    n, l, m = rng.integers(1, 5, 3)  # noqa: E741
+    rows, courses, columns = rng.integers(1, 5, 3)
     return Box(
-        tuple(map(float, rng.uniform(0.002, 0.3, m))),
-        tuple(map(float, rng.uniform(0.002, 0.3, l))),
-        tuple(map(float, rng.uniform(0.001, 0.2, n))),
-        blocks(10.0 ** rng.uniform(-2, 1.5, (n, l, m))),
+        tuple(map(float, rng.uniform(0.002, 0.3, columns))),
+        tuple(map(float, rng.uniform(0.002, 0.3, courses))),
+        tuple(map(float, rng.uniform(0.001, 0.2, rows))),
+        blocks(10.0 ** rng.uniform(-2, 1.5, (rows, courses, columns))),
         float(rng.uniform(0.01, 0.2)),
         float(rng.uniform(0.01, 0.2)),
         bool(rng.integers(2)),
@@ -105,15 +106,4 @@ def random_box(rng: np.random.Generator) -> Box:
     )
 
 
-def accepted(
-    draw: Callable[[np.random.Generator], Box], rng: np.random.Generator, count: int
-) -> Iterator[Box]:
-    """Draw until so many are accepted; conductors that meet along an edge are refused."""
-    while count:
-        of = draw(rng)
-        try:
-            check(of)
-        except ModelError:
-            continue
-        count -= 1
-        yield of
+accepted = partial(accepted_by, check)

@@ -3,6 +3,8 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterator
+from functools import partial
+from typing import Any
 
 import numpy as np
 
@@ -80,10 +82,13 @@ def random_section(rng: np.random.Generator) -> Section:
     )
 
 
-def accepted(
-    draw: Callable[[np.random.Generator], Section], rng: np.random.Generator, count: int
-) -> Iterator[Section]:
-    """Draw until so many are accepted; conductors that meet in a corner are refused."""
+def accepted_by(
+    check: Callable[[Any], None],
+    draw: Callable[[np.random.Generator], Any],
+    rng: np.random.Generator,
+    count: int,
+) -> Iterator[Any]:
+    """Draw until so many are accepted; conductors that barely meet are refused."""
     while count:
         of = draw(rng)
         try:
@@ -92,3 +97,6 @@ def accepted(
             continue
         count -= 1
         yield of
+
+
+accepted = partial(accepted_by, check)

@@ -13,45 +13,21 @@ import skfem
 from envcheck.solve.box import Box
 from envcheck.solve.field.box_bound import bound_box
 from tests.solve.field.boxes import battens, crossing
-from tests.solve.field.test_against_elements import lines
+from tests.solve.field.elements import lines, u_by
 
 
 def by_hexahedra(of: Box, pieces: int) -> float:
     """U by trilinear hexahedra with adiabatic sides, as the energy of the field."""
     places = [lines(sizes, pieces) for sizes in (of.widths, of.heights, of.depths)]
     mesh = skfem.MeshHex.init_tensor(*places)
-    basis = skfem.Basis(mesh, skfem.ElementHex1())
     middle = mesh.p[:, mesh.t].mean(axis=1)
     at = [
         np.searchsorted(np.cumsum(sizes), middle[axis])
         for axis, sizes in enumerate((of.widths, of.heights, of.depths))
     ]
-    conductivity = np.array(of.conductivities)[at[2], at[1], at[0]][:, None]
-
-    @skfem.BilinearForm
-    def conduction(u, v, w):
-        return w.k * sum(u.grad[axis] * v.grad[axis] for axis in range(3))
-
-    @skfem.BilinearForm
-    def film(u, v, w):
-        return u * v / w.resistance
-
-    @skfem.LinearForm
-    def air(v, w):
-        return v / w.resistance
-
-    depth = sum(of.depths)
-    faces = [
-        skfem.FacetBasis(mesh, skfem.ElementHex1(), facets=mesh.facets_satisfying(on))
-        for on in (lambda p: np.isclose(p[2], 0), lambda p: np.isclose(p[2], depth))
-    ]
-    matrix = conduction.assemble(basis, k=conductivity)
-    matrix += film.assemble(faces[0], resistance=of.outside)
-    matrix += film.assemble(faces[1], resistance=of.inside)
-    load = air.assemble(faces[1], resistance=of.inside)
-    field = skfem.solve(matrix, load)
-    # E(T) = T.A.T - 2 b.T + A / Ri, at its minimum
-    return float((of.area / of.inside - load @ field) / of.area)
+    conductivity = np.array(of.conductivities)[at[2], at[1], at[0]]
+    films = (of.outside, of.inside)
+    return u_by(mesh, skfem.ElementHex1(), conductivity, films, sum(of.depths), of.area)
 
 
 @pytest.mark.parametrize(
