@@ -165,7 +165,7 @@ def _slab(slab: Slab, system: str) -> str:
     unit = units.label("resistance", system)
     heated = {None: "heated or not: not stated", True: "heated", False: "unheated"}[slab.heated]
     if slab.insulation == "none":
-        return f"no insulation; {heated}"
+        return f"no insulation along the edge; {heated}"
     parts = [f"{slab.insulation}, R {numbers.resistance(slab.resistance, system)} {unit}"]
     if slab.extent:
         parts.append(f"for {_run(slab.extent, system)}")
