@@ -66,21 +66,28 @@ def build(
     tree = solved.tree
     if tree is None or solved.setting.metric not in ("U_assembly", "C_factor") or not tree.value:
         return None
-    branches: tuple[tuple[str, Node], ...] = (("", tree),)
-    if isinstance(tree, Parallel):
-        pairs = zip(tree.shares, tree.branches, strict=True)
-        branches = tuple((numbers.percent(share, 2), branch) for share, branch in pairs)
-    strips = [_strip(share, branch, air, system) for share, branch in branches if branch.value]
-    if len(strips) > MOST_STRIPS:
+    paths = strips(tree, air, system)
+    if len(paths) > MOST_STRIPS:
         return None
-    strips += _whole(solved, tree, system, len(strips))
     return Ladder(
-        strips=tuple(strips),
+        strips=(*paths, *_whole(solved, tree, system, len(paths))),
         ticks=tuple(_tick(limit, solved.setting.metric, system) for limit in limits if limit > 0.0),
         unit=units.label("resistance", system),
         outdoor="0 %" if air is None else numbers.temperature(air[0], system),
         note=SHARES if air is None else STEADY,
     )
+
+
+def strips(tree: Node, air: tuple[float, float] | None, system: str) -> tuple[Strip, ...]:
+    """Every path through a network, outside first, with the figure behind each piece.
+
+    The drop over a piece is its share of the path's resistance.
+    """
+    branches: tuple[tuple[str, Node], ...] = (("", tree),)
+    if isinstance(tree, Parallel):
+        pairs = zip(tree.shares, tree.branches, strict=True)
+        branches = tuple((numbers.percent(share, 2), branch) for share, branch in pairs)
+    return tuple(_strip(share, branch, air, system) for share, branch in branches if branch.value)
 
 
 def _strip(share: str, path: Node, air: tuple[float, float] | None, system: str) -> Strip:
@@ -96,7 +103,7 @@ def _strip(share: str, path: Node, air: tuple[float, float] | None, system: str)
                 behind=_behind(passed / path.value, air, system),
             )
         )
-    title = clean(path.title) if share and path.title else "through all layers"
+    title = clean(path.title) or "through all layers"
     length = _in_units(path.value, system)
     return Strip(title, share, length, numbers.resistance(path.value, system), tuple(rungs))
 

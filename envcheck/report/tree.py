@@ -5,9 +5,10 @@ from __future__ import annotations
 from collections.abc import Iterable, Sequence
 
 from envcheck import units
-from envcheck.model.solved import Face, Node, Parallel, Resistor, Series
+from envcheck.model.solved import Face, Node, Parallel, Series
 from envcheck.report import numbers
 from envcheck.report.inert import clean
+from envcheck.report.ladder import Strip, strips
 from envcheck.report.parts import Grid
 
 
@@ -44,35 +45,19 @@ def _parallels(tree: Node | None) -> Iterable[Parallel]:
 def temperatures(tree: Node, outside: float, inside: float, system: str) -> list[Grid]:
     """One table per path of the temperatures behind each part, outside first.
 
-    outside, inside: air temperatures in degrees C. The drop over a part is its share of the
-    path's resistance.
+    outside, inside: air temperatures in degrees C.
     """
-    branches = tree.branches if isinstance(tree, Parallel) else (tree,)
-    return [_along(branch, outside, inside, system) for branch in branches if branch.value]
+    outdoor = numbers.temperature(outside, system)
+    return [_behind(strip, outdoor, system) for strip in strips(tree, (outside, inside), system)]
 
 
-def _along(path: Node, outside: float, inside: float, system: str) -> Grid:
-    parts = path.parts if isinstance(path, Series) else (path,)
+def _behind(strip: Strip, outdoor: str, system: str) -> Grid:
+    rows = (
+        ("outdoor air", "", outdoor),
+        *((f"behind {rung.title}", rung.resistance, rung.behind) for rung in strip.rungs),
+    )
     unit = units.label("resistance", system)
-    passed = 0.0
-    rows = [("outdoor air", "", numbers.temperature(outside, system))]
-    for part in parts:
-        passed += part.value
-        behind = outside + (inside - outside) * passed / path.value
-        name = f"behind {_title(part)}"
-        rows.append(
-            (
-                clean(name),
-                numbers.resistance(part.value, system),
-                numbers.temperature(behind, system),
-            )
-        )
-    head = clean(path.title) if path.title else "path"
-    return Grid((head, f"R, {unit}", "temperature"), tuple(rows), (1, 2), (0,))
-
-
-def _title(part: Node) -> str:
-    return part.title or (part.symbol if isinstance(part, Resistor) else "part")
+    return Grid((strip.title, f"R, {unit}", "temperature"), rows, (1, 2), (0,))
 
 
 def face_temperatures(faces: Sequence[Face], outside: float, inside: float, system: str) -> Grid:
