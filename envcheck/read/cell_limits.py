@@ -8,12 +8,12 @@ from envcheck.errors import one_of
 from envcheck.model.ruleset import Condition, Limit, Note
 from envcheck.read.cells import Cell
 from envcheck.read.expansion import Expansion, Line
+from envcheck.read.footnote_effects import apply
 from envcheck.read.footnotes import (
     MOST_READINGS,
     Footnote,
     Place,
     Reading,
-    apply,
     join,
     read_footnote,
 )

@@ -83,8 +83,10 @@ def _others(axis: int) -> tuple[int, int]:
 
 
 def _side(values: npt.NDArray[_T], axis: int, side: int) -> npt.NDArray[_T]:
-    """Node (or face) values on one side of every cell along an axis."""
-    return np.delete(values, -1 if side == 0 else 0, axis)
+    """Node (or face) values on one side of every cell along an axis, as a view."""
+    at = [slice(None)] * 3
+    at[axis] = slice(None, -1) if side == 0 else slice(1, None)
+    return values[tuple(at)]
 
 
 # --------------------------------------------------------------------------- node-centred
@@ -220,7 +222,7 @@ def _conserved(
     for face, film in zip(air, films, strict=True):
         flow = film * (found - face.air) * (1.0 if face.side == 0 else -1.0)
         if face.axis:
-            _side_view(flows[face.axis], face.axis, face.side)[...] += flow
+            _side(flows[face.axis], face.axis, face.side)[...] += flow
         elif face.side == 0:
             outer += flow.sum(axis=0)
         if face.air == 0.0:
@@ -234,12 +236,6 @@ def _conserved(
         if face.axis == 0 and face.side == 1
     )
     return [through, flows[1], flows[2]], total, float(moved) / total
-
-
-def _side_view(values: Array, axis: int, side: int) -> Array:
-    at = [slice(None)] * 3
-    at[axis] = slice(None, -1) if side == 0 else slice(1, None)
-    return values[tuple(at)]
 
 
 def _complementary(
